@@ -1,0 +1,138 @@
+/**
+ * What the physics says of a project: every number the editor or the command line shows comes from
+ * here. Values are SI and nominal; `errorBar` is numerical and relative unless said otherwise.
+ */
+import type { Net, Pair, Place, Project, Run, RunConductor } from '../board/model';
+import type { Decibels, DelayPerLength, Length, Resistance, Time, Voltage } from '../units/quantity';
+import type { SectionMatrices, SectionRefusal } from '../physics/section/section';
+import type { Waveform } from '../physics/lines/lines';
+
+export interface Evaluation {
+  readonly project: Project;
+  readonly runs: readonly RunResult[];
+  /** In the order of the text. */
+  readonly budgets: readonly Budget[];
+  /** Geometry, speed or frequency beyond a model's stated range. */
+  readonly limits: readonly ModelLimit[];
+  /** What was assumed for ends that are not stated, for each net or pair that it touches. */
+  readonly assumedEnds: readonly AssumedEnd[];
+  readonly work: WorkDone;
+}
+
+/** Counted, so that a test can say that an edit cost only what it changed. */
+export interface WorkDone {
+  readonly sectionsSolved: number;
+  readonly linesSolved: number;
+}
+
+export interface RunResult {
+  readonly run: Run;
+  /** The traces, left to right, rows top to bottom: the order of the matrices. */
+  readonly traces: readonly (RunConductor & { readonly kind: 'trace' })[];
+  readonly matrices: SectionMatrices | null;
+  /** Why there are no matrices. */
+  readonly refusal: SectionRefusal | null;
+  /** Of each trace alone, the others at zero potential; empty without matrices. */
+  readonly impedance: readonly Resistance[];
+  readonly delay: readonly DelayPerLength[];
+  readonly couplings: readonly Coupling[];
+  /** Guards of which the ties are too far apart for the fastest edge of the run. */
+  readonly looseGuards: readonly LooseGuard[];
+}
+
+export interface LooseGuard {
+  readonly guard: RunConductor & { readonly kind: 'guard' };
+  /** Distance between its ties as stated: the stitching, or the length of the run. */
+  readonly spacing: Length;
+  /** A twentieth of the wavelength at the knee frequency of the fastest edge in the run. */
+  readonly largest: Length;
+}
+
+/** What one aggressor puts on one victim of a run: the worst of its edges and directions. */
+export interface Coupling {
+  readonly run: Run;
+  readonly aggressor: Net;
+  readonly victim: Net;
+  readonly edge: 'rise' | 'fall' | 'sine';
+  readonly model: 'lumped' | 'line';
+  /** Signed peaks: at the victim's near and far end of the run, and at its load end. */
+  readonly nearEnd: Voltage;
+  readonly farEnd: Voltage;
+  readonly atReceiver: Voltage;
+  readonly peakTime: Time;
+  readonly widthHalf: Time;
+  /** Shares of the receiver's peak by the short-line model, signed. */
+  readonly capacitivePart: Voltage;
+  readonly inductivePart: Voltage;
+  /** Absolute, V: of the receiver's peak. */
+  readonly errorBar: Voltage;
+  /** Over the stated tolerances; null until they are carried through. */
+  readonly bounds: readonly [Voltage, Voltage] | null;
+  /** At the victim's receiver, for pictures. */
+  readonly waveform: Waveform;
+  readonly assumptions: readonly string[];
+}
+
+export type Channel = 'coupled' | 'link' | 'loop' | 'shared return' | 'radiated' | 'thermal' | 'amplifier' | 'flicker' | 'contact';
+
+export interface Contribution {
+  readonly channel: Channel;
+  /** The aggressor, or null where the noise is the circuit's own. */
+  readonly from: string | null;
+  /** Name of the run, loop, return or link in which it arises. */
+  readonly where: string | null;
+  readonly place: Place | null;
+  /** Nets of one group switch together: their peaks add. */
+  readonly group: string | null;
+  /** Magnitude, V, peak or rms as the budget's measure. */
+  readonly value: Voltage;
+  readonly unfiltered: Voltage | null;
+  readonly errorBar: Voltage;
+  readonly bounds: readonly [Voltage, Voltage] | null;
+  readonly method: string;
+  readonly assumptions: readonly string[];
+  readonly coupling: Coupling | null;
+}
+
+export type Verdict = 'pass' | 'low' | 'over' | 'unknown';
+
+export interface Budget {
+  readonly subject: Net | Pair;
+  readonly kind: 'net' | 'pair' | 'common';
+  readonly tolerates: Voltage;
+  readonly toleratesPlace: Place;
+  readonly measure: 'peak' | 'rms';
+  readonly combine: 'worst' | 'rss';
+  /** Null where nothing of it could be computed. */
+  readonly total: Voltage | null;
+  readonly bounds: readonly [Voltage, Voltage] | null;
+  readonly errorBar: Voltage | null;
+  /** Null where incomplete or where the total is zero. */
+  readonly marginDb: Decibels | null;
+  readonly verdict: Verdict;
+  readonly complete: boolean;
+  /** What belongs in the budget and is not counted: `loop coil is not yet counted`. */
+  readonly unaccounted: readonly Unaccounted[];
+  /** Largest first, then by name. */
+  readonly contributions: readonly Contribution[];
+}
+
+export interface Unaccounted {
+  readonly what: string;
+  readonly place: Place | null;
+}
+
+export interface ModelLimit {
+  /** The net or run that it concerns. */
+  readonly subject: { readonly kind: string; readonly name: string };
+  readonly place: Place;
+  /** What is beyond which range: one sentence, with the range. */
+  readonly message: string;
+}
+
+export interface AssumedEnd {
+  readonly net: Net;
+  readonly missing: 'source' | 'load';
+  /** What was computed with instead: one phrase. */
+  readonly assumed: string;
+}

@@ -1,0 +1,60 @@
+/**
+ * Coupled lines as the time-domain models see them: matrices per length, a length, and what each line
+ * ends in. Numbers only, SI.
+ *
+ *   left end                                            right end
+ *   e(t) -R-+--[ lead ]--|== coupled, `length` ==|--[ lead ]--+-R- e(t)
+ *           C                                                 C
+ *   ========================== reference ==========================
+ *
+ * Each termination is a resistance to a source (0 V where nothing drives it) with a capacitance across
+ * the line's end. A lead is uncoupled line between the termination and the coupled length.
+ */
+import type { Capacitance, Length, Resistance, Time, Voltage } from '../../units/quantity';
+
+export interface CoupledLines {
+  readonly order: number;
+  /** H/m, row-major, `order` squared. */
+  readonly inductance: Float64Array;
+  /** F/m, Maxwell form, row-major. */
+  readonly capacitance: Float64Array;
+  readonly length: Length;
+  readonly left: readonly Termination[];
+  readonly right: readonly Termination[];
+}
+
+export interface Termination {
+  /** Infinity where nothing but a capacitance ends the line; 0 is allowed. */
+  readonly resistance: Resistance;
+  readonly capacitance: Capacitance;
+  readonly lead: { readonly impedance: Resistance; readonly delay: Time } | null;
+}
+
+/** One source moves linearly from 0 V to `amplitude` over `duration` (0–100 %) and stays there. */
+export interface Ramp {
+  readonly line: number;
+  readonly end: 'left' | 'right';
+  readonly amplitude: Voltage;
+  readonly duration: Time;
+}
+
+/** A piecewise-linear waveform: `values[i]` at `times[i]`, times rising. */
+export interface Waveform {
+  readonly times: Float64Array;
+  readonly values: Float64Array;
+}
+
+export interface LineResponse {
+  /** Of line i, at the ends of the coupled length. */
+  readonly left: readonly Waveform[];
+  readonly right: readonly Waveform[];
+  /** Of line i, at its terminations, beyond the leads; the same objects as above where there is no lead. */
+  readonly leftTermination: readonly Waveform[];
+  readonly rightTermination: readonly Waveform[];
+  readonly window: Time;
+  readonly method: 'lattice' | 'characteristics' | 'lumped';
+  /** Absolute error of any value, from two resolutions; 0 where exact. */
+  readonly errorBar: Voltage;
+  /** Time steps or lattice states computed: the work done. */
+  readonly work: number;
+}

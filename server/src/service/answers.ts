@@ -1,0 +1,63 @@
+/**
+ * What the façade answers, as plain data: offsets in UTF-16 code units, Markdown in strings, no type of
+ * any protocol. `lsp/` and `cli/` turn these into what their side speaks.
+ */
+import type { Place } from '../board/model';
+import type { Span } from '../syntax/tree';
+
+export interface Edit {
+  readonly path: string;
+  readonly span: Span;
+  readonly newText: string;
+}
+
+export interface Fix {
+  /** With the outcome that it was seen to have: `Widen the gap to 0.92 mm: 1.00 mV of 2 mV`. */
+  readonly title: string;
+  /** The rule of the finding that it mends, and where that stands. */
+  readonly rule: string;
+  readonly at: Place;
+  readonly edits: readonly Edit[];
+  /** The one that changes least of those that mend the finding. */
+  readonly preferred: boolean;
+}
+
+export interface HoverAnswer {
+  readonly span: Span;
+  readonly markdown: string;
+}
+
+export type HintKind = 'noise' | 'gap' | 'length';
+
+export interface Hint {
+  readonly kind: HintKind;
+  /** The hint stands directly after this offset. */
+  readonly offset: number;
+  readonly parts: readonly { readonly text: string; readonly target: Place | null }[];
+  readonly tooltip: string;
+}
+
+export type CompletionKind = 'keyword' | 'declaration' | 'name' | 'layer' | 'family' | 'unit' | 'rule' | 'word';
+
+export interface Completion {
+  readonly label: string;
+  readonly kind: CompletionKind;
+  readonly detail: string;
+  readonly documentation: string;
+  /** What it replaces: the word under the cursor. */
+  readonly span: Span;
+  readonly newText: string;
+  /** `newText` holds `$1`, `${2:…}` places. */
+  readonly snippet: boolean;
+  /** Lower comes first. */
+  readonly rank: number;
+}
+
+export interface SymbolEntry {
+  readonly name: string;
+  readonly kind: string;
+  readonly detail: string;
+  readonly span: Span;
+  readonly nameSpan: Span;
+  readonly children: readonly SymbolEntry[];
+}

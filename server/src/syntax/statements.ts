@@ -1,0 +1,157 @@
+/**
+ * Every statement of the language, block by block: the data that `grammar.ts` describes.
+ *
+ * Two statements begin with the same word in a run (`return NAME {` at top level, `return NAME
+ * QUANTITY` in a row): the parser tells them apart by what follows the name.
+ */
+import type { Dimension } from '../units/dimension';
+import type { BlockKind, NameKind, Part, StatementShape } from './grammar';
+
+const quantity = (role: string, dimension: Dimension): Part => ({ is: 'quantity', role, dimension, toleranced: dimension !== 'temperature' && dimension !== 'level' });
+const declared = (of: NameKind, many = false): Part => ({ is: 'name', role: 'name', of, declares: true, many });
+const name = (role: string, of: NameKind, many = false): Part => ({ is: 'name', role, of, declares: false, many });
+const word = (role: string, ...words: string[]): Part => ({ is: 'word', role, words });
+const keyword = (...words: string[]): Part[] => words.map((text) => ({ is: 'keyword', word: text }));
+const optional = (...parts: Part[]): Part => ({ is: 'optional', parts });
+const suffixes = (...of: Part[][]): Part => ({ is: 'suffixes', of });
+const choice = (...of: Part[][]): Part => ({ is: 'choice', of });
+const comma: Part = { is: 'comma' };
+
+const once = (word_: string, parts: Part[], about: string): StatementShape => ({ keyword: word_, parts, repeats: false, about });
+const many = (word_: string, parts: Part[], about: string): StatementShape => ({ keyword: word_, parts, repeats: true, about });
+const opens = (kind: BlockKind, shape: StatementShape, required: 'always' | 'unless-is' = 'always'): StatementShape => ({ ...shape, block: { kind, required } });
+
+const isFamily = optional(...keyword('is'), name('family', 'family'));
+const frequencies = [...keyword('at'), quantity('frequency', 'frequency'), optional(...keyword('to'), quantity('upper', 'frequency'))];
+const ends = choice(
+  [quantity('resistance', 'resistance'), optional(comma, quantity('capacitance', 'capacitance'))],
+  [quantity('capacitance', 'capacitance'), optional(comma, quantity('resistance', 'resistance'))],
+);
+const rampOrSine = choice([...keyword('rise'), quantity('rise', 'time')], [word('measure', 'rms', 'peak'), ...frequencies]);
+const limit = (role: string, dimension: Dimension) => [...keyword('at', 'most'), quantity(role, dimension)];
+const at = optional(...keyword('at'), { is: 'point', role: 'at' });
+
+const waiveHere = many('waive', [{ is: 'rule-name', role: 'rule' }, ...keyword('because'), { is: 'string', role: 'reason' }], 'Keeps a finding of this rule, shown as waived with its reason.');
+
+const net: readonly StatementShape[] = [
+  once('swing', [quantity('swing', 'voltage'), optional(...keyword('to'), quantity('to', 'voltage'))], 'What the unloaded driver moves through: an amplitude, or from one level to another.'),
+  once('rise', [quantity('rise', 'time')], 'Rise time of the unloaded driver, from 10 % to 90 %.'),
+  once('fall', [quantity('fall', 'time')], 'Fall time of the unloaded driver, from 90 % to 10 %; the same as `rise` where it is not stated.'),
+  once('source', [ends], 'Impedance of the driving end: a resistance, a capacitance, or both in parallel. A series resistor at the driver is part of it.'),
+  once('load', [ends], 'Impedance of the receiving end: a resistance, a capacitance, or both in parallel.'),
+  once('sine', [quantity('sine', 'voltage'), word('measure', 'rms', 'peak'), ...frequencies], 'A sine that the driver carries, at one frequency or over a range of which the worst counts.'),
+  once('current', [quantity('current', 'current'), optional(rampOrSine)], 'A current that the net draws at its load end, in step with the voltage.'),
+  once('repeats', [quantity('repeats', 'frequency'), optional(...keyword('duty'), quantity('duty', 'fraction'))], 'Whole cycles a second, one rise and one fall each; duty defaults to 50 %.'),
+  once('once', [], 'The edge does not repeat.'),
+  once('both', keyword('ways'), 'The net is driven from either end in turn: every direction is computed, the worst counts.'),
+  once('switches', [...keyword('with'), name('group', 'group')], 'Nets of one group switch at the same moment.'),
+  once('working', [quantity('working', 'voltage'), word('measure', 'dc', 'rms', 'peak')], 'Working voltage, where people or insulation depend on it.'),
+  many('tolerates', [choice([quantity('tolerates', 'voltage'), word('measure', 'peak', 'rms')], [word('none', 'none')])], 'How much noise the receiver takes: zero to peak, or rms over its band. One of each is allowed.'),
+  once('band', [quantity('from', 'frequency'), ...keyword('to'), quantity('to', 'frequency')], 'The band in which the receiver listens.'),
+  once('noise', [quantity('voltage', 'voltage-noise'), optional(comma, quantity('current', 'current-noise')), optional(...keyword('corner'), quantity('corner', 'frequency'))], 'Input noise of what the receiver listens through.'),
+  once('contact', [quantity('index', 'level'), ...keyword('at'), quantity('across', 'voltage')], 'Noise index of its resistors (IEC 60195) and the dc voltage across them.'),
+  once('samples', [quantity('delay', 'time'), ...keyword('after'), name('group', 'group')], 'Of that group, only what is left this long after its edge counts.'),
+  once('length', [quantity('length', 'length')], 'The whole routed length of the net.'),
+  waiveHere,
+];
+
+const row: readonly StatementShape[] = [
+  many('trace', [name('net', 'net', true), quantity('width', 'length'), suffixes([word('reversed', 'reversed')], [...keyword('after'), quantity('after', 'length')], [...keyword('spaced'), quantity('spaced', 'length')])], 'A conductor of the row that carries a net, and its width.'),
+  many('guard', [name('net', 'free'), quantity('width', 'length'), suffixes([...keyword('stitched'), quantity('stitched', 'length')])], 'A conductor tied to the reference at both ends, and between them where it is stitched.'),
+  many('return', [name('net', 'free'), quantity('width', 'length')], 'A conductor of the row that carries the return current.'),
+  many('gap', [quantity('gap', 'length')], 'The distance between two neighbouring conductors, edge to edge.'),
+];
+
+export const statementShapes: Readonly<Record<BlockKind, readonly StatementShape[]>> = {
+  file: [
+    many('use', [{ is: 'string', role: 'path' }], 'Takes everything that another file declares into this project.'),
+    opens('board', once('board', [declared('board')], 'The board: its temperature, its clearance, how its budgets are made up.')),
+    opens('stackup', many('stackup', [optional(declared('stackup'))], 'The layers of a board, from top to bottom.')),
+    opens('net', many('family', [declared('family'), isFamily], 'Properties that several nets share.'), 'unless-is'),
+    opens('net', many('net', [declared('net', true), isFamily], 'A net: a source of noise, a receiver, or both.'), 'unless-is'),
+    opens('pair', many('pair', [declared('pair'), isFamily], 'Two nets that carry one signal as a difference.'), 'unless-is'),
+    opens('run', many('run', [declared('run'), suffixes([...keyword('on'), name('layer', 'copper')], [...keyword('for'), quantity('length', 'length')])], 'Conductors that lie beside each other for a length, written as the cross-section reads from left to right.')),
+    opens('loop', many('loop', [declared('loop'), optional(...keyword('on'), name('layer', 'copper'))], 'A closed path of current.')),
+    opens('return', many('return', [declared('return')], 'A piece of conductor that several currents share on their way back.')),
+    opens('link', many('link', [declared('link')], 'Coupling that no cross-section describes: a connector, a relay, a transformer.')),
+    opens('shield', many('shield', [declared('shield')], 'A metal cover over nets and loops.')),
+    opens('ambient', many('ambient', [declared('ambient')], 'A radio field that the board has to live in.')),
+    many('waive', [{ is: 'rule-name', role: 'rule' }, ...keyword('on'), name('subject', 'any'), ...keyword('because'), { is: 'string', role: 'reason' }], 'Keeps a finding of this rule on this subject, shown as waived with its reason.'),
+  ],
+  board: [
+    once('temperature', [quantity('temperature', 'temperature')], 'Temperature of the board; 25 °C where it is not stated.'),
+    once('headroom', [quantity('headroom', 'level')], 'Wanted between a total and what is tolerated; 0 dB where it is not stated.'),
+    once('combine', [word('combine', 'worst', 'rss')], 'How peaks of unrelated sources add: `worst` their magnitudes, `rss` their squares.'),
+    once('clearance', [quantity('clearance', 'length')], 'The smallest gap that the fabricator makes; 0.1 mm where it is not stated.'),
+    many('emits', [...limit('field', 'field'), ...keyword('at'), quantity('distance', 'length'), ...keyword('from'), quantity('from', 'frequency'), ...keyword('to'), quantity('to', 'frequency')], 'A limit line for the field that a loop emits.'),
+    waiveHere,
+  ],
+  stackup: [
+    many('mask', [quantity('thickness', 'length'), suffixes([...keyword('er'), quantity('er', 'number')], [...keyword('loss'), quantity('loss', 'number')], [word('flat', 'flat')])], 'Solder mask that follows the copper; `flat`: planar, its thickness above the top of the copper.'),
+    ...(['dielectric', 'core', 'prepreg'] as const).map((material) =>
+      many(material, [quantity('thickness', 'length'), suffixes([...keyword('er'), quantity('er', 'number')], [...keyword('loss'), quantity('loss', 'number')])], 'An insulating row: its thickness after pressing and its relative permittivity.')),
+    many('copper', [declared('copper'), quantity('thickness', 'length'), suffixes([...keyword('undercut'), quantity('undercut', 'length')])], 'A signal layer and its finished thickness. `undercut`: how much narrower, on each side, the top of a trace is than its foot.'),
+    many('plane', [declared('plane'), quantity('thickness', 'length')], 'A reference conductor of zero potential.'),
+  ],
+  net,
+  pair: [
+    once('plus', [name('net', 'net')], 'The net that carries the signal.'),
+    once('minus', [name('net', 'net')], 'The net that carries its complement.'),
+    once('across', [ends], 'What lies between the two receiving ends, besides each net’s own load.'),
+    many('common', [...keyword('tolerates'), quantity('tolerates', 'voltage'), word('measure', 'peak', 'rms')], 'How much noise the mean of the two nets may carry.'),
+    once('rejects', [quantity('rejects', 'level')], 'How far the receiver suppresses the mean of the two nets.'),
+    ...net,
+  ],
+  row: [
+    ...row,
+    once('shift', [quantity('shift', 'length')], 'Left edge of this row, from the left edge of the first row; may be negative.'),
+  ],
+  run: [
+    ...row,
+    opens('row', many('on', [name('layer', 'copper')], 'The conductors of this run on one layer.')),
+    many('without', [name('plane', 'plane')], 'That plane is cut away here.'),
+    waiveHere,
+  ],
+  loop: [
+    many('carries', [name('net', 'net'), optional(quantity('current', 'current'), optional(rampOrSine))], 'The net whose current flows in the loop; current and rise default to the net’s.'),
+    many('senses', [name('net', 'any')], 'The net in which the voltage induced in the loop appears.'),
+    once('rectangle', [quantity('width', 'length'), ...keyword('by'), quantity('height', 'length'), at], 'A rectangle, along x by along y, with the corner of smallest x and y.'),
+    once('circle', [quantity('diameter', 'length'), at], 'A circle by its diameter and centre.'),
+    once('path', [{ is: 'repeat', parts: [{ is: 'optional-comma' }, { is: 'point', role: 'point' }] }], 'A closed polygon by its corners.'),
+    once('trace', [quantity('length', 'length'), ...keyword('above'), name('plane', 'plane'), at], 'Out along x on the loop’s layer, back in the plane.'),
+    once('strip', [quantity('strip', 'length')], 'The conductor is a flat strip of this width.'),
+    once('wire', [quantity('wire', 'length')], 'The conductor is a round wire of this diameter.'),
+    many('over', [name('plane', 'plane')], 'The image of the loop in that plane counts.'),
+    many('turned', [quantity('angle', 'angle'), ...keyword('about'), word('axis', 'x', 'y', 'z')], 'Turns the loop about the centre of its shape.'),
+    once('area', limit('area', 'area'), 'A limit for the area that the loop encloses.'),
+    once('inductance', limit('inductance', 'inductance'), 'A limit for the loop’s inductance.'),
+    waiveHere,
+  ],
+  return: [
+    many('strip', [quantity('length', 'length'), ...keyword('by'), quantity('width', 'length'), ...keyword('on'), name('layer', 'copper')], 'A flat piece of copper, length by width.'),
+    once('over', [name('plane', 'plane')], 'The return lies above that plane.'),
+    many('via', [optional({ is: 'count', role: 'count' }), suffixes([...keyword('drill'), quantity('drill', 'length')], [...keyword('length'), quantity('length', 'length')])], 'Vias in parallel; one where no count is stated.'),
+    many('measured', [quantity('resistance', 'resistance'), optional(comma, quantity('inductance', 'inductance'))], 'A value from the bench.'),
+    many('carries', [name('net', 'net', true)], 'A net whose current returns through this piece.'),
+    many('refers', [name('net', 'any', true)], 'A net whose receiver measures against the far end of this piece.'),
+    waiveHere,
+  ],
+  link: [
+    once('between', [name('from', 'net'), ...keyword('and'), name('to', 'net')], 'The two nets that the link couples, at their load ends.'),
+    once('capacitance', [quantity('capacitance', 'capacitance')], 'Capacitance between the two nets.'),
+    once('mutual', [quantity('mutual', 'inductance')], 'Mutual inductance between the two nets.'),
+    waiveHere,
+  ],
+  shield: [
+    many('covers', [name('subject', 'any', true)], 'A net, pair or loop under the shield.'),
+    once('sheet', [word('material', 'copper', 'aluminium', 'brass', 'tin', 'steel', 'nickel-silver'), quantity('thickness', 'length')], 'What the shield is made of, and how thick.'),
+    once('slot', [quantity('slot', 'length')], 'The longest opening of the shield.'),
+    once('grounded', [], 'The shield is tied to the reference.'),
+    once('floating', [], 'The shield is tied to nothing.'),
+    waiveHere,
+  ],
+  ambient: [
+    once('field', [quantity('field', 'field'), ...keyword('from'), quantity('from', 'frequency'), ...keyword('to'), quantity('to', 'frequency'), optional(...keyword('modulated'), quantity('modulated', 'fraction'))], 'A radio field: rms of the unmodulated field, as test levels are stated.'),
+    waiveHere,
+  ],
+};

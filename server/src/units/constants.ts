@@ -1,0 +1,10 @@
+/** Physical constants, SI, each with the edition it was taken from. */
+
+/** Electric constant, F/m. CODATA 2018 recommended value. */
+export const epsilon0 = 8.8541878128e-12;
+
+/** Magnetic constant, H/m. CODATA 2018 recommended value. */
+export const mu0 = 1.25663706212e-6;
+
+/** Speed of light in vacuum, m/s. Exact, SI 2019. */
+export const speedOfLight = 299_792_458;
