@@ -42,10 +42,41 @@ export interface Project {
   readonly shields: readonly Shield[];
   readonly ambients: readonly Ambient[];
   readonly waivers: readonly Waiver[];
+  /** Every `use` of every file. */
+  readonly includes: readonly Include[];
+  /** What is declared and where it is referred to, by set and name. */
+  readonly names: ReadonlyMap<NameSet, ReadonlyMap<string, NameRecord>>;
   /** No `use`, declaration head or property of any file was unreadable. */
   readonly complete: boolean;
   readonly gaps: readonly Gap[];
   readonly errors: readonly BoardError[];
+}
+
+export interface Include {
+  /** The string after `use`. */
+  readonly place: Place;
+  /** Key of the file that it names; null where the path leads nowhere. */
+  readonly path: string | null;
+}
+
+/**
+ * Names of one set are unique; the same word in two sets is two things, as a net GND over a plane GND.
+ * Nets, pairs and loops share a set, since a shield or a return refers to either by name alone.
+ * `conductor` holds the names of guards and of returns in a row, which are declared nowhere.
+ */
+export type NameSet = 'board' | 'stackup' | 'layer' | 'family' | 'signal' | 'group' | 'run' | 'return' | 'link' | 'shield' | 'ambient' | 'conductor';
+
+export interface NameRecord {
+  readonly set: NameSet;
+  readonly name: string;
+  readonly kind: 'board' | 'stackup' | 'copper' | 'plane' | 'family' | 'net' | 'pair' | 'loop' | 'group' | 'run' | 'return' | 'link' | 'shield' | 'ambient' | 'conductor';
+  /** More than one where the name is declared twice; none for built-in families, groups and conductors. */
+  readonly declarations: readonly Place[];
+  readonly uses: readonly Place[];
+  /** Where a waiver names it: no use, but a reference. */
+  readonly waivers: readonly Place[];
+  /** It also stands in a line that could not be read, so it may be used there. */
+  readonly inUnreadable: boolean;
 }
 
 /** Something that is written but could not be read. */
@@ -135,6 +166,8 @@ export interface End {
 
 export interface Family extends Declared {
   readonly builtIn: boolean;
+  /** The family that it `is`. */
+  readonly is: string | null;
 }
 
 /** What `net` and `pair` have in common, families already applied: a property of a family stands here with its place in the family. */
@@ -151,6 +184,7 @@ export interface Signal extends Declared {
   readonly once: boolean;
   readonly bothWays: boolean;
   readonly switchesWith: string | null;
+  /** A magnitude: `-48 V dc` is as dangerous as 48 V. */
   readonly working: { readonly voltage: Given<Voltage>; readonly measure: 'dc' | 'rms' | 'peak'; readonly place: Place } | null;
   readonly toleratesPeak: Given<Voltage> | null;
   readonly toleratesRms: Given<Voltage> | null;
@@ -263,7 +297,8 @@ export interface Ambient extends Declared {
 
 export interface Waiver {
   readonly rule: string;
-  readonly subject: string;
+  /** Names: one after `on`, or all that the declaration around it declares: `net D[0..3] { waive … }`. */
+  readonly subjects: readonly string[];
   readonly reason: string;
   readonly place: Place;
 }
