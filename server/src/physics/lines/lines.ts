@@ -53,8 +53,11 @@ export interface LineResponse {
   readonly rightTermination: readonly Waveform[];
   readonly window: Time;
   readonly method: 'lattice' | 'characteristics' | 'lumped';
-  /** Absolute error of any value, from two resolutions; 0 where exact. */
-  readonly errorBar: Voltage;
-  /** Time steps or lattice states computed: the work done. */
+  /**
+   * Of line i: absolute error of any of its values, from two resolutions; rounding only where exact. Each line has
+   * its own, since a victim's noise may be a thousandth of what the aggressor moves through.
+   */
+  readonly errorBar: readonly Voltage[];
+  /** Time steps or lattice states computed: the work done. Shared by every answer from one preparation. */
   readonly work: number;
 }
