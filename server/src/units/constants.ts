@@ -8,3 +8,6 @@ export const mu0 = 1.25663706212e-6;
 
 /** Speed of light in vacuum, m/s. Exact, SI 2019. */
 export const speedOfLight = 299_792_458;
+
+/** Boltzmann constant, J/K. Exact, SI 2019. */
+export const boltzmann = 1.380649e-23;

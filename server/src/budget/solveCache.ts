@@ -1,0 +1,67 @@
+/**
+ * What has been solved, found again by its numbers: the only state of the analysis. An edit that
+ * leaves the numbers of a section or of a line as they were costs a look-up, wherever it was made;
+ * one that changes a gap costs that section and its lines.
+ *
+ * Bounded: what was not asked for longest goes first, so that an afternoon of edits does not fill
+ * the memory. Keys are written from the numbers themselves, exactly: two sections share a solution
+ * only when no digit differs.
+ */
+import type { Section, SectionSolution } from '../physics/section/section';
+import type { WorkDone } from './results';
+
+export interface SolveCache {
+  /** The solution of the section with this key, solved where it is not known. */
+  section(key: string, solve: () => SectionSolution): SectionSolution;
+  /** The same for what is drawn from a line; the caller keeps one type to one kind of key. */
+  line<Solution extends object>(key: string, solve: () => Solution): Solution;
+  /** Counted since the cache was made. */
+  work(): WorkDone;
+}
+
+/** Room for a board of 3 000 runs and the edits of an afternoon. */
+const sectionsKept = 8192;
+const linesKept = 32768;
+
+export function createSolveCache(): SolveCache {
+  const sections = new Recent<SectionSolution>(sectionsKept);
+  const lines = new Recent<object>(linesKept);
+  return {
+    section: (key, solve) => sections.find(key, solve),
+    line: <Solution extends object>(key: string, solve: () => Solution) => lines.find(key, solve) as Solution,
+    work: () => ({ sectionsSolved: sections.misses, linesSolved: lines.misses }),
+  };
+}
+
+/** A name made of every number of the section. */
+export function sectionKey(section: Section): string {
+  const parts: (string | number)[] = [section.planeBelow ? 'plane' : 'open', section.planeAbove ? 'plane' : 'open'];
+  for (const layer of section.layers) parts.push(layer.permittivity, layer.thickness);
+  if (section.film !== null) parts.push('film', section.film.side, section.film.permittivity, section.film.thickness);
+  for (const conductor of section.conductors) {
+    parts.push(conductor.role, conductor.x, conductor.y, conductor.width, conductor.height, conductor.undercut);
+  }
+  return parts.join(' ');
+}
+
+class Recent<Value> {
+  misses = 0;
+  /** A Map keeps the order of insertion: the first key is the one longest unused. */
+  private readonly entries = new Map<string, Value>();
+
+  constructor(private readonly capacity: number) {}
+
+  find(key: string, make: () => Value): Value {
+    const known = this.entries.get(key);
+    if (known !== undefined) {
+      this.entries.delete(key);
+      this.entries.set(key, known);
+      return known;
+    }
+    this.misses += 1;
+    const made = make();
+    this.entries.set(key, made);
+    if (this.capacity < this.entries.size) this.entries.delete(this.entries.keys().next().value as string);
+    return made;
+  }
+}
