@@ -4,6 +4,7 @@
  */
 import type { Place } from '../board/model';
 import type { Evaluation } from '../budget/results';
+import { isWaivable, type RuleName } from './ruleNames';
 
 export type Severity = 'error' | 'warning' | 'information' | 'hint';
 
@@ -12,6 +13,10 @@ export interface Fault {
   readonly at: Place;
   readonly subject: Subject | null;
   readonly related?: readonly RelatedPlace[];
+  /** Further names that tell this fault from others of its rule on its subject; they stand in the baseline key. */
+  readonly names?: readonly string[];
+  /** Replacements that would mend it, best first, where the rule knows some. */
+  readonly corrections?: readonly FaultCorrection[];
   /** What was compared, SI, and its unit, for machines. */
   readonly value?: number;
   readonly limit?: number;
@@ -23,6 +28,12 @@ export interface Subject {
   readonly name: string;
 }
 
+export interface FaultCorrection {
+  readonly title: string;
+  readonly place: Place;
+  readonly newText: string;
+}
+
 export interface RelatedPlace {
   readonly place: Place;
   readonly message: string;
@@ -30,12 +41,13 @@ export interface RelatedPlace {
 
 export interface Rule<F extends Fault = Fault> {
   /** Kebab-case; names the fault. */
-  readonly name: string;
+  readonly name: RuleName;
   readonly severity: Severity;
   readonly documentation: RuleDocumentation;
   /** False for rules on the text itself and for `unused-waiver`. */
   readonly waivable: boolean;
-  readonly find: (evaluation: Evaluation) => Iterable<F>;
+  /** `found`: what the rules before it in the list found, waivers applied. */
+  readonly find: (evaluation: Evaluation, found: readonly Finding[]) => Iterable<F>;
   readonly message: (fault: F) => string;
 }
 
@@ -51,8 +63,9 @@ export interface RuleDocumentation {
   readonly models: readonly string[];
 }
 
-export function defineRule<F extends Fault>(rule: Rule<F>): Rule<F> {
-  return rule;
+/** Erases the type of the fault: a rule's `message` is only ever given what its own `find` yielded. */
+export function defineRule<F extends Fault>(rule: Omit<Rule<F>, 'waivable'>): Rule {
+  return { ...rule, waivable: isWaivable(rule.name) } as unknown as Rule;
 }
 
 /** A fault with its words, as every front end shows it. */

@@ -1,0 +1,119 @@
+/**
+ * What the rules on budgets have in common: the fault they yield, and the words for what a receiver
+ * has, where that comes from and what would lower it.
+ */
+import type { Place, Project } from '../board/model';
+import type { Budget, Channel, Contribution } from '../budget/results';
+import { inText } from '../units/inText';
+import type { Fault, RelatedPlace, Subject } from './rule';
+import { traceOf } from './gapsBetween';
+
+export interface BudgetFault extends Fault {
+  readonly budget: Budget;
+  readonly largest: Contribution | null;
+  /** What total would be wanted: what is tolerated, less the headroom. */
+  readonly wanted: number;
+}
+
+export function budgetFault(project: Project, budget: Budget): BudgetFault {
+  return {
+    at: budget.subject.place,
+    subject: subjectOf(budget),
+    names: budget.kind === 'common' ? ['common', budget.measure] : [budget.measure],
+    related: relatedPlaces(project, budget),
+    ...(budget.total === null ? {} : { value: budget.total }),
+    limit: budget.tolerates,
+    unit: 'V',
+    budget,
+    largest: budget.contributions[0] ?? null,
+    wanted: budget.tolerates / 10 ** ((project.board.headroom?.value ?? 0) / 20),
+  };
+}
+
+export function subjectOf({ subject }: Budget): Subject {
+  return { kind: subject.kind, name: subject.name };
+}
+
+/** `RX_IN`, `pair AIN`, `the mean of pair AIN`. */
+export function receiverInText({ kind, subject }: Budget): string {
+  switch (kind) {
+    case 'net': return subject.name;
+    case 'pair': return `pair ${subject.name}`;
+    case 'common': return `the mean of pair ${subject.name}`;
+  }
+}
+
+/** `5.30 mV`, `2.00 µV rms`: a peak is what a number without a word means. */
+export function voltageInText(value: number, { measure }: Budget): string {
+  return `${inText(value, 'voltage')}${measure === 'rms' ? ' rms' : ''}`;
+}
+
+/** Its part of the total, as the budget's own sum makes it up. */
+export function shareOf(contribution: Contribution, { total, measure, combine }: Budget): number {
+  if (total === null || !(0 < total)) return 0;
+  const ratio = Math.min(1, contribution.value / total);
+  return measure === 'rms' || combine === 'rss' ? ratio * ratio : ratio;
+}
+
+/** `VALVE_PWM in run valve-past-rx makes 98 % of it`; the largest contribution where none dominates. */
+export function causeInText({ budget, largest }: BudgetFault): string {
+  if (largest === null) return 'no single cause';
+  const share = shareOf(largest, budget);
+  const others = budget.contributions.length - 1;
+  if (others === 0 || 0.995 <= share) return `${originInText(largest)} makes all of it`;
+  const percent = `${Math.round(share * 100)} %`;
+  return share <= 0.5 ? `${budget.contributions.length} causes, the largest is ${originInText(largest)} with ${percent}` : `${originInText(largest)} makes ${percent} of it`;
+}
+
+/** `a wider gap, a shorter run or a stitched guard`. */
+export function remedyInText(largest: Contribution | null): string {
+  return largest === null ? 'less noise at its sources' : remedies[largest.channel];
+}
+
+/** How much less it has to become: `8.5 dB less`. */
+export function excessInText({ budget, wanted }: BudgetFault): string {
+  return `${inText(20 * Math.log10((budget.total ?? wanted) / wanted), 'level')} less`;
+}
+
+/** The places that the project holds: a built-in family's `tolerates` stands in no file. */
+export function placesInFiles(project: Project, related: readonly { readonly place: Place | null; readonly message: string }[]): RelatedPlace[] {
+  return related.flatMap(({ place, message }) => (place !== null && project.files.includes(place.path) ? [{ place, message }] : []));
+}
+
+function originInText({ channel, from, where }: Contribution): string {
+  const place = where === null ? '' : ` in ${placeWords[channel]} ${where}`;
+  return from === null ? `its own ${channel} noise` : `${from}${place}`;
+}
+
+const placeWords: Readonly<Record<Channel, string>> = {
+  coupled: 'run', link: 'link', loop: 'loop', 'shared return': 'return', radiated: 'field', thermal: 'net', amplifier: 'net', flicker: 'net', contact: 'net',
+};
+
+const remedies: Readonly<Record<Channel, string>> = {
+  coupled: 'a wider gap, a shorter run or a stitched guard',
+  link: 'less capacitance or mutual inductance there',
+  loop: 'smaller loops, further apart',
+  'shared return': 'a return of its own',
+  radiated: 'a smaller loop or a shield',
+  thermal: 'a lower source resistance or a narrower band',
+  amplifier: 'a quieter input stage or a narrower band',
+  flicker: 'a quieter input stage or a band that begins higher',
+  contact: 'quieter resistors or less dc voltage across them',
+};
+
+/** What is tolerated, and both sides of the largest couplings. */
+function relatedPlaces(project: Project, budget: Budget): RelatedPlace[] {
+  const tolerated = { place: budget.toleratesPlace, message: `${receiverInText(budget)} tolerates ${voltageInText(budget.tolerates, budget)}` };
+  const origins = budget.contributions.slice(0, shownOrigins).map((contribution) => ({
+    place: aggressorPlace(contribution),
+    message: `${originInText(contribution)} puts ${voltageInText(contribution.value, budget)} on it`,
+  }));
+  return placesInFiles(project, [tolerated, ...origins]);
+}
+
+const shownOrigins = 3;
+
+function aggressorPlace({ coupling, place }: Contribution): Place | null {
+  const trace = coupling === null ? null : traceOf(coupling.run, coupling.aggressor);
+  return trace?.whole ?? place;
+}

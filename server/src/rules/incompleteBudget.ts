@@ -1,0 +1,85 @@
+import type { Place, Project } from '../board/model';
+import type { Budget, Evaluation, Unaccounted } from '../budget/results';
+import { placesInFiles, receiverInText, subjectOf, voltageInText } from './budgetFault';
+import { defineRule, type Fault } from './rule';
+
+interface IncompleteBudget extends Fault {
+  /** The receivers that lack the same, the first of which is the subject. */
+  readonly budgets: readonly [Budget, ...Budget[]];
+  readonly lacks: readonly Unaccounted[];
+}
+
+export const incompleteBudget = defineRule<IncompleteBudget>({
+  name: 'incomplete-budget',
+  severity: 'warning',
+  documentation: {
+    finds: 'A receiver whose budget lacks something that belongs in it, and what: a value that could not be read, or a way of coupling that is not yet counted.',
+    matters: 'A sum with a part missing looks better than the board is. Such a budget has no margin and is never reported as within budget.',
+    bad: `stackup { copper TOP 35 um; prepreg 0.2 mm er 4.2; plane GND 18 um }
+net A { swing 3.3 V; source 33 ohm; load 1 Mohm, 5 pF }
+net B { source 100 ohm; load 1 kohm, 10 pF; tolerates 2 V peak }
+run beside on TOP for 20 mm { trace A 0.15 mm; gap 0.5 mm; trace B 0.15 mm }
+`,
+    good: `stackup { copper TOP 35 um; prepreg 0.2 mm er 4.2; plane GND 18 um }
+net A { swing 3.3 V; rise 5 ns; source 33 ohm; load 1 Mohm, 5 pF }
+net B { source 100 ohm; load 1 kohm, 10 pF; tolerates 2 V peak }
+run beside on TOP for 20 mm { trace A 0.15 mm; gap 0.5 mm; trace B 0.15 mm }
+`,
+    models: [],
+  },
+
+  *find(evaluation) {
+    const { project } = evaluation;
+    for (const budget of evaluation.budgets) {
+      const lacks = budget.unaccounted.filter(({ place }) => !isUnreadable(place, project));
+      if (0 < lacks.length) yield fault(project, [budget], lacks);
+    }
+    for (const { budgets, lacks } of unreadable(evaluation)) yield fault(project, budgets, lacks);
+  },
+
+  message: ({ budgets: [first, ...others], lacks }) => {
+    const whom = `${receiverInText(first)}${others.length === 0 ? '' : ` and ${others.length} more`}`;
+    const what = lacks.slice(0, shown).map(({ what: words }) => words).join('; ');
+    const rest = shown < lacks.length ? `; and ${lacks.length - shown} more` : '';
+    if (first.total === null || 0 < others.length) return `no margin on ${whom}: ${what}${rest}`;
+    return `${voltageInText(first.total, first)} of ${voltageInText(first.tolerates, first)} so far on ${whom}, and no margin: ${what}${rest}`;
+  },
+});
+
+const shown = 3;
+
+function fault(project: Project, budgets: readonly [Budget, ...Budget[]], lacks: readonly Unaccounted[]): IncompleteBudget {
+  const [first, ...others] = budgets;
+  return {
+    at: first.subject.place,
+    subject: subjectOf(first),
+    names: lacks.map(({ what }) => what),
+    related: placesInFiles(project, [
+      ...lacks.map(({ place, what }) => ({ place, message: what })),
+      ...others.slice(0, shown).map((budget) => ({ place: budget.subject.place, message: `${receiverInText(budget)} lacks it, too` })),
+    ]),
+    budgets,
+    lacks,
+  };
+}
+
+/**
+ * One unreadable value can leave every budget of a board incomplete; it has a finding of its own, and
+ * one more says whose budgets it takes with it, not one for each.
+ */
+function unreadable({ project, budgets }: Evaluation): Iterable<{ budgets: readonly [Budget, ...Budget[]]; lacks: readonly Unaccounted[] }> {
+  const causes = new Map<string, { budgets: [Budget, ...Budget[]]; lacks: readonly Unaccounted[] }>();
+  for (const budget of budgets) {
+    for (const lack of budget.unaccounted) {
+      if (!isUnreadable(lack.place, project)) continue;
+      const known = causes.get(lack.what);
+      if (known === undefined) causes.set(lack.what, { budgets: [budget], lacks: [lack] });
+      else if (!known.budgets.some(({ subject }) => subject === budget.subject)) known.budgets.push(budget);
+    }
+  }
+  return causes.values();
+}
+
+function isUnreadable(place: Place | null, { gaps }: Project): boolean {
+  return place !== null && gaps.some((gap) => gap.place.path === place.path && gap.place.span.start === place.span.start);
+}
