@@ -19,7 +19,7 @@ export type NameKind =
 export type Role = string;
 
 export type Part =
-  | { readonly is: 'quantity'; readonly role: Role; readonly dimension: Dimension; readonly toleranced: boolean }
+  | { readonly is: 'quantity'; readonly role: Role; readonly dimension: Dimension; readonly toleranced: boolean; /** A thickness of copper, where `oz` fits too. */ readonly copper: boolean }
   | { readonly is: 'count'; readonly role: Role }
   /** `declares` or refers to; `many`: a range `D[0..7]` may stand here. */
   | { readonly is: 'name'; readonly role: Role; readonly of: NameKind; readonly declares: boolean; readonly many: boolean }
@@ -34,8 +34,8 @@ export type Part =
   | { readonly is: 'optional-comma' }
   | { readonly is: 'optional'; readonly parts: readonly Part[] }
   | { readonly is: 'choice'; readonly of: readonly (readonly Part[])[] }
-  /** Any order, each at most once: what follows the value of a trace. */
-  | { readonly is: 'suffixes'; readonly of: readonly (readonly Part[])[] }
+  /** Any order, each at most once: what follows the value of a trace. `needs`: the first word of the one that may not be left out. */
+  | { readonly is: 'suffixes'; readonly of: readonly (readonly Part[])[]; readonly needs: string | null }
   /** One or more. */
   | { readonly is: 'repeat'; readonly parts: readonly Part[] };
 

@@ -7,13 +7,14 @@
 import type { Dimension } from '../units/dimension';
 import type { BlockKind, NameKind, Part, StatementShape } from './grammar';
 
-const quantity = (role: string, dimension: Dimension): Part => ({ is: 'quantity', role, dimension, toleranced: dimension !== 'temperature' && dimension !== 'level' });
+const quantity = (role: string, dimension: Dimension): Part => ({ is: 'quantity', role, dimension, toleranced: dimension !== 'temperature' && dimension !== 'level', copper: false });
+const copperThickness: Part = { is: 'quantity', role: 'thickness', dimension: 'length', toleranced: true, copper: true };
 const declared = (of: NameKind, many = false): Part => ({ is: 'name', role: 'name', of, declares: true, many });
 const name = (role: string, of: NameKind, many = false): Part => ({ is: 'name', role, of, declares: false, many });
 const word = (role: string, ...words: string[]): Part => ({ is: 'word', role, words });
 const keyword = (...words: string[]): Part[] => words.map((text) => ({ is: 'keyword', word: text }));
 const optional = (...parts: Part[]): Part => ({ is: 'optional', parts });
-const suffixes = (...of: Part[][]): Part => ({ is: 'suffixes', of });
+const suffixes = (...of: Part[][]): Part => ({ is: 'suffixes', of, needs: null });
 const choice = (...of: Part[][]): Part => ({ is: 'choice', of });
 const comma: Part = { is: 'comma' };
 
@@ -70,7 +71,7 @@ export const statementShapes: Readonly<Record<BlockKind, readonly StatementShape
     opens('net', many('family', [declared('family'), isFamily], 'Properties that several nets share.'), 'unless-is'),
     opens('net', many('net', [declared('net', true), isFamily], 'A net: a source of noise, a receiver, or both.'), 'unless-is'),
     opens('pair', many('pair', [declared('pair'), isFamily], 'Two nets that carry one signal as a difference.'), 'unless-is'),
-    opens('run', many('run', [declared('run'), suffixes([...keyword('on'), name('layer', 'copper')], [...keyword('for'), quantity('length', 'length')])], 'Conductors that lie beside each other for a length, written as the cross-section reads from left to right.')),
+    opens('run', many('run', [declared('run'), { is: 'suffixes', of: [[...keyword('on'), name('layer', 'copper')], [...keyword('for'), quantity('length', 'length')]], needs: 'for' }], 'Conductors that lie beside each other for a length, written as the cross-section reads from left to right.')),
     opens('loop', many('loop', [declared('loop'), optional(...keyword('on'), name('layer', 'copper'))], 'A closed path of current.')),
     opens('return', many('return', [declared('return')], 'A piece of conductor that several currents share on their way back.')),
     opens('link', many('link', [declared('link')], 'Coupling that no cross-section describes: a connector, a relay, a transformer.')),
@@ -90,8 +91,8 @@ export const statementShapes: Readonly<Record<BlockKind, readonly StatementShape
     many('mask', [quantity('thickness', 'length'), suffixes([...keyword('er'), quantity('er', 'number')], [...keyword('loss'), quantity('loss', 'number')], [word('flat', 'flat')])], 'Solder mask that follows the copper; `flat`: planar, its thickness above the top of the copper.'),
     ...(['dielectric', 'core', 'prepreg'] as const).map((material) =>
       many(material, [quantity('thickness', 'length'), suffixes([...keyword('er'), quantity('er', 'number')], [...keyword('loss'), quantity('loss', 'number')])], 'An insulating row: its thickness after pressing and its relative permittivity.')),
-    many('copper', [declared('copper'), quantity('thickness', 'length'), suffixes([...keyword('undercut'), quantity('undercut', 'length')])], 'A signal layer and its finished thickness. `undercut`: how much narrower, on each side, the top of a trace is than its foot.'),
-    many('plane', [declared('plane'), quantity('thickness', 'length')], 'A reference conductor of zero potential.'),
+    many('copper', [declared('copper'), copperThickness, suffixes([...keyword('undercut'), quantity('undercut', 'length')])], 'A signal layer and its finished thickness. `undercut`: how much narrower, on each side, the top of a trace is than its foot.'),
+    many('plane', [declared('plane'), copperThickness], 'A reference conductor of zero potential.'),
   ],
   net,
   pair: [

@@ -31,6 +31,8 @@ export interface SourceTree {
   readonly version: { readonly value: number; readonly span: Span } | null;
   readonly statements: readonly Statement[];
   readonly errors: readonly TextError[];
+  /** Stretches that were passed over, in the order of the text: names in them count as declared and used. */
+  readonly unread: readonly Span[];
 }
 
 export interface Statement {

@@ -11,3 +11,6 @@ export const speedOfLight = 299_792_458;
 
 /** Boltzmann constant, J/K. Exact, SI 2019. */
 export const boltzmann = 1.380649e-23;
+
+/** Resistivity of annealed copper at 20 °C, Ω m. IEC 60028 (1925, International Annealed Copper Standard). */
+export const copperResistivity = 1.724e-8;

@@ -1,0 +1,99 @@
+/** What fits at a place of the grammar, in the words of messages. */
+import type { Dimension } from '../units/dimension';
+import { dimensionInWords, exampleOf } from '../units/spelling';
+import type { BlockKind, NameKind, Part, StatementShape } from './grammar';
+import { statementShapes } from './statements';
+
+/** The statement of this block that begins with the word. */
+export function shapeOf(kind: BlockKind, keyword: string): StatementShape | undefined {
+  return shapes.get(kind)!.get(keyword);
+}
+
+export function keywordsOf(kind: BlockKind): readonly string[] {
+  return [...shapes.get(kind)!.keys()];
+}
+
+/** Every fixed word of the language, whether it begins a statement or goes on with one. */
+export const fixedWords: ReadonlySet<string> = new Set(
+  Object.values(statementShapes).flatMap((list) => list.flatMap((shape) => [shape.keyword, ...shape.parts.flatMap(wordsIn)])),
+);
+
+/** The words with which a part may begin; none where a value begins it. */
+export function firstWords(part: Part): readonly string[] {
+  switch (part.is) {
+    case 'keyword': return [part.word];
+    case 'word': return part.words;
+    case 'optional': return firstWords(part.parts[0]!);
+    case 'choice':
+    case 'suffixes': return part.of.flatMap((parts) => firstWords(parts[0]!));
+    default: return [];
+  }
+}
+
+/** `a time such as 40 ns`, `` `worst` or `rss` ``: what a message says belongs here. */
+export function inWords(part: Part): string {
+  switch (part.is) {
+    case 'quantity': return quantityInWords([part.dimension]);
+    case 'count': return 'a whole number';
+    case 'name': return nameInWords(part.of);
+    case 'string': return 'a text in quotes';
+    case 'point': return 'a point such as `(10 mm, 4 mm)`';
+    case 'rule-name': return 'the name of a rule';
+    case 'keyword': return `\`${part.word}\``;
+    case 'word': return listed(part.words.map((word) => `\`${word}\``));
+    case 'comma':
+    case 'optional-comma': return 'a comma';
+    case 'optional':
+    case 'repeat': return inWords(part.parts[0]!.is === 'optional-comma' ? part.parts[1]! : part.parts[0]!);
+    case 'choice': {
+      const dimensions = dimensionsOf(part.of);
+      const others = part.of.filter(([first]) => first!.is !== 'quantity').map(([first]) => inWords(first!));
+      return listed([...(0 < dimensions.length ? [quantityInWords(dimensions)] : []), ...others]);
+    }
+    case 'suffixes': return listed(part.of.map(([first]) => inWords(first!)));
+  }
+}
+
+/** Dimensions of the alternatives that begin with a quantity. */
+export function dimensionsOf(alternatives: readonly (readonly Part[])[]): readonly Dimension[] {
+  return alternatives.flatMap(([first]) => (first!.is === 'quantity' ? [first!.dimension] : []));
+}
+
+export function quantityInWords(dimensions: readonly Dimension[]): string {
+  return listed(dimensions.map((dimension) => `${dimensionInWords(dimension)} such as \`${exampleOf(dimension)}\``));
+}
+
+/** `a net`, `the loop alley`: how a message calls what a keyword declares. */
+export function kindInWords(kind: BlockKind): string {
+  return kind === 'row' ? 'row' : kind === 'file' ? 'file' : kind;
+}
+
+export function listed(items: readonly string[]): string {
+  return items.length < 2 ? items.join('') : `${items.slice(0, -1).join(', ')} or ${items.at(-1)}`;
+}
+
+export function nameInWords(of: NameKind): string {
+  switch (of) {
+    case 'copper': return 'a layer';
+    case 'plane': return 'a plane';
+    case 'any':
+    case 'free': return 'a name';
+    default: return `the name of a ${of}`;
+  }
+}
+
+function wordsIn(part: Part): readonly string[] {
+  switch (part.is) {
+    case 'keyword': return [part.word];
+    case 'word': return part.words;
+    case 'optional':
+    case 'repeat': return part.parts.flatMap(wordsIn);
+    case 'choice':
+    case 'suffixes': return part.of.flatMap((parts) => parts.flatMap(wordsIn));
+    default: return [];
+  }
+}
+
+const shapes: ReadonlyMap<BlockKind, ReadonlyMap<string, StatementShape>> = new Map(
+  Object.entries(statementShapes).map(([kind, list]) => [kind as BlockKind, new Map(list.map((shape) => [shape.keyword, shape]))]),
+);

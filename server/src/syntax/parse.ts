@@ -1,0 +1,224 @@
+/**
+ * Reads a text into its tree. Never throws, takes time linear in the text, and makes of one mistake at
+ * most two errors: one where it is, and one where it leads astray.
+ *
+ * Statements are separated before they are understood: a statement ends with its line, a block with its
+ * brace, and a line that begins with a declaration word closes every block that is still open, so that
+ * a forgotten brace costs one declaration and not the rest of the file.
+ */
+import { TokenCursor } from './cursor';
+import { documentationAbove } from './documentation';
+import { keywordsOf, kindInWords, listed, shapeOf } from './fits';
+import type { BlockKind, StatementShape } from './grammar';
+import { tokensOf } from './lexer';
+import { Mistakes, quoted } from './mistakes';
+import { readParts, type StatementReading } from './statementReader';
+import { tooMuch } from './statementEnd';
+import type { Block, SourceTree, Span, Statement } from './tree';
+import { closest } from './words';
+
+export const languageVersion = 1;
+
+export function parse(text: string): SourceTree {
+  const tokens = tokensOf(text);
+  const parser: Parser = { cursor: new TokenCursor(text, tokens), mistakes: new Mistakes(), unread: [], open: ['file'], unclosedAt: -1 };
+  const { cursor, mistakes, unread } = parser;
+  passSeparators(cursor);
+  const version = readVersion(parser);
+  const statements: Statement[] = [];
+  for (;;) {
+    passSeparators(cursor);
+    if (cursor.kind === 'end') break;
+    const shape = cursor.kind === 'word' ? shapeOf('file', cursor.word) : undefined;
+    if (shape === undefined) passStrayText(parser);
+    else statements.push(readStatement(parser, shape));
+  }
+  return { text, tokens, version, statements, errors: mistakes.all, unread };
+}
+
+interface Parser {
+  readonly cursor: TokenCursor;
+  readonly mistakes: Mistakes;
+  readonly unread: Span[];
+  /** Kinds of the blocks around the cursor, outermost first. */
+  readonly open: BlockKind[];
+  /** Index of the token at which open blocks were last found to lack their brace: said once for all of them. */
+  unclosedAt: number;
+}
+
+function passSeparators(cursor: TokenCursor): void {
+  while (cursor.kind === 'newline' || cursor.isMark(';')) cursor.next();
+}
+
+function readVersion(parser: Parser): SourceTree['version'] {
+  const { cursor, mistakes } = parser;
+  if (!cursor.isWord('quietrun')) return null;
+  const keyword = cursor.next();
+  if (cursor.kind !== 'word' || !/^\d+$/.test(cursor.word)) {
+    mistakes.report('missing-value', keyword, `the version of the language is missing: \`quietrun ${languageVersion}\``);
+    passOver(parser);
+    return null;
+  }
+  const value = Number(cursor.word);
+  const span = cursor.next();
+  if (value !== languageVersion) mistakes.report('syntax', span, `this file is written in version ${quoted(String(value)).slice(1, -1)} of the language; version ${languageVersion} is read here`);
+  if (!cursor.atEnd) {
+    mistakes.report('syntax', cursor.span, `${quoted(cursor.word)} does not fit here: \`quietrun ${value}\` is complete before it`);
+    passOver(parser);
+  }
+  return { value, span };
+}
+
+function readStatement(parser: Parser, shape: StatementShape): Statement {
+  const { cursor, mistakes } = parser;
+  const documented = shape.block !== undefined || parser.open.at(-1) === 'stackup';
+  const documentation = documented && cursor.atLineStart ? documentationAbove(cursor.text, cursor.tokens, cursor.tokenIndex) : null;
+  const keywordSpan = cursor.next();
+  const reading: StatementReading = { cursor, mistakes, shape, values: [], broken: false, lost: false, fits: [], fitsAt: -1 };
+  readParts(reading, shape.parts);
+  const block = shape.block === undefined ? null : readBlockOf(parser, reading, shape.block);
+  if (shape.block === undefined && !cursor.atEnd) {
+    tooMuch(reading);
+    passOver(parser);
+  }
+  return { keyword: shape.keyword, keywordSpan, span: { start: keywordSpan.start, end: cursor.last.end }, values: reading.values, block, documentation, broken: reading.broken };
+}
+
+/** The block of a declaration whose head has been read. Where only its `{` is missing, it is read all the same. */
+function readBlockOf(parser: Parser, reading: StatementReading, { kind, required }: NonNullable<StatementShape['block']>): Block | null {
+  const { cursor, mistakes } = parser;
+  const brace = (): Block => {
+    if (!reading.lost) mistakes.report('syntax', cursor.last, `\`{\` is missing after ${quoted(cursor.text.slice(cursor.last.start, cursor.last.end))}`);
+    reading.broken = true;
+    cursor.passNewlines();
+    return readBlock(parser, kind, label(reading), true);
+  };
+  if (!cursor.atEnd && !cursor.isMark('{')) {
+    if (cursor.kind === 'word' && shapeOf(kind, cursor.word) !== undefined) return brace();
+    tooMuch(reading);
+    passHead(parser);
+  }
+  if (cursor.isMark('{')) return readBlock(parser, kind, label(reading), false);
+  if (cursor.kind === 'newline') {
+    const ahead = cursor.beyondNewlines();
+    if (ahead.isMark('{')) {
+      cursor.passNewlines();
+      return readBlock(parser, kind, label(reading), false);
+    }
+    if (ahead.kind === 'word' && shapeOf(kind, ahead.word) !== undefined && !isDeclarationAt(ahead)) return brace();
+  }
+  const inherits = required === 'unless-is' && reading.values.some((value) => value.role === 'family');
+  if (!inherits && !reading.lost) {
+    mistakes.report('syntax', cursor.last, `${label(reading)} lacks its block \`{ … }\`${required === 'unless-is' ? ', or `is` and a family' : ''}`);
+  }
+  if (!inherits) reading.broken = true;
+  return null;
+}
+
+function label({ shape, values }: StatementReading): string {
+  const name = values.find((value) => value.kind === 'name');
+  return name?.kind === 'name' ? `${shape.keyword} ${quoted(name.name)}` : `this ${shape.keyword}`;
+}
+
+/** `bare`: the opening brace was left out, so that a closing one is not insisted on either. */
+function readBlock(parser: Parser, kind: BlockKind, of: string, bare: boolean): Block {
+  const { cursor, mistakes } = parser;
+  const start = cursor.start;
+  if (!bare) cursor.next();
+  const statements: Statement[] = [];
+  parser.open.push(kind);
+  let closed = false;
+  for (;;) {
+    passSeparators(cursor);
+    if (cursor.isMark('}')) {
+      cursor.next();
+      closed = true;
+      break;
+    }
+    if (cursor.kind === 'end' || endsOpenBlock(parser, kind)) {
+      if (!bare && parser.unclosedAt !== cursor.tokenIndex) {
+        mistakes.report('syntax', cursor.last, `\`}\` is missing: ${of} is not closed`);
+        parser.unclosedAt = cursor.tokenIndex;
+      }
+      break;
+    }
+    const shape = cursor.kind === 'word' ? shapeOf(kind, cursor.word) : undefined;
+    if (shape === undefined) passUnknownStatement(parser, kind);
+    else statements.push(readStatement(parser, shape));
+  }
+  parser.open.pop();
+  return { kind, span: { start, end: Math.max(start, cursor.last.end) }, statements, closed };
+}
+
+/** At the start of a line: a declaration, or a statement that only the block around this one holds. */
+function endsOpenBlock({ cursor, open }: Parser, kind: BlockKind): boolean {
+  if (isDeclarationAt(cursor)) return true;
+  const around = open.at(-2)!;
+  return cursor.atLineStart && cursor.kind === 'word' && around !== 'file' && shapeOf(kind, cursor.word) === undefined && shapeOf(around, cursor.word) !== undefined;
+}
+
+/** `return` and `waive` begin a statement of a block as well: what follows tells them apart. */
+function isDeclarationAt(cursor: TokenCursor): boolean {
+  if (!cursor.atLineStart || cursor.kind !== 'word') return false;
+  const word = cursor.word;
+  if (shapeOf('file', word) === undefined) return false;
+  if (word !== 'return' && word !== 'waive') return true;
+  const ahead = cursor.copy();
+  ahead.next();
+  if (ahead.atEnd || (ahead.kind !== 'word' && ahead.kind !== 'string')) return false;
+  ahead.next();
+  return word === 'return' ? ahead.beyondNewlines().isMark('{') : ahead.isWord('on');
+}
+
+function passUnknownStatement(parser: Parser, kind: BlockKind): void {
+  const { cursor, mistakes } = parser;
+  const span = cursor.span;
+  const found = cursor.word;
+  const meant = cursor.kind === 'word' ? closest(found, keywordsOf(kind)) : null;
+  const place = kind === 'row' || kind === 'stackup' ? `row of a ${kind === 'row' ? 'run' : kind}` : `statement of a ${kindInWords(kind)}`;
+  if (meant !== null) mistakes.report('syntax', span, `${quoted(found)}? ${meant}`, [{ title: `Write ${meant}`, span, newText: meant }]);
+  else mistakes.report('syntax', span, `${quoted(found)} begins no ${place}; fits: ${keywordsOf(kind).join(', ')}`);
+  passOver(parser);
+}
+
+/** Stray text outside of declarations, up to the next line that begins with one: one error a stretch. */
+function passStrayText(parser: Parser): void {
+  const { cursor, mistakes, unread } = parser;
+  const span = cursor.span;
+  const found = cursor.word;
+  const meant = cursor.kind === 'word' ? closest(found, keywordsOf('file')) : null;
+  if (meant !== null) mistakes.report('syntax', span, `${quoted(found)}? ${meant}`, [{ title: `Write ${meant}`, span, newText: meant }]);
+  else if (found === '}') mistakes.report('syntax', span, 'this `}` closes nothing');
+  else if (found === 'quietrun') mistakes.report('syntax', span, '`quietrun` and the version stand before everything else, once');
+  else mistakes.report('syntax', span, `${quoted(found)} begins no declaration; ${whereItFits(found)}`);
+  do cursor.next();
+  while (cursor.kind !== 'end' && !isDeclarationAt(cursor));
+  unread.push({ start: span.start, end: cursor.last.end });
+}
+
+function whereItFits(word: string): string {
+  const kinds = (['board', 'stackup', 'net', 'pair', 'run', 'loop', 'return', 'link', 'shield', 'ambient'] as const).filter((kind) => shapeOf(kind, word) !== undefined);
+  return 0 < kinds.length ? `it belongs in the block of a ${listed(kinds)}` : `fits: ${keywordsOf('file').join(', ')}`;
+}
+
+/** To where the statement ends, blocks that do not belong to it included. */
+function passOver(parser: Parser): void {
+  const { cursor, unread } = parser;
+  const start = cursor.start;
+  let depth = 0;
+  while (cursor.kind !== 'end') {
+    if (depth === 0 ? cursor.atEnd : isDeclarationAt(cursor)) break;
+    const closes = cursor.isMark('}');
+    depth += cursor.isMark('{') ? 1 : closes ? -1 : 0;
+    cursor.next();
+    if (closes && depth === 0) break;
+  }
+  if (start < cursor.last.end) unread.push({ start, end: cursor.last.end });
+}
+
+/** To the block of a declaration or, where it has none, to the end of the head. */
+function passHead({ cursor, unread }: Parser): void {
+  const start = cursor.start;
+  while (!cursor.atEnd && !cursor.isMark('{')) cursor.next();
+  if (start < cursor.last.end) unread.push({ start, end: cursor.last.end });
+}
