@@ -44,7 +44,11 @@ export function inWords(part: Part): string {
     case 'comma':
     case 'optional-comma': return 'a comma';
     case 'optional':
-    case 'repeat': return inWords(part.parts[0]!.is === 'optional-comma' ? part.parts[1]! : part.parts[0]!);
+    case 'repeat': {
+      const [first, second] = part.parts;
+      if (first!.is === 'optional-comma') return inWords(second!);
+      return first!.is === 'comma' ? `a comma and ${inWords(second!)}` : inWords(first!);
+    }
     case 'choice': {
       const dimensions = dimensionsOf(part.of);
       const others = part.of.filter(([first]) => first!.is !== 'quantity').map(([first]) => inWords(first!));
@@ -63,9 +67,18 @@ export function quantityInWords(dimensions: readonly Dimension[]): string {
   return listed(dimensions.map((dimension) => `${dimensionInWords(dimension)} such as \`${exampleOf(dimension)}\``));
 }
 
-/** `a net`, `the loop alley`: how a message calls what a keyword declares. */
-export function kindInWords(kind: BlockKind): string {
-  return kind === 'row' ? 'row' : kind === 'file' ? 'file' : kind;
+/** What fits at one place, each once: its words where it has any. */
+export function allInWords(parts: readonly Part[]): string {
+  const items = parts.flatMap((part) => {
+    const words = firstWords(part);
+    return 0 < words.length ? words.map((word) => `\`${word}\``) : [inWords(part)];
+  });
+  return listed([...new Set(items)]);
+}
+
+/** Enough of a list to see what is meant. */
+export function someOf(words: readonly string[]): string {
+  return words.length <= 8 ? words.join(', ') : `${words.slice(0, 7).join(', ')}, …`;
 }
 
 export function listed(items: readonly string[]): string {

@@ -8,7 +8,7 @@
  */
 import { TokenCursor } from './cursor';
 import { documentationAbove } from './documentation';
-import { keywordsOf, kindInWords, listed, shapeOf } from './fits';
+import { keywordsOf, listed, shapeOf, someOf } from './fits';
 import type { BlockKind, StatementShape } from './grammar';
 import { tokensOf } from './lexer';
 import { Mistakes, quoted } from './mistakes';
@@ -77,11 +77,19 @@ function readStatement(parser: Parser, shape: StatementShape): Statement {
   const reading: StatementReading = { cursor, mistakes, shape, values: [], broken: false, lost: false, fits: [], fitsAt: -1 };
   readParts(reading, shape.parts);
   const block = shape.block === undefined ? null : readBlockOf(parser, reading, shape.block);
-  if (shape.block === undefined && !cursor.atEnd) {
+  if (shape.block === undefined && !cursor.atEnd && !nextStatementBegins(parser, reading)) {
     tooMuch(reading);
     passOver(parser);
   }
   return { keyword: shape.keyword, keywordSpan, span: { start: keywordSpan.start, end: cursor.last.end }, values: reading.values, block, documentation, broken: reading.broken };
+}
+
+/** Only the separator is missing: the statement is complete, and the next word begins another of this block. */
+function nextStatementBegins({ cursor, mistakes, open }: Parser, { lost }: StatementReading): boolean {
+  if (cursor.kind !== 'word' || shapeOf(open.at(-1)!, cursor.word) === undefined) return false;
+  const { start } = cursor;
+  if (!lost) mistakes.report('syntax', cursor.span, `a line end or \`;\` is missing before ${quoted(cursor.word)}`, [{ title: 'Insert ;', span: { start: cursor.last.end, end: start }, newText: '; ' }]);
+  return true;
 }
 
 /** The block of a declaration whose head has been read. Where only its `{` is missing, it is read all the same. */
@@ -175,9 +183,9 @@ function passUnknownStatement(parser: Parser, kind: BlockKind): void {
   const span = cursor.span;
   const found = cursor.word;
   const meant = cursor.kind === 'word' ? closest(found, keywordsOf(kind)) : null;
-  const place = kind === 'row' || kind === 'stackup' ? `row of a ${kind === 'row' ? 'run' : kind}` : `statement of a ${kindInWords(kind)}`;
+  const place = kind === 'row' || kind === 'stackup' ? `row of a ${kind === 'row' ? 'run' : kind}` : `statement of ${kind === 'ambient' ? 'an' : 'a'} ${kind}`;
   if (meant !== null) mistakes.report('syntax', span, `${quoted(found)}? ${meant}`, [{ title: `Write ${meant}`, span, newText: meant }]);
-  else mistakes.report('syntax', span, `${quoted(found)} begins no ${place}; fits: ${keywordsOf(kind).join(', ')}`);
+  else mistakes.report('syntax', span, `${quoted(found)} begins no ${place}; fits: ${someOf(keywordsOf(kind))}`);
   passOver(parser);
 }
 
@@ -198,7 +206,7 @@ function passStrayText(parser: Parser): void {
 
 function whereItFits(word: string): string {
   const kinds = (['board', 'stackup', 'net', 'pair', 'run', 'loop', 'return', 'link', 'shield', 'ambient'] as const).filter((kind) => shapeOf(kind, word) !== undefined);
-  return 0 < kinds.length ? `it belongs in the block of a ${listed(kinds)}` : `fits: ${keywordsOf('file').join(', ')}`;
+  return 0 < kinds.length ? `it belongs in the block of a ${listed(kinds)}` : `fits: ${someOf(keywordsOf('file'))}`;
 }
 
 /** To where the statement ends, blocks that do not belong to it included. */

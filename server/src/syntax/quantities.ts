@@ -8,7 +8,7 @@ import { copperWeight, dimensionInWords, fittingUnits, inPowerOfTen, unitSpelt, 
 import { isTimesSign } from './characters';
 import { codeOf } from './letterCodes';
 import { quoted, type Mistakes } from './mistakes';
-import { readNumber, type NumberReading } from './numbers';
+import { beginsNumber, readNumber, type NumberReading } from './numbers';
 import { endOfUnit, passSpaces } from './scan';
 import { readTolerance } from './tolerances';
 import type { Correction, QuantityValue, Span } from './tree';
@@ -98,6 +98,7 @@ function unitAfter(text: string, end: number, limit: number, { dimensions, follo
   const none = { start: end, end };
   // `#` begins a comment where a word could begin, and only there.
   if (word === '' || (end < start && word.startsWith('#'))) return none;
+  if (dimensions.includes('number') && end < start && beginsNumber(text, start)) return none;
   if (unitSpelt(word) === undefined && end < start && (follows.has(word) || isTimesSign(word))) return none;
   const times = /^(.+?)[x\u00d7*]$|^(.+?)[x\u00d7*](?=[\d.])/.exec(word.slice(0, 16));
   const before = times === null ? undefined : (times[1] ?? times[2])!;

@@ -63,6 +63,14 @@ export function lose(reading: StatementReading, rule: 'syntax' | 'missing-value'
   reading.broken = true;
 }
 
+/** `run on TOP for …`: the next word is the name, whatever it looks like, so the name that is missing shows only at what follows. */
+export function nameTakenFor(reading: StatementReading, words: readonly string[]): boolean {
+  const before = reading.values.at(-1);
+  if (before?.kind !== 'name' || before.quoted || !words.includes(before.name)) return false;
+  lose(reading, 'missing-value', `a name is missing before ${quoted(before.name)}, which was read as the name`, before.span);
+  return true;
+}
+
 /** Notes that an optional part would have fitted here, for the message about what stands instead. */
 export function decline(reading: StatementReading, part: Part): void {
   if (reading.fitsAt !== reading.cursor.start) reading.fits = [];
@@ -119,6 +127,7 @@ function readKeyword(reading: StatementReading, word: string): void {
     reading.broken = true;
     return;
   }
+  if (nameTakenFor(reading, [word])) return;
   lose(reading, 'syntax', cursor.atEnd || cursor.isMark('{') ? `\`${word}\` is missing after ${quoted(lastText(cursor))}` : `\`${word}\` is missing between ${quoted(lastText(cursor))} and ${quoted(cursor.word)}`);
 }
 
@@ -172,8 +181,11 @@ function missingQuantity(reading: StatementReading, role: string, dimensions: re
   const fits = quantityInWords(dimensions);
   const found = cursor.kind === 'word' ? cursor.word : '';
   if (found !== '' && unitSpelt(found) !== undefined) {
+    const name = reading.values.at(-1);
     const span = cursor.next();
-    lose(reading, 'missing-value', `a number is missing before ${quoted(found)}`, span);
+    // `trace 0.2 mm`: the number was taken for the name, as the next word always is.
+    if (name?.kind === 'name' && !name.quoted && beginsNumber(name.name, 0)) lose(reading, 'missing-value', `a name is missing before ${quoted(`${name.name} ${found}`)}`, { start: name.span.start, end: span.end });
+    else lose(reading, 'missing-value', `a number is missing before ${quoted(found)}`, span);
     return;
   }
   if (found !== '' && !fixedWords.has(found)) {
@@ -183,8 +195,7 @@ function missingQuantity(reading: StatementReading, role: string, dimensions: re
   }
   const before = reading.values.at(-1);
   const named = before?.kind === 'name' && before.span.end === cursor.last.end;
-  if (named && beginsNumber(before.name, 0) && !before.quoted) lose(reading, 'missing-value', `${fits} is missing after the name ${quoted(before.name)}`);
-  else if (named) lose(reading, 'missing-value', `${role} of ${quoted(before.name)} is missing: ${fits}`);
+  if (named) lose(reading, 'missing-value', `${role} of ${quoted(before.name)} is missing: ${fits}`);
   else lose(reading, 'missing-value', `${quoted(lastText(cursor))} lacks its value: ${fits}`);
 }
 

@@ -2,7 +2,7 @@
 import { firstWords, inWords } from './fits';
 import type { Part } from './grammar';
 import { quoted } from './mistakes';
-import { begins, decline, lose, readParts, type StatementReading } from './statementReader';
+import { begins, decline, lose, nameTakenFor, readParts, type StatementReading } from './statementReader';
 import { tooMuch } from './statementEnd';
 
 export function readSuffixes(reading: StatementReading, part: Part & { readonly is: 'suffixes' }): void {
@@ -29,7 +29,8 @@ export function readSuffixes(reading: StatementReading, part: Part & { readonly 
     readParts(reading, suffix);
   }
   const needed = part.of.find(([first]) => part.needs !== null && firstWords(first!).includes(part.needs));
-  if (needed !== undefined && !seen.has(needed)) lose(reading, 'missing-value', `${needed[1]!.is === 'quantity' ? needed[1]!.role : 'something'} is missing: ${needed.map(inWords).join(' and ')}`);
+  if (needed === undefined || seen.has(needed) || nameTakenFor(reading, firstWords(part))) return;
+  lose(reading, 'missing-value', `${needed[1]!.is === 'quantity' ? needed[1]!.role : 'something'} is missing: ${needed.map(inWords).join(' and ')}`);
 }
 
 /** Something stands between two suffixes: it is reported, and reading goes on at the next one of this line. */

@@ -27,8 +27,10 @@ export function readTolerance(text: string, from: number, limit: number, of: Tol
   const numberStart = passSpaces(text, start + mark, limit);
   const number = readNumber(text, numberStart, limit);
   if (number === null) {
+    const word = endOfUnit(text, numberStart, limit);
+    const isUnit = unitSpelt(text.slice(numberStart, word)) !== undefined;
     mistakes.report('missing-value', { start, end: start + mark }, 'the tolerance is missing: a percentage such as `10 %`, or a quantity of the same kind');
-    return { half: null, end: start + mark };
+    return { half: null, end: isUnit ? word : start + mark };
   }
   const unitStart = passSpaces(text, number.end, limit);
   const unitEnd = endOfUnit(text, unitStart, limit);
