@@ -73,7 +73,7 @@ function quotedName(cursor: TokenCursor, mistakes: Mistakes, role: string): Name
 }
 
 /** Of the form …[…..…]…: no plain name, whether or not it can be counted. Without a regular expression, as it must stay linear. */
-function looksLikeRange(name: string): boolean {
+export function looksLikeRange(name: string): boolean {
   const open = name.indexOf('[');
   const dots = open < 0 ? -1 : name.indexOf('..', open);
   return 0 <= dots && name.indexOf(']', dots) !== -1;

@@ -1,7 +1,7 @@
 /** What stands after the last part that fits. */
 import { allInWords, firstWords } from './fits';
 import { quoted } from './mistakes';
-import { lose, nameTakenFor, type StatementReading } from './statementReader';
+import { lose, nameTakenFor, type StatementReading } from './reading';
 import { closest } from './words';
 
 /** Reports the token at the cursor, where no part of the statement begins with it; says what would have fitted. */

@@ -1,5 +1,6 @@
 /** A name as it has to be written: quoted where a bare word would not be read as that name. */
 import { isTypographicQuote, isWordCharacter } from './characters';
+import { looksLikeRange } from './names';
 
 export function writtenName(name: string): string {
   return isBare(name) ? name : `"${name.replaceAll('"', '""')}"`;
@@ -8,7 +9,5 @@ export function writtenName(name: string): string {
 function isBare(name: string): boolean {
   if (name.startsWith('#') || isTypographicQuote(name.charCodeAt(0)) || !/[\p{L}\p{N}]/u.test(name)) return false;
   for (let at = 0; at < name.length; at += 1) if (!isWordCharacter(name.charCodeAt(at))) return false;
-  // The form of a range, found without a regular expression, as this must stay linear.
-  const dots = name.indexOf('..', Math.max(0, name.indexOf('[')));
-  return !(name.includes('[') && 0 <= dots && 0 <= name.indexOf(']', dots));
+  return !looksLikeRange(name);
 }
