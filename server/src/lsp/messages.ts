@@ -1,0 +1,55 @@
+/**
+ * What our own client and server say to each other besides the protocol. The client imports this file
+ * and nothing else of the server; a client that knows none of it gets everything but virtual files.
+ */
+
+/** The client's half of `initializationOptions`; every key may be missing. */
+export interface ClientOptions {
+  /** It answers `readFile` and `listFiles`, so that files of any scheme can be read. */
+  readonly readsFiles?: boolean;
+  /** It opens `<rulePages>:/<rule>.md`, for the link from a finding to the page of its rule. */
+  readonly rulePages?: string;
+  /** It shows `status` notifications. */
+  readonly showsStatus?: boolean;
+}
+
+/** Server to client. */
+export const readFileMethod = 'quietrun/readFile';
+
+export interface ReadFileParams {
+  readonly uri: string;
+  /** Folders that the file has to lie in, symbolic links followed; it lies in one of them by its name. */
+  readonly inside: readonly string[];
+}
+
+export type ReadFileAnswer =
+  | { readonly text: string }
+  | { readonly problem: 'missing' | 'outside' | 'case' | 'too-large' | 'unread'; /** As the file system spells it. */ readonly spelling?: string };
+
+/** Server to client, no parameters: the board files of the workspace. */
+export const listFilesMethod = 'quietrun/listFiles';
+
+export interface ListFilesAnswer {
+  readonly uris: readonly string[];
+}
+
+/** Client to server: the page of a rule, Markdown; null where there is no such rule. */
+export const explainMethod = 'quietrun/explain';
+
+export interface ExplainParams {
+  readonly rule: string;
+}
+
+/** Server to client, after the findings of a file changed. */
+export const statusMethod = 'quietrun/status';
+
+export interface StatusParams {
+  readonly uri: string;
+  /** The receiver with the smallest margin in the projects of this file; null where there is none. */
+  readonly worst: { readonly receiver: string; readonly marginDb: number } | null;
+  /** Budgets that could not be computed whole. */
+  readonly incomplete: number;
+}
+
+/** Files larger than this are not read; shared by every reader. */
+export const largestFile = 8 * 1024 * 1024;

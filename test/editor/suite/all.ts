@@ -1,0 +1,5 @@
+/** The files of the suite, in the order in which they run. */
+export async function loadAll(): Promise<void> {
+  await import('./language.suite');
+  await import('./findings.suite');
+}

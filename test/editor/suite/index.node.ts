@@ -1,0 +1,15 @@
+/** Entry in an extension host of node: code-server here, a desktop VS Code in `npm run test:desktop`. */
+import Mocha from 'mocha';
+import { loadAll } from './all';
+import { report } from './report';
+
+export async function run(): Promise<void> {
+  const mocha = new Mocha({ ui: 'bdd', timeout: 30_000, reporter: class {} as never });
+  mocha.suite.emit('pre-require', globalThis, '', mocha);
+  await loadAll();
+  const counts = await new Promise<{ passed: number; failed: number }>((resolve) => {
+    const runner = mocha.run(() => resolve(counts_));
+    const counts_ = report(runner as never).counts;
+  });
+  if (0 < counts.failed || counts.passed === 0) throw new Error(`${counts.passed} passed, ${counts.failed} failed`);
+}

@@ -1,0 +1,18 @@
+/** Entry in the extension host of the web, a worker. */
+import 'mocha/mocha.js';
+import { loadAll } from './all';
+import { report } from './report';
+
+export async function run(): Promise<void> {
+  mocha.setup({ ui: 'bdd', timeout: 30_000, reporter: class {} as never });
+  await loadAll();
+  const counts = await new Promise<{ passed: number; failed: number }>((resolve) => {
+    const runner = mocha.run(() => resolve(counts_));
+    const counts_ = report(runner as never).counts;
+  });
+  if (0 < counts.failed || counts.passed === 0) throw new Error(`${counts.passed} passed, ${counts.failed} failed`);
+}
+
+// The header of mocha's browser build replaces `module.exports`, and this file's with it.
+declare const module: { exports: unknown };
+module.exports = { run };
