@@ -11,7 +11,7 @@ export function documentationAbove(text: string, tokens: readonly Token[], index
     if (tokens[at - 1]!.kind !== 'newline' || comment.kind !== 'comment' || (above !== undefined && above.kind !== 'newline')) break;
     const line = /^##(?:$|\s(.*)$)/su.exec(text.slice(comment.start, comment.end));
     if (line === null) break;
-    lines.push((line[1] ?? '').trim());
+    lines.push((line[1] ?? '').trimEnd());
   }
   return lines.length === 0 ? null : lines.reverse().join('\n');
 }

@@ -22,7 +22,8 @@ export function readNumber(text: string, start: number, limit: number): NumberRe
   const mantissaEnd = endOfMantissa(text, sign.end, limit);
   if (mantissaEnd === sign.end) return null;
   const separatorsEnd = endOfSeparators(text, sign.end, mantissaEnd, limit);
-  const exponent = readExponent(text, separatorsEnd, limit);
+  const danglingPoint = separatorsEnd < limit && text[separatorsEnd] === '.';
+  const exponent = readExponent(text, danglingPoint ? separatorsEnd + 1 : separatorsEnd, limit);
   const written = text.slice(sign.end, separatorsEnd);
   const end = exponent.end;
   if (separatorsEnd !== mantissaEnd) {
@@ -30,6 +31,7 @@ export function readNumber(text: string, start: number, limit: number): NumberRe
     return { start, end, number: null, flaw: { message: 'numbers have a decimal point and no separators', meant } };
   }
   const digits = sign.asWritten + written;
+  if (danglingPoint) return { start, end, number: null, flaw: { message: 'a decimal point stands between digits', meant: [digits + text.slice(separatorsEnd + 1, end)] } };
   if (sign.flaw !== null) return { start, end, number: null, flaw: { message: sign.flaw, meant: [digits + text.slice(separatorsEnd, end)] } };
   return { start, end, number: { digits, exponent: exponent.value }, flaw: null };
 }
@@ -102,6 +104,6 @@ function readExponent(text: string, from: number, limit: number): { readonly end
 function meantBySeparators(written: string): readonly string[] {
   const joined = written.replace(/[^\d.]/g, '');
   const decimal = /^\d+,\d+$/.test(written) ? [written.replace(',', '.')] : /^\d{1,3}(\.\d{3})+,\d+$/.test(written) ? [written.replaceAll('.', '').replace(',', '.')] : [];
-  const thousands = /^\d{1,3}(\D\d{3})+(\.\d+)?$/.test(written) && /^\d+(\.\d+)?$/.test(joined) ? [joined] : [];
+  const thousands = /^[1-9]\d{0,2}(\D\d{3})+(\.\d+)?$/.test(written) && /^\d+(\.\d+)?$/.test(joined) ? [joined] : [];
   return [...decimal, ...thousands];
 }

@@ -72,10 +72,10 @@ function readVersion(parser: Parser): SourceTree['version'] {
 
 function readStatement(parser: Parser, shape: StatementShape): Statement {
   const { cursor, mistakes } = parser;
-  const documented = shape.block !== undefined || parser.open.at(-1) === 'stackup';
+  const documented = parser.open.length === 1 || parser.open.at(-1) === 'stackup';
   const documentation = documented && cursor.atLineStart ? documentationAbove(cursor.text, cursor.tokens, cursor.tokenIndex) : null;
   const keywordSpan = cursor.next();
-  const reading: StatementReading = { cursor, mistakes, shape, values: [], broken: false, lost: false, fits: [], fitsAt: -1 };
+  const reading: StatementReading = { cursor, mistakes, shape, within: parser.open.at(-1)!, values: [], broken: false, lost: false, fits: [], fitsAt: -1 };
   readParts(reading, shape.parts);
   const block = shape.block === undefined ? null : readBlockOf(parser, reading, shape.block);
   if (shape.block === undefined && !cursor.atEnd && !nextStatementBegins(parser, reading)) {
@@ -86,8 +86,8 @@ function readStatement(parser: Parser, shape: StatementShape): Statement {
 }
 
 /** Only the separator is missing: the statement is complete, and the next word begins another of this block. */
-function nextStatementBegins({ cursor, mistakes, open }: Parser, { lost }: StatementReading): boolean {
-  if (cursor.kind !== 'word' || shapeOf(open.at(-1)!, cursor.word) === undefined) return false;
+function nextStatementBegins({ cursor, mistakes }: Parser, { lost, within }: StatementReading): boolean {
+  if (cursor.kind !== 'word' || shapeOf(within, cursor.word) === undefined) return false;
   const { start } = cursor;
   if (!lost) mistakes.report('syntax', cursor.span, `a line end or \`;\` is missing before ${quoted(cursor.word)}`, [{ title: 'Insert ;', span: { start: cursor.last.end, end: start }, newText: '; ' }]);
   return true;

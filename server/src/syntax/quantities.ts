@@ -4,7 +4,7 @@
  * value is made only of what is written as the language writes it.
  */
 import type { Dimension } from '../units/dimension';
-import { copperWeight, dimensionInWords, fittingUnits, inPowerOfTen, unitSpelt, unitsInOtherCase, type Unit, type WrittenNumber } from '../units/spelling';
+import { copperWeight, dimensionInWords, fittingUnits, inPowerOfTen, unitSpelt, unitsMeantBy, type Unit, type WrittenNumber } from '../units/spelling';
 import { isTimesSign } from './characters';
 import { codeOf } from './letterCodes';
 import { quoted, type Mistakes } from './mistakes';
@@ -122,10 +122,10 @@ function fittingUnit(text: string, number: Span, span: Span, request: QuantityRe
     return null;
   }
   if (unit !== undefined) {
-    mistakes.report('unit', span, `${quoted(spelling)} is the unit of ${dimensionInWords(unit.dimension)}; ${list}`);
+    mistakes.report('unit', span, `${quoted(spelling)} measures ${dimensionInWords(unit.dimension)}; ${list}`);
     return null;
   }
-  const right = unitsInOtherCase(spelling, request.dimensions);
+  const right = unitsMeantBy(spelling, request.dimensions);
   const corrections = right.map((each) => ({ title: `Write ${each}`, span, newText: each }));
   mistakes.report('unit', span, 0 < right.length ? `no unit ${quoted(spelling)}; ${right.join(' or ')}?` : `no unit ${quoted(spelling)}; ${list}`, corrections);
   return null;

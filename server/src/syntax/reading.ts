@@ -8,7 +8,7 @@
  */
 import type { Dimension } from '../units/dimension';
 import type { TokenCursor } from './cursor';
-import type { Part, StatementShape } from './grammar';
+import type { BlockKind, Part, StatementShape } from './grammar';
 import { codeOf } from './letterCodes';
 import { quoted, type Mistakes } from './mistakes';
 import { beginsNumber } from './numbers';
@@ -18,6 +18,8 @@ export interface StatementReading {
   readonly cursor: TokenCursor;
   readonly mistakes: Mistakes;
   readonly shape: StatementShape;
+  /** The block that the statement stands in. */
+  readonly within: BlockKind;
   readonly values: Value[];
   /** Something that the statement needs could not be read. */
   broken: boolean;

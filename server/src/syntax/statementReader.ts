@@ -1,7 +1,7 @@
 /** Reads one statement, up to its block or its end, by interpreting its shape. */
 import { unitSpelt } from '../units/spelling';
 import { isTimesSign } from './characters';
-import { dimensionsOf, firstWords, fixedWords, inWords } from './fits';
+import { dimensionsOf, firstWords, fixedWords, inWords, shapeOf } from './fits';
 import type { Part } from './grammar';
 import { quoted } from './mistakes';
 import { beginsNumber } from './numbers';
@@ -138,8 +138,8 @@ function readSuffixes(reading: StatementReading, part: Part & { readonly is: 'su
 
 /** Something stands between two suffixes: it is reported, and reading goes on at the next one of this line. */
 function resume(reading: StatementReading, part: Part & { readonly is: 'suffixes' }, seen: ReadonlySet<readonly Part[]>): boolean {
-  const { cursor } = reading;
-  if (cursor.atEnd || cursor.isMark('{')) return false;
+  const { cursor, within } = reading;
+  if (cursor.atEnd || cursor.isMark('{') || (cursor.kind === 'word' && shapeOf(within, cursor.word) !== undefined)) return false;
   const wanted = new Set(part.of.filter((each) => !seen.has(each)).flatMap(([first]) => firstWords(first!)));
   const ahead = cursor.copy();
   while (!ahead.atEnd && !ahead.isMark('{') && !(ahead.kind === 'word' && wanted.has(ahead.word))) ahead.next();

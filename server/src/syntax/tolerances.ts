@@ -49,7 +49,10 @@ export function readTolerance(text: string, from: number, limit: number, of: Tol
   const half = spelling === '%' ? Math.abs(of.value) * inPowerOfTen(number.number!, -2) : sameKind(number.number!, spelling, of);
   if (half === null) {
     const fits = ['%', ...fittingUnits(of.dimension).filter((unit) => unitSpelt(unit)!.toleranced)].join(', ');
-    mistakes.report('unit', spelling === '' ? { start: number.start, end: number.end } : { start: unitStart, end: unitEnd }, spelling === '' ? `${text.slice(number.start, number.end)} what? fits: ${fits}` : `${quoted(spelling)} does not fit the tolerance; fits: ${fits}`);
+    const written = { start: number.start, end: number.end };
+    const percent = `${text.slice(number.start, number.end)} %`;
+    if (spelling === '') mistakes.report('unit', written, `${text.slice(number.start, number.end)} what? fits: ${fits}`, [{ title: `Write ${percent}`, span: written, newText: percent }]);
+    else mistakes.report('unit', { start: unitStart, end: unitEnd }, `${quoted(spelling)} does not fit the tolerance; fits: ${fits}`);
     return { half, end };
   }
   const whole = spelling === '%' ? 1 <= inPowerOfTen(number.number!, -2) : Math.abs(of.value) <= half;

@@ -49,7 +49,7 @@ function missingQuantity(reading: StatementReading, role: string, dimensions: re
   const before = reading.values.at(-1);
   const named = before?.kind === 'name' && before.span.end === cursor.last.end;
   if (named) lose(reading, 'missing-value', `${role} of ${quoted(before.name)} is missing: ${fits}`);
-  else lose(reading, 'missing-value', `${quoted(lastText(cursor))} lacks its value: ${fits}`);
+  else lose(reading, 'missing-value', `${fits} is missing after ${quoted(lastText(cursor))}`);
 }
 
 export function readWord(reading: StatementReading, part: Part & { readonly is: 'word' }): void {

@@ -26,12 +26,15 @@ export function unitSpelt(spelling: string): Unit | undefined {
   return units.get(equalCodePoints(spelling));
 }
 
-/** Units of these dimensions that are this spelling but for the case, those in common use first. */
-export function unitsInOtherCase(spelling: string, dimensions: readonly Dimension[]): readonly string[] {
-  const wanted = equalCodePoints(spelling).toLowerCase();
-  const common = dimensions.flatMap(fittingUnits).filter((unit) => unit.toLowerCase() === wanted);
-  if (0 < common.length) return common;
-  return [...units.values()].filter((unit) => dimensions.includes(unit.dimension) && unit.spelling.toLowerCase() === wanted).map((unit) => unit.spelling);
+/** Units of these dimensions that are this spelling but for the case, those in common use first; or of which it is only the prefix. */
+export function unitsMeantBy(spelling: string, dimensions: readonly Dimension[]): readonly string[] {
+  const written = equalCodePoints(spelling);
+  const lower = written.toLowerCase();
+  const fitting = dimensions.flatMap(fittingUnits).filter((each) => each.toLowerCase() === lower);
+  if (0 < fitting.length) return fitting;
+  const otherCase = [...units.values()].filter((each) => dimensions.includes(each.dimension) && each.spelling.toLowerCase() === lower).map((each) => each.spelling);
+  if (0 < otherCase.length) return otherCase;
+  return dimensions.flatMap(fittingUnits).filter((each) => written.length === 1 && each.startsWith(written) && prefixes.some(([prefix]) => prefix === written));
 }
 
 /** The units in common use, for messages and completion, the likeliest first. */
@@ -75,8 +78,14 @@ const converted: readonly (readonly [string, Dimension, (value: number) => numbe
   ['deg', 'angle', (value) => (value * Math.PI) / 180],
   ['\u00b0', 'angle', (value) => (value * Math.PI) / 180],
   // Decibels over 1 uV/m.
-  ['dBuV/m', 'field', (value) => 10 ** ((value - 120) / 20)],
+  ['dBuV/m', 'field', (value) => powerOfTen((value - 120) / 20)],
 ];
+
+/** Whole powers as literals, which round once: 40 dBuV/m is 1e-4 V/m to the last bit. */
+function powerOfTen(exponent: number): number {
+  const whole = Math.floor(exponent);
+  return Number(`1e${whole}`) * 10 ** (exponent - whole);
+}
 
 const untoleranced: ReadonlySet<string> = new Set(['degC', '\u00b0C', 'dB', 'dBuV/m']);
 
