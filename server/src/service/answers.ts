@@ -5,22 +5,7 @@
 import type { Place } from '../board/model';
 import type { Span } from '../syntax/tree';
 
-export interface Edit {
-  readonly path: string;
-  readonly span: Span;
-  readonly newText: string;
-}
-
-export interface Fix {
-  /** With the outcome that it was seen to have: `Widen the gap to 0.92 mm: 1.00 mV of 2 mV`. */
-  readonly title: string;
-  /** The rule of the finding that it mends, and where that stands. */
-  readonly rule: string;
-  readonly at: Place;
-  readonly edits: readonly Edit[];
-  /** The one that changes least of those that mend the finding. */
-  readonly preferred: boolean;
-}
+export type { Edit, Fix } from '../fixes/fix';
 
 export interface HoverAnswer {
   readonly span: Span;

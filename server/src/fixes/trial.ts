@@ -1,0 +1,50 @@
+/**
+ * What a changed run would put on given receivers: the model's own evaluation, of the runs that matter
+ * to them only, so that a search costs what it changes.
+ */
+import type { Net, Project, Run } from '../board/model';
+import type { Budget, Contribution, Evaluation } from '../budget/results';
+import type { FixContext } from './fix';
+
+export interface Change {
+  readonly before: Run;
+  readonly after: Run;
+}
+
+export interface Trial {
+  readonly evaluation: Evaluation;
+  /** In the order of the budgets asked for; null where one is gone. */
+  readonly budgets: readonly (Budget | null)[];
+}
+
+export function trial(context: FixContext, changes: readonly Change[], budgets: readonly Budget[]): Trial {
+  const evaluation = context.evaluateProject(changed(context.project, changes, budgets));
+  return { evaluation, budgets: budgets.map((budget) => sameBudget(evaluation, budget)) };
+}
+
+export function sameBudget({ budgets }: Evaluation, { subject, kind, measure }: Budget): Budget | null {
+  return budgets.find((other) => other.subject.name === subject.name && other.kind === kind && other.measure === measure) ?? null;
+}
+
+/** Logarithm of the total over what is wanted of it: the worst of the receivers; NaN where one has no total. */
+export function excessOf(budgets: readonly (Budget | null)[], { board }: Project): number {
+  const headroom = 10 ** ((board.headroom?.value ?? 0) / 20);
+  return Math.max(...budgets.map((budget) => (budget === null || budget.total === null ? NaN : Math.log((budget.total * headroom) / budget.tolerates))));
+}
+
+/** What one aggressor puts on a receiver in one run, V; 0 where it does not. */
+export function partOf(budget: Budget | null, { from, where }: Contribution): number {
+  return budget?.contributions.find((other) => other.from === from && other.where === where)?.value ?? 0;
+}
+
+/**
+ * The receivers' runs, and those of the nets that lie beside them there: what of a net lies outside a
+ * run is its length less all its runs.
+ */
+function changed(project: Project, changes: readonly Change[], budgets: readonly Budget[]): Project {
+  const receivers = new Set(budgets.flatMap(({ subject }) => (subject.kind === 'net' ? [subject.name] : [subject.plus?.name, subject.minus?.name])));
+  const netsOf = (run: Run): readonly Net[] => run.rows.flatMap(({ conductors }) => conductors.flatMap((conductor) => (conductor.kind === 'trace' ? [conductor.net] : [])));
+  const beside = new Set(project.runs.map(netsOf).filter((nets) => nets.some(({ name }) => receivers.has(name))).flat());
+  const runs = project.runs.filter((run) => netsOf(run).some((net) => beside.has(net)));
+  return { ...project, runs: runs.map((run) => changes.find(({ before }) => before === run)?.after ?? run) };
+}
