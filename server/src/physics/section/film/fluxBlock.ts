@@ -11,38 +11,40 @@
  */
 import { polynomialLimit } from '../basis/orthonormalJacobi';
 import type { PartRule } from '../basis/partRule';
+import type { Segment, Side } from '../basis/side';
 import { sideBasis } from '../basis/sideBasis';
+import { imageOf } from '../galerkin/pairIntegral';
+import { segmentDistance } from '../galerkin/segmentDistance';
 import type { Kernel, KernelRest } from '../kernel/layeredKernel';
 import { writeFluxMoments } from './fluxMoments';
-import type { Segment } from './outlinePanels';
 
-/** Adds scale × flux to `block`, `target.count` × `source.count`. */
-export function addFluxBlock(kernel: Kernel, target: Segment, source: Segment, scale: number, block: Float64Array): void {
+/** Adds scale × flux to `block`, `target.order` × `source.order`. */
+export function addFluxBlock(kernel: Kernel, target: Side, source: Side, scale: number, block: Float64Array): void {
   if (!collinear(target, source)) addLineFlux(target, source, scale * kernel.direct, block);
   for (const { factor, at } of kernel.mirrors) addLineFlux(target, mirrored(source, at), scale * factor, block);
   if (kernel.rest !== null) addRestFlux(kernel.rest, target, source, scale, block);
 }
 
 /** Where the logarithmic kernel's own flux is zero: the charge lies in the target's line. */
-function collinear(a: Segment, b: Segment): boolean {
+function collinear(a: Side, b: Side): boolean {
   const dx = a.x1 - a.x0;
   const dy = a.y1 - a.y0;
   const off = (x: number, y: number) => Math.abs(dx * (y - a.y0) - dy * (x - a.x0)) <= 1e-12 * a.length * (a.length + Math.hypot(x - a.x0, y - a.y0));
   return off(b.x0, b.y0) && off(b.x1, b.y1);
 }
 
-const mirrored = (segment: Segment, at: number): Segment => ({ ...segment, y0: 2 * at - segment.y0, y1: 2 * at - segment.y1 });
+const mirrored = (side: Side, at: number): Side => ({ ...side, ...imageOf(side, { sign: -1, shift: 2 * at }) });
 
 const legendre = () => sideBasis(0, 0);
 const moments = new Float64Array(polynomialLimit);
 const rootOdd = Float64Array.from({ length: polynomialLimit }, (_, n) => Math.sqrt(2 * n + 1));
 const deepest = 9;
 
-function addLineFlux(target: Segment, source: Segment, scale: number, block: Float64Array): void {
+function addLineFlux(target: Side, source: Side, scale: number, block: Float64Array): void {
   const gap = segmentDistance(target, source);
   const longer = Math.max(target.length, source.length);
   if (farEnough * longer < gap) {
-    addPairs(target, source, legendre().whole(target.count + 1), source.basis.whole(source.count + 1), scale, block);
+    addPairs(target, source, legendre().whole(target.order + 1), source.basis.whole(source.order + 1), scale, block);
     return;
   }
   const visit = (level: number, index: number) => {
@@ -66,14 +68,14 @@ const clearance = 0.6;
 const wholePoints = 14;
 
 /** Source points one by one, each with its exact flux where it is near. */
-function addExact(target: Segment, source: Segment, rule: PartRule, scale: number, block: Float64Array): void {
+function addExact(target: Side, source: Side, rule: PartRule, scale: number, block: Float64Array): void {
   const half = target.length / 2;
   const cosine = (target.x1 - target.x0) / target.length;
   const sine = (target.y1 - target.y0) / target.length;
   const middleX = (target.x0 + target.x1) / 2;
   const middleY = (target.y0 + target.y1) / 2;
-  const rows = target.count;
-  const columns = source.count;
+  const rows = target.order;
+  const columns = source.order;
   for (let f = 0; f < rule.count; f += 1) {
     const dx = source.x0 + (source.x1 - source.x0) * rule.t[f] - middleX;
     const dy = source.y0 + (source.y1 - source.y0) * rule.t[f] - middleY;
@@ -102,7 +104,7 @@ function writeDistantMoments(xi: number, eta: number, rows: number): void {
   }
 }
 
-function addPairs(target: Segment, source: Segment, targetRule: PartRule, sourceRule: PartRule, scale: number, block: Float64Array): void {
+function addPairs(target: Side, source: Side, targetRule: PartRule, sourceRule: PartRule, scale: number, block: Float64Array): void {
   const across = target.x1 - target.x0;
   const up = target.y1 - target.y0;
   addProduct(target, source, targetRule, sourceRule, block, (dx, y, ySource) => {
@@ -112,10 +114,10 @@ function addPairs(target: Segment, source: Segment, targetRule: PartRule, source
   });
 }
 
-function addRestFlux({ families, images }: KernelRest, target: Segment, source: Segment, scale: number, block: Float64Array): void {
+function addRestFlux({ families, images }: KernelRest, target: Side, source: Side, scale: number, block: Float64Array): void {
   const across = target.x1 - target.x0;
   const up = target.y1 - target.y0;
-  const nearest = images.reduce((least, { sign, shift }) => Math.min(least, segmentDistance(target, { ...source, y0: sign * source.y0 + shift, y1: sign * source.y1 + shift })), Infinity);
+  const nearest = images.reduce((least, image) => Math.min(least, segmentDistance(target, imageOf(source, image))), Infinity);
   const field = (dx: number, y: number, ySource: number) => {
     let along = 0;
     let upward = 0;
@@ -133,18 +135,18 @@ function addRestFlux({ families, images }: KernelRest, target: Segment, source: 
 }
 
 /** The whole segment, or as many equal parts as make each short beside the distance of the kernel's singularity. */
-function partsFor(segment: Segment, basis: Segment['basis'], distance: number): PartRule[] {
-  if (segment.length < 0.6 * distance) return [basis.whole(segment.count + 1)];
-  if (segment.length < 1.5 * distance) return [basis.whole(segment.count + 4)];
+function partsFor(segment: Side, basis: Side['basis'], distance: number): PartRule[] {
+  if (segment.length < 0.6 * distance) return [basis.whole(segment.order + 1)];
+  if (segment.length < 1.5 * distance) return [basis.whole(segment.order + 4)];
   const level = Math.min(7, Math.ceil(Math.log2(segment.length / (1.5 * distance))));
   return Array.from({ length: 2 ** level }, (_, index) => basis.part(level, index));
 }
 
 const row = new Float64Array(polynomialLimit);
 
-function addProduct(target: Segment, source: Segment, targetRule: PartRule, sourceRule: PartRule, block: Float64Array, field: (dx: number, y: number, ySource: number) => number): void {
-  const rows = target.count;
-  const columns = source.count;
+function addProduct(target: Side, source: Side, targetRule: PartRule, sourceRule: PartRule, block: Float64Array, field: (dx: number, y: number, ySource: number) => number): void {
+  const rows = target.order;
+  const columns = source.order;
   for (let g = 0; g < targetRule.count; g += 1) {
     const x = target.x0 + (target.x1 - target.x0) * targetRule.t[g];
     const y = target.y0 + (target.y1 - target.y0) * targetRule.t[g];
@@ -171,10 +173,4 @@ function pointDistance(x: number, y: number, a: Point, b: Point): number {
   const dy = b.y - a.y;
   const t = Math.min(1, Math.max(0, ((x - a.x) * dx + (y - a.y) * dy) / (dx * dx + dy * dy)));
   return Math.hypot(x - a.x - t * dx, y - a.y - t * dy);
-}
-
-/** Of two segments that do not cross: at an end of one of them. */
-export function segmentDistance(a: Pick<Segment, 'x0' | 'y0' | 'x1' | 'y1'>, b: Pick<Segment, 'x0' | 'y0' | 'x1' | 'y1'>): number {
-  const [a0, a1, b0, b1] = [{ x: a.x0, y: a.y0 }, { x: a.x1, y: a.y1 }, { x: b.x0, y: b.y0 }, { x: b.x1, y: b.y1 }];
-  return Math.min(pointDistance(a0.x, a0.y, b0, b1), pointDistance(a1.x, a1.y, b0, b1), pointDistance(b0.x, b0.y, a0, a1), pointDistance(b1.x, b1.y, a0, a1));
 }

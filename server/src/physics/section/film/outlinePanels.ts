@@ -5,19 +5,9 @@
  *          |         |                  own edges are near; flat film beyond the outermost box is followed outwards by
  *   __|__|_|         |_|__|____|_ _     widening panels, since its charge dies away only as the distance squared
  */
-import { sideBasis, type SideBasis } from '../basis/sideBasis';
+import { sideBasis } from '../basis/sideBasis';
+import type { Side } from '../basis/side';
 import type { OutlinePoint } from './outline';
-
-/** A straight piece that carries charge: an edge-weighted polynomial of `count` coefficients. */
-export interface Segment {
-  readonly x0: number;
-  readonly y0: number;
-  readonly x1: number;
-  readonly y1: number;
-  readonly length: number;
-  readonly basis: SideBasis;
-  readonly count: number;
-}
 
 export interface PanelSetting {
   /** Length of the panel next to a corner. */
@@ -28,17 +18,23 @@ export interface PanelSetting {
   readonly longest: number;
   /** How far flat film is followed beyond the outermost corners. */
   readonly reach: number;
-  readonly cornerCount: number;
-  readonly middleCount: number;
+  /** Polynomials on a panel at a corner, and on one between others. */
+  readonly cornerOrder: number;
+  readonly middleOrder: number;
+  /** Of the stack: the film's. */
+  readonly layer: number;
   /** Exponent of the charge at a corner: lambda - 1. */
   readonly edge: number;
 }
 
+/** Of a panel's `conductor`: it is none. */
+export const noConductor = -1;
+
 /** From left to right; the film lies to the right of the direction of travel, air to the left. */
-export function outlinePanels(corners: readonly OutlinePoint[], setting: PanelSetting): Segment[] {
+export function outlinePanels(corners: readonly OutlinePoint[], setting: PanelSetting): Side[] {
   const first = corners[0];
   const last = corners[corners.length - 1];
-  const panels: Segment[] = [];
+  const panels: Side[] = [];
   const far = reachSizes(setting);
   addCut({ x: first.x - setting.reach, y: first.y }, first, [...far].reverse(), { start: false, end: true });
   for (let i = 1; i < corners.length; i += 1) {
@@ -60,7 +56,9 @@ export function outlinePanels(corners: readonly OutlinePoint[], setting: PanelSe
         x0, y0, x1, y1,
         length: Math.abs(x1 - x0) + Math.abs(y1 - y0),
         basis: sideBasis(start ? setting.edge : 0, end ? setting.edge : 0),
-        count: start || end ? setting.cornerCount : setting.middleCount,
+        order: start || end ? setting.cornerOrder : setting.middleOrder,
+        conductor: noConductor,
+        layer: setting.layer,
       });
       done += size;
     });

@@ -1,0 +1,154 @@
+/**
+ * Capacitance of conductors under a film that follows them: charges of the conductors and polarisation of the film's face.
+ *
+ *          .___________.    air      Model    the layers as if the film filled all the space above the laminate, plus a
+ *     _____|  =======  |_____        charge s on the film's real face that makes the field right on both sides of it
+ *      film                          (the conductors all lie in the film, however thick either is, so no case is special)
+ *   -------------------------        Method   Galerkin: potentials tested with the conductors' own charge series, fluxes
+ *        laminate                    through each panel with Legendre polynomials; both exact for near pairs
+ *
+ *   Formula   conductors: G(Q + s) = V;  face: pi s - kappa E_n(Q + s) = 0, n into the air
+ *   Symbols   Q free charge, kappa = (e - e_out)/(e + e_out), e of the film, e_out of what lies over it; E_n mean of both sides,
+ *             times e; potentials in units of Q / (2 pi eps0)
+ *   Source    equivalent charge: Wei, Harrington, Mautz & Sarkar 1984, from memory; the layers as kernel and the exact
+ *             fluxes are our own
+ *   Accuracy  filmedSection.ts
+ */
+import { luInOrder, solveUnitLower, solveUpperTransposed } from '../../../numeric/luInOrder';
+import { polynomialLimit, writePolynomials } from '../basis/orthonormalJacobi';
+import type { Side } from '../basis/side';
+import { sideBasis } from '../basis/sideBasis';
+import type { ChargeSolution } from '../galerkin/chargeSolution';
+import { writeSideBlock } from '../galerkin/sideBlock';
+import type { Kernel } from '../kernel/layeredKernel';
+import { addFluxBlock } from './fluxBlock';
+
+export interface FilmProblem {
+  readonly sides: readonly Side[];
+  /** Of the matrix asked for, in order; other conductors are at zero potential. */
+  readonly conductors: readonly number[];
+  readonly panels: readonly Side[];
+  readonly kernel: (lower: number, upper: number) => Kernel;
+  /** Of the film, and of what lies over it. */
+  readonly permittivity: number;
+  readonly outside: number;
+  /** A constant on every potential of a free charge, or null where planes give it a zero. */
+  readonly constant: number | null;
+}
+
+/** Null where a pivot vanishes: the system means nothing then. */
+export function filmCharge(problem: FilmProblem): ChargeSolution | null {
+  const { sides, panels, conductors, constant } = problem;
+  const all = [...sides, ...panels];
+  const layout = layOut(all);
+  const matrix = assembled(problem, all, layout);
+  const { unknowns, coarse, start } = layout;
+  if (constant !== null) {
+    for (let s = 0; s < sides.length; s += 1) for (let t = 0; t < sides.length; t += 1) matrix[start[s] * unknowns + start[t]] += constant;
+  }
+  if (!luInOrder(matrix, unknowns)) return null;
+  const count = conductors.length + (constant === null ? 0 : 1);
+  const excitation = new Float64Array(count * unknowns);
+  sides.forEach(({ conductor }, s) => {
+    const index = conductors.indexOf(conductor);
+    if (0 <= index) excitation[index * unknowns + start[s]] = 1;
+    if (constant !== null) excitation[conductors.length * unknowns + start[s]] = 1;
+  });
+  const charges = Float64Array.from(excitation);
+  solveUnitLower(matrix, unknowns, charges, count);
+  solveUpperTransposed(matrix, unknowns, excitation, count);
+  const finish = (to: number) => {
+    const products = innerProducts(excitation, charges, unknowns, to, count);
+    return constant === null ? products : neutral(products, count);
+  };
+  return { order: conductors.length, fine: finish(unknowns), coarse: finish(coarse), unknowns };
+}
+
+interface Layout {
+  readonly unknowns: number;
+  /** Unknowns without the highest polynomial of every side and panel. */
+  readonly coarse: number;
+  readonly start: Int32Array;
+}
+
+/** As that of chargeSolution.ts: the highest polynomials last. */
+function layOut(all: readonly Side[]): Layout {
+  const start = new Int32Array(all.length);
+  let coarse = 0;
+  all.forEach(({ order }, s) => {
+    start[s] = coarse;
+    coarse += order - 1;
+  });
+  return { unknowns: coarse + all.length, coarse, start };
+}
+
+const block = new Float64Array(polynomialLimit * polynomialLimit);
+
+function assembled({ sides, panels, kernel, permittivity, outside }: FilmProblem, all: readonly Side[], { unknowns, coarse, start }: Layout): Float64Array {
+  const matrix = new Float64Array(unknowns * unknowns);
+  const place = (s: number, m: number) => (m < all[s].order - 1 ? start[s] + m : coarse + s);
+  const put = (row: number, column: number, transposed: boolean) => {
+    const rows = all[row].order;
+    const columns = all[column].order;
+    for (let m = 0; m < rows; m += 1) {
+      const at = place(row, m) * unknowns;
+      for (let n = 0; n < columns; n += 1) matrix[at + place(column, n)] = transposed ? block[n * rows + m] : block[m * columns + n];
+    }
+  };
+  for (let s = 0; s < sides.length; s += 1) {
+    for (let t = 0; t < all.length; t += 1) {
+      if (t < sides.length && s < t) continue;
+      // The kernel wants the side in the higher layer first.
+      const [upper, lower] = all[s].layer < all[t].layer ? [t, s] : [s, t];
+      writeSideBlock(all[upper], all[lower], kernel(all[lower].layer, all[upper].layer), block);
+      put(s, t, upper !== s);
+      if (t < sides.length && t !== s) put(t, s, upper === s);
+    }
+  }
+  const contrast = (permittivity - outside) / (permittivity + outside);
+  panels.forEach((panel, p) => {
+    all.forEach((source, t) => {
+      block.fill(0, 0, panel.order * source.order);
+      addFluxBlock(kernel(source.layer, panel.layer), panel, source, -contrast * permittivity, block);
+      if (panel === source) addOwnCharge(panel);
+      put(sides.length + p, t, false);
+    });
+  });
+  return matrix;
+}
+
+/** pi s, tested with the Legendre polynomials. */
+function addOwnCharge({ basis, order }: Side): void {
+  const rule = basis.whole(order);
+  const legendre = sideBasis(0, 0);
+  const values = new Float64Array(order);
+  for (let g = 0; g < rule.count; g += 1) {
+    writePolynomials(legendre.recurrence, 2 * rule.t[g] - 1, Math.PI, values, 0, order);
+    for (let n = 0; n < order; n += 1) {
+      for (let m = 0; m < order; m += 1) block[n * order + m] += values[n] * rule.weighted[g * polynomialLimit + m];
+    }
+  }
+}
+
+function innerProducts(left: Float64Array, right: Float64Array, stride: number, to: number, count: number): Float64Array {
+  const products = new Float64Array(count * count);
+  for (let a = 0; a < count; a += 1) {
+    for (let b = 0; b < count; b += 1) {
+      let sum = 0;
+      for (let i = 0; i < to; i += 1) sum += left[a * stride + i] * right[b * stride + i];
+      products[a * count + b] = sum;
+    }
+  }
+  return products;
+}
+
+/** C - (C 1)(1^T C) / (1^T C 1), the last row and column belonging to all conductors at potential 1 together. */
+function neutral(products: Float64Array, count: number): Float64Array {
+  const order = count - 1;
+  const all = products[count * count - 1];
+  const result = new Float64Array(order * order);
+  for (let a = 0; a < order; a += 1) {
+    for (let b = 0; b < order; b += 1) result[a * order + b] = products[a * count + b] - (products[a * count + order] * products[order * count + b]) / all;
+  }
+  return result;
+}
