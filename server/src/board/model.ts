@@ -297,6 +297,8 @@ export interface Ambient extends Declared {
 
 export interface Waiver {
   readonly rule: string;
+  /** The rule's name: rules are known above this room, which cannot say whether it is one. */
+  readonly rulePlace: Place;
   /** Names: one after `on`, or all that the declaration around it declares: `net D[0..3] { waive … }`. */
   readonly subjects: readonly string[];
   readonly reason: string;

@@ -35,5 +35,5 @@ function waiverOf(scope: Scope, statement: Statement, subjects: readonly string[
     return [];
   }
   const name = rule.kind === 'name' ? rule.name : rule.kind === 'word' ? rule.word : rule.kind === 'string' ? rule.text : null;
-  return name === null || subjects.length === 0 ? [] : [{ rule: name, subjects, reason: reason.text, place: placeIn(scope, statement.span) }];
+  return name === null || subjects.length === 0 ? [] : [{ rule: name, rulePlace: placeIn(scope, rule.span), subjects, reason: reason.text, place: placeIn(scope, statement.span) }];
 }

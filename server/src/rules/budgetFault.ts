@@ -65,14 +65,15 @@ export function causeInText({ budget, largest }: BudgetFault): string {
   return share <= 0.5 ? `${budget.contributions.length} causes, the largest is ${originInText(largest)} with ${percent}` : `${originInText(largest)} makes ${percent} of it`;
 }
 
-/** `a wider gap, a shorter run or a stitched guard`. */
+/** `Widen the gap, shorten the run, or put a stitched guard between`. */
 export function remedyInText(largest: Contribution | null): string {
-  return largest === null ? 'less noise at its sources' : remedies[largest.channel];
+  return largest === null ? 'Quieten its sources' : remedies[largest.channel];
 }
 
-/** How much less it has to become: `8.5 dB less`. */
+/** `34.2 dB too much`; with a headroom, both what is over and what it takes to have that as well. */
 export function excessInText({ budget, wanted }: BudgetFault): string {
-  return `${inText(20 * Math.log10((budget.total ?? wanted) / wanted), 'level')} less`;
+  const over = (limit: number) => inText(20 * Math.log10((budget.total ?? limit) / limit), 'level');
+  return wanted < budget.tolerates ? `${over(budget.tolerates)} too much, ${over(wanted)} with the headroom` : `${over(wanted)} too much`;
 }
 
 /** The places that the project holds: a built-in family's `tolerates` stands in no file. */
@@ -90,15 +91,15 @@ const placeWords: Readonly<Record<Channel, string>> = {
 };
 
 const remedies: Readonly<Record<Channel, string>> = {
-  coupled: 'a wider gap, a shorter run or a stitched guard',
-  link: 'less capacitance or mutual inductance there',
-  loop: 'smaller loops, further apart',
-  'shared return': 'a return of its own',
-  radiated: 'a smaller loop or a shield',
-  thermal: 'a lower source resistance or a narrower band',
-  amplifier: 'a quieter input stage or a narrower band',
-  flicker: 'a quieter input stage or a band that begins higher',
-  contact: 'quieter resistors or less dc voltage across them',
+  coupled: 'Widen the gap, shorten the run, or put a stitched guard between',
+  link: 'Lower the capacitance or the mutual inductance there',
+  loop: 'Make the loops smaller, or part them',
+  'shared return': 'Give it a return of its own',
+  radiated: 'Make its loop smaller, or shield it',
+  thermal: 'Lower its source resistance, or narrow its band',
+  amplifier: 'Take a quieter input stage, or narrow its band',
+  flicker: 'Take a quieter input stage, or begin its band higher',
+  contact: 'Take quieter resistors, or less dc voltage across them',
 };
 
 /** What is tolerated, and both sides of the largest couplings. */

@@ -7,6 +7,7 @@ import { defineRule, type Subject } from './rule';
 interface DominantCoupling extends BudgetFault {
   readonly largest: Contribution;
   readonly share: number;
+  readonly across: 'gap' | 'elsewhere';
 }
 
 export const dominantCoupling = defineRule<DominantCoupling>({
@@ -42,18 +43,23 @@ run valve-past-rx on TOP for 8 mm {
       if (budget.verdict !== 'over' || largest === undefined) continue;
       const share = shareOf(largest, budget);
       const subject = whereItArises(largest);
-      const at = crossing(largest);
-      if (share <= 0.5 || subject === null || at === null) continue;
+      const crossed = crossedGap(largest);
+      const at = crossed ?? traceOrPlace(largest);
+      if (share < clearlyHalf || subject === null || at === null) continue;
       const { limit, unit, wanted } = budgetFault(project, budget);
-      yield { at, subject, names: [budget.subject.name, budget.kind, largest.from ?? ''], related: relatedPlaces(project, budget, largest), value: largest.value, limit: limit!, unit: unit!, wanted, budget, largest, share };
+      yield { at, subject, names: [budget.subject.name, budget.kind, largest.from ?? ''], related: relatedPlaces(project, budget, largest), value: largest.value, limit: limit!, unit: unit!, wanted, budget, largest, share, across: crossed === null ? 'elsewhere' : 'gap' };
     }
   },
 
-  message: ({ budget, largest, share }) => {
+  message: ({ budget, largest, share, across }) => {
     const part = 0.995 <= share ? 'all' : `${Math.round(share * 100)} %`;
-    return `${voltageInText(largest.value, budget)} from ${largest.from} here, ${part} of what ${receiverInText(budget)} has (${voltageInText(budget.tolerates, budget)} tolerated)${splitInText(largest)}: ${remedyInText(largest)} helps most here`;
+    const where = across === 'gap' ? 'across this gap' : 'here';
+    return `${voltageInText(largest.value, budget)} on ${receiverInText(budget)} from ${largest.from} ${where}: ${part} of what it has${splitInText(largest)}, where ${voltageInText(budget.tolerates, budget)} is tolerated. ${remedyInText(largest)}`;
   },
 });
+
+/** Where two causes are alike, their last digits do not make one of them dominate. */
+const clearlyHalf = 0.505;
 
 /** Null for the receiver's own noise: it arises nowhere else. */
 function whereItArises({ channel, where }: Contribution): Subject | null {
@@ -63,22 +69,24 @@ function whereItArises({ channel, where }: Contribution): Subject | null {
 
 const kinds: Partial<Record<Channel, Subject['kind']>> = { coupled: 'run', loop: 'loop', 'shared return': 'return', link: 'link' };
 
-/** The gap beside the victim that the coupling crosses; between layers, the victim's trace. */
-function crossing({ coupling, place }: Contribution): Place | null {
-  if (coupling === null) return place;
-  const { run, aggressor, victim } = coupling;
-  const between = gapsBetween(run, aggressor, victim);
-  if (between !== null) return run.rows[between.row]!.gaps[between.gaps[0]!]!.place;
-  return traceOf(run, victim)?.whole ?? place;
+/** The gap beside the victim that the coupling crosses; null between layers. */
+function crossedGap({ coupling }: Contribution): Place | null {
+  const between = coupling === null ? null : gapsBetween(coupling.run, coupling.aggressor, coupling.victim);
+  return coupling === null || between === null ? null : coupling.run.rows[between.row]!.gaps[between.gaps[0]!]!.place;
 }
 
-/** `, 91 % of it capacitive`: which of the two fields to fight. */
+function traceOrPlace({ coupling, place }: Contribution): Place | null {
+  return coupling === null ? place : (traceOf(coupling.run, coupling.victim)?.whole ?? place);
+}
+
+/** `, 91 % of that capacitive`: which of the two fields to fight. */
 function splitInText({ coupling }: Contribution): string {
   if (coupling === null) return '';
   const capacitive = Math.abs(coupling.capacitivePart);
   const inductive = Math.abs(coupling.inductivePart);
   const larger = Math.max(capacitive, inductive) / (capacitive + inductive);
-  return Number.isFinite(larger) ? `, ${Math.round(larger * 100)} % of it ${inductive < capacitive ? 'capacitive' : 'inductive'}` : '';
+  const kind = inductive < capacitive ? 'capacitive' : 'inductive';
+  return Number.isFinite(larger) ? `, ${0.995 <= larger ? 'nearly all' : `${Math.round(larger * 100)} %`} of that ${kind}` : '';
 }
 
 function relatedPlaces(project: Project, budget: Budget, { coupling }: Contribution) {

@@ -2,6 +2,7 @@ import type { Place, Project } from '../board/model';
 import type { Budget, Evaluation, Unaccounted } from '../budget/results';
 import { placesInFiles, receiverInText, subjectOf, voltageInText } from './budgetFault';
 import { defineRule, type Fault } from './rule';
+import { hasUnreadablePart, isWithin } from './unreadableParts';
 
 interface IncompleteBudget extends Fault {
   /** The receivers that lack the same, the first of which is the subject. */
@@ -31,7 +32,7 @@ run beside on TOP for 20 mm { trace A 0.15 mm; gap 0.5 mm; trace B 0.15 mm }
   *find(evaluation) {
     const { project } = evaluation;
     for (const budget of evaluation.budgets) {
-      const lacks = budget.unaccounted.filter(({ place }) => !isUnreadable(place, project));
+      const lacks = budget.unaccounted.filter(({ place }) => !isUnreadable(place, project) && !followsFromUnreadable(place, project));
       if (0 < lacks.length) yield fault(project, [budget], lacks);
     }
     for (const { budgets, lacks } of unreadable(evaluation)) yield fault(project, budgets, lacks);
@@ -65,21 +66,36 @@ function fault(project: Project, budgets: readonly [Budget, ...Budget[]], lacks:
 
 /**
  * One unreadable value can leave every budget of a board incomplete; it has a finding of its own, and
- * one more says whose budgets it takes with it, not one for each.
+ * one more says whose budgets it takes with it, not one for each. What the same receivers lack is said
+ * in one.
  */
 function unreadable({ project, budgets }: Evaluation): Iterable<{ budgets: readonly [Budget, ...Budget[]]; lacks: readonly Unaccounted[] }> {
-  const causes = new Map<string, { budgets: [Budget, ...Budget[]]; lacks: readonly Unaccounted[] }>();
+  const causes = new Map<string, { lack: Unaccounted; budgets: Budget[] }>();
   for (const budget of budgets) {
     for (const lack of budget.unaccounted) {
       if (!isUnreadable(lack.place, project)) continue;
-      const known = causes.get(lack.what);
-      if (known === undefined) causes.set(lack.what, { budgets: [budget], lacks: [lack] });
-      else if (!known.budgets.some(({ subject }) => subject === budget.subject)) known.budgets.push(budget);
+      const cause = causes.get(lack.what) ?? { lack, budgets: [] };
+      causes.set(lack.what, cause);
+      if (!cause.budgets.some(({ subject }) => subject === budget.subject)) cause.budgets.push(budget);
     }
   }
-  return causes.values();
+  const sets = new Map<string, { budgets: [Budget, ...Budget[]]; lacks: Unaccounted[] }>();
+  for (const { lack, budgets: taken } of causes.values()) {
+    const key = JSON.stringify(taken.map(({ subject }) => [subject.kind, subject.name]));
+    const known = sets.get(key);
+    if (known === undefined) sets.set(key, { budgets: taken as [Budget, ...Budget[]], lacks: [lack] });
+    else known.lacks.push(lack);
+  }
+  return sets.values();
 }
 
 function isUnreadable(place: Place | null, { gaps }: Project): boolean {
   return place !== null && gaps.some((gap) => gap.place.path === place.path && gap.place.span.start === place.span.start);
+}
+
+/** `it states no rise`, where the `rise` is what could not be read. */
+function followsFromUnreadable(place: Place | null, project: Project): boolean {
+  if (place === null || project.gaps.length === 0) return false;
+  const conductors = project.runs.flatMap(({ rows }) => rows.flatMap((row) => row.conductors));
+  return conductors.some((conductor) => conductor.kind === 'trace' && isWithin(conductor.whole, place) && hasUnreadablePart(project, conductor.net));
 }

@@ -1,5 +1,5 @@
 import { inText } from '../units/inText';
-import { budgetFault, causeInText, excessInText, receiverInText, remedyInText, voltageInText, type BudgetFault } from './budgetFault';
+import { budgetFault, causeInText, receiverInText, remedyInText, voltageInText, type BudgetFault } from './budgetFault';
 import { defineRule } from './rule';
 
 interface LowMargin extends BudgetFault {
@@ -47,8 +47,8 @@ run fan-past-probe on TOP for 20 mm {
   message: (fault) => {
     const { budget, largest, headroom, marginDb } = fault;
     const amount = `${voltageInText(budget.total ?? NaN, budget)} of ${voltageInText(budget.tolerates, budget)} on ${receiverInText(budget)}`;
-    if (marginDb < headroom) return `${amount} leaves ${inText(marginDb, 'level')} of the ${inText(headroom, 'level')} wanted: ${causeInText(fault)}; it takes ${excessInText(fault)}: ${remedyInText(largest)}`;
+    if (marginDb < headroom) return `${amount}, ${inText(marginDb, 'level')} of the ${inText(headroom, 'level')} headroom left: ${causeInText(fault)}. ${remedyInText(largest)}`;
     const corner = budget.bounds === null ? '' : `, ${voltageInText(budget.bounds[1], budget)} at a corner of the tolerances`;
-    return `${amount}${corner}: ${causeInText(fault)}; it takes ${remedyInText(largest)}, or closer tolerances`;
+    return `${amount}${corner}: ${causeInText(fault)}. ${remedyInText(largest)}, or state closer tolerances`;
   },
 });

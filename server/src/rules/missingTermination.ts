@@ -1,6 +1,7 @@
 import type { Net } from '../board/model';
 import type { AssumedEnd } from '../budget/results';
 import { defineRule, type Fault } from './rule';
+import { hasUnreadablePart } from './unreadableParts';
 
 export interface MissingTermination extends Fault {
   readonly net: Net;
@@ -32,11 +33,10 @@ run beside on TOP for 20 mm { trace CLOCK 0.15 mm; gap 0.5 mm; trace SENSE 0.15 
     for (const ends of nets.values()) {
       const [{ net }] = ends as [AssumedEnd, ...AssumedEnd[]];
       // An end that is written but could not be read is not missing, and has its own finding.
-      if (project.gaps.some(({ place }) => place.path === net.whole.path && net.whole.span.start <= place.span.start && place.span.end <= net.whole.span.end)) continue;
+      if (hasUnreadablePart(project, net)) continue;
       yield { at: net.place, subject: { kind: 'net', name: net.name }, net, ends };
     }
   },
 
-  message: ({ net, ends }) =>
-    `${net.name} states no ${ends.map(({ missing }) => `\`${missing}\``).join(' and no ')}: computed with ${ends.map(({ assumed }) => assumed).join('; and with ')}`,
+  message: ({ net, ends }) => `${net.name} states no ${ends.map(({ missing, assumed }) => `\`${missing}\` (assumed: ${assumed})`).join(' and no ')}`,
 });

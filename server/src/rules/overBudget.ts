@@ -36,6 +36,6 @@ run valve-past-rx on TOP for 8 mm {
 
   message: (fault) => {
     const { budget, largest } = fault;
-    return `${voltageInText(budget.total ?? NaN, budget)} of ${voltageInText(budget.tolerates, budget)} on ${receiverInText(budget)}: ${causeInText(fault)}; it takes ${excessInText(fault)}: ${remedyInText(largest)}`;
+    return `${voltageInText(budget.total ?? NaN, budget)} of ${voltageInText(budget.tolerates, budget)} on ${receiverInText(budget)}, ${excessInText(fault)}: ${causeInText(fault)}. ${remedyInText(largest)}`;
   },
 });

@@ -19,10 +19,11 @@ run beside on TOP for 20 mm { trace SENSE_A 0.15 mm; gap 0.5 mm; trace SENSE 0.1
 }, unknownRules);
 
 function* unknownRules({ project }: Evaluation): Iterable<TextFault> {
-  for (const { rule, place } of project.waivers) {
+  for (const { rule, rulePlace } of project.waivers) {
     if (isRuleName(rule)) continue;
     const meant = closest(rule, ruleNames);
     const words = `no rule ${rule}${meant === null ? '; `quietrun explain` lists them' : `; ${meant}?`}`;
-    yield { at: place, subject: null, names: [words], words };
+    const corrections = meant === null ? [] : [{ title: `Change to ${meant}`, place: rulePlace, newText: meant }];
+    yield { at: rulePlace, subject: null, names: [words], corrections, words };
   }
 }

@@ -1,0 +1,22 @@
+/** A fix context over texts in memory, as the editor's session makes one over its documents. */
+import { evaluate } from '../../server/src/budget/evaluate';
+import { createSolveCache, type SolveCache } from '../../server/src/budget/solveCache';
+import { edited } from '../../server/src/fixes/edited';
+import type { Edit, FixContext } from '../../server/src/fixes/fix';
+import { evaluated, type Evaluated, type Texts } from './evaluated';
+
+export function fixing(texts: Texts, cache: SolveCache = createSolveCache()): Evaluated & { readonly context: FixContext } {
+  const board = evaluated(texts, cache);
+  const context: FixContext = {
+    project: board.project,
+    evaluation: board.evaluation,
+    text: (path) => texts.get(path)!,
+    evaluateWith: (edits) => evaluated(withEdits(texts, edits), cache).evaluation,
+    evaluateProject: (project) => evaluate(project, cache),
+  };
+  return { ...board, context };
+}
+
+export function withEdits(texts: Texts, edits: readonly Edit[]): Texts {
+  return new Map([...texts].map(([path, text]) => [path, edited(text, edits.filter((edit) => edit.path === path))]));
+}
