@@ -87,8 +87,9 @@ export class TokenCursor {
     return this.line.end;
   }
 
-  /** A cursor at the next token that is not a newline; this one stays where it is. */
+  /** A cursor at the next token that is not a newline, to look at only; this one stays where it is. */
   beyondNewlines(): TokenCursor {
+    if (this.kind !== 'newline') return this;
     const ahead = this.copy();
     ahead.passNewlines();
     return ahead;

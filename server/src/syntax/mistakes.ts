@@ -22,9 +22,14 @@ export class Mistakes {
   }
 }
 
-/** Text of the user's as a message quotes it: short, on one line, without what could disturb a terminal. */
+/** Text of the user's as a message quotes it, in backquotes. */
 export function quoted(text: string): string {
+  return `\`${plainly(text)}\``;
+}
+
+/** Short, on one line, without what could disturb a terminal or close a quotation. */
+export function plainly(text: string): string {
   const short = [...text.slice(0, 90)].slice(0, 40).join('');
   const clean = short.replace(/[\p{Cc}\p{Cf}\u2028\u2029]/gu, '\ufffd').replaceAll('`', "'");
-  return `\`${clean}${short.length < text.length ? '…' : ''}\``;
+  return `${clean}${short.length < text.length ? '…' : ''}`;
 }

@@ -13,6 +13,7 @@ import type { BlockKind, StatementShape } from './grammar';
 import { tokensOf } from './lexer';
 import { Mistakes, quoted } from './mistakes';
 import type { StatementReading } from './reading';
+import { beginsNumber } from './numbers';
 import { readParts } from './statementReader';
 import { tooMuch } from './statementEnd';
 import type { Block, SourceTree, Span, Statement } from './tree';
@@ -99,21 +100,22 @@ function readBlockOf(parser: Parser, reading: StatementReading, { kind, required
   const brace = (): Block => {
     if (!reading.lost) mistakes.report('syntax', cursor.last, `\`{\` is missing after ${quoted(cursor.text.slice(cursor.last.start, cursor.last.end))}`);
     reading.broken = true;
-    cursor.passNewlines();
-    return readBlock(parser, kind, label(reading), true);
+    passSeparators(cursor);
+    return readBlock(parser, kind, reading, true);
   };
   if (!cursor.atEnd && !cursor.isMark('{')) {
     if (cursor.kind === 'word' && shapeOf(kind, cursor.word) !== undefined) return brace();
     tooMuch(reading);
     passHead(parser);
   }
-  if (cursor.isMark('{')) return readBlock(parser, kind, label(reading), false);
-  if (cursor.kind === 'newline') {
-    const ahead = cursor.beyondNewlines();
-    if (ahead.isMark('{')) {
+  if (cursor.isMark('{')) return readBlock(parser, kind, reading, false);
+  if (cursor.kind === 'newline' || cursor.isMark(';')) {
+    if (cursor.kind === 'newline' && cursor.beyondNewlines().isMark('{')) {
       cursor.passNewlines();
-      return readBlock(parser, kind, label(reading), false);
+      return readBlock(parser, kind, reading, false);
     }
+    const ahead = cursor.copy();
+    passSeparators(ahead);
     if (ahead.kind === 'word' && shapeOf(kind, ahead.word) !== undefined && !isDeclarationAt(ahead)) return brace();
   }
   const inherits = required === 'unless-is' && reading.values.some((value) => value.role === 'family');
@@ -130,7 +132,7 @@ function label({ shape, values }: StatementReading): string {
 }
 
 /** `bare`: the opening brace was left out, so that a closing one is not insisted on either. */
-function readBlock(parser: Parser, kind: BlockKind, of: string, bare: boolean): Block {
+function readBlock(parser: Parser, kind: BlockKind, of: StatementReading, bare: boolean): Block {
   const { cursor, mistakes } = parser;
   const start = cursor.start;
   if (!bare) cursor.next();
@@ -146,7 +148,7 @@ function readBlock(parser: Parser, kind: BlockKind, of: string, bare: boolean): 
     }
     if (cursor.kind === 'end' || endsOpenBlock(parser, kind)) {
       if (!bare && parser.unclosedAt !== cursor.tokenIndex) {
-        mistakes.report('syntax', cursor.last, `\`}\` is missing: ${of} is not closed`);
+        mistakes.report('syntax', cursor.last, `\`}\` is missing: ${label(of)} is not closed`);
         parser.unclosedAt = cursor.tokenIndex;
       }
       break;
@@ -216,13 +218,20 @@ function passOver(parser: Parser): void {
   const start = cursor.start;
   let depth = 0;
   while (cursor.kind !== 'end') {
-    if (depth === 0 ? cursor.atEnd : isDeclarationAt(cursor)) break;
+    if (depth === 0 ? cursor.atEnd && !continues(cursor) : isDeclarationAt(cursor)) break;
     const closes = cursor.isMark('}');
     depth += cursor.isMark('{') ? 1 : closes ? -1 : 0;
     cursor.next();
     if (closes && depth === 0) break;
   }
   if (start < cursor.last.end) unread.push({ start, end: cursor.last.end });
+}
+
+/** A line that ends with a comma goes on where the next begins with a value. */
+function continues(cursor: TokenCursor): boolean {
+  if (cursor.kind !== 'newline' || cursor.text[cursor.last.end - 1] !== ',') return false;
+  const ahead = cursor.beyondNewlines();
+  return ahead.isMark('(') || (ahead.kind === 'word' && beginsNumber(ahead.text, ahead.start));
 }
 
 /** To the block of a declaration or, where it has none, to the end of the head. */

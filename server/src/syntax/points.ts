@@ -1,7 +1,7 @@
 /** Points, and the commas that part values: what may go on beyond a line end. */
 import type { TokenCursor } from './cursor';
 import { quoted } from './mistakes';
-import { beginsQuantity, lastText, lose, type StatementReading } from './reading';
+import { beginsQuantity, lastText, fail, type StatementReading } from './reading';
 import type { PointValue, QuantityValue } from './tree';
 import { readQuantityOf } from './values';
 
@@ -9,12 +9,12 @@ import { readQuantityOf } from './values';
 export function readPoint(reading: StatementReading, role: string): PointValue | null {
   const { cursor } = reading;
   if (!cursor.isMark('(') && !beginsQuantity(cursor, ['length'])) {
-    lose(reading, 'missing-value', `a point is missing after ${quoted(lastText(cursor))}: two lengths, as in \`(10 mm, 4 mm)\``);
+    fail(reading, 'missing-value', `a point is missing after ${quoted(lastText(cursor))}: two lengths, as in \`(10 mm, 4 mm)\``);
     return null;
   }
   const start = cursor.start;
   if (cursor.isMark('(')) cursor.next();
-  else lose(reading, 'syntax', `\`(\` is missing before ${quoted(cursor.word)}`, cursor.span);
+  else fail(reading, 'syntax', `\`(\` is missing before ${quoted(cursor.word)}`, cursor.span);
   const coordinates: (QuantityValue | null)[] = [];
   for (let count = 0; count < 3; count += 1) {
     passNewlinesWithin(cursor);
@@ -25,7 +25,7 @@ export function readPoint(reading: StatementReading, role: string): PointValue |
   }
   passNewlinesWithin(cursor);
   if (cursor.isMark(')')) cursor.next();
-  else lose(reading, 'syntax', `\`)\` is missing after ${quoted(lastText(cursor))}`);
+  else fail(reading, 'syntax', `\`)\` is missing after ${quoted(lastText(cursor))}`);
   const [x, y, z] = coordinates;
   return x && y && z !== null ? { kind: 'point', role, span: { start, end: cursor.last.end }, x, y, z: z ?? null } : null;
 }
@@ -33,7 +33,7 @@ export function readPoint(reading: StatementReading, role: string): PointValue |
 function readPointComma(reading: StatementReading): void {
   const { cursor } = reading;
   if (cursor.isMark(',')) cursor.next();
-  else if (beginsQuantity(cursor, ['length'])) lose(reading, 'syntax', `a comma is missing between ${quoted(lastText(cursor))} and ${quoted(cursor.word)}`);
+  else if (beginsQuantity(cursor, ['length'])) fail(reading, 'syntax', `a comma is missing between ${quoted(lastText(cursor))} and ${quoted(cursor.word)}`);
 }
 
 /** Only as far as the point goes on: after a parenthesis that was left out the next line is a statement. */
@@ -46,7 +46,7 @@ function passNewlinesWithin(cursor: TokenCursor): void {
 export function readComma(reading: StatementReading): void {
   const { cursor } = reading;
   if (!cursor.isMark(',')) {
-    lose(reading, 'syntax', `a comma is missing between ${quoted(lastText(cursor))} and ${quoted(cursor.word)}`);
+    fail(reading, 'syntax', `a comma is missing between ${quoted(lastText(cursor))} and ${quoted(cursor.word)}`);
     return;
   }
   cursor.next();

@@ -4,14 +4,13 @@
  * value is made only of what is written as the language writes it.
  */
 import type { Dimension } from '../units/dimension';
-import { copperWeight, dimensionInWords, fittingUnits, inPowerOfTen, unitSpelt, unitsMeantBy, type Unit, type WrittenNumber } from '../units/spelling';
-import { isTimesSign } from './characters';
+import { inPowerOfTen, type Unit, type WrittenNumber } from '../units/spelling';
 import { codeOf } from './letterCodes';
 import { quoted, type Mistakes } from './mistakes';
-import { beginsNumber, readNumber, type NumberReading } from './numbers';
-import { endOfUnit, passSpaces } from './scan';
-import { readTolerance } from './tolerances';
-import type { Correction, QuantityValue, Span } from './tree';
+import { readNumber, type NumberReading } from './numbers';
+import { readTolerance, toleranceAfter } from './tolerances';
+import type { QuantityValue, Span } from './tree';
+import { fittingUnit, unitAfter } from './unitReader';
 
 export interface QuantityRequest {
   readonly role: string;
@@ -70,7 +69,8 @@ function toleranced(text: string, limit: number, request: QuantityRequest, mista
   const { role } = request;
   const { dimension, numberSpan, unitSpan } = bare;
   const read = Number.isNaN(bare.value) ? NaN : withinReach(bare, mistakes);
-  const tolerance = readTolerance(text, bare.end, limit, { ...request, dimension, value: read, unit: bare.unit }, mistakes);
+  const mark = toleranceAfter(text, bare.end, limit);
+  const tolerance = mark === null ? null : readTolerance(text, mark, limit, { ...request, dimension, value: read, unit: bare.unit }, mistakes);
   const end = tolerance?.end ?? bare.end;
   // A band that cannot be read leaves the value unreadable too: a budget must not pass for want of its corners.
   const value = tolerance !== null && tolerance.half === null ? NaN : read;
@@ -88,50 +88,4 @@ function withinReach(bare: Bare, mistakes: Mistakes): number {
 function reportFlaw(text: string, { start, end, flaw }: NumberReading, mistakes: Mistakes): void {
   const span = { start, end };
   mistakes.report('syntax', span, `${quoted(text.slice(start, end))}: ${flaw!.message}`, flaw!.meant.map((number) => ({ title: `Write ${number}`, span, newText: number })));
-}
-
-/** The word after the number, unless that goes on with the statement; empty, at the number's end, where there is none. */
-function unitAfter(text: string, end: number, limit: number, { dimensions, follows }: QuantityRequest): Span {
-  const start = passSpaces(text, end, limit);
-  const stop = endOfUnit(text, start, limit);
-  const word = text.slice(start, stop);
-  const none = { start: end, end };
-  // `#` begins a comment where a word could begin, and only there.
-  if (word === '' || (end < start && word.startsWith('#'))) return none;
-  if (dimensions.includes('number') && end < start && beginsNumber(text, start)) return none;
-  if (unitSpelt(word) === undefined && end < start && (follows.has(word) || isTimesSign(word))) return none;
-  const times = /^(.+?)[x\u00d7*]$|^(.+?)[x\u00d7*](?=[\d.])/.exec(word.slice(0, 16));
-  const before = times === null ? undefined : (times[1] ?? times[2])!;
-  if (before !== undefined && unitSpelt(word) === undefined && unitSpelt(before) !== undefined) return { start, end: start + before.length };
-  if (end === start && isTimesSign(word[0]!) && !dimensions.includes('number') && unitSpelt(word) === undefined) return none;
-  return { start, end: stop };
-}
-
-function fittingUnit(text: string, number: Span, span: Span, request: QuantityRequest, mistakes: Mistakes): Unit | null {
-  const spelling = text.slice(span.start, span.end);
-  const fits = request.dimensions.flatMap((dimension) => [...fittingUnits(dimension), ...(request.copper && dimension === 'length' ? [copperWeight] : [])]);
-  const list = `fits: ${fits.join(', ')}`;
-  if (spelling === '') {
-    mistakes.report('unit', number, `${text.slice(number.start, number.end)} what? ${list}`, fits.slice(0, 4).map((unit) => appended(text, number, unit)));
-    return null;
-  }
-  const unit = unitSpelt(spelling);
-  if (unit !== undefined && request.dimensions.includes(unit.dimension)) {
-    if (spelling !== copperWeight || request.copper) return unit;
-    mistakes.report('unit', span, `${copperWeight} is a weight of copper and fits a thickness of copper only; ${list}`);
-    return null;
-  }
-  if (unit !== undefined) {
-    mistakes.report('unit', span, `${quoted(spelling)} measures ${dimensionInWords(unit.dimension)}; ${list}`);
-    return null;
-  }
-  const right = unitsMeantBy(spelling, request.dimensions);
-  const corrections = right.map((each) => ({ title: `Write ${each}`, span, newText: each }));
-  mistakes.report('unit', span, 0 < right.length ? `no unit ${quoted(spelling)}; ${right.join(' or ')}?` : `no unit ${quoted(spelling)}; ${list}`, corrections);
-  return null;
-}
-
-function appended(text: string, number: Span, unit: string): Correction {
-  const newText = `${text.slice(number.start, number.end)} ${unit}`;
-  return { title: `Write ${newText}`, span: number, newText };
 }

@@ -10,13 +10,14 @@ import type { Dimension } from '../units/dimension';
 import type { TokenCursor } from './cursor';
 import type { BlockKind, Part, StatementShape } from './grammar';
 import { codeOf } from './letterCodes';
-import { quoted, type Mistakes } from './mistakes';
+import { Mistakes, quoted } from './mistakes';
 import { beginsNumber } from './numbers';
 import type { Value } from './tree';
 
 export interface StatementReading {
   readonly cursor: TokenCursor;
-  readonly mistakes: Mistakes;
+  /** Where mistakes are reported; nowhere once the statement is lost. */
+  mistakes: Mistakes;
   readonly shape: StatementShape;
   /** The block that the statement stands in. */
   readonly within: BlockKind;
@@ -47,9 +48,15 @@ export function begins(reading: StatementReading, part: Part): boolean {
   }
 }
 
-/** Reports once per statement that it is no longer clear what is due, marked at the word before. */
-export function lose(reading: StatementReading, rule: 'syntax' | 'missing-value', message: string, span = reading.cursor.last): void {
-  if (!reading.lost) reading.mistakes.report(rule, span, message);
+/** Reports that it is no longer clear what is due, marked at the word before. */
+export function fail(reading: StatementReading, rule: 'syntax' | 'missing-value', message: string, span = reading.cursor.last): void {
+  reading.mistakes.report(rule, span, message);
+  lose(reading);
+}
+
+/** From here on the statement is read without a word: what is found now may only follow from what was reported. */
+export function lose(reading: StatementReading): void {
+  reading.mistakes = new Mistakes();
   reading.lost = true;
   reading.broken = true;
 }
@@ -58,7 +65,7 @@ export function lose(reading: StatementReading, rule: 'syntax' | 'missing-value'
 export function nameTakenFor(reading: StatementReading, words: readonly string[]): boolean {
   const before = reading.values.at(-1);
   if (before?.kind !== 'name' || before.quoted || !words.includes(before.name)) return false;
-  lose(reading, 'missing-value', `a name is missing before ${quoted(before.name)}, which was read as the name`, before.span);
+  fail(reading, 'missing-value', `a name is missing before ${quoted(before.name)}, which was read as the name`, before.span);
   return true;
 }
 

@@ -1,7 +1,7 @@
 /** What stands after the last part that fits. */
 import { allInWords, firstWords } from './fits';
 import { quoted } from './mistakes';
-import { lose, nameTakenFor, type StatementReading } from './reading';
+import { fail, lose, nameTakenFor, type StatementReading } from './reading';
 import { closest } from './words';
 
 /** Reports the token at the cursor, where no part of the statement begins with it; says what would have fitted. */
@@ -14,12 +14,11 @@ export function tooMuch(reading: StatementReading): void {
   const span = cursor.span;
   if (meant !== null) {
     mistakes.report('syntax', span, `${quoted(found)}? ${meant}`, [{ title: `Write ${meant}`, span, newText: meant }]);
-    reading.lost = true;
-    reading.broken = true;
+    lose(reading);
   } else if (cursor.isMark('{')) {
-    lose(reading, 'syntax', `\`${shape.keyword}\` has no block`, span);
+    fail(reading, 'syntax', `\`${shape.keyword}\` has no block`, span);
   } else if (!nameTakenFor(reading, fitting.flatMap(firstWords))) {
     const rest = 0 < fitting.length ? `; fits: ${allInWords(fitting)}` : `: \`${shape.keyword}\` is complete before it`;
-    lose(reading, 'syntax', `${quoted(cursor.word)} does not fit here${rest}`, span);
+    fail(reading, 'syntax', `${quoted(cursor.word)} does not fit here${rest}`, span);
   }
 }

@@ -6,7 +6,7 @@ import type { Part } from './grammar';
 import { quoted } from './mistakes';
 import { beginsNumber } from './numbers';
 import { readComma, readPoint } from './points';
-import { begins, decline, lastText, lose, nameTakenFor, type StatementReading } from './reading';
+import { begins, decline, lastText, fail, nameTakenFor, type StatementReading } from './reading';
 import { tooMuch } from './statementEnd';
 import { readCount, readNameOf, readQuantityOf, readRuleName, readStringOf, readWord, type QuantityPart } from './values';
 import { closest } from './words';
@@ -60,12 +60,12 @@ function readKeyword(reading: StatementReading, word: string): void {
   }
   if (closest(found, [word]) !== null && !fixedWords.has(found)) {
     const span = cursor.next();
-    if (!reading.lost) mistakes.report('syntax', span, `${quoted(found)}? \`${word}\` belongs here`, [{ title: `Write ${word}`, span, newText: word }]);
+    mistakes.report('syntax', span, `${quoted(found)}? \`${word}\` belongs here`, [{ title: `Write ${word}`, span, newText: word }]);
     reading.broken = true;
     return;
   }
   if (nameTakenFor(reading, [word])) return;
-  lose(reading, 'syntax', cursor.atEnd || cursor.isMark('{') ? `\`${word}\` is missing after ${quoted(lastText(cursor))}` : `\`${word}\` is missing between ${quoted(lastText(cursor))} and ${quoted(cursor.word)}`);
+  fail(reading, 'syntax', cursor.atEnd || cursor.isMark('{') ? `\`${word}\` is missing after ${quoted(lastText(cursor))}` : `\`${word}\` is missing between ${quoted(lastText(cursor))} and ${quoted(cursor.word)}`);
 }
 
 function readOptional(reading: StatementReading, part: Part & { readonly is: 'optional' }): void {
@@ -83,7 +83,7 @@ function readChoice(reading: StatementReading, part: Part & { readonly is: 'choi
   if (byWord !== undefined) return readParts(reading, byWord);
   const withQuantity = part.of.filter(([first]) => first!.is === 'quantity');
   if (withQuantity.length === 0) {
-    lose(reading, 'missing-value', `${quoted(lastText(cursor))} is followed by ${inWords(part)}`);
+    fail(reading, 'missing-value', `${quoted(lastText(cursor))} is followed by ${inWords(part)}`);
     return;
   }
   const firsts = withQuantity.map(([first]) => first as QuantityPart);
@@ -133,7 +133,7 @@ function readSuffixes(reading: StatementReading, part: Part & { readonly is: 'su
   }
   const needed = part.of.find(([first]) => part.needs !== null && firstWords(first!).includes(part.needs));
   if (needed === undefined || seen.has(needed) || nameTakenFor(reading, firstWords(part))) return;
-  lose(reading, 'missing-value', `${needed[1]!.is === 'quantity' ? needed[1]!.role : 'something'} is missing: ${needed.map(inWords).join(' and ')}`);
+  fail(reading, 'missing-value', `${needed[1]!.is === 'quantity' ? needed[1]!.role : 'something'} is missing: ${needed.map(inWords).join(' and ')}`);
 }
 
 /** Something stands between two suffixes: it is reported, and reading goes on at the next one of this line. */

@@ -19,11 +19,15 @@ export interface ToleranceReading {
   readonly end: number;
 }
 
-/** Null where no tolerance stands after `from`. */
-export function readTolerance(text: string, from: number, limit: number, of: TolerancedValue, mistakes: Mistakes): ToleranceReading | null {
+/** Where a plus-minus stands after `from`; null where none does. */
+export function toleranceAfter(text: string, from: number, limit: number): number | null {
   const start = passSpaces(text, from, limit);
-  const mark = start < limit ? plusMinusAt(text, start) : 0;
-  if (mark === 0) return null;
+  return start < limit && 0 < plusMinusAt(text, start) ? start : null;
+}
+
+/** `start`: of the plus-minus. */
+export function readTolerance(text: string, start: number, limit: number, of: TolerancedValue, mistakes: Mistakes): ToleranceReading {
+  const mark = plusMinusAt(text, start);
   const numberStart = passSpaces(text, start + mark, limit);
   const number = readNumber(text, numberStart, limit);
   if (number === null) {

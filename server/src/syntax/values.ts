@@ -4,11 +4,11 @@ import { unitSpelt } from '../units/spelling';
 import { isTypographicQuote } from './characters';
 import { fixedWords, inWords, nameInWords, quantityInWords } from './fits';
 import type { Part } from './grammar';
-import { quoted } from './mistakes';
+import { plainly, quoted } from './mistakes';
 import { readName, readString, readTypographicString } from './names';
 import { beginsNumber } from './numbers';
 import { readQuantity } from './quantities';
-import { lastText, lose, type StatementReading } from './reading';
+import { lastText, fail, lose, type StatementReading } from './reading';
 import type { QuantityValue } from './tree';
 import { closest } from './words';
 
@@ -37,19 +37,19 @@ function missingQuantity(reading: StatementReading, role: string, dimensions: re
     const name = reading.values.at(-1);
     const span = cursor.next();
     // `trace 0.2 mm`: the number was taken for the name, as the next word always is.
-    if (name?.kind === 'name' && !name.quoted && beginsNumber(name.name, 0)) lose(reading, 'missing-value', `a name is missing before ${quoted(`${name.name} ${found}`)}`, { start: name.span.start, end: span.end });
-    else lose(reading, 'missing-value', `a number is missing before ${quoted(found)}`, span);
+    if (name?.kind === 'name' && !name.quoted && beginsNumber(name.name, 0)) fail(reading, 'missing-value', `a name is missing before ${quoted(`${name.name} ${found}`)}`, { start: name.span.start, end: span.end });
+    else fail(reading, 'missing-value', `a number is missing before ${quoted(found)}`, span);
     return;
   }
   if (found !== '' && !fixedWords.has(found)) {
     const span = cursor.next();
-    lose(reading, 'syntax', `${quoted(found)} does not fit here; fits: ${fits}`, span);
+    fail(reading, 'syntax', `${quoted(found)} does not fit here; fits: ${fits}`, span);
     return;
   }
   const before = reading.values.at(-1);
   const named = before?.kind === 'name' && before.span.end === cursor.last.end;
-  if (named) lose(reading, 'missing-value', `${role} of ${quoted(before.name)} is missing: ${fits}`);
-  else lose(reading, 'missing-value', `${fits} is missing after ${quoted(lastText(cursor))}`);
+  if (named) fail(reading, 'missing-value', `${role} of ${plainly(before.name)} is missing: ${fits}`);
+  else fail(reading, 'missing-value', `${fits} is missing after ${quoted(lastText(cursor))}`);
 }
 
 export function readWord(reading: StatementReading, part: Part & { readonly is: 'word' }): void {
@@ -62,12 +62,12 @@ export function readWord(reading: StatementReading, part: Part & { readonly is: 
   const meant = found === null || fixedWords.has(found) ? null : closest(found, part.words);
   const isLastWord = found !== null && !fixedWords.has(found) && !beginsNumber(found, 0);
   if (meant === null && !isLastWord) {
-    lose(reading, 'missing-value', `${quoted(lastText(cursor))} is followed by ${inWords(part)}`);
+    fail(reading, 'missing-value', `${quoted(lastText(cursor))} is followed by ${inWords(part)}`);
     return;
   }
   const span = cursor.next();
   const offered = meant === null ? part.words : [meant];
-  if (!reading.lost) mistakes.report('syntax', span, meant === null ? `${quoted(found!)} does not fit here; fits: ${part.words.join(', ')}` : `${quoted(found!)}? ${meant}`, offered.map((word) => ({ title: `Write ${word}`, span, newText: word })));
+  mistakes.report('syntax', span, meant === null ? `${quoted(found!)} does not fit here; fits: ${part.words.join(', ')}` : `${quoted(found!)}? ${meant}`, offered.map((word) => ({ title: `Write ${word}`, span, newText: word })));
   reading.broken = true;
 }
 
@@ -86,7 +86,7 @@ export function readNameOf(reading: StatementReading, part: Part & { readonly is
   const { cursor, mistakes, shape } = reading;
   if (cursor.kind !== 'word' && cursor.kind !== 'string') {
     const fits = part.declares ? `the name of this ${shape.keyword}` : nameInWords(part.of);
-    lose(reading, 'missing-value', `${fits} is missing after ${quoted(lastText(cursor))}`);
+    fail(reading, 'missing-value', `${fits} is missing after ${quoted(lastText(cursor))}`);
     return;
   }
   const name = readName(cursor, mistakes, part);
@@ -102,15 +102,14 @@ export function readStringOf(reading: StatementReading, role: string): void {
     else reading.values.push({ kind: 'string', role, ...string });
   } else if (cursor.kind === 'word' && isTypographicQuote(cursor.text.charCodeAt(cursor.start))) {
     readTypographicString(cursor, mistakes);
-    // What follows a quote of the wrong kind may be read as a string by mistake: nothing more is said of this line.
-    reading.lost = true;
-    reading.broken = true;
+    // What follows a quote of the wrong kind may be read as a string by mistake: nothing more is said of this statement.
+    lose(reading);
   } else if (cursor.kind === 'word') {
     const word = cursor.word;
     const span = cursor.next();
-    lose(reading, 'syntax', `${quoted(word)} does not fit here; a text in quotes does: "${word.slice(0, 40).replaceAll('"', '""')}"`, span);
+    fail(reading, 'syntax', `${quoted(word)} does not fit here; a text in quotes does: "${word.slice(0, 40).replaceAll('"', '""')}"`, span);
   } else {
-    lose(reading, 'missing-value', `the ${role} is missing after ${quoted(lastText(cursor))}: a text in quotes`);
+    fail(reading, 'missing-value', `the ${role} is missing after ${quoted(lastText(cursor))}: a text in quotes`);
   }
 }
 
@@ -118,5 +117,5 @@ export function readRuleName(reading: StatementReading, role: string): void {
   const { cursor } = reading;
   const follows = cursor.isWord('on') || cursor.isWord('because');
   if (cursor.kind === 'word' && !follows) reading.values.push({ kind: 'word', role, word: cursor.word, span: cursor.next() });
-  else lose(reading, 'missing-value', 'the name of a rule is missing: `waive over-budget …`');
+  else fail(reading, 'missing-value', 'the name of a rule is missing: `waive over-budget …`');
 }

@@ -9,7 +9,7 @@ export function inSource(value: number, dimension: Dimension): string {
   const scales = sourceScales[dimension];
   // Three figures first: what rounds to 1 mm is written so, and not as 1000 um.
   const size = Math.abs(Number(value.toPrecision(3)));
-  const scale = (size === 0 ? scales.find((each) => each.size <= each.from) : scales.find((each) => each.from <= size * (1 + 1e-9))) ?? scales[scales.length - 1]!;
+  const scale = scales.find((each) => (size === 0 ? each.unit === 'mm' || each.size === 1 && dimension !== 'length' : each.from <= size * (1 + 1e-9))) ?? scales[scales.length - 1]!;
   return `${threeFigures(value / scale.size)}${scale.unit === '' ? '' : ` ${scale.unit}`}`;
 }
 

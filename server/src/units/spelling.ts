@@ -23,7 +23,7 @@ export interface WrittenNumber {
 
 /** Undefined where there is no such unit. */
 export function unitSpelt(spelling: string): Unit | undefined {
-  return units.get(equalCodePoints(spelling));
+  return units.get(spelling) ?? units.get(equalCodePoints(spelling));
 }
 
 /** Units of these dimensions that are this spelling but for the case, those in common use first; or of which it is only the prefix. */
