@@ -1,7 +1,7 @@
 /** A fix context over texts in memory, as the editor's session makes one over its documents. */
 import { evaluate } from '../../server/src/budget/evaluate';
 import { createSolveCache, type SolveCache } from '../../server/src/budget/solveCache';
-import { edited } from '../../server/src/fixes/edited';
+import { editedText } from '../../server/src/service/editedText';
 import type { Edit, FixContext } from '../../server/src/fixes/fix';
 import { evaluated, type Evaluated, type Texts } from './evaluated';
 
@@ -18,5 +18,5 @@ export function fixing(texts: Texts, cache: SolveCache = createSolveCache()): Ev
 }
 
 export function withEdits(texts: Texts, edits: readonly Edit[]): Texts {
-  return new Map([...texts].map(([path, text]) => [path, edited(text, edits.filter((edit) => edit.path === path))]));
+  return new Map([...texts].map(([path, text]) => [path, editedText(text, edits.filter((edit) => edit.path === path))]));
 }
