@@ -99,7 +99,7 @@ function readRepeat(reading: StatementReading, parts: readonly Part[]): void {
   readParts(reading, parts.filter((part) => part.is !== 'optional-comma'));
   const separated = parts.some((part) => part.is === 'optional-comma');
   const subject = parts.find((part) => part.is !== 'optional-comma')!;
-  while (begins(reading, subject) || (separated && cursor.isMark(','))) {
+  while (!reading.lost && (begins(reading, subject) || (separated && cursor.isMark(',')))) {
     const before = cursor.start;
     readParts(reading, parts);
     if (cursor.start === before) return;
