@@ -17,7 +17,7 @@
 import { epsilon0, mu0 } from '../../units/constants';
 import { inverseSpd } from '../../numeric/inverseSpd';
 import { conductorSides, type Trapezoid } from './basis/conductorSides';
-import { sideOrders } from './basis/orders';
+import { sideOrders, type Surroundings } from './basis/orders';
 import type { Side } from './basis/side';
 import { errorBars } from './errorBar';
 import { chargeSolution, type ChargeSolution } from './galerkin/chargeSolution';
@@ -96,17 +96,21 @@ function openConstant(conductors: readonly Trapezoid[], { layers }: Stack): numb
   return (4 + Math.max(0, Math.log(extent))) / smallest;
 }
 
-function surroundingsOf(own: Trapezoid, all: readonly Trapezoid[], { layers, planeBelow, planeAbove }: Stack) {
+function surroundingsOf(own: Trapezoid, all: readonly Trapezoid[], { layers, planeBelow, planeAbove }: Stack): Surroundings {
   let gap = Infinity;
+  let facing = Infinity;
   for (const other of all) {
     if (other === own) continue;
     const across = Math.max(other.x - own.x - own.width, own.x - other.x - other.width, 0);
     const up = Math.max(other.bottom - own.top, own.bottom - other.top, 0);
     gap = Math.min(gap, Math.hypot(across, up));
+    // Beside the face by less than the distance in front of it still bends the charge there.
+    if (0 < up && across < up) facing = Math.min(facing, up);
   }
   const below = planeBelow ? own.bottom - layers[0].bottom : Infinity;
   const above = planeAbove ? layers[layers.length - 1].top - own.top : Infinity;
-  return { width: own.width, height: own.top - own.bottom, gap, plane: Math.min(below, above) };
+  const depth = Math.min(below, above, facing);
+  return { width: own.width, height: own.top - own.bottom, gap, depth, facesConductor: facing < Infinity };
 }
 
 function scaled({ fine, coarse, ...rest }: ChargeSolution, factor: number): ChargeSolution {

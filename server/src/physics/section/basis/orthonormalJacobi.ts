@@ -7,7 +7,7 @@
  * Range     both exponents above -1
  */
 /** Degrees 0 … polynomialLimit - 1 are at hand on every side. */
-export const polynomialLimit = 20;
+export const polynomialLimit = 16;
 
 export interface Recurrence {
   readonly start: number;

@@ -13,10 +13,10 @@
 import { gaussJacobi } from '../../../numeric/gaussJacobi';
 import { logRule } from './logRule';
 import { polynomialLimit, writePolynomials } from './orthonormalJacobi';
-import { partRule } from './partRule';
+import { partRule, type PartRule } from './partRule';
 import type { SideBasis } from './sideBasis';
 
-const points = 24;
+const points = 20;
 
 export function selfTable(basis: SideBasis): Float64Array {
   const size = polynomialLimit;
@@ -78,47 +78,58 @@ function addHalfOnItself(basis: SideBasis, parity: 1 | -1, table: Float64Array):
 
 /** u < 0 < v and v < 0 < u: -ln(|u| + |v|), singular where both vanish. */
 function addHalfOnOther(basis: SideBasis, table: Float64Array): void {
+  addMeetingQuarters(basis, table);
+  // Parts that do not meet: plain product rules, the ends' powers in their weights.
+  const [first, second, third, fourth] = [0, 1, 2, 3].map((index) => partRule(basis, 2, index, points));
+  for (const [left, right] of [[first, third], [first, fourth], [second, fourth]]) addParts(left, right, table);
+}
+
+/** u in [-1/2, 0], v in [0, 1/2]: the larger of |u|, |v| is r, the smaller r s. */
+function addMeetingQuarters({ start, end, total, recurrence }: SideBasis, table: Float64Array): void {
   const size = polynomialLimit;
-  const { start, end, total, recurrence } = basis;
-  const weightedAt = (u: number, weight: number, values: Float64Array) =>
-    writePolynomials(recurrence, u, (weight * (1 + u) ** start * (1 - u) ** end) / total, values, 0, size);
-  const left = new Float64Array(size);
-  const right = new Float64Array(size);
-  const add = (value: number) => {
-    for (let m = 0; m < size; m += 1) {
-      for (let n = 0; n < size; n += 1) {
-        table[m * size + n] += value * left[m] * right[n];
-        table[n * size + m] += value * left[m] * right[n];
-      }
-    }
-  };
   const radial = logRule(points, 1);
   const angular = gaussJacobi(points, 0, 0);
-  for (let i = 0; i < points; i += 1) {
-    const r = radial.nodes[i] / 2;
-    for (let k = 0; k < points; k += 1) {
-      const s = (1 + angular.nodes[k]) / 2;
-      const weight = angular.weights[k] / 8;
-      const value = radial.logWeights[i] + radial.weights[i] * (Math.LN2 - Math.log1p(s));
-      for (const swapped of [false, true]) {
-        weightedAt(swapped ? -r * s : -r, 1, left);
-        weightedAt(swapped ? r : r * s, 1, right);
-        add(weight * value);
+  const values = new Float64Array(size);
+  const outer = new Float64Array(size);
+  const inner = new Float64Array(size);
+  const write = (u: number, into: Float64Array) => writePolynomials(recurrence, u, ((1 + u) ** start * (1 - u) ** end) / total, into, 0, size);
+  for (const side of [-1, 1]) {
+    for (let i = 0; i < points; i += 1) {
+      const r = radial.nodes[i] / 2;
+      write(side * r, outer);
+      inner.fill(0);
+      for (let k = 0; k < points; k += 1) {
+        const s = (1 + angular.nodes[k]) / 2;
+        const value = (angular.weights[k] / 8) * (radial.logWeights[i] + radial.weights[i] * (Math.LN2 - Math.log1p(s)));
+        write(-side * r * s, values);
+        for (let n = 0; n < size; n += 1) inner[n] += value * values[n];
       }
+      addBothWays(outer, inner, table);
     }
   }
-  // The outer halves meet nothing: plain product rules, the end's power in the weight.
-  const outerLeft = partRule(basis, 2, 0, points);
-  const outerRight = partRule(basis, 2, 3, points);
-  const innerLeft = partRule(basis, 2, 1, points);
-  const innerRight = partRule(basis, 2, 2, points);
-  for (const [a, b] of [[outerLeft, innerRight], [outerLeft, outerRight], [innerLeft, outerRight]]) {
-    for (let f = 0; f < a.count; f += 1) {
-      for (let g = 0; g < b.count; g += 1) {
-        left.set(a.weighted.subarray(f * size, (f + 1) * size));
-        right.set(b.weighted.subarray(g * size, (g + 1) * size));
-        add(-Math.log(2 * (b.t[g] - a.t[f])));
-      }
+}
+
+function addParts(left: PartRule, right: PartRule, table: Float64Array): void {
+  const size = polynomialLimit;
+  const inner = new Float64Array(size);
+  for (let f = 0; f < left.count; f += 1) {
+    inner.fill(0);
+    for (let g = 0; g < right.count; g += 1) {
+      const value = -Math.log(2 * (right.t[g] - left.t[f]));
+      for (let n = 0; n < size; n += 1) inner[n] += value * right.weighted[g * size + n];
+    }
+    addBothWays(left.weighted.subarray(f * size, (f + 1) * size), inner, table);
+  }
+}
+
+/** outer on u and inner on v, and exchanged. */
+function addBothWays(outer: Float64Array, inner: Float64Array, table: Float64Array): void {
+  const size = polynomialLimit;
+  for (let m = 0; m < size; m += 1) {
+    for (let n = 0; n < size; n += 1) {
+      const value = outer[m] * inner[n];
+      table[m * size + n] += value;
+      table[n * size + m] += value;
     }
   }
 }

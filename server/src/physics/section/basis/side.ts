@@ -1,12 +1,7 @@
 /**
  * A straight side of a conductor, or a part of one, with the charge series it carries.
  *
- * Lengths are in the unit of the solve. Sides are numbered through the whole section; the unknowns are laid out
- * so that the highest polynomial of every side comes after all the others:
- *
- *   [ side 0: m = 0 … order-2 | side 1: m = 0 … order-2 | … ][ side 0: m = order-1 | side 1: m = order-1 | … ]
- *
- * One factorisation then holds the answer with one polynomial less on every side as its leading part.
+ * Lengths are in the unit of the solve.
  */
 import type { SideBasis } from './sideBasis';
 
@@ -34,11 +29,5 @@ export interface SidePoints {
 
 /** The places of rule nodes `t` on a side. */
 export function pointsOn({ x0, y0, x1, y1 }: Segment, t: Float64Array): SidePoints {
-  const x = new Float64Array(t.length);
-  const y = new Float64Array(t.length);
-  for (let i = 0; i < t.length; i += 1) {
-    x[i] = x0 + (x1 - x0) * t[i];
-    y[i] = y0 + (y1 - y0) * t[i];
-  }
-  return { x, y };
+  return { x: t.map((at) => x0 + (x1 - x0) * at), y: t.map((at) => y0 + (y1 - y0) * at) };
 }

@@ -9,39 +9,66 @@
  *
  * Source    hierarchical subdivision and Gauss-Jacobi rules, textbook; accuracy measured in the test
  */
-import { pointsOn, type Segment, type Side } from '../basis/side';
-import type { PartRule } from '../basis/partRule';
 import { polynomialLimit } from '../basis/orthonormalJacobi';
-import type { Image } from '../kernel/layeredKernel';
+import type { PartRule } from '../basis/partRule';
+import type { Segment, Side } from '../basis/side';
+import type { Image, KernelRest } from '../kernel/layeredKernel';
 import { addCorner } from './cornerBlock';
+import { addLogarithms, addRest, finishPairs, startPairs } from './pointPairs';
 import { segmentDistance } from './segmentDistance';
 
-export interface PairKernel {
-  /** Of the second side, in each of which the kernel may be singular. */
-  readonly images: readonly Image[];
-  /** `factor` ln r of the only image, which may share a corner with the first side; otherwise the kernel is finite. */
-  readonly logarithm: number | null;
-  readonly value: (dx: number, y: number, ySource: number) => number;
-}
+/** `factor` ln r from one image of the second side, which may share a corner with the first; or what is finite everywhere. */
+export type PairKernel =
+  | { readonly factor: number; readonly image: Image }
+  | { readonly rest: KernelRest };
 
-const farRatio = 0.6;
+export const farRatio = 0.6;
 /** Halving stops here: parts of a millionth of a side. What is nearer than that has been refused before. */
 const deepest = 20;
 
 /** Adds to `block`, first.order × second.order. */
 export function addPairIntegral(first: Side, second: Side, kernel: PairKernel, block: Float64Array): void {
-  const pair: Pair = { first, second, kernel, block, corner: kernel.logarithm === null ? null : cornerOf(first, imageOf(second, kernel.images[0])) };
-  visit(pair, 0, 0, 0, 0);
+  const corner = 'rest' in kernel ? null : cornerOf(first, imageOf(second, kernel.image));
+  const images = imagesOf(kernel);
+  visit({ first, second, kernel, images, block, corner }, 0, 0, 0, 0);
 }
 
-export function imageOf(segment: Segment, { sign, shift }: Image): Segment {
-  return { x0: segment.x0, y0: sign * segment.y0 + shift, x1: segment.x1, y1: sign * segment.y1 + shift };
+export const imagesOf = (kernel: PairKernel): readonly Image[] => ('rest' in kernel ? kernel.rest.images : [kernel.image]);
+
+/** Smallest distance of the first segment from any image of the second. */
+export function distanceToImages(first: Segment, second: Segment, images: readonly Image[]): number {
+  let distance = Infinity;
+  for (const image of images) distance = Math.min(distance, segmentDistance(first, writeImage(second, image, imaged)));
+  return distance;
 }
+
+interface MutableSegment {
+  x0: number;
+  y0: number;
+  x1: number;
+  y1: number;
+}
+
+const blank = (): MutableSegment => ({ x0: 0, y0: 0, x1: 0, y1: 0 });
+const imaged = blank();
+const firstPart = blank();
+const secondPart = blank();
+
+function writeImage({ x0, y0, x1, y1 }: Segment, { sign, shift }: Image, into: MutableSegment): MutableSegment {
+  into.x0 = x0;
+  into.y0 = sign * y0 + shift;
+  into.x1 = x1;
+  into.y1 = sign * y1 + shift;
+  return into;
+}
+
+export const imageOf = (segment: Segment, image: Image): Segment => writeImage(segment, image, blank());
 
 interface Pair {
   readonly first: Side;
   readonly second: Side;
   readonly kernel: PairKernel;
+  readonly images: readonly Image[];
   readonly block: Float64Array;
   readonly corner: Corner | null;
 }
@@ -54,14 +81,11 @@ interface Corner {
 }
 
 function visit(pair: Pair, firstLevel: number, firstIndex: number, secondLevel: number, secondIndex: number): void {
-  const { first, second, kernel } = pair;
-  const a = partOf(first, firstLevel, firstIndex);
-  const b = partOf(second, secondLevel, secondIndex);
+  const { first, second } = pair;
   const firstLength = first.length * 2 ** -firstLevel;
   const secondLength = second.length * 2 ** -secondLevel;
   const longer = Math.max(firstLength, secondLength);
-  let distance = Infinity;
-  for (const image of kernel.images) distance = Math.min(distance, segmentDistance(a, imageOf(b, image)));
+  const distance = distanceToImages(writePart(first, firstLevel, firstIndex, firstPart), writePart(second, secondLevel, secondIndex, secondPart), pair.images);
   if (farRatio * longer <= distance) return addProduct(pair, firstLevel, firstIndex, secondLevel, secondIndex);
   const { corner } = pair;
   if (corner !== null && 0 < firstLevel && 0 < secondLevel && longer <= 2 * Math.min(firstLength, secondLength)
@@ -78,48 +102,25 @@ function visit(pair: Pair, firstLevel: number, firstIndex: number, secondLevel: 
   }
 }
 
-function partOf({ x0, y0, x1, y1 }: Segment, level: number, index: number): Segment {
-  const from = index * 2 ** -level;
-  const to = (index + 1) * 2 ** -level;
-  return { x0: x0 + (x1 - x0) * from, y0: y0 + (y1 - y0) * from, x1: x0 + (x1 - x0) * to, y1: y0 + (y1 - y0) * to };
+function writePart({ x0, y0, x1, y1 }: Segment, level: number, index: number, into: MutableSegment): MutableSegment {
+  const size = 2 ** -level;
+  const from = index * size;
+  const to = from + size;
+  into.x0 = x0 + (x1 - x0) * from;
+  into.y0 = y0 + (y1 - y0) * from;
+  into.x1 = x0 + (x1 - x0) * to;
+  into.y1 = y0 + (y1 - y0) * to;
+  return into;
 }
 
-const ruleOf = ({ basis, order }: Side, level: number, index: number): PartRule => (level === 0 ? basis.whole(Math.min(order + 8, 24)) : basis.part(level, index));
+const ruleOf = ({ basis, order }: Side, level: number, index: number): PartRule => (level === 0 ? basis.whole(order + 8) : basis.part(level, index));
 
 function addProduct({ first, second, kernel, block }: Pair, firstLevel: number, firstIndex: number, secondLevel: number, secondIndex: number): void {
-  const firstRule = ruleOf(first, firstLevel, firstIndex);
-  const secondRule = ruleOf(second, secondLevel, secondIndex);
-  const p = pointsOn(first, firstRule.t);
-  const q = pointsOn(second, secondRule.t);
-  if (kernel.logarithm === null) {
-    addProductOf(firstRule, secondRule, first.order, second.order, block, (i, j) => kernel.value(p.x[i] - q.x[j], p.y[i], q.y[j]));
-  } else {
-    const { sign, shift } = kernel.images[0];
-    const half = kernel.logarithm / 2;
-    addProductOf(firstRule, secondRule, first.order, second.order, block, (i, j) => {
-      const dx = p.x[i] - q.x[j];
-      const dy = p.y[i] - sign * q.y[j] - shift;
-      return half * Math.log(dx * dx + dy * dy);
-    });
-  }
-}
-
-const row = new Float64Array(polynomialLimit);
-
-/** block[m, n] += sum over i, j of first[i, m] value(i, j) second[j, n]. */
-export function addProductOf(first: PartRule, second: PartRule, rows: number, columns: number, block: Float64Array, value: (i: number, j: number) => number): void {
-  for (let i = 0; i < first.count; i += 1) {
-    for (let n = 0; n < columns; n += 1) row[n] = 0;
-    for (let j = 0; j < second.count; j += 1) {
-      const v = value(i, j);
-      const at = j * polynomialLimit;
-      for (let n = 0; n < columns; n += 1) row[n] += v * second.weighted[at + n];
-    }
-    for (let m = 0; m < rows; m += 1) {
-      const weight = first.weighted[i * polynomialLimit + m];
-      for (let n = 0; n < columns; n += 1) block[m * columns + n] += weight * row[n];
-    }
-  }
+  const rules = { first: ruleOf(first, firstLevel, firstIndex), second: ruleOf(second, secondLevel, secondIndex) };
+  startPairs(rules, first, second);
+  if ('rest' in kernel) addRest(rules, kernel.rest);
+  else addLogarithms(rules, kernel.factor, kernel.image);
+  finishPairs(rules, { rows: first.order, columns: second.order, stride: second.order }, block);
 }
 
 const meeting = new Float64Array(polynomialLimit * polynomialLimit);
@@ -133,7 +134,7 @@ function addMeeting({ first, second, kernel, block }: Pair, { firstAtEnd, second
     { basis: secondAtEnd ? second.basis.reversed() : second.basis, level: secondLevel, length: second.length * 2 ** -secondLevel },
     cosine, rows, columns, meeting,
   );
-  const factor = -(kernel.logarithm ?? 0);
+  const factor = 'rest' in kernel ? 0 : -kernel.factor;
   for (let m = 0; m < rows; m += 1) {
     for (let n = 0; n < columns; n += 1) {
       // Run through backwards, p_m changes its sign with its parity.

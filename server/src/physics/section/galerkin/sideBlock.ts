@@ -7,14 +7,13 @@
  *           that the mirror's factor simply adds to the direct one
  */
 import { polynomialLimit } from '../basis/orthonormalJacobi';
-import { pointsOn, type Side } from '../basis/side';
-import { restValue, type Kernel, type Mirror } from '../kernel/layeredKernel';
-import { addPairIntegral, addProductOf, imageOf, type PairKernel } from './pairIntegral';
-import { segmentDistance } from './segmentDistance';
+import type { Side } from '../basis/side';
+import type { Kernel, Mirror } from '../kernel/layeredKernel';
+import { addPairIntegral, distanceToImages, farRatio, imagesOf, type PairKernel } from './pairIntegral';
+import { addLogarithms, addRest, finishPairs, startPairs } from './pointPairs';
 
 /** Sides closer to an interface than this part of their length lie in it. */
 const contact = 1e-9;
-const farRatio = 0.6;
 const identity = { sign: 1, shift: 0 } as const;
 
 /** Overwrites the first upper.order × lower.order entries of `block`; `kernel` is that of the sides' layers, `upper` in the higher one. */
@@ -26,23 +25,22 @@ export function writeSideBlock(upper: Side, lower: Side, kernel: Kernel, block: 
     if (liesIn(upper, mirror.at) || liesIn(lower, mirror.at)) direct += mirror.factor;
     else apart.push(mirror);
   }
+  const parts: PairKernel[] = apart.map(({ factor, at }) => ({ factor: -factor, image: { sign: -1, shift: 2 * at } }));
+  if (upper === lower) addSelf(upper, direct, block);
+  else if (direct !== 0) parts.push({ factor: -direct, image: identity });
+  if (kernel.rest !== null) parts.push({ rest: kernel.rest });
+  const longer = Math.max(upper.length, lower.length);
   const far: PairKernel[] = [];
   let nearest = Infinity;
-  const longer = Math.max(upper.length, lower.length);
-  const place = (part: PairKernel) => {
-    let distance = Infinity;
-    for (const image of part.images) distance = Math.min(distance, segmentDistance(upper, imageOf(lower, image)));
-    if (distance < farRatio * longer) addPairIntegral(upper, lower, part, block);
-    else {
+  for (const part of parts) {
+    const distance = distanceToImages(upper, lower, imagesOf(part));
+    if (distance < farRatio * longer) {
+      addPairIntegral(upper, lower, part, block);
+    } else {
       far.push(part);
       nearest = Math.min(nearest, distance);
     }
-  };
-  if (upper === lower) addSelf(upper, direct, block);
-  else if (direct !== 0) place({ images: [identity], logarithm: -direct, value: () => 0 });
-  for (const { factor, at } of apart) place({ images: [{ sign: -1, shift: 2 * at }], logarithm: -factor, value: () => 0 });
-  const { rest } = kernel;
-  if (rest !== null) place({ images: rest.images, logarithm: null, value: (dx, y, ySource) => restValue(rest, dx, y, ySource) });
+  }
   if (0 < far.length) addFar(upper, lower, far, nearest, block);
 }
 
@@ -58,26 +56,20 @@ function addSelf({ basis, order, length }: Side, factor: number, block: Float64A
 }
 
 function addFar(upper: Side, lower: Side, parts: readonly PairKernel[], distance: number, block: Float64Array): void {
-  const upperRule = upper.basis.whole(farPoints(distance / upper.length, upper.order));
-  const lowerRule = lower.basis.whole(farPoints(distance / lower.length, lower.order));
-  const p = pointsOn(upper, upperRule.t);
-  const q = pointsOn(lower, lowerRule.t);
-  addProductOf(upperRule, lowerRule, upper.order, lower.order, block, (i, j) => {
-    const dx = p.x[i] - q.x[j];
-    let sum = 0;
-    for (const { logarithm, images, value } of parts) {
-      if (logarithm === null) sum += value(dx, p.y[i], q.y[j]);
-      else {
-        const dy = p.y[i] - images[0].sign * q.y[j] - images[0].shift;
-        sum += (logarithm / 2) * Math.log(dx * dx + dy * dy);
-      }
-    }
-    return sum;
-  });
+  const rules = { first: upper.basis.whole(farPoints(distance / upper.length)), second: lower.basis.whole(farPoints(distance / lower.length)) };
+  startPairs(rules, upper, lower);
+  for (const part of parts) {
+    if ('rest' in part) addRest(rules, part.rest);
+    else addLogarithms(rules, part.factor, part.image);
+  }
+  // Polynomials that the rule cannot tell from lower ones see nothing of a kernel so smooth: their entries stay zero.
+  finishPairs(rules, { rows: Math.min(upper.order, rules.first.count), columns: Math.min(lower.order, rules.second.count), stride: lower.order }, block);
 }
 
-/** Nodes that leave 1e-8: the Gauss error is that of Bernstein's ellipse through the nearest singularity. */
-function farPoints(relative: number, order: number): number {
-  const ellipse = Math.log(2 * relative + Math.sqrt(4 * relative * relative + 1));
-  return Math.max(Math.ceil(order / 2) + 1, Math.ceil(9.2 / ellipse + order / 4));
+/**
+ * Nodes for a kernel whose nearest singularity is `relative` side lengths away: its polynomial content falls as
+ * ellipse^-degree (Bernstein), and with n nodes the highest polynomial kept meets an error of ellipse^-(n + 1).
+ */
+function farPoints(relative: number): number {
+  return Math.ceil(10 / Math.log(2 * relative + Math.sqrt(4 * relative * relative + 1))) + 1;
 }

@@ -69,8 +69,8 @@ export class RemainderTable {
     return fr;
   }
 
-  /** F' at z: its real part is the derivative of Re F along re, minus its imaginary part that along im. */
-  derivative(re: number, im: number): Complex {
+  /** Rate of change of Re F along a step of z = a + i b. */
+  slope(re: number, im: number, a: number, b: number): number {
     const cell = this.cellAt(re, im);
     const zr = re - cell[stride];
     const zi = im - cell[stride + 1];
@@ -81,7 +81,7 @@ export class RemainderTable {
       fi = fr * zi + fi * zr + n * cell[2 * n + 1];
       fr = next;
     }
-    return complex(fr, fi);
+    return fr * a - fi * b;
   }
 
   private cellAt(re: number, im: number): Float64Array {
