@@ -17,16 +17,16 @@
 import { luInOrder, solveUnitLower, solveUpperTransposed } from '../../../numeric/luInOrder';
 import { polynomialLimit, writePolynomials } from '../basis/orthonormalJacobi';
 import type { Side } from '../basis/side';
-import { sideBasis } from '../basis/sideBasis';
 import type { ChargeSolution } from '../galerkin/chargeSolution';
 import { writeSideBlock } from '../galerkin/sideBlock';
 import type { Kernel } from '../kernel/layeredKernel';
-import { addFluxBlock } from './fluxBlock';
+import { addFluxBlock, plainBasis } from './fluxBlock';
 
 export interface FilmProblem {
   readonly sides: readonly Side[];
   /** Of the matrix asked for, in order; other conductors are at zero potential. */
   readonly conductors: readonly number[];
+  /** From left to right along the film's face; the outermost two carry what little lies farthest out. */
   readonly panels: readonly Side[];
   readonly kernel: (lower: number, upper: number) => Kernel;
   /** Of the film, and of what lies over it. */
@@ -40,7 +40,7 @@ export interface FilmProblem {
 export function filmCharge(problem: FilmProblem): ChargeSolution | null {
   const { sides, panels, conductors, constant } = problem;
   const all = [...sides, ...panels];
-  const layout = layOut(all);
+  const layout = layOut(sides, panels);
   const matrix = assembled(problem, all, layout);
   const { unknowns, coarse, start } = layout;
   if (constant !== null) {
@@ -66,27 +66,38 @@ export function filmCharge(problem: FilmProblem): ChargeSolution | null {
 
 interface Layout {
   readonly unknowns: number;
-  /** Unknowns without the highest polynomial of every side and panel. */
+  /** Unknowns of the coarser system, which come first. */
   readonly coarse: number;
+  /** Of each side and panel: its unknowns in the coarser system, where they start, and where the others do. */
+  readonly kept: Int32Array;
   readonly start: Int32Array;
+  readonly rest: Int32Array;
 }
 
-/** As that of chargeSolution.ts: the highest polynomials last. */
-function layOut(all: readonly Side[]): Layout {
+/** The coarser system lacks the highest polynomial of every side and panel, and the outermost panels: both must matter little. */
+function layOut(sides: readonly Side[], panels: readonly Side[]): Layout {
+  const all = [...sides, ...panels];
+  const kept = Int32Array.from(all, ({ order }, s) => (s === sides.length || s === all.length - 1 && sides.length < s ? 0 : order - 1));
   const start = new Int32Array(all.length);
-  let coarse = 0;
-  all.forEach(({ order }, s) => {
-    start[s] = coarse;
-    coarse += order - 1;
+  const rest = new Int32Array(all.length);
+  let at = 0;
+  all.forEach((_, s) => {
+    start[s] = at;
+    at += kept[s];
   });
-  return { unknowns: coarse + all.length, coarse, start };
+  const coarse = at;
+  all.forEach(({ order }, s) => {
+    rest[s] = at;
+    at += order - kept[s];
+  });
+  return { unknowns: at, coarse, kept, start, rest };
 }
 
 const block = new Float64Array(polynomialLimit * polynomialLimit);
 
-function assembled({ sides, panels, kernel, permittivity, outside }: FilmProblem, all: readonly Side[], { unknowns, coarse, start }: Layout): Float64Array {
+function assembled({ sides, panels, kernel, permittivity, outside }: FilmProblem, all: readonly Side[], { unknowns, kept, start, rest }: Layout): Float64Array {
   const matrix = new Float64Array(unknowns * unknowns);
-  const place = (s: number, m: number) => (m < all[s].order - 1 ? start[s] + m : coarse + s);
+  const place = (s: number, m: number) => (m < kept[s] ? start[s] + m : rest[s] + m - kept[s]);
   const put = (row: number, column: number, transposed: boolean) => {
     const rows = all[row].order;
     const columns = all[column].order;
@@ -120,7 +131,7 @@ function assembled({ sides, panels, kernel, permittivity, outside }: FilmProblem
 /** pi s, tested with the Legendre polynomials. */
 function addOwnCharge({ basis, order }: Side): void {
   const rule = basis.whole(order);
-  const legendre = sideBasis(0, 0);
+  const legendre = plainBasis();
   const values = new Float64Array(order);
   for (let g = 0; g < rule.count; g += 1) {
     writePolynomials(legendre.recurrence, 2 * rule.t[g] - 1, Math.PI, values, 0, order);
