@@ -59,12 +59,14 @@ export interface Coupling {
   readonly nearEnd: Voltage;
   readonly farEnd: Voltage;
   readonly atReceiver: Voltage;
+  /** What the victim's `band` leaves of the receiver's peak, signed; null where it states none, or tolerates no peak. */
+  readonly inBand: Voltage | null;
   readonly peakTime: Time;
   readonly widthHalf: Time;
   /** Shares of the receiver's peak by the short-line model, signed. */
   readonly capacitivePart: Voltage;
   readonly inductivePart: Voltage;
-  /** Absolute, V: of the receiver's peak. */
+  /** Absolute, V: of the receiver's peak as it counts in the budget. */
   readonly errorBar: Voltage;
   /** Over the stated tolerances; null until they are carried through. */
   readonly bounds: readonly [Voltage, Voltage] | null;

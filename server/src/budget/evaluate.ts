@@ -1,0 +1,50 @@
+/**
+ * What the physics says of a project: each run, then each receiver's budget. A pure function of the project;
+ * the cache only spares what was solved before, and counts what was not.
+ */
+import type { Project, Run } from '../board/model';
+import { budgetsOf } from './budgets';
+import { assumptionsFor } from './ends';
+import { isReceiver, rolesOf, type Role, type Roles } from './roles';
+import type { AssumedEnd, Evaluation } from './results';
+import { runOutcome, type RunOutcome } from './runOutcome';
+import { runTraces } from './runMatrices';
+import type { SolveCache } from './solveCache';
+
+export function evaluate(project: Project, cache: SolveCache): Evaluation {
+  const before = cache.work();
+  const roles = rolesOf(project);
+  const outcomes = project.runs.map((run) => guarded(run, roles, cache));
+  const budgets = budgetsOf(project, roles, outcomes);
+  const after = cache.work();
+  return {
+    project,
+    runs: outcomes.map(({ result }) => result),
+    budgets,
+    limits: outcomes.flatMap(({ limits }) => limits),
+    assumedEnds: assumedEnds(outcomes),
+    work: { sectionsSolved: after.sectionsSolved - before.sectionsSolved, linesSolved: after.linesSolved - before.linesSolved },
+  };
+}
+
+/** A bug, or numbers beyond what doubles hold, in one run leaves the others standing, and is said where it is. */
+function guarded(run: Run, roles: Roles, cache: SolveCache): RunOutcome {
+  try {
+    return runOutcome(run, roles, cache);
+  } catch (error) {
+    const what = error instanceof Error ? error.message : String(error);
+    const traces = runTraces(run);
+    const unaccounted = { what: `run ${run.name} is not counted: its computation failed (${what})`, place: run.place };
+    return {
+      result: { run, traces, matrices: null, refusal: { reason: 'not-solved', what }, impedance: [], delay: [], couplings: [], looseGuards: [] },
+      lacking: traces.filter(({ net }) => isReceiver(net)).map(({ net }) => ({ victim: net, unaccounted })),
+      limits: [{ subject: { kind: 'run', name: run.name }, place: run.place, message: `run ${run.name} has no numbers: its computation failed (${what})` }],
+      coupled: [],
+    };
+  }
+}
+
+function assumedEnds(outcomes: readonly RunOutcome[]): readonly AssumedEnd[] {
+  const roles = new Set<Role>(outcomes.flatMap(({ coupled }) => coupled));
+  return [...roles].flatMap((role) => assumptionsFor(role).map((assumption) => ({ net: role.net, ...assumption })));
+}

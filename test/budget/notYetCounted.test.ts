@@ -1,0 +1,79 @@
+import { describe, it } from 'node:test';
+import assert from 'node:assert/strict';
+import { evaluate } from '../../server/src/budget/evaluate';
+import { createSolveCache } from '../../server/src/budget/solveCache';
+import { budgetOf, evaluated, microstrip } from './board';
+import { projectOf } from './project';
+
+const receiver = 'net V { source 100 ohm; load 10 kohm; tolerates 1 V peak }\n';
+const beside = (net: string) => `run r on TOP for 30 mm { trace ${net} 0.2 mm; gap 0.3 mm; trace V 0.15 mm }\n`;
+
+const lacks = (text: string, name = 'V') => budgetOf(evaluated(microstrip + receiver + text), name).unaccounted.map(({ what }) => what);
+
+describe('what a budget says is not yet counted', () => {
+  it('is nothing for a source with an edge', () => {
+    assert.deepEqual(lacks(`net A { swing 3 V; rise 1 ns; source 50 ohm; load 50 ohm }\n${beside('A')}`), []);
+  });
+
+  it('names sines, currents and pairs beside the receiver', () => {
+    assert.deepEqual(lacks(`net M { sine 230 V rms at 50 Hz; source 1 ohm; load 50 ohm }\n${beside('M')}`), ['the sine of M in run r is not yet counted']);
+    assert.deepEqual(lacks(`net M { swing 3 V; rise 1 ns; current 1 A rise 40 ns; source 1 ohm; load 50 ohm }\n${beside('M')}`), ['the current of M in run r is not yet counted']);
+    assert.deepEqual(lacks(`net P { source 50 ohm }\nnet N { source 50 ohm }\npair D { plus P; minus N; swing 1 V; rise 1 ns; load 50 ohm }\n${beside('P')}`), ['pair D in run r is not yet counted']);
+  });
+
+  it('names links from a source, and no others', () => {
+    const nets = 'net COIL { swing 12 V; rise 1 us; source 1 ohm; load 50 ohm }\nnet QUIET { source 1 ohm }\n';
+    assert.deepEqual(lacks(`${nets}link body { between COIL and V; capacitance 0.8 pF }\nlink other { between V and QUIET; mutual 3 nH }`), ['link body is not yet counted']);
+  });
+
+  it('names the loops that carry into those that sense, fields, and the shield that would act on them', () => {
+    const loops = `net W { swing 5 V; rise 10 ns; source 5 ohm; load 50 ohm }
+      loop out on TOP { carries W 1 A; rectangle 10 mm by 5 mm; strip 1 mm }
+      loop in on TOP { senses V; rectangle 8 mm by 2 mm at (20 mm, 0 mm); strip 0.3 mm }`;
+    assert.deepEqual(lacks(loops), ['loop out is not yet counted']);
+    const field = 'ambient radio { field 10 V/m from 80 MHz to 1 GHz }\nshield lid { covers V; sheet tin 0.2 mm; slot 5 mm; grounded }';
+    assert.deepEqual(lacks(`${loops}\n${field}`), ['loop out is not yet counted', 'ambient radio is not yet counted', 'shield lid is not yet counted']);
+    // Outside any loop and run there is nothing for a field or a shield to act on.
+    assert.deepEqual(lacks(field), []);
+  });
+
+  it('names a return that the receiver shares with a source', () => {
+    const ground = 'return ground { strip 30 mm by 1.5 mm on TOP; carries W; refers V }\n';
+    assert.deepEqual(lacks(`net W { swing 5 V; rise 10 ns; source 5 ohm; load 50 ohm }\n${ground}`), ['return ground is not yet counted']);
+    assert.deepEqual(lacks(`net W { source 5 ohm }\n${ground}`), []);
+  });
+
+  it('names its own noise, and when it samples', () => {
+    const own = `${microstrip}net V { source 1 kohm; tolerates 1 V peak; noise 5 nV/rtHz; contact -20 dB at 5 V; samples 2 us after G; band 1 Hz to 1 kHz }\nnet C { swing 1 V; rise 1 us; switches with G }`;
+    assert.deepEqual(budgetOf(evaluated(own), 'V').unaccounted.map(({ what }) => what), ['the noise of its input is not yet counted', 'the contact noise of its resistors is not yet counted', 'when it samples is not yet counted']);
+  });
+
+  it('says of an rms budget and of a pair that they are not', () => {
+    const text = `${microstrip}net V { source 1 kohm; tolerates 1 mV rms; band 1 Hz to 1 kHz }\nnet P { source 50 ohm }\nnet N { source 50 ohm }\npair D { plus P; minus N; tolerates 1 V peak }`;
+    assert.deepEqual(budgetOf(evaluated(text), 'V', 'rms').unaccounted.map(({ what }) => what), ['what V has as rms is not yet counted']);
+    assert.deepEqual(budgetOf(evaluated(text), 'D').unaccounted.map(({ what }) => what), ['what pair D picks up is not yet counted']);
+  });
+
+  it('says why a run has no numbers', () => {
+    const bare = 'stackup { core 1 mm er 4.4; copper TOP 35 um }\n';
+    const text = `${bare}${receiver}net A { swing 3 V; rise 1 ns; source 50 ohm; load 50 ohm }\n${beside('A')}`;
+    const evaluation = evaluated(text);
+    assert.deepEqual(evaluation.runs[0].refusal, { reason: 'no-reference' });
+    assert.deepEqual(budgetOf(evaluation, 'V').unaccounted.map(({ what }) => what), ['run r is not counted: neither a plane nor a `return` carries its current back']);
+  });
+
+  it('says what could not be read, and computes the rest', () => {
+    const text = `${microstrip}${receiver}net A { swing 3 V; rise 1 ns; source 50 ohm; load 50 ohm }\nnet B { swing 3; rise 1 ns; source 50 ohm; load 50 ohm }
+      run r on TOP for 30 mm { trace A 0.2 mm; gap 0.3 mm; trace V 0.15 mm; gap 0.3 mm; trace B 0.2 mm }`;
+    const budget = budgetOf(evaluate(projectOf(text), createSolveCache()), 'V');
+    assert.equal(budget.verdict, 'unknown');
+    assert.ok(budget.unaccounted.some(({ what }) => /could not be read$/.test(what)), JSON.stringify(budget.unaccounted));
+    assert.deepEqual(budget.contributions.filter(({ channel }) => channel === 'coupled').map(({ from }) => from), ['A']);
+  });
+
+  it('says of a source without rise that its edge is not counted', () => {
+    const project = projectOf(`${microstrip}${receiver}net A { swing 3 V; source 50 ohm; load 50 ohm }\n${beside('A')}`);
+    const budget = budgetOf(evaluate(project, createSolveCache()), 'V');
+    assert.ok(budget.unaccounted.some(({ what }) => what === 'the edge of A in run r is not counted: it states no `rise`'), JSON.stringify(budget.unaccounted));
+  });
+});
