@@ -16,10 +16,10 @@
  */
 import { epsilon0, mu0 } from '../../units/constants';
 import { inverseSpd } from '../../numeric/inverseSpd';
-import { conductorSides, type Trapezoid } from './basis/conductorSides';
-import { sideOrders, type Surroundings } from './basis/orders';
-import type { Side } from './basis/side';
-import { errorBars } from './errorBar';
+import { chargedConductors, openConstant } from './basis/chargedConductor';
+import type { Trapezoid } from './basis/conductorSides';
+import { errorBars, largestChange } from './errorBar';
+import { solveFilmed } from './film/solveFilmed';
 import { chargeSolution, type ChargeSolution } from './galerkin/chargeSolution';
 import { kernelsOf } from './kernel/kernelCache';
 import { inAir, type Stack } from './kernel/stack';
@@ -33,28 +33,35 @@ export interface SolveOptions {
   readonly mostEffort?: number;
 }
 
-/** Bars above this are worth a finer setting. */
-const wantedBar = 1e-4;
+/** A larger one is worth a finer setting: it is 5 to 50 times the error. */
+const wantedChange = 1e-4;
 
 export function solveSection(section: Section, { effort = 1, mostEffort = 4 }: SolveOptions = {}): SectionSolution {
   const refused = refusalOf(section);
   if (refused !== null) return { refused };
-  if (section.film !== null) return { refused: { reason: 'not-covered', what: 'a mask that follows the traces' } };
+  if (section.film !== null) {
+    // A film's first setting is the coarser one: its own unknowns dominate.
+    return solveFilmed(section, { bare: (without) => solveSection(without, { effort, mostEffort }), sidesIn: sidesOf, constantIn: constantOf, effort: effort - 1, mostEffort });
+  }
   const placement = placementOf(section);
   if ('refused' in placement) return placement;
-  let best: SectionMatrices | null = null;
+  let best: Attempt | null = null;
   for (let level = effort; level <= Math.max(effort, mostEffort); level += 1) {
-    const matrices = matricesAt(section, placement, level);
-    if (matrices === null) continue;
-    if (best === null || worstBar(matrices) < worstBar(best)) best = matrices;
-    if (worstBar(matrices) <= wantedBar) break;
+    const attempt = attemptAt(section, placement, level);
+    if (attempt === null) continue;
+    if (best === null || attempt.change < best.change) best = attempt;
+    if (attempt.change <= wantedChange) break;
   }
-  return best === null ? { refused: { reason: 'not-solved', what: 'the charges do not come out positive definite' } } : { solved: best };
+  return best === null ? { refused: { reason: 'not-solved', what: 'the charges do not come out positive definite' } } : { solved: best.matrices };
 }
 
-const worstBar = ({ capacitanceError, inductanceError }: SectionMatrices) => Math.max(...capacitanceError, ...inductanceError);
+interface Attempt {
+  readonly matrices: SectionMatrices;
+  /** Between the two degrees, relative, over all entries that matter. */
+  readonly change: number;
+}
 
-function matricesAt(section: Section, placement: Placement, effort: number): SectionMatrices | null {
+function attemptAt(section: Section, placement: Placement, effort: number): Attempt | null {
   const { stack } = placement;
   const signals = section.conductors.flatMap(({ role }, index) => (role === 'signal' ? [index] : []));
   const air = inAir(stack);
@@ -64,10 +71,10 @@ function matricesAt(section: Section, placement: Placement, effort: number): Sec
   const solution = only === null ? solveIn(stack, placement.conductors, signals, effort) : scaled(inAirSolution, only);
   if (solution === null) return null;
   const { order } = solution;
-  const inductance = inverseOf(inAirSolution.fine, order);
-  const coarseInductance = inverseOf(inAirSolution.coarse, order);
+  const inductance = inverseSpd(inAirSolution.fine, order);
+  const coarseInductance = inverseSpd(inAirSolution.coarse, order);
   if (inductance === null || coarseInductance === null) return null;
-  return {
+  const matrices: SectionMatrices = {
     order,
     capacitance: solution.fine.map((value) => value * 2 * Math.PI * epsilon0),
     capacitanceInAir: inAirSolution.fine.map((value) => value * 2 * Math.PI * epsilon0),
@@ -76,47 +83,14 @@ function matricesAt(section: Section, placement: Placement, effort: number): Sec
     inductanceError: errorBars(inductance, coarseInductance, order),
     unknowns: Math.max(solution.unknowns, inAirSolution.unknowns),
   };
+  return { matrices, change: Math.max(largestChange(solution.fine, solution.coarse, order), largestChange(inductance, coarseInductance, order)) };
 }
 
 /** In units of 2 pi eps0. */
 function solveIn(stack: Stack, conductors: readonly Trapezoid[], signals: readonly number[], effort: number): ChargeSolution | null {
-  const sides: Side[] = conductors.flatMap((conductor, index) => conductorSides(conductor, index, stack, sideOrders(surroundingsOf(conductor, conductors, stack), effort)));
-  const open = !stack.planeBelow && !stack.planeAbove;
-  return chargeSolution({ sides, conductors: signals, kernel: kernelsOf(stack), constant: open ? openConstant(conductors, stack) : null });
-}
-
-/** Larger than any negative potential that a charge can have within the section. */
-function openConstant(conductors: readonly Trapezoid[], { layers }: Stack): number {
-  const left = Math.min(...conductors.map(({ x }) => x));
-  const right = Math.max(...conductors.map(({ x, width }) => x + width));
-  const low = Math.min(...conductors.map(({ bottom }) => bottom));
-  const high = Math.max(...conductors.map(({ top }) => top));
-  const extent = Math.max(right - left, high - low);
-  const smallest = Math.min(...layers.map(({ permittivity }) => permittivity));
-  return (4 + Math.max(0, Math.log(extent))) / smallest;
-}
-
-function surroundingsOf(own: Trapezoid, all: readonly Trapezoid[], { layers, planeBelow, planeAbove }: Stack): Surroundings {
-  let gap = Infinity;
-  let facing = Infinity;
-  for (const other of all) {
-    if (other === own) continue;
-    const across = Math.max(other.x - own.x - own.width, own.x - other.x - other.width, 0);
-    const up = Math.max(other.bottom - own.top, own.bottom - other.top, 0);
-    gap = Math.min(gap, Math.hypot(across, up));
-    // Beside the face by less than the distance in front of it still bends the charge there.
-    if (0 < up && across < up) facing = Math.min(facing, up);
-  }
-  const below = planeBelow ? own.bottom - layers[0].bottom : Infinity;
-  const above = planeAbove ? layers[layers.length - 1].top - own.top : Infinity;
-  const depth = Math.min(below, above, facing);
-  return { width: own.width, height: own.top - own.bottom, gap, depth, facesConductor: facing < Infinity };
+  return chargeSolution({ conductors: chargedConductors(conductors, stack, effort), signals, kernel: kernelsOf(stack), constant: openConstant(conductors, stack) });
 }
 
 function scaled({ fine, coarse, ...rest }: ChargeSolution, factor: number): ChargeSolution {
   return { ...rest, fine: fine.map((value) => value * factor), coarse: coarse.map((value) => value * factor) };
-}
-
-function inverseOf(matrix: Float64Array, order: number): Float64Array | null {
-  return inverseSpd(matrix, order);
 }

@@ -15,17 +15,19 @@
  * Accuracy  C in units of 2 pi eps0. The constant is removed to 1e-15 times its size
  */
 import { cholesky, forwardSubstitute } from '../../../numeric/cholesky';
+import type { ChargedConductor } from '../basis/chargedConductor';
 import { polynomialLimit } from '../basis/orthonormalJacobi';
 import type { Side } from '../basis/side';
 import type { Kernel } from '../kernel/layeredKernel';
+import { ownBlock } from './ownBlock';
 import { writeSideBlock } from './sideBlock';
 
 export interface ChargeProblem {
-  readonly sides: readonly Side[];
+  readonly conductors: readonly ChargedConductor[];
   /** Of the matrix asked for, in order; other conductors are at zero potential. */
-  readonly conductors: readonly number[];
+  readonly signals: readonly number[];
   readonly kernel: (lower: number, upper: number) => Kernel;
-  /** The constant on every potential, or null where planes give it a zero. */
+  /** On every potential, or null where planes give it a zero. */
   readonly constant: number | null;
 }
 
@@ -37,80 +39,106 @@ export interface ChargeSolution {
 }
 
 /** Null where the matrix is not positive definite: some integral was not accurate enough. */
-export function chargeSolution({ sides, conductors, kernel, constant }: ChargeProblem): ChargeSolution | null {
-  const layout = layOut(sides);
-  const matrix = assembled(sides, layout, kernel);
-  const { unknowns, coarse } = layout;
+export function chargeSolution({ conductors, signals, kernel, constant }: ChargeProblem): ChargeSolution | null {
+  const layout = layOut(conductors);
+  const { unknowns, coarse, sides } = layout;
+  const matrix = new Float64Array(unknowns * unknowns);
+  conductors.forEach((conductor, index) => {
+    placeOwn(conductor, index, layout, kernel, matrix);
+    for (let other = 0; other < index; other += 1) placeMutual(layout, [index, other], kernel, matrix);
+  });
   if (constant !== null) {
-    // The net charges are the only ones that a constant acts on.
-    for (const row of layout.start) for (const column of layout.start) if (column <= row) matrix[row * unknowns + column] += constant;
+    // Only net charges feel a constant.
+    for (const { start: row } of sides) for (const { start: column } of sides) if (column <= row) matrix[row * unknowns + column] += constant;
   }
   if (!cholesky(matrix, unknowns)) return null;
-  const count = conductors.length + (constant === null ? 0 : 1);
+  const count = signals.length + (constant === null ? 0 : 1);
   const right = new Float64Array(count * unknowns);
-  sides.forEach((side, s) => {
-    const index = conductors.indexOf(side.conductor);
-    if (0 <= index) right[index * unknowns + layout.start[s]] = 1;
-    if (constant !== null) right[conductors.length * unknowns + layout.start[s]] = 1;
-  });
+  for (const { side, start } of sides) {
+    const index = signals.indexOf(side.conductor);
+    if (0 <= index) right[index * unknowns + start] = 1;
+    if (constant !== null) right[signals.length * unknowns + start] = 1;
+  }
   forwardSubstitute(matrix, unknowns, right, count);
-  const products = (to: number) => innerProducts(right, unknowns, to, count);
-  const finish = (to: number) => (constant === null ? products(to) : neutral(products(to), count));
-  return { order: conductors.length, fine: finish(unknowns), coarse: finish(coarse), unknowns };
+  const finish = (to: number) => {
+    const products = innerProducts(right, unknowns, to, count);
+    return constant === null ? products : neutral(products, count);
+  };
+  return { order: signals.length, fine: finish(unknowns), coarse: finish(coarse), unknowns };
 }
 
 interface Layout {
   readonly unknowns: number;
   /** Unknowns without the highest polynomials. */
   readonly coarse: number;
-  /** Of each side's net charge, and of the highest polynomials. */
-  readonly start: Int32Array;
-  readonly highest: Int32Array;
+  readonly sides: readonly PlacedSide[];
+  /** Where each conductor's sides begin among them; one more at the end. */
+  readonly firstSide: readonly number[];
+}
+
+interface PlacedSide {
+  readonly side: Side;
+  /** Polynomials of the coarser answer, and where they begin; where the others do. */
+  readonly kept: number;
+  readonly start: number;
+  readonly highest: number;
 }
 
 /** Polynomials that the coarser answer goes without. */
 export const leftOut = (order: number) => (order < 4 ? 1 : 2);
 
-function layOut(sides: readonly Side[]): Layout {
-  const start = new Int32Array(sides.length);
-  const highest = new Int32Array(sides.length);
-  let at = 0;
-  sides.forEach(({ order }, s) => {
-    start[s] = at;
-    at += order - leftOut(order);
+function layOut(conductors: readonly ChargedConductor[]): Layout {
+  const all = conductors.flatMap(({ sides }) => sides);
+  const coarse = all.reduce((sum, { order }) => sum + order - leftOut(order), 0);
+  let start = 0;
+  let highest = coarse;
+  const sides = all.map((side) => {
+    const kept = side.order - leftOut(side.order);
+    const placed = { side, kept, start, highest };
+    start += kept;
+    highest += side.order - kept;
+    return placed;
   });
-  const coarse = at;
-  sides.forEach(({ order }, s) => {
-    highest[s] = at;
-    at += leftOut(order);
-  });
-  return { unknowns: at, coarse, start, highest };
+  const firstSide = [0];
+  for (const { sides: own } of conductors) firstSide.push(firstSide[firstSide.length - 1] + own.length);
+  return { unknowns: highest, coarse, sides, firstSide };
+}
+
+const rowOf = ({ kept, start, highest }: PlacedSide, m: number) => (m < kept ? start + m : highest + m - kept);
+
+/** The lower triangle of a conductor's own block. */
+function placeOwn(conductor: ChargedConductor, index: number, { unknowns, sides, firstSide }: Layout, kernel: ChargeProblem['kernel'], matrix: Float64Array): void {
+  const { layer } = conductor.sides[0];
+  const own = ownBlock(conductor, kernel(layer, layer));
+  const rows: number[] = [];
+  for (let s = firstSide[index]; s < firstSide[index + 1]; s += 1) {
+    for (let m = 0; m < sides[s].side.order; m += 1) rows.push(rowOf(sides[s], m));
+  }
+  for (let a = 0; a < rows.length; a += 1) {
+    for (let b = 0; b <= a; b += 1) matrix[Math.max(rows[a], rows[b]) * unknowns + Math.min(rows[a], rows[b])] = own[a * rows.length + b];
+  }
 }
 
 const block = new Float64Array(polynomialLimit * polynomialLimit);
 
-/** The lower triangle. */
-function assembled(sides: readonly Side[], { unknowns, start, highest }: Layout, kernel: ChargeProblem['kernel']): Float64Array {
-  const matrix = new Float64Array(unknowns * unknowns);
-  const place = (s: number, m: number) => {
-    const kept = sides[s].order - leftOut(sides[s].order);
-    return m < kept ? start[s] + m : highest[s] + m - kept;
-  };
-  for (let s = 0; s < sides.length; s += 1) {
-    for (let t = 0; t <= s; t += 1) {
-      const [upper, lower] = sides[s].layer < sides[t].layer ? [t, s] : [s, t];
-      const columns = sides[lower].order;
-      writeSideBlock(sides[upper], sides[lower], kernel(sides[lower].layer, sides[upper].layer), block);
-      for (let m = 0; m < sides[upper].order; m += 1) {
-        const i = place(upper, m);
+function placeMutual({ unknowns, sides, firstSide }: Layout, [first, second]: readonly [number, number], kernel: ChargeProblem['kernel'], matrix: Float64Array): void {
+  // The kernel wants the conductor in the higher layer first.
+  const [above, below] = sides[firstSide[first]].side.layer < sides[firstSide[second]].side.layer ? [second, first] : [first, second];
+  const between = kernel(sides[firstSide[below]].side.layer, sides[firstSide[above]].side.layer);
+  for (let s = firstSide[above]; s < firstSide[above + 1]; s += 1) {
+    for (let t = firstSide[below]; t < firstSide[below + 1]; t += 1) {
+      const [upper, lower] = [sides[s], sides[t]];
+      const columns = lower.side.order;
+      writeSideBlock(upper.side, lower.side, between, block);
+      for (let m = 0; m < upper.side.order; m += 1) {
+        const i = rowOf(upper, m);
         for (let n = 0; n < columns; n += 1) {
-          const j = place(lower, n);
+          const j = rowOf(lower, n);
           matrix[i < j ? j * unknowns + i : i * unknowns + j] = block[m * columns + n];
         }
       }
     }
   }
-  return matrix;
 }
 
 function innerProducts(rows: Float64Array, stride: number, to: number, count: number): Float64Array {

@@ -1,0 +1,57 @@
+/**
+ * The conductors of a section cut into sides, with how finely: what the charge is solved on.
+ */
+import type { Stack } from '../kernel/stack';
+import { conductorSides, type Trapezoid } from './conductorSides';
+import { sideOrders, type Surroundings } from './orders';
+import type { Side } from './side';
+
+export interface ChargedConductor {
+  readonly sides: readonly Side[];
+  /** Everything about its sides but where it lies across the section: those of equal shape have equal blocks of their own. */
+  readonly shape: string;
+  /** The same sides with the left end of its foot at 0. */
+  readonly atOrigin: () => readonly Side[];
+}
+
+export function chargedConductors(conductors: readonly Trapezoid[], stack: Stack, effort: number): ChargedConductor[] {
+  return conductors.map((conductor, index) => {
+    const orders = sideOrders(surroundingsOf(conductor, conductors, stack), effort);
+    const { bottom, top, width, undercut, layer } = conductor;
+    const atOrigin = () => conductorSides({ ...conductor, x: 0 }, index, stack, orders);
+    return {
+      sides: conductorSides(conductor, index, stack, orders),
+      shape: [layer, bottom, top, width, undercut, orders.wall, ...orders.panels, ...orders.cuts].join(' '),
+      atOrigin,
+    };
+  });
+}
+
+function surroundingsOf(own: Trapezoid, all: readonly Trapezoid[], { layers, planeBelow, planeAbove }: Stack): Surroundings {
+  let gap = Infinity;
+  let facing = Infinity;
+  for (const other of all) {
+    if (other === own) continue;
+    const across = Math.max(other.x - own.x - own.width, own.x - other.x - other.width, 0);
+    const up = Math.max(other.bottom - own.top, own.bottom - other.top, 0);
+    gap = Math.min(gap, Math.hypot(across, up));
+    // Beside the face by less than the distance in front of it still bends the charge there.
+    if (0 < up && across < up) facing = Math.min(facing, up);
+  }
+  const below = planeBelow ? own.bottom - layers[0].bottom : Infinity;
+  const above = planeAbove ? layers[layers.length - 1].top - own.top : Infinity;
+  const depth = Math.min(below, above, facing);
+  return { width: own.width, height: own.top - own.bottom, gap, depth, facesConductor: facing < Infinity };
+}
+
+/** A potential larger than any negative one that a charge can have within the section; null where planes give it a zero. */
+export function openConstant(conductors: readonly Trapezoid[], { layers, planeBelow, planeAbove }: Stack): number | null {
+  if (planeBelow || planeAbove) return null;
+  const left = Math.min(...conductors.map(({ x }) => x));
+  const right = Math.max(...conductors.map(({ x, width }) => x + width));
+  const low = Math.min(...conductors.map(({ bottom }) => bottom));
+  const high = Math.max(...conductors.map(({ top }) => top));
+  const extent = Math.max(right - left, high - low);
+  const smallest = Math.min(...layers.map(({ permittivity }) => permittivity));
+  return (4 + Math.max(0, Math.log(extent))) / smallest;
+}
