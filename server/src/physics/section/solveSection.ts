@@ -41,7 +41,7 @@ export function solveSection(section: Section, { effort = 1, mostEffort = 4 }: S
   if (refused !== null) return { refused };
   if (section.film !== null) {
     // A film's first setting is the coarser one: its own unknowns dominate.
-    return solveFilmed(section, { bare: (without) => solveSection(without, { effort, mostEffort }), sidesIn: sidesOf, constantIn: constantOf, effort: effort - 1, mostEffort });
+    return solveFilmed(section, { bare: (without) => solveSection(without, { effort, mostEffort }), effort: effort - 1, mostEffort });
   }
   const placement = placementOf(section);
   if ('refused' in placement) return placement;

@@ -17,15 +17,17 @@
 import { luInOrder, solveUnitLower, solveUpperTransposed } from '../../../numeric/luInOrder';
 import { polynomialLimit, writePolynomials } from '../basis/orthonormalJacobi';
 import type { Side } from '../basis/side';
+import type { ChargedConductor } from '../basis/chargedConductor';
 import type { ChargeSolution } from '../galerkin/chargeSolution';
+import { ownBlock } from '../galerkin/ownBlock';
 import { writeSideBlock } from '../galerkin/sideBlock';
 import type { Kernel } from '../kernel/layeredKernel';
 import { addFluxBlock, plainBasis } from './fluxBlock';
 
 export interface FilmProblem {
-  readonly sides: readonly Side[];
+  readonly conductors: readonly ChargedConductor[];
   /** Of the matrix asked for, in order; other conductors are at zero potential. */
-  readonly conductors: readonly number[];
+  readonly signals: readonly number[];
   /** From left to right along the film's face; the outermost two carry what little lies farthest out. */
   readonly panels: readonly Side[];
   readonly kernel: (lower: number, upper: number) => Kernel;
@@ -38,21 +40,22 @@ export interface FilmProblem {
 
 /** Null where a pivot vanishes: the system means nothing then. */
 export function filmCharge(problem: FilmProblem): ChargeSolution | null {
-  const { sides, panels, conductors, constant } = problem;
-  const all = [...sides, ...panels];
-  const layout = layOut(sides, panels);
-  const matrix = assembled(problem, all, layout);
-  const { unknowns, coarse, start } = layout;
+  const { conductors, panels, signals, constant } = problem;
+  const layout = layOut(conductors.flatMap(({ sides }) => sides), panels);
+  const { unknowns, coarse, sides, start } = layout;
+  const matrix = new Float64Array(unknowns * unknowns);
+  placeConductors(problem, layout, matrix);
+  placePanels(problem, layout, matrix);
   if (constant !== null) {
     for (let s = 0; s < sides.length; s += 1) for (let t = 0; t < sides.length; t += 1) matrix[start[s] * unknowns + start[t]] += constant;
   }
   if (!luInOrder(matrix, unknowns)) return null;
-  const count = conductors.length + (constant === null ? 0 : 1);
+  const count = signals.length + (constant === null ? 0 : 1);
   const excitation = new Float64Array(count * unknowns);
   sides.forEach(({ conductor }, s) => {
-    const index = conductors.indexOf(conductor);
+    const index = signals.indexOf(conductor);
     if (0 <= index) excitation[index * unknowns + start[s]] = 1;
-    if (constant !== null) excitation[conductors.length * unknowns + start[s]] = 1;
+    if (constant !== null) excitation[signals.length * unknowns + start[s]] = 1;
   });
   const charges = Float64Array.from(excitation);
   solveUnitLower(matrix, unknowns, charges, count);
@@ -61,10 +64,13 @@ export function filmCharge(problem: FilmProblem): ChargeSolution | null {
     const products = innerProducts(excitation, charges, unknowns, to, count);
     return constant === null ? products : neutral(products, count);
   };
-  return { order: conductors.length, fine: finish(unknowns), coarse: finish(coarse), unknowns };
+  return { order: signals.length, fine: finish(unknowns), coarse: finish(coarse), unknowns };
 }
 
 interface Layout {
+  readonly sides: readonly Side[];
+  /** Sides, then panels. */
+  readonly all: readonly Side[];
   readonly unknowns: number;
   /** Unknowns of the coarser system, which come first. */
   readonly coarse: number;
@@ -90,42 +96,58 @@ function layOut(sides: readonly Side[], panels: readonly Side[]): Layout {
     rest[s] = at;
     at += order - kept[s];
   });
-  return { unknowns: at, coarse, kept, start, rest };
+  return { sides, all, unknowns: at, coarse, kept, start, rest };
 }
+
+const rowOf = ({ kept, start, rest }: Layout, s: number, m: number) => (m < kept[s] ? start[s] + m : rest[s] + m - kept[s]);
 
 const block = new Float64Array(polynomialLimit * polynomialLimit);
 
-function assembled({ sides, panels, kernel, permittivity, outside }: FilmProblem, all: readonly Side[], { unknowns, kept, start, rest }: Layout): Float64Array {
-  const matrix = new Float64Array(unknowns * unknowns);
-  const place = (s: number, m: number) => (m < kept[s] ? start[s] + m : rest[s] + m - kept[s]);
-  const put = (row: number, column: number, transposed: boolean) => {
-    const rows = all[row].order;
-    const columns = all[column].order;
-    for (let m = 0; m < rows; m += 1) {
-      const at = place(row, m) * unknowns;
-      for (let n = 0; n < columns; n += 1) matrix[at + place(column, n)] = transposed ? block[n * rows + m] : block[m * columns + n];
-    }
-  };
-  for (let s = 0; s < sides.length; s += 1) {
-    for (let t = 0; t < all.length; t += 1) {
-      if (t < sides.length && s < t) continue;
-      // The kernel wants the side in the higher layer first.
-      const [upper, lower] = all[s].layer < all[t].layer ? [t, s] : [s, t];
-      writeSideBlock(all[upper], all[lower], kernel(all[lower].layer, all[upper].layer), block);
-      put(s, t, upper !== s);
-      if (t < sides.length && t !== s) put(t, s, upper === s);
-    }
+/** Copies `block`, the rows of it those of side or panel `row`; or its transpose. */
+function place(layout: Layout, row: number, column: number, transposed: boolean, matrix: Float64Array): void {
+  const rows = layout.all[row].order;
+  const columns = layout.all[column].order;
+  for (let m = 0; m < rows; m += 1) {
+    const at = rowOf(layout, row, m) * layout.unknowns;
+    for (let n = 0; n < columns; n += 1) matrix[at + rowOf(layout, column, n)] = transposed ? block[n * rows + m] : block[m * columns + n];
   }
+}
+
+/** Potentials of conductors and panels on conductors. */
+function placeConductors({ conductors, kernel }: FilmProblem, layout: Layout, matrix: Float64Array): void {
+  const { all, sides, unknowns } = layout;
+  let first = 0;
+  for (const conductor of conductors) {
+    const { layer } = conductor.sides[0];
+    const own = ownBlock(conductor, kernel(layer, layer));
+    const rows: number[] = [];
+    conductor.sides.forEach(({ order }, s) => { for (let m = 0; m < order; m += 1) rows.push(rowOf(layout, first + s, m)); });
+    for (let a = 0; a < rows.length; a += 1) for (let b = 0; b < rows.length; b += 1) matrix[rows[a] * unknowns + rows[b]] = own[a * rows.length + b];
+    const last = first + conductor.sides.length;
+    for (let s = first; s < last; s += 1) {
+      for (let t = last; t < all.length; t += 1) {
+        // The kernel wants the side in the higher layer first.
+        const [upper, lower] = all[s].layer < all[t].layer ? [t, s] : [s, t];
+        writeSideBlock(all[upper], all[lower], kernel(all[lower].layer, all[upper].layer), block);
+        place(layout, s, t, upper !== s, matrix);
+        if (t < sides.length) place(layout, t, s, upper === s, matrix);
+      }
+    }
+    first = last;
+  }
+}
+
+/** Fluxes of conductors and panels through panels. */
+function placePanels({ panels, kernel, permittivity, outside }: FilmProblem, layout: Layout, matrix: Float64Array): void {
   const contrast = (permittivity - outside) / (permittivity + outside);
   panels.forEach((panel, p) => {
-    all.forEach((source, t) => {
+    layout.all.forEach((source, t) => {
       block.fill(0, 0, panel.order * source.order);
       addFluxBlock(kernel(source.layer, panel.layer), panel, source, -contrast * permittivity, block);
       if (panel === source) addOwnCharge(panel);
-      put(sides.length + p, t, false);
+      place(layout, layout.sides.length + p, t, false, matrix);
     });
   });
-  return matrix;
 }
 
 /** pi s, tested with the Legendre polynomials. */

@@ -7,11 +7,9 @@
  * Accuracy  against the reference case 2e-5 and 3e-5 (self and mutual); over seeded random pairs against the finest
  *           setting, see the test
  */
-import type { Trapezoid } from '../basis/conductorSides';
-import type { Side } from '../basis/side';
+import { chargedConductors, openConstant } from '../basis/chargedConductor';
 import type { ChargeSolution } from '../galerkin/chargeSolution';
 import { kernelsOf } from '../kernel/kernelCache';
-import type { Stack } from '../kernel/stack';
 import { placementOf } from '../placement';
 import type { Section } from '../section';
 import { filmCharge } from './filmCharge';
@@ -19,17 +17,8 @@ import { filmEdgeExponent } from './filmEdgeExponent';
 import { filmOutline } from './outline';
 import { outlinePanels, type PanelSetting } from './outlinePanels';
 
-export interface FilmedCharge {
-  readonly section: Section;
-  readonly signals: readonly number[];
-  readonly effort: number;
-  /** Sides of conductors and the constant on their potentials, as without a film. */
-  readonly sidesIn: (stack: Stack, conductors: readonly Trapezoid[]) => Side[];
-  readonly constantIn: (stack: Stack, conductors: readonly Trapezoid[]) => number | null;
-}
-
-/** In units of 2 pi eps0; null where the system has no answer. `section` has its film above. */
-export function filmedCharge({ section, signals, effort, sidesIn, constantIn }: FilmedCharge): ChargeSolution | null {
+/** In units of 2 pi eps0; null where the system has no answer. `section` has its film above; `signals` are its conductors asked for. */
+export function filmedCharge(section: Section, signals: readonly number[], effort: number): ChargeSolution | null {
   const { film, layers } = section;
   if (film === null) throw new Error('a section without a film');
   const outside = layers[layers.length - 1].permittivity;
@@ -44,7 +33,10 @@ export function filmedCharge({ section, signals, effort, sidesIn, constantIn }: 
   const corners = filmOutline(covered.map(({ x, width, undercut, top }) => ({ left: x + Math.min(0, undercut), right: x + width - Math.min(0, undercut), top })), laminate, thickness);
   const contrast = film.permittivity / outside;
   const panels = corners.length === 0 || contrast === 1 ? [] : outlinePanels(corners, panelSetting(thickness, filmEdgeExponent(contrast) - 1, layer, effort));
-  return filmCharge({ sides: sidesIn(stack, conductors), conductors: signals, panels, kernel: kernelsOf(stack), permittivity: film.permittivity, outside, constant: constantIn(stack, conductors) });
+  return filmCharge({
+    conductors: chargedConductors(conductors, stack, effort), signals, panels, kernel: kernelsOf(stack),
+    permittivity: film.permittivity, outside, constant: openConstant(conductors, stack),
+  });
 }
 
 /** Height of the face that the film lies on: the top of the uppermost finite layer. */
