@@ -27,19 +27,21 @@ export function stitchedGuard({ fault }: Finding, context: FixContext): readonly
   const place = { row: between.row, gap: between.gaps[0]! };
   const lane = isSpaced(coupling.run, place) || isGuarded(coupling.run, between) ? null : laneFor(context, coupling.run, place);
   if (lane === null) return [];
-  // The first is in the gap as it is, or as narrow as can be made; it stays where that is enough.
+  if (bringsNearer(context.project, coupling.run, withGuard(coupling.run, place, lane.guardWith(lane.adjustable.given.value)))) return [];
   const solved = solve(context, [lane.adjustable], withinBudget(context, [budget]));
   const side = solved === null || !solved.enough ? lane.adjustable.given.value : solved.values[0]!;
   const guard = lane.guardWith(side);
   const holds = tiesThatHold(context, coupling.run, withGuard(coupling.run, place, guard), budget);
   const tied = { ...guard, stitched: holds === null ? null : lane.written.rounded(roundDown(holds), 'down') };
-  const after = withGuard(coupling.run, place, tied);
-  if (bringsNearer(context.project, coupling.run, after)) return [];
-  return [{ words: wordsFor(tied, lane, gapOf(coupling.run, place).value), edits: editsFor(context, coupling.run, place, tied, lane.written), moves: widthOf(tied) - gapOf(coupling.run, place).value + tied.width }];
+  if (bringsNearer(context.project, coupling.run, withGuard(coupling.run, place, tied))) return [];
+  return [{ words: wordsFor(tied, lane, gapOf(coupling.run, place).value), edits: editsFor(context, coupling.run, place, tied, lane.written), moves: widthOf(tied) - gapOf(coupling.run, place).value + tied.width + viasOf(tied, coupling.run) * holeWidth }];
 }
 
 /** Tied where it has to be, from narrow vias to a guard wide enough to take one. */
 const usualWidth = 0.25e-3;
+
+/** What a via takes from a board: a small hole with its ring. */
+const holeWidth = 0.3e-3;
 
 interface Lane {
   readonly adjustable: Adjustable;
@@ -60,7 +62,7 @@ function laneFor(context: FixContext, run: Run, place: GapPlace): Lane | null {
   const guardWith = (side: number): NewGuard => {
     const left = metres(side);
     // What rounding leaves over stays in the gap, so that nothing moves where there is room.
-    const right = Math.abs(side - narrowest) < written.grid / 2 && 2 * clearance <= room + 1e-9 ? metres(room - left) : left;
+    const right = Math.abs(side - narrowest) < written.grid / 2 && 2 * clearance <= room + 1e-9 ? written.rounded(room - left, 'up') : left;
     return { name, width, stitched: null, left, right };
   };
   const adjustable: Adjustable = {
@@ -68,6 +70,7 @@ function laneFor(context: FixContext, run: Run, place: GapPlace): Lane | null {
     given: { ...gap.given, value: metres(narrowest) },
     smallest: narrowest,
     largest: Math.max(gap.largest, 2 * narrowest),
+    slope: 0.5,
     apply: (changed, side) => withGuard(changed, place, guardWith(side)),
   };
   return { adjustable, written, guardWith };
@@ -103,6 +106,11 @@ export function roundDown(value: number): number {
   const power = 10 ** Math.floor(Math.log10(value));
   const digit = [8, 6, 5, 4, 3, 2.5, 2, 1.5, 1.2, 1].find((candidate) => candidate * power <= value * (1 + 1e-9)) ?? 1;
   return digit * power;
+}
+
+/** One at each end, and those between. */
+function viasOf({ stitched }: NewGuard, { length }: Run): number {
+  return stitched === null ? 2 : Math.ceil(length.value / stitched) + 1;
 }
 
 function widthOf({ left, width, right }: NewGuard): number {

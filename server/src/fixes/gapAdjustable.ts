@@ -23,9 +23,9 @@ export function gapOf(run: Run, { row, gap }: GapPlace): Given<Length> {
 /** Null where the gap is not written as a number and its unit. */
 export function gapAdjustable(context: FixContext, run: Run, place: GapPlace): Adjustable | null {
   const given = gapOf(run, place);
-  const written = writtenLength(textAt(context, given.place), given, 'section');
+  const written = writtenLength(textAt(context, given.place), 'section');
   if (written === null) return null;
-  return { run, given, written, outward: 'up', smallest: clearanceOf(context.project), largest: Math.max(widestGap, 2 * given.value), apply: (changed, value) => withGap(changed, place, value) };
+  return { run, given, written, outward: 'up', smallest: clearanceOf(context.project), largest: Math.max(widestGap, 2 * given.value), slope: 1.5, apply: (changed, value) => withGap(changed, place, value) };
 }
 
 export function lengthEdit({ given, written }: Adjustable, value: Length): Edit {

@@ -41,7 +41,7 @@ export function judgedByFinding(finding: Finding, context: FixContext, title: st
 const muchBetter = 0.5;
 
 const severity = { pass: 0, low: 1, unknown: 2, over: 3 } as const;
-const remainder = { pass: '', low: ', still short of the headroom', over: ', still over', unknown: ', incomplete' } as const;
+const remainder = { pass: '', low: ', still short of the headroom', over: ', still over', unknown: ' so far' } as const;
 
 /** A budget fails that did not, or an error or a warning is there that was not. */
 function isWorse({ evaluation: before }: FixContext, after: Evaluation): boolean {

@@ -14,6 +14,8 @@ export interface Search {
   readonly largest: number;
   /** Of the factor, relative. */
   readonly tolerance: number;
+  /** The power by which the noise falls with the factor, about: where the first step goes. */
+  readonly slope: number;
 }
 
 export interface SearchResult {
@@ -24,7 +26,7 @@ export interface SearchResult {
 }
 
 /** Null where the excess cannot be computed. */
-export function search({ excess, better, smallest, largest, tolerance }: Search): SearchResult | null {
+export function search({ excess, better, smallest, largest, tolerance, slope }: Search): SearchResult | null {
   const sign = better === 'more' ? 1 : -1;
   const [worst, best] = sign === 1 ? [Math.log(smallest), Math.log(largest)] : [-Math.log(largest), -Math.log(smallest)];
   const known = new Map<number, number>();
@@ -33,23 +35,33 @@ export function search({ excess, better, smallest, largest, tolerance }: Search)
     known.set(step, value);
     return value;
   };
+  const answer = (step: number, enough: boolean): SearchResult => ({ factor: Math.exp(sign * step), enough, evaluations: known.size });
   const here = at(0);
-  if (Number.isNaN(here)) return null;
-  const towards = 0 < here ? best : worst;
-  // The crossing is rarely far: doubling steps keep the bracket narrow and the odd far-off section unsolved.
+  const [low, high] = [Math.min(0, worst), Math.max(0, best)];
   let [near, far] = [0, 0];
-  for (;;) {
-    if (far === towards) return { factor: Math.exp(sign * far), enough: here <= 0, evaluations: known.size };
-    near = far;
-    far = 0 < towards ? Math.min(towards, far + Math.LN2) : Math.max(towards, far - Math.LN2);
-    const there = at(far);
+  let there = here;
+  let fall = slope;
+  // Each step aims a little beyond where the straight line through the last two would cross.
+  while (0 < there === 0 < here) {
     if (Number.isNaN(there)) return null;
-    if (0 < there !== 0 < here) break;
+    if (far === (0 < here ? high : low)) return answer(far, here <= 0);
+    const aim = (beyond * there) / fall + (0 < here ? shortest : -shortest);
+    near = far;
+    far = Math.min(high, Math.max(low, far + Math.min(furthest, Math.max(-furthest, aim))));
+    const before = there;
+    there = at(far);
+    const seen = (before - there) / (far - near);
+    if (0 < seen) fall = seen;
   }
+  if (Number.isNaN(there)) return null;
   const found = root(at, { low: Math.min(near, far), high: Math.max(near, far), tolerance, limit: mostSteps });
-  const step = 'found' in found ? found.found : Math.max(near, far);
-  return { factor: Math.exp(sign * step), enough: true, evaluations: known.size };
+  return answer('found' in found ? found.found : Math.max(near, far), true);
 }
 
-/** Brent's method on a nearly straight line ends after three or four. */
+/** Steps in logarithms: a tenth more than the straight line says, at least two percent, at most a factor of eight. */
+const beyond = 1.1;
+const shortest = 0.02;
+const furthest = Math.log(8);
+
+/** Brent's method on a nearly straight line ends after two or three. */
 const mostSteps = 12;

@@ -23,7 +23,7 @@ export function shortenedRun({ fault }: Finding, context: FixContext): readonly 
 const shortestPart = 0.05;
 
 export function lengthAdjustable(context: FixContext, run: Run): Adjustable | null {
-  const written = writtenLength(textAt(context, run.length.place), run.length, 'run');
+  const written = writtenLength(textAt(context, run.length.place), 'run');
   if (written === null) return null;
-  return { run, given: run.length, written, outward: 'down', smallest: Math.max(written.grid, shortestPart * run.length.value), largest: 20 * run.length.value, apply: withLength };
+  return { run, given: run.length, written, outward: 'down', smallest: Math.max(written.grid, shortestPart * run.length.value), largest: 20 * run.length.value, slope: 1, apply: withLength };
 }

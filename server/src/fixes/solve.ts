@@ -6,7 +6,7 @@ import type { Given, Run } from '../board/model';
 import type { Budget } from '../budget/results';
 import type { Length } from '../units/quantity';
 import type { FixContext } from './fix';
-import { search } from './search';
+import { search, type SearchResult } from './search';
 import { excessOf, trial, type Change, type Trial } from './trial';
 import type { WrittenLength } from './writtenLength';
 
@@ -18,6 +18,8 @@ export interface Adjustable {
   readonly outward: 'up' | 'down';
   readonly smallest: number;
   readonly largest: number;
+  /** The power by which the noise falls with it, about. */
+  readonly slope: number;
   apply(run: Run, value: Length): Run;
 }
 
@@ -43,27 +45,37 @@ export function withinBudget(context: FixContext, budgets: readonly Budget[]): G
 export function solve(context: FixContext, adjustables: readonly [Adjustable, ...Adjustable[]], goal: Goal): Solved | null {
   const excessAt = (values: readonly Length[]) => goal.excess(trial(context, changesTo(adjustables, values), goal.budgets));
   const atFactor = (factor: number) => adjustables.map(({ given }) => (given.value * factor) as Length);
+  const tolerance = Math.min(...adjustables.map(({ given, written }) => written.grid / given.value / 4), 0.01);
   const found = search({
     excess: (factor) => excessAt(atFactor(factor)),
     better: adjustables[0].outward === 'up' ? 'more' : 'less',
     smallest: Math.max(...adjustables.map(({ given, smallest }) => smallest / given.value)),
     largest: Math.min(...adjustables.map(({ given, largest }) => largest / given.value)),
-    tolerance: Math.min(...adjustables.map(({ given, written }) => written.grid / given.value / 4), 0.01),
+    tolerance,
+    slope: adjustables[0].slope,
   });
   if (found === null) return null;
   let { evaluations } = found;
-  const stepped = (steps: number) => adjustables.map(({ written, outward, smallest, largest }, index) => {
-    const value = written.rounded(atFactor(found.factor)[index]!, outward) + (outward === 'up' ? steps : -steps) * written.grid;
-    return written.rounded(Math.min(largest, Math.max(smallest, value)), 'up');
-  });
-  // The root is known to a fraction of a step: the rounded value may be one too few, or one more than needed.
-  for (const steps of found.enough ? [-1, 0, 1, 2] : [0]) {
-    const values = stepped(steps);
+  for (const values of roundedCandidates(adjustables, found, tolerance)) {
     evaluations += 1;
     const enough = excessAt(values) <= 0;
     if (enough || !found.enough) return { values, enough, evaluations, changes: changesTo(adjustables, values) };
   }
   return null;
+}
+
+/**
+ * The root is known to its tolerance: the value rounded outward may be a step too few, and where the step
+ * before it is that near, it may be one more than needed.
+ */
+function roundedCandidates(adjustables: readonly Adjustable[], { factor, enough }: SearchResult, tolerance: number): readonly (readonly Length[])[] {
+  const stepped = (steps: number) => adjustables.map(({ given, written, outward, smallest, largest }) => {
+    const value = written.rounded(given.value * factor, outward) + (outward === 'up' ? steps : -steps) * written.grid;
+    return written.rounded(Math.min(largest, Math.max(smallest, value)), outward === 'up' || value < smallest ? 'up' : 'down');
+  });
+  if (!enough) return [stepped(0)];
+  const mayBeLess = adjustables.every(({ given, written }, index) => Math.abs(stepped(-1)[index]! - given.value * factor) < 2 * tolerance * given.value * factor + 1e-3 * written.grid);
+  return [...(mayBeLess ? [stepped(-1)] : []), stepped(0), stepped(1), stepped(2)];
 }
 
 /** Several changes of one run are made one upon the other. */

@@ -11,7 +11,7 @@ export function stitchedMoreOften(finding: Finding, context: FixContext): readon
   if (finding.rule !== guardUnstitched.name) return [];
   const { loose: { guard, largest } } = finding.fault as GuardUnstitched;
   const given = guard.stitched ?? guard.width;
-  const written = writtenLength(textAt(context, given.place), given, 'section');
+  const written = writtenLength(textAt(context, given.place), 'section');
   if (written === null) return [];
   const value = written.inUnit(written.rounded(roundDown(largest), 'down'));
   const { path, span } = guard.whole;

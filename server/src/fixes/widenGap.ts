@@ -62,6 +62,9 @@ function crossedGaps(context: FixContext, { coupling }: Contribution): readonly 
 }
 
 function solvedFor(context: FixContext, targets: readonly Target[], goal: Goal): readonly Proposal[] {
+  // Where the first step goes the wrong way, no number need be looked for.
+  const nearer = targets.some(({ adjustable: { run, given, written, apply } }) => bringsNearer(context.project, run, apply(run, written.rounded(given.value + written.grid, 'up'))));
+  if (nearer) return [];
   const [first, ...others] = targets.map(({ adjustable }) => adjustable);
   const solved = first === undefined ? null : solve(context, [first, ...others], goal);
   if (solved === null || !solved.enough || solved.changes.some(({ before, after }) => bringsNearer(context.project, before, after))) return [];
@@ -70,7 +73,7 @@ function solvedFor(context: FixContext, targets: readonly Target[], goal: Goal):
 
 function proposal(targets: readonly Target[], { values }: Solved): Proposal {
   const widths = targets.map(({ adjustable: { written } }, index) => written.inFile(values[index]!));
-  const words = targets.length === 1 ? `Widen ${targets[0]!.words} to ${widths[0]}` : `Widen ${targets.length} gaps to ${widths.join(', ')}`;
+  const words = targets.length === 1 ? `Widen ${targets[0]!.words} to ${widths[0]}` : `Widen ${targets.length} gaps to ${widths.slice(0, -1).join(', ')} and ${widths.at(-1)}`;
   const moves = targets.reduce((sum, { adjustable }, index) => sum + values[index]! - adjustable.given.value, 0);
   return { words, edits: targets.map(({ adjustable }, index) => lengthEdit(adjustable, values[index]!)), moves };
 }

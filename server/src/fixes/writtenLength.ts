@@ -2,8 +2,9 @@
  * A length in the unit that its file uses: a fix for `12 mil` speaks mils, and rounds to what a person
  * would draw on that grid.
  */
-import type { Given, Place } from '../board/model';
+import type { Place } from '../board/model';
 import { metres, type Length } from '../units/quantity';
+import { unitSpelt } from '../units/spelling';
 import type { Edit } from './fix';
 
 export interface WrittenLength {
@@ -20,11 +21,11 @@ export interface WrittenLength {
 /** Steps no coarser than half a mil for a cross-section, and ten times that for the length of a run. */
 const steps = { section: 0.0127e-3, run: 0.127e-3 } as const;
 
-export function writtenLength(written: string, given: Given<Length>, kind: keyof typeof steps): WrittenLength | null {
+export function writtenLength(written: string, kind: keyof typeof steps): WrittenLength | null {
   const [, number, rest] = /^([+-]?[\d.]+(?:[eE][+-]?\d+)?)(\s*\D.*)$/su.exec(written) ?? [];
-  if (number === undefined || rest === undefined) return null;
-  const size = given.value / Number(number);
-  if (!(0 < size && Number.isFinite(size))) return null;
+  const unit = rest === undefined ? undefined : unitSpelt(rest.trim());
+  if (number === undefined || unit?.dimension !== 'length') return null;
+  const size = unit.inSi({ digits: '1', exponent: 0 });
   const { step, decimals } = roundStep(steps[kind] / size);
   const shown = Math.max(decimals, 0);
   const least = Math.min(decimalsOf(number), shown);
@@ -34,7 +35,8 @@ export function writtenLength(written: string, given: Given<Length>, kind: keyof
       // A value that is on the grid but for its last bits stays where it is.
       const count = value / size / step;
       const whole = outward === 'up' ? Math.ceil(count - 1e-6) : Math.floor(count + 1e-6);
-      return metres(Number((whole * step).toFixed(shown)) * size);
+      // As the file will be read, to the last bit: what a search has solved is then found again.
+      return metres(unit.inSi({ digits: (whole * step).toFixed(shown), exponent: 0 }));
     },
     inFile: (value) => `${plain(value / size, shown, least)}${rest}`,
     inUnit: (value) => `${plain(value / size, shown, 0)}${rest}`,
