@@ -42,9 +42,10 @@ function affects(owner: Owner, { declarations, families, nets, pairs }: Affected
     // Runs, loops and returns that need the row have gaps of their own.
     case 'stackup':
     case 'waive': return [];
-    case 'family': return links.reachedFrom([...nets.values(), ...pairs.values()].filter(({ family }) => isWithin(family, owner.names, families)).map(({ name }) => name));
+    // What a net without a name would have been is not known.
+    case 'family': return owner.names.length === 0 ? null : links.reachedFrom([...nets.values(), ...pairs.values()].filter(({ family }) => isWithin(family, owner.names, families)).map(({ name }) => name));
     case 'net':
-    case 'pair': return links.reachedFrom(owner.names);
+    case 'pair': return owner.names.length === 0 ? null : links.reachedFrom(owner.names);
     case 'run':
     case 'link': return links.withPairs(links.named(owner));
     case 'return': return links.withPairs(links.named(owner, 'carries'));

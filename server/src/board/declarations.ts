@@ -75,7 +75,8 @@ function declarationOf(file: ProjectFile, statement: Statement, kind: OwnerKind,
     if (first === undefined) return { statement, scope, nameValue, names: all, repeats: false };
     const message = kind === 'board' ? 'a project has one board' : 'one stackup may be without a name; a second one needs one';
     const at = (nameValue ?? { span: statement.keywordSpan }).span;
-    report(scope, 'duplicate-name', at, message, { related: [{ place: placeIn(first.scope, first.nameValue?.span ?? first.statement.keywordSpan), message: `the first ${kind}` }] });
+    // A name that could not be read is the mistake, not that there is none.
+    if (kind === 'board' || !statement.broken) report(scope, 'duplicate-name', at, message, { related: [{ place: placeIn(first.scope, first.nameValue?.span ?? first.statement.keywordSpan), message: `the first ${kind}` }] });
     gap(scope, at, `which ${kind} holds`);
     return { statement, scope, nameValue, names: [], repeats: true };
   }

@@ -24,8 +24,8 @@ function resolveLink(declaration: Declaration, nets: ReadonlyMap<string, Net>): 
   const mutual = inductive && given<Inductance>(scope, inductive, 'mutual', { what: `mutual inductance of ${scope.owner.called}`, sign: 'any' });
   if (nameValue === null) return null;
   const lacking = { span: statement.span, before: nameValue.span };
-  if (between === null) missing(scope, { ...lacking, what: `what ${scope.owner.called} couples`, fits: 'two nets, such as `between A and B`' });
-  else if (capacitive === null && inductive === null) missing(scope, { ...lacking, what: `the coupling of ${scope.owner.called}`, fits: 'such as `capacitance 0.8 pF` or `mutual 3 nH`' });
+  if (between === null) missing(scope, { ...lacking, what: `between of ${scope.owner.called}`, fits: 'two nets, such as `between A and B`' });
+  else if (capacitive === null && inductive === null) missing(scope, { ...lacking, what: `coupling of ${scope.owner.called}`, fits: 'such as `capacitance 0.8 pF` or `mutual 3 nH`' });
   if (from !== null && from === to) {
     report(scope, 'bad-value', between!.span, `${scope.owner.called} couples ${shown(from.name)} with itself`);
     gap(scope, between!.span, `what ${scope.owner.called} couples`);

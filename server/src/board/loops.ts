@@ -104,7 +104,7 @@ function pathOf(scope: Scope, statement: Statement): ReadShape | null {
   const written = statement.values.filter((value) => value.kind === 'point');
   const points = written.map((point) => pointOf(scope, point));
   if (written.length < 3) {
-    missing(scope, { span: statement.span, before: valuesSpan(statement), what: `a corner of ${scope.owner.called}`, fits: 'a path has three at least, such as `(0 mm, 0 mm) (9 mm, 0 mm) (9 mm, 5 mm)`' });
+    missing(scope, { span: statement.span, before: valuesSpan(statement), what: `corner of ${scope.owner.called}`, fits: 'a path has three at least, such as `(0 mm, 0 mm) (9 mm, 0 mm) (9 mm, 5 mm)`' });
     return null;
   }
   const whole = points.filter((point) => point !== null);
@@ -112,7 +112,7 @@ function pathOf(scope: Scope, statement: Statement): ReadShape | null {
 }
 
 function pointOf(scope: Scope, { x, y, z }: PointValue): LoopPoint | null {
-  const allowed: Allowed = { what: `a coordinate of ${scope.owner.called}`, sign: 'any' };
+  const allowed: Allowed = { what: `coordinate of ${scope.owner.called}`, sign: 'any' };
   const [left, right] = [givenOf<Length>(scope, x, allowed), givenOf<Length>(scope, y, allowed)];
   const up = z && givenOf<Length>(scope, z, allowed);
   return left === null || right === null || (z !== null && up === null) ? null : { x: left, y: right, z: up };

@@ -122,8 +122,13 @@ export function gapAt({ resolution, owner }: Scope, place: Place, what: string):
   resolution.gaps.push({ owner, what, place });
 }
 
-/** A value that is required and not written, marked at the word before it. Silent where the text itself is broken there. */
+/** A value that is required and not written, marked at the word before it. Silent where the text itself is broken, there or on the rest of its line. */
 export function missing(scope: Scope, { span, before, what, fits }: { readonly span: Span; readonly before: Span; readonly what: string; readonly fits: string }): void {
   gap(scope, before, `the ${what}`);
-  if (scope.unreadable.errorsIn(span).length === 0) report(scope, 'missing-value', before, `${what} is missing: ${fits}`);
+  if (!isSpoiltBeside(scope, span)) report(scope, 'missing-value', before, `${what} is missing: ${fits}`);
+}
+
+function isSpoiltBeside({ file, unreadable }: Scope, { start, end }: Span): boolean {
+  const lineEnd = file.tree.text.indexOf('\n', end);
+  return 0 < unreadable.errorsIn({ start, end: lineEnd < 0 ? Infinity : lineEnd }).length;
 }

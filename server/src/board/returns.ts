@@ -34,7 +34,7 @@ function resolveReturn(declaration: Declaration, { layers, nets, pairs }: LoopCo
   const onStrips = strips.flatMap((strip) => strip?.located ?? []);
   const isWithinOne = over === null || withinOneStackup(scope, [over, ...onStrips]);
   if (written.length === 0 && 0 < carries.length + refers.length && nameValue !== null) {
-    missing(scope, { span: statement.span, before: nameValue.span, what: `a piece of ${scope.owner.called}`, fits: 'such as `strip 30 mm by 1.5 mm on TOP`, `via drill 0.3 mm` or `measured 2 mohm`' });
+    missing(scope, { span: statement.span, before: nameValue.span, what: `piece of ${scope.owner.called}`, fits: 'such as `strip 30 mm by 1.5 mm on TOP`, `via drill 0.3 mm` or `measured 2 mohm`' });
   }
   const isWhole = pieces.length === written.length && (overName === null || over !== null) && isWithinOne;
   if (nameValue === null || names.length === 0 || !isWhole) return null;

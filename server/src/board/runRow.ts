@@ -22,9 +22,9 @@ export function rowOfRun(scope: Scope, { block, statements, nets, isFirst, layer
   const conductors: RunConductor[] = [];
   const gaps: Given<Length>[] = [];
   let isWhole = isAlternating(scope, block, parts);
-  for (const part of parts) {
+  for (const [index, part] of parts.entries()) {
     if (part.keyword === 'gap') {
-      const size = given<Length>(scope, part, 'gap', inSection(`a gap in ${scope.owner.called}`));
+      const size = given<Length>(scope, part, 'gap', inSection(`gap ${between(parts[index - 1], parts[index + 1])}in ${scope.owner.called}`));
       if (size === null) isWhole = false;
       else gaps.push(size);
       continue;
@@ -134,6 +134,11 @@ function undercutFits(scope: Scope, { name, undercut }: CopperRow, conductors: r
     gap(scope, conductor.width.place.span, `the width of ${title} in ${scope.owner.called}`);
   }
   return tooNarrow.length === 0;
+}
+
+function between(before: Statement | undefined, after: Statement | undefined): string {
+  const isConductor = (part: Statement | undefined): part is Statement => part !== undefined && part.keyword !== 'gap';
+  return isConductor(before) && isConductor(after) ? `between ${called(before)} and ${called(after)} ` : '';
 }
 
 function called(statement: Statement): string {

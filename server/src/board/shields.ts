@@ -38,7 +38,7 @@ function resolveShield(declaration: Declaration, subjectNamed: (name: string) =>
   if (nameValue === null) return null;
   const lacking = { span: statement.span, before: nameValue.span };
   if (slot === null) missing(scope, { ...lacking, what: `slot of ${scope.owner.called}`, fits: 'its longest opening, such as `slot 6 mm`' });
-  if (grounded === null && floating === null) missing(scope, { ...lacking, what: `whether ${scope.owner.called} is grounded`, fits: '`grounded` or `floating`' });
+  if (grounded === null && floating === null) missing(scope, { ...lacking, what: `grounding of ${scope.owner.called}`, fits: '`grounded` or `floating`' });
   if (grounded !== null && floating !== null) reportContradiction(scope, grounded, floating);
   if (names.length === 0) return null;
   return {

@@ -24,7 +24,7 @@ export interface Unreadable {
 
 export function unreadableOf(tree: SourceTree): Unreadable {
   const errors = [...tree.errors].sort((a, b) => a.span.start - b.span.start);
-  const stretches = [...tree.unread, ...errors.map(({ span }) => span)].sort((a, b) => a.start - b.start);
+  const stretches = merged([...tree.unread, ...errors.map(({ span }) => span)]);
   const words = wordsOnLines(tree, stretches);
   const isStray = (offset: number) => statementAt(tree.statements, offset) === null;
   return {
@@ -67,6 +67,17 @@ function hidesHead(error: TextError, statement: Statement | null): boolean {
   if (block !== null && block.span.start < error.span.start && error.span.start < block.span.end) return false;
   // A head with a wrong unit still says whose head it is.
   return error.rule === 'syntax' || error.rule === 'missing-value';
+}
+
+/** In the order of the text, those that overlap made one. */
+function merged(spans: readonly Span[]): readonly Span[] {
+  const stretches: { start: number; end: number }[] = [];
+  for (const { start, end } of [...spans].sort((a, b) => a.start - b.start)) {
+    const last = stretches.at(-1);
+    if (last !== undefined && (start < last.end || start === last.start)) last.end = Math.max(last.end, end);
+    else stretches.push({ start, end });
+  }
+  return stretches;
 }
 
 interface UnreadableWord {
