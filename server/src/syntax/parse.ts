@@ -12,8 +12,7 @@ import { keywordsOf, listed, shapeOf, someOf } from './fits';
 import type { BlockKind, StatementShape } from './grammar';
 import { tokensOf } from './lexer';
 import { Mistakes, quoted } from './mistakes';
-import type { StatementReading } from './reading';
-import { beginsNumber } from './numbers';
+import { beginsQuantity, type StatementReading } from './reading';
 import { readParts } from './statementReader';
 import { tooMuch } from './statementEnd';
 import type { Block, SourceTree, Span, Statement } from './tree';
@@ -32,7 +31,7 @@ export function parse(text: string): SourceTree {
     passSeparators(cursor);
     if (cursor.kind === 'end') break;
     const shape = cursor.kind === 'word' ? shapeOf('file', cursor.word) : undefined;
-    if (shape === undefined) passStrayText(parser);
+    if (shape === undefined) passStrayText(parser, statements.at(-1));
     else statements.push(readStatement(parser, shape));
   }
   return { text, tokens, version, statements, errors: mistakes.all, unread };
@@ -105,6 +104,10 @@ function readBlockOf(parser: Parser, reading: StatementReading, { kind, required
   };
   if (!cursor.atEnd && !cursor.isMark('{')) {
     if (cursor.kind === 'word' && shapeOf(kind, cursor.word) !== undefined) return brace();
+    if (nextStatementBegins(parser, reading)) {
+      reading.broken ||= !inherits(reading, required);
+      return null;
+    }
     tooMuch(reading);
     passHead(parser);
   }
@@ -118,12 +121,16 @@ function readBlockOf(parser: Parser, reading: StatementReading, { kind, required
     passSeparators(ahead);
     if (ahead.kind === 'word' && shapeOf(kind, ahead.word) !== undefined && !isDeclarationAt(ahead)) return brace();
   }
-  const inherits = required === 'unless-is' && reading.values.some((value) => value.role === 'family');
-  if (!inherits && !reading.lost) {
-    mistakes.report('syntax', cursor.last, `${label(reading)} lacks its block \`{ … }\`${required === 'unless-is' ? ', or `is` and a family' : ''}`);
+  if (!inherits(reading, required)) {
+    if (!reading.lost) mistakes.report('syntax', cursor.last, `${label(reading)} lacks its block \`{ … }\`${required === 'unless-is' ? ', or `is` and a family' : ''}`);
+    reading.broken = true;
   }
-  if (!inherits) reading.broken = true;
   return null;
+}
+
+/** After `is FAMILY` no block is due. */
+function inherits({ values }: StatementReading, required: 'always' | 'unless-is'): boolean {
+  return required === 'unless-is' && values.some((value) => value.role === 'family');
 }
 
 function label({ shape, values }: StatementReading): string {
@@ -139,6 +146,7 @@ function readBlock(parser: Parser, kind: BlockKind, of: StatementReading, bare: 
   const statements: Statement[] = [];
   parser.open.push(kind);
   let closed = false;
+  let foreign = false;
   for (;;) {
     passSeparators(cursor);
     if (cursor.isMark('}')) {
@@ -154,8 +162,15 @@ function readBlock(parser: Parser, kind: BlockKind, of: StatementReading, bare: 
       break;
     }
     const shape = cursor.kind === 'word' ? shapeOf(kind, cursor.word) : undefined;
-    if (shape === undefined) passUnknownStatement(parser, kind);
-    else statements.push(readStatement(parser, shape));
+    if (shape !== undefined) {
+      statements.push(readStatement(parser, shape));
+      continue;
+    }
+    // Several statements of another kind of block are one mistake: its head was misread.
+    const isForeign = cursor.kind === 'word' && 0 < blocksHolding(cursor.word).length;
+    if (!(foreign && isForeign)) reportUnknownStatement(parser, kind);
+    foreign ||= isForeign;
+    passOver(parser);
   }
   parser.open.pop();
   return { kind, span: { start, end: Math.max(start, cursor.last.end) }, statements, closed };
@@ -181,35 +196,39 @@ function isDeclarationAt(cursor: TokenCursor): boolean {
   return word === 'return' ? ahead.beyondNewlines().isMark('{') : ahead.isWord('on');
 }
 
-function passUnknownStatement(parser: Parser, kind: BlockKind): void {
-  const { cursor, mistakes } = parser;
+function reportUnknownStatement({ cursor, mistakes }: Parser, kind: BlockKind): void {
   const span = cursor.span;
   const found = cursor.word;
   const meant = cursor.kind === 'word' ? closest(found, keywordsOf(kind)) : null;
   const place = kind === 'row' || kind === 'stackup' ? `row of a ${kind === 'row' ? 'run' : kind}` : `statement of ${kind === 'ambient' ? 'an' : 'a'} ${kind}`;
   if (meant !== null) mistakes.report('syntax', span, `${quoted(found)}? ${meant}`, [{ title: `Write ${meant}`, span, newText: meant }]);
   else mistakes.report('syntax', span, `${quoted(found)} begins no ${place}; fits: ${someOf(keywordsOf(kind))}`);
-  passOver(parser);
 }
 
 /** Stray text outside of declarations, up to the next line that begins with one: one error a stretch. */
-function passStrayText(parser: Parser): void {
+function passStrayText(parser: Parser, after: Statement | undefined): void {
   const { cursor, mistakes, unread } = parser;
   const span = cursor.span;
   const found = cursor.word;
   const meant = cursor.kind === 'word' ? closest(found, keywordsOf('file')) : null;
-  if (meant !== null) mistakes.report('syntax', span, `${quoted(found)}? ${meant}`, [{ title: `Write ${meant}`, span, newText: meant }]);
-  else if (found === '}') mistakes.report('syntax', span, 'this `}` closes nothing');
-  else if (found === 'quietrun') mistakes.report('syntax', span, '`quietrun` and the version stand before everything else, once');
-  else mistakes.report('syntax', span, `${quoted(found)} begins no declaration; ${whereItFits(found)}`);
+  // What follows a statement that stood outside its block is the rest of that block, and no second mistake.
+  const remains = after?.broken === true && (found === '}' || 0 < blocksHolding(found).length);
+  if (!remains && meant !== null) mistakes.report('syntax', span, `${quoted(found)}? ${meant}`, [{ title: `Write ${meant}`, span, newText: meant }]);
+  else if (!remains) mistakes.report('syntax', span, strayMessage(found));
   do cursor.next();
   while (cursor.kind !== 'end' && !isDeclarationAt(cursor));
   unread.push({ start: span.start, end: cursor.last.end });
 }
 
-function whereItFits(word: string): string {
-  const kinds = (['board', 'stackup', 'net', 'pair', 'run', 'loop', 'return', 'link', 'shield', 'ambient'] as const).filter((kind) => shapeOf(kind, word) !== undefined);
-  return 0 < kinds.length ? `it belongs in the block of a ${listed(kinds)}` : `fits: ${someOf(keywordsOf('file'))}`;
+function strayMessage(found: string): string {
+  if (found === '}') return 'this `}` closes nothing';
+  if (found === 'quietrun') return '`quietrun` and the version stand before everything else, once';
+  const kinds = blocksHolding(found).map((kind) => (kind === 'row' ? 'run' : kind));
+  return `${quoted(found)} begins no declaration; ${0 < kinds.length ? `it belongs in the block of a ${listed([...new Set(kinds)])}` : `fits: ${someOf(keywordsOf('file'))}`}`;
+}
+
+function blocksHolding(word: string): readonly BlockKind[] {
+  return (['board', 'stackup', 'net', 'pair', 'run', 'row', 'loop', 'return', 'link', 'shield', 'ambient'] as const).filter((kind) => shapeOf(kind, word) !== undefined);
 }
 
 /** To where the statement ends, blocks that do not belong to it included. */
@@ -231,7 +250,7 @@ function passOver(parser: Parser): void {
 function continues(cursor: TokenCursor): boolean {
   if (cursor.kind !== 'newline' || cursor.text[cursor.last.end - 1] !== ',') return false;
   const ahead = cursor.beyondNewlines();
-  return ahead.isMark('(') || (ahead.kind === 'word' && beginsNumber(ahead.text, ahead.start));
+  return ahead.isMark('(') || beginsQuantity(ahead, ['resistance', 'capacitance']);
 }
 
 /** To the block of a declaration or, where it has none, to the end of the head. */

@@ -109,7 +109,7 @@ function readRepeat(reading: StatementReading, parts: readonly Part[]): void {
 
 /** Words after a value that stand in any order, each at most once: `reversed`, `after 12 mm`. */
 function readSuffixes(reading: StatementReading, part: Part & { readonly is: 'suffixes' }): void {
-  const { cursor, mistakes } = reading;
+  const { cursor } = reading;
   const seen = new Set<readonly Part[]>();
   for (;;) {
     const suffix = part.of.find(([first]) => begins(reading, first!));
@@ -119,7 +119,7 @@ function readSuffixes(reading: StatementReading, part: Part & { readonly is: 'su
       continue;
     }
     if (seen.has(suffix)) {
-      mistakes.report('syntax', cursor.span, `${quoted(cursor.word)} stands here twice`);
+      reading.mistakes.report('syntax', cursor.span, `${quoted(cursor.word)} stands here twice`);
       reading.broken = true;
       const { values } = reading;
       // The first one counts; the second is read so that what follows it is.
