@@ -1,5 +1,5 @@
 /** Web: the server is a worker. */
-import { LanguageClient } from 'vscode-languageclient/browser';
+import { BrowserMessageReader, BrowserMessageWriter, LanguageClient } from 'vscode-languageclient/browser';
 import * as vscode from 'vscode';
 import { startClient, type RunningClient } from './startClient';
 
@@ -19,7 +19,9 @@ export async function activate(context: vscode.ExtensionContext): Promise<void> 
       // A restart has to end the old worker: nothing else does.
       worker?.terminate();
       worker = new Worker(address);
-      return worker as never;
+      // Handed over as channels: the web's extension host puts a class of its own in the place of
+      // `Worker`, and the client would not know an instance of it.
+      return { reader: new BrowserMessageReader(worker as never), writer: new BrowserMessageWriter(worker as never) };
     }, options),
     // A virtual file system says that a file is a link, and not where it leads.
     realPath: async () => null,

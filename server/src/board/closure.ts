@@ -82,7 +82,9 @@ export function closureOf(root: string, sources: Sources): Closure {
           continue;
         }
         unread.push(place);
-        if (outcome.problem !== 'unread') refuse(place, problemText(use.text, outcome), outcome.problem === 'case' ? outcome.actual : undefined);
+        if (outcome.problem === 'unread') continue;
+        const actual = outcome.actual === undefined ? undefined : respelt(use.text, outcome.actual);
+        refuse(place, problemText(use.text, { problem: outcome.problem, ...(actual === undefined ? {} : { actual }) }), actual);
       }
     }
   }
@@ -130,6 +132,16 @@ function joinText(written: string, problem: 'empty' | 'backslash' | 'absolute' |
     case 'absolute': return `${quoted(written)} is not relative to this file`;
     case 'outside': return `${quoted(written)} lies outside the workspace folder`;
   }
+}
+
+/** The written path in the letters of the file system, which knows the file from another folder. */
+function respelt(written: string, actual: string): string {
+  const [parts, spelt] = [written.split('/'), actual.split('/')];
+  for (let back = 1; back <= Math.min(parts.length, spelt.length); back += 1) {
+    if (parts[parts.length - back].toLowerCase() !== spelt[spelt.length - back].toLowerCase()) break;
+    parts[parts.length - back] = spelt[spelt.length - back];
+  }
+  return parts.join('/');
 }
 
 function problemText(written: string, { problem, actual }: SourceProblem): string {

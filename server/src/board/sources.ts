@@ -19,7 +19,7 @@ export interface SourceProblem {
    * unread     it has been asked for and has not arrived: no finding, but the project is incomplete
    */
   readonly problem: 'missing' | 'outside' | 'case' | 'too-large' | 'unread';
-  /** With `case`: the path as the file system spells it, as it should stand in the `use`. */
+  /** With `case`: the path as the file system spells it, from whatever folder. */
   readonly actual?: string;
 }
 

@@ -16,7 +16,7 @@ export const diskReader: FileReader = {
     try {
       return await readInside(address.fsPath, folders);
     } catch (error) {
-      return { problem: (error as NodeJS.ErrnoException).code === 'ENOENT' ? 'missing' : 'unread' };
+      return { problem: /^(ENOENT|ENOTDIR)$/.test((error as NodeJS.ErrnoException).code ?? '') ? 'missing' : 'unread' };
     }
   },
 

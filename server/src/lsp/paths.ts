@@ -23,8 +23,14 @@ export class Paths {
     const address = URI.parse(uri);
     if (address.query !== '') return null;
     const key = address.scheme === 'untitled' ? this.#untitledKey(address) : keyOfAddress(address);
-    this.#uris.set(key, uri);
+    if (!this.#uris.has(key)) this.#uris.set(key, uri);
     return key;
+  }
+
+  /** The client's own spelling of an open document counts from here on. */
+  spell(uri: string): void {
+    const key = this.keyOf(uri);
+    if (key !== null) this.#uris.set(key, uri);
   }
 
   uriOf(key: string): string {

@@ -1,0 +1,12 @@
+/** What every request of the server is answered with. */
+import type { CancellationToken, Connection } from 'vscode-languageserver';
+import type { Documents } from './documents';
+import type { Settings } from './settings';
+
+export interface Server {
+  readonly connection: Connection;
+  readonly documents: Documents;
+  readonly settings: Settings;
+  /** See `guard.ts`: `otherwise` is answered where `answer` has a fault. */
+  readonly guard: <P, R>(name: string, otherwise: R, answer: (params: P) => Promise<R>) => (params: P, token: CancellationToken) => Promise<R>;
+}

@@ -1,0 +1,115 @@
+/**
+ * The language server on a connection, whatever that runs over: says what it can do, and hands each
+ * request to the file that answers it.
+ */
+import { CodeActionKind, DidChangeConfigurationNotification, DidChangeWatchedFilesNotification, TextDocumentSyncKind, type ClientCapabilities, type Connection, type InitializeParams, type InitializeResult } from 'vscode-languageserver';
+import { rules } from '../rules/index';
+import { rulePage } from '../rules/rulePage';
+import { Session } from '../service/session';
+import { answerCodeActions } from './codeAction';
+import { answerDefinition } from './definition';
+import { answerPulls, pushFindings } from './diagnostics';
+import { Documents } from './documents';
+import { answerSymbols } from './documentSymbol';
+import { guarded } from './guard';
+import { explainMethod, type ClientOptions, type ExplainParams } from './messages';
+import { clientReader, type FileReader } from './reader';
+import { answerReferences } from './references';
+import type { Server } from './server';
+import { createSettings } from './settings';
+import { sendStatus } from './status';
+
+/** `ownReader` reads for a client that does not offer to read for the server. */
+export function startServer(connection: Connection, ownReader: FileReader): void {
+  const documents = new Documents(new Session());
+  let capabilities: ClientCapabilities = {};
+  let clientOptions: ClientOptions = {};
+  const server: Server = {
+    connection,
+    documents,
+    settings: createSettings(connection, () => capabilities),
+    guard: (name, otherwise, answer) => guarded({ connection, name, answer, otherwise: () => otherwise }),
+  };
+
+  connection.onInitialize((params) => {
+    capabilities = params.capabilities;
+    clientOptions = (params.initializationOptions ?? {}) as ClientOptions;
+    documents.reader = clientOptions.readsFiles === true ? clientReader(connection) : ownReader;
+    documents.paths.setFolders(foldersOf(params));
+    const findings = { connection, documents, rulePages: clientOptions.rulePages ?? null, computed: (path: string) => clientOptions.showsStatus === true && sendStatus(server, path) };
+    if (pulls(capabilities)) answerPulls(findings);
+    else pushFindings(findings);
+    return abilities(capabilities);
+  });
+
+  connection.onInitialized(async () => {
+    await register(connection, capabilities);
+    if (capabilities.workspace?.workspaceFolders === true) {
+      connection.workspace.onDidChangeWorkspaceFolders(async () => {
+        documents.paths.setFolders(((await connection.workspace.getWorkspaceFolders()) ?? []).map(({ uri }) => uri));
+        await readWorkspace(server, capabilities);
+      });
+    }
+    await readWorkspace(server, capabilities);
+  });
+
+  connection.onDidChangeWatchedFiles(async (params) => {
+    await documents.changedOnDisk(params);
+    refresh(server, capabilities);
+  });
+  connection.onRequest(explainMethod, (params: ExplainParams) => {
+    const rule = rules.find(({ name }) => name === params.rule);
+    return rule === undefined ? null : rulePage(rule);
+  });
+
+  documents.listen(connection);
+  answerCodeActions(server);
+  answerDefinition(server);
+  answerReferences(server);
+  answerSymbols(server);
+  connection.listen();
+}
+
+const pulls = (capabilities: ClientCapabilities) => capabilities.textDocument?.diagnostic !== undefined;
+
+function abilities(capabilities: ClientCapabilities): InitializeResult {
+  return {
+    capabilities: {
+      positionEncoding: 'utf-16',
+      textDocumentSync: { openClose: true, change: TextDocumentSyncKind.Incremental },
+      ...(pulls(capabilities) ? { diagnosticProvider: { identifier: 'quietrun', interFileDependencies: true, workspaceDiagnostics: true } } : {}),
+      codeActionProvider: { codeActionKinds: [CodeActionKind.QuickFix] },
+      definitionProvider: true,
+      referencesProvider: true,
+      documentSymbolProvider: true,
+      workspace: { workspaceFolders: { supported: true, changeNotifications: true } },
+    },
+    serverInfo: { name: 'quietrun' },
+  };
+}
+
+function foldersOf({ workspaceFolders, rootUri }: InitializeParams): readonly string[] {
+  if (workspaceFolders !== undefined && workspaceFolders !== null) return workspaceFolders.map(({ uri }) => uri);
+  return rootUri === null || rootUri === undefined ? [] : [rootUri];
+}
+
+async function register(connection: Connection, { workspace }: ClientCapabilities): Promise<void> {
+  if (workspace?.didChangeConfiguration?.dynamicRegistration === true) await connection.client.register(DidChangeConfigurationNotification.type, { section: 'quietrun' });
+  if (workspace?.didChangeWatchedFiles?.dynamicRegistration === true) await connection.client.register(DidChangeWatchedFilesNotification.type, { watchers: [{ globPattern: '**/*.quiet' }] });
+}
+
+/** A folder that cannot be listed is no reason to answer nothing: files are then read as they are used. */
+async function readWorkspace(server: Server, capabilities: ClientCapabilities): Promise<void> {
+  try {
+    await server.documents.readWorkspace();
+  } catch (error) {
+    server.connection.console.warn(`the files of the workspace could not be listed: ${String(error)}`);
+  }
+  refresh(server, capabilities);
+}
+
+/** What the client was told may have changed without an edit of its own. */
+function refresh({ connection }: Server, { workspace }: ClientCapabilities): void {
+  if (workspace?.diagnostics?.refreshSupport === true) void connection.languages.diagnostics.refresh();
+  if (workspace?.inlayHint?.refreshSupport === true) void connection.languages.inlayHint.refresh();
+}
