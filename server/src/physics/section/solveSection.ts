@@ -36,7 +36,7 @@ export interface SolveOptions {
 /** A larger one is worth a finer setting: it is 5 to 50 times the error. */
 const wantedChange = 1e-4;
 
-export function solveSection(section: Section, { effort = 1, mostEffort = 4 }: SolveOptions = {}): SectionSolution {
+export function solveSection(section: Section, { effort = 0, mostEffort = 4 }: SolveOptions = {}): SectionSolution {
   const refused = refusalOf(section);
   if (refused !== null) return { refused };
   if (section.film !== null) {

@@ -38,6 +38,11 @@ function surroundingsOf(own: Trapezoid, all: readonly Trapezoid[], { layers, pla
     // Beside the face by less than the distance in front of it still bends the charge there.
     if (0 < up && across < up) facing = Math.min(facing, up);
   }
+  // An image in an interface that the conductor does not touch acts as a neighbour does.
+  for (const interfaceHeight of [layers[own.layer].bottom, layers[own.layer].top]) {
+    const distance = Math.max(own.bottom - interfaceHeight, interfaceHeight - own.top);
+    if (0 < distance) gap = Math.min(gap, 2 * distance);
+  }
   const below = planeBelow ? own.bottom - layers[0].bottom : Infinity;
   const above = planeAbove ? layers[layers.length - 1].top - own.top : Infinity;
   const depth = Math.min(below, above, facing);

@@ -19,7 +19,7 @@ export interface SideOrders {
 export interface Surroundings {
   readonly width: number;
   readonly height: number;
-  /** To the nearest neighbour. */
+  /** To the nearest neighbour, or image of itself. */
   readonly gap: number;
   /** Upwards or downwards, to the nearest plane or conductor in front of a wide face. */
   readonly depth: number;

@@ -6,7 +6,7 @@
  * Method    Gauss-Legendre; Gauss-Jacobi in the parts that hold an end, so that the edge's power is exact
  * Accuracy  degree 11 in p_m times a kernel whose nearest singularity is 0.6 of the part's length away: 1e-8 (test)
  */
-import { gaussJacobi } from '../../../numeric/gaussJacobi';
+import { keptRule } from './keptRule';
 import { polynomialLimit, writePolynomials, type Recurrence } from './orthonormalJacobi';
 
 export interface PartRule {
@@ -29,7 +29,7 @@ export function partRule({ start, end, recurrence, total }: WeightedPolynomials,
   const size = 2 ** -level;
   const atStart = index === 0;
   const atEnd = index === 2 ** level - 1;
-  const { nodes, weights } = gaussJacobi(count, atEnd ? end : 0, atStart ? start : 0);
+  const { nodes, weights } = keptRule(count, atEnd ? end : 0, atStart ? start : 0);
   const t = new Float64Array(count);
   const weighted = new Float64Array(count * polynomialLimit);
   for (let f = 0; f < count; f += 1) {
@@ -48,7 +48,7 @@ const partPoints = (level: number) => (level === 1 ? 14 : level === 2 ? 11 : 9);
 
 /** The whole side, both ends' powers in the weight. */
 export function wholeRule({ start, end, recurrence, total }: WeightedPolynomials, count: number): PartRule {
-  const { nodes, weights } = gaussJacobi(count, end, start);
+  const { nodes, weights } = keptRule(count, end, start);
   const weighted = new Float64Array(count * polynomialLimit);
   for (let f = 0; f < count; f += 1) writePolynomials(recurrence, nodes[f], weights[f] / total, weighted, f * polynomialLimit, polynomialLimit);
   return { count, t: nodes.map((u) => (1 + u) / 2), weighted };

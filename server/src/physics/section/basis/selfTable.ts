@@ -1,5 +1,5 @@
 /**
- * A side acting on itself: double integrals of w p_m w p_n (-ln |u - v|) over [-1, 1]², polynomialLimit² of them.
+ * A side acting on itself: double integrals of w p_m w p_n (-ln |u - v|) over [-1, 1]², for m and n below `size`.
  *
  *      -1 ----a---- 0 ----b---- 1        Method  the square is cut at u = 0 and v = 0. The quarter of one half on itself
  *                                                is twice a triangle with its corner at the side's end, scaled
@@ -10,20 +10,20 @@
  *   Source   Duffy 1982 for the change of variables, from memory
  *   Accuracy 1e-12 against a rule of graded panels (the test); 1 ms once for every pair of exponents
  */
-import { gaussJacobi } from '../../../numeric/gaussJacobi';
-import { logRule } from './logRule';
+import { keptLogRule, keptRule } from './keptRule';
 import { polynomialLimit, writePolynomials } from './orthonormalJacobi';
 import { partRule, type PartRule } from './partRule';
 import type { SideBasis } from './sideBasis';
 
-const points = 20;
-
-export function selfTable(basis: SideBasis): Float64Array {
-  const size = polynomialLimit;
+export function selfTable(basis: SideBasis, size = polynomialLimit): Float64Array {
+  const points = size + 5;
   const table = new Float64Array(size * size);
-  addHalfOnItself(basis, 1, table);
-  addHalfOnItself(basis.reversed(), -1, table);
-  addHalfOnOther(basis, table);
+  addHalfOnItself(basis, { parity: 1, size, points }, table);
+  addHalfOnItself(basis.reversed(), { parity: -1, size, points }, table);
+  addMeetingQuarters(basis, { size, points }, table);
+  // Parts that do not meet: plain product rules, the ends' powers in their weights.
+  const [first, second, third, fourth] = [0, 1, 2, 3].map((index) => partRule(basis, 2, index, points));
+  for (const [left, right] of [[first, third], [first, fourth], [second, fourth]]) addParts(left, right, size, table);
   for (let m = 0; m < size; m += 1) {
     for (let n = 0; n < m; n += 1) {
       const mean = (table[m * size + n] + table[n * size + m]) / 2;
@@ -33,13 +33,18 @@ export function selfTable(basis: SideBasis): Float64Array {
   return table;
 }
 
+interface TableSize {
+  readonly size: number;
+  /** Nodes of every rule. */
+  readonly points: number;
+}
+
 /** u = -1 + r, v = -1 + r s, r and s in [0, 1]; and u exchanged with v. `parity` -1: for the basis run backwards. */
-function addHalfOnItself(basis: SideBasis, parity: 1 | -1, table: Float64Array): void {
-  const size = polynomialLimit;
+function addHalfOnItself(basis: SideBasis, { parity, size, points }: TableSize & { readonly parity: 1 | -1 }, table: Float64Array): void {
   const { start, end, total, recurrence } = basis;
-  const radial = logRule(points, 2 * start + 1);
-  const near = gaussJacobi(points, 0, start);
-  const far = logRule(points, 0);
+  const radial = keptLogRule(points, 2 * start + 1);
+  const near = keptRule(points, 0, start);
+  const far = keptLogRule(points, 0);
   const outer = new Float64Array(size);
   const inner = new Float64Array(size);
   const plain = new Float64Array(size);
@@ -76,19 +81,10 @@ function addHalfOnItself(basis: SideBasis, parity: 1 | -1, table: Float64Array):
   }
 }
 
-/** u < 0 < v and v < 0 < u: -ln(|u| + |v|), singular where both vanish. */
-function addHalfOnOther(basis: SideBasis, table: Float64Array): void {
-  addMeetingQuarters(basis, table);
-  // Parts that do not meet: plain product rules, the ends' powers in their weights.
-  const [first, second, third, fourth] = [0, 1, 2, 3].map((index) => partRule(basis, 2, index, points));
-  for (const [left, right] of [[first, third], [first, fourth], [second, fourth]]) addParts(left, right, table);
-}
-
 /** u in [-1/2, 0], v in [0, 1/2]: the larger of |u|, |v| is r, the smaller r s. */
-function addMeetingQuarters({ start, end, total, recurrence }: SideBasis, table: Float64Array): void {
-  const size = polynomialLimit;
-  const radial = logRule(points, 1);
-  const angular = gaussJacobi(points, 0, 0);
+function addMeetingQuarters({ start, end, total, recurrence }: SideBasis, { size, points }: TableSize, table: Float64Array): void {
+  const radial = keptLogRule(points, 1);
+  const angular = keptRule(points, 0, 0);
   const values = new Float64Array(size);
   const outer = new Float64Array(size);
   const inner = new Float64Array(size);
@@ -109,22 +105,22 @@ function addMeetingQuarters({ start, end, total, recurrence }: SideBasis, table:
   }
 }
 
-function addParts(left: PartRule, right: PartRule, table: Float64Array): void {
-  const size = polynomialLimit;
+/** -ln |u - v| of two parts, the left one first. */
+function addParts(left: PartRule, right: PartRule, size: number, table: Float64Array): void {
   const inner = new Float64Array(size);
   for (let f = 0; f < left.count; f += 1) {
     inner.fill(0);
     for (let g = 0; g < right.count; g += 1) {
       const value = -Math.log(2 * (right.t[g] - left.t[f]));
-      for (let n = 0; n < size; n += 1) inner[n] += value * right.weighted[g * size + n];
+      for (let n = 0; n < size; n += 1) inner[n] += value * right.weighted[g * polynomialLimit + n];
     }
-    addBothWays(left.weighted.subarray(f * size, (f + 1) * size), inner, table);
+    addBothWays(left.weighted.subarray(f * polynomialLimit, f * polynomialLimit + size), inner, table);
   }
 }
 
 /** outer on u and inner on v, and exchanged. */
 function addBothWays(outer: Float64Array, inner: Float64Array, table: Float64Array): void {
-  const size = polynomialLimit;
+  const size = outer.length;
   for (let m = 0; m < size; m += 1) {
     for (let n = 0; n < size; n += 1) {
       const value = outer[m] * inner[n];

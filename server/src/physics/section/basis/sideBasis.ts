@@ -28,10 +28,15 @@ export interface SideBasis {
   readonly whole: (count: number) => PartRule;
   /** Over the dyadic part [index, index + 1] / 2^level of the side, level at least 1. */
   readonly part: (level: number, index: number) => PartRule;
-  /** polynomialLimit² entries: double integrals of w p_m w p_n (-ln |u - v|). */
-  readonly self: () => Float64Array;
+  /** Double integrals of w p_m w p_n (-ln |u - v|) for m and n below `order`, or further: entry m × stride + n. */
+  readonly self: (order: number) => SelfTable;
   /** Kept here by whoever makes tables of this basis with another one. */
   readonly tables: Map<string, unknown>;
+}
+
+export interface SelfTable {
+  readonly stride: number;
+  readonly entries: Float64Array;
 }
 
 /** A stack has few kinds of edge; the bound only guards against a file that sweeps permittivities. */
@@ -53,7 +58,7 @@ function makeBasis(start: number, end: number): SideBasis {
   const total = gaussJacobi(1, end, start).weights[0];
   const wholes: (PartRule | undefined)[] = [];
   const parts: (PartRule | undefined)[][] = [];
-  let self: Float64Array | null = null;
+  let self: SelfTable = { stride: 0, entries: new Float64Array(0) };
   const basis: SideBasis = {
     start,
     end,
@@ -62,7 +67,12 @@ function makeBasis(start: number, end: number): SideBasis {
     reversed: () => (start === end ? basis : sideBasis(end, start)),
     whole: (count) => (wholes[count] ??= wholeRule(basis, count)),
     part: (level, index) => ((parts[level] ??= [])[index] ??= partRule(basis, level, index)),
-    self: () => (self ??= selfTable(basis)),
+    self: (order) => {
+      // The work grows with the cube of the size: most sides need a small one.
+      const stride = order <= 8 ? 8 : polynomialLimit;
+      if (self.stride < stride) self = { stride, entries: selfTable(basis, stride) };
+      return self;
+    },
     tables: new Map(),
   };
   return basis;

@@ -11,8 +11,7 @@
  *   Range    parts of similar length that do not reach their sides' other ends; angle from 30 degrees to 180
  *   Accuracy 1e-9 for degrees up to 12 (the test, against graded panels)
  */
-import { gaussJacobi } from '../../../numeric/gaussJacobi';
-import { logRule } from '../basis/logRule';
+import { keptLogRule, keptRule } from '../basis/keptRule';
 import { polynomialLimit, writePolynomials } from '../basis/orthonormalJacobi';
 import type { SideBasis } from '../basis/sideBasis';
 
@@ -73,8 +72,8 @@ function cornerTables(outer: CornerPart, inner: CornerPart): CornerTables {
   const key = `corner ${outer.level} ${inner.level} ${inner.basis.start} ${inner.basis.end}`;
   const known = outer.basis.tables.get(key) as CornerTables | undefined;
   if (known !== undefined) return known;
-  const radial = logRule(radialPoints, outer.basis.start + inner.basis.start + 1);
-  const { nodes, weights } = gaussJacobi(angularPoints, 0, inner.basis.start);
+  const radial = keptLogRule(radialPoints, outer.basis.start + inner.basis.start + 1);
+  const { nodes, weights } = keptRule(angularPoints, 0, inner.basis.start);
   const scale = 2 ** -(inner.basis.start + 1);
   const size = polynomialLimit;
   const made: CornerTables = {

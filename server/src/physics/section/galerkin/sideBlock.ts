@@ -6,7 +6,6 @@
  *           side on itself to its table. A side that lies in the interface of a mirror coincides with its image there, so
  *           that the mirror's factor simply adds to the direct one
  */
-import { polynomialLimit } from '../basis/orthonormalJacobi';
 import type { Side } from '../basis/side';
 import type { Kernel, Mirror } from '../kernel/layeredKernel';
 import { addPairIntegral, distanceToImages, farRatio, imagesOf, type PairKernel } from './pairIntegral';
@@ -47,9 +46,9 @@ export function writeSideBlock(upper: Side, lower: Side, kernel: Kernel, block: 
 const liesIn = ({ y0, y1, length }: Side, height: number) => Math.abs(y0 - height) <= contact * length && Math.abs(y1 - height) <= contact * length;
 
 function addSelf({ basis, order, length }: Side, factor: number, block: Float64Array): void {
-  const self = basis.self();
+  const { entries, stride } = basis.self(order);
   for (let m = 0; m < order; m += 1) {
-    for (let n = 0; n < order; n += 1) block[m * order + n] += factor * self[m * polynomialLimit + n];
+    for (let n = 0; n < order; n += 1) block[m * order + n] += factor * entries[m * stride + n];
   }
   // -ln of half the length, which scales u to metres, meets the net charge only.
   block[0] -= factor * Math.log(length / 2);
