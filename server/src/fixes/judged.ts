@@ -30,8 +30,8 @@ export function judgedByBudget(finding: Finding, context: FixContext, { words, e
 /** For any other finding: the fix, where the finding is gone with it and nothing is worse. */
 export function judgedByFinding(finding: Finding, context: FixContext, title: string, edits: readonly Edit[]): Fix | null {
   const evaluation = context.evaluateWith(edits);
-  const remaining = findingsOf(evaluation);
-  const before = findingsOf(context.evaluation);
+  const remaining = findingsIn(evaluation);
+  const before = findingsIn(context.evaluation);
   const countOf = (findings: readonly Finding[]) => findings.filter(({ key, waived }) => key === finding.key && waived === null).length;
   if (countOf(before) <= countOf(remaining) || isWorse(context, evaluation)) return null;
   return { title, rule: finding.rule, at: finding.at, edits, preferred: false };
@@ -47,9 +47,18 @@ const remainder = { pass: '', low: ', still short of the headroom', over: ', sti
 function isWorse({ evaluation: before }: FixContext, after: Evaluation): boolean {
   const fails = (evaluation: Evaluation, budget: Budget) => severity[sameBudget(evaluation, budget)?.verdict ?? 'unknown'];
   if (after.budgets.some((budget) => fails(before, budget) < severity[budget.verdict])) return true;
-  const known = new Set(findingsOf(before).map(({ key }) => key));
-  return findingsOf(after).some(({ key, severity: weight, rule }) => (weight === 'error' || weight === 'warning') && !onBudgets.has(rule) && !known.has(key));
+  const known = new Set(findingsIn(before).map(({ key }) => key));
+  return findingsIn(after).some(({ key, severity: weight, rule }) => (weight === 'error' || weight === 'warning') && !onBudgets.has(rule) && !known.has(key));
 }
 
 /** Judged above, receiver by receiver. */
 const onBudgets: ReadonlySet<string> = new Set(['over-budget', 'low-margin', 'dominant-coupling']);
+
+/** A menu of fixes asks for the findings of one evaluation again and again. */
+const found = new WeakMap<Evaluation, readonly Finding[]>();
+
+function findingsIn(evaluation: Evaluation): readonly Finding[] {
+  const findings = found.get(evaluation) ?? findingsOf(evaluation);
+  found.set(evaluation, findings);
+  return findings;
+}

@@ -39,12 +39,20 @@ export function partOf(budget: Budget | null, { from, where }: Contribution): nu
 
 /**
  * The receivers' runs, and those of the nets that lie beside them there: what of a net lies outside a
- * run is its length less all its runs.
+ * run is its length less all its runs. Nets that lie in none of them are left out with their budgets.
  */
 function changed(project: Project, changes: readonly Change[], budgets: readonly Budget[]): Project {
   const receivers = new Set(budgets.flatMap(({ subject }) => (subject.kind === 'net' ? [subject.name] : [subject.plus?.name, subject.minus?.name])));
-  const netsOf = (run: Run): readonly Net[] => run.rows.flatMap(({ conductors }) => conductors.flatMap((conductor) => (conductor.kind === 'trace' ? [conductor.net] : [])));
   const beside = new Set(project.runs.map(netsOf).filter((nets) => nets.some(({ name }) => receivers.has(name))).flat());
   const runs = project.runs.filter((run) => netsOf(run).some((net) => beside.has(net)));
-  return { ...project, runs: runs.map((run) => changes.find(({ before }) => before === run)?.after ?? run) };
+  const concerned = new Set(runs.flatMap(netsOf));
+  return {
+    ...project,
+    runs: runs.map((run) => changes.find(({ before }) => before === run)?.after ?? run),
+    nets: new Map([...project.nets].filter(([name, net]) => concerned.has(net) || receivers.has(name))),
+  };
+}
+
+function netsOf(run: Run): readonly Net[] {
+  return run.rows.flatMap(({ conductors }) => conductors.flatMap((conductor) => (conductor.kind === 'trace' ? [conductor.net] : [])));
 }

@@ -73,7 +73,8 @@ function solvedFor(context: FixContext, targets: readonly Target[], goal: Goal):
 
 function proposal(targets: readonly Target[], { values }: Solved): Proposal {
   const widths = targets.map(({ adjustable: { written } }, index) => written.inFile(values[index]!));
-  const words = targets.length === 1 ? `Widen ${targets[0]!.words} to ${widths[0]}` : `Widen ${targets.length} gaps to ${widths.slice(0, -1).join(', ')} and ${widths.at(-1)}`;
+  const runs = new Set(targets.map(({ adjustable }) => adjustable.run)).size;
+  const words = targets.length === 1 ? `Widen ${targets[0]!.words} to ${widths[0]}` : `Widen ${targets.length} gaps${1 < runs ? ` in ${runs} runs` : ''} to ${widths.slice(0, -1).join(', ')} and ${widths.at(-1)}`;
   const moves = targets.reduce((sum, { adjustable }, index) => sum + values[index]! - adjustable.given.value, 0);
   return { words, edits: targets.map(({ adjustable }, index) => lengthEdit(adjustable, values[index]!)), moves };
 }
