@@ -12,7 +12,7 @@ import { keywordsOf, listed, shapeOf, someOf } from './fits';
 import type { BlockKind, StatementShape } from './grammar';
 import { tokensOf } from './lexer';
 import { Mistakes, quoted } from './mistakes';
-import { beginsQuantity, type StatementReading } from './reading';
+import { beginsQuantity, type Expectations, type StatementReading } from './reading';
 import { readParts } from './statementReader';
 import { tooMuch } from './statementEnd';
 import type { Block, SourceTree, Span, Statement } from './tree';
@@ -21,8 +21,13 @@ import { closest } from './words';
 export const languageVersion = 1;
 
 export function parse(text: string): SourceTree {
+  return readText(text, null);
+}
+
+/** As `parse`, and collects what would fit at the end of the text. */
+export function readText(text: string, expectations: Expectations | null): SourceTree {
   const tokens = tokensOf(text);
-  const parser: Parser = { cursor: new TokenCursor(text, tokens), mistakes: new Mistakes(), unread: [], open: ['file'], unclosedAt: -1 };
+  const parser: Parser = { cursor: new TokenCursor(text, tokens), mistakes: new Mistakes(), unread: [], open: ['file'], unclosedAt: -1, expectations };
   const { cursor, mistakes, unread } = parser;
   passSeparators(cursor);
   const version = readVersion(parser);
@@ -34,6 +39,7 @@ export function parse(text: string): SourceTree {
     if (shape === undefined) passStrayText(parser, statements.at(-1));
     else statements.push(readStatement(parser, shape));
   }
+  if (expectations !== null) expectations.block ??= 'file';
   return { text, tokens, version, statements, errors: mistakes.all, unread };
 }
 
@@ -45,6 +51,7 @@ interface Parser {
   readonly open: BlockKind[];
   /** Index of the token at which open blocks were last found to lack their brace: said once for all of them. */
   unclosedAt: number;
+  readonly expectations: Expectations | null;
 }
 
 function passSeparators(cursor: TokenCursor): void {
@@ -71,11 +78,11 @@ function readVersion(parser: Parser): SourceTree['version'] {
 }
 
 function readStatement(parser: Parser, shape: StatementShape): Statement {
-  const { cursor, mistakes } = parser;
+  const { cursor, mistakes, expectations } = parser;
   const documented = parser.open.length === 1 || parser.open.at(-1) === 'stackup';
   const documentation = documented && cursor.atLineStart ? documentationAbove(cursor.text, cursor.tokens, cursor.tokenIndex) : null;
   const keywordSpan = cursor.next();
-  const reading: StatementReading = { cursor, mistakes, shape, within: parser.open.at(-1)!, values: [], broken: false, lost: false, fits: [], fitsAt: -1 };
+  const reading: StatementReading = { cursor, mistakes, shape, within: parser.open.at(-1)!, values: [], broken: false, lost: false, fits: [], fitsAt: -1, expectations };
   readParts(reading, shape.parts);
   const block = shape.block === undefined ? null : readBlockOf(parser, reading, shape.block);
   if (shape.block === undefined && !cursor.atEnd && !nextStatementBegins(parser, reading)) {
@@ -155,6 +162,7 @@ function readBlock(parser: Parser, kind: BlockKind, of: StatementReading, bare: 
       break;
     }
     if (cursor.kind === 'end' || endsOpenBlock(parser, kind)) {
+      if (cursor.kind === 'end' && parser.expectations !== null) parser.expectations.block ??= kind;
       if (!bare && parser.unclosedAt !== cursor.tokenIndex) {
         mistakes.report('syntax', cursor.last, `\`}\` is missing: ${label(of)} is not closed`);
         parser.unclosedAt = cursor.tokenIndex;

@@ -1,7 +1,7 @@
 /** Points, and the commas that part values: what may go on beyond a line end. */
 import type { TokenCursor } from './cursor';
 import { quoted } from './mistakes';
-import { beginsQuantity, lastText, fail, type StatementReading } from './reading';
+import { beginsQuantity, expect, fail, lastText, type StatementReading } from './reading';
 import type { PointValue, QuantityValue } from './tree';
 import { readQuantityOf } from './values';
 
@@ -21,7 +21,9 @@ export function readPoint(reading: StatementReading, role: string): PointValue |
     if (count === 2 && !cursor.isMark(',')) break;
     if (0 < count) readPointComma(reading);
     passNewlinesWithin(cursor);
-    coordinates.push(readQuantityOf(reading, 'xyz'[count]!, [{ is: 'quantity', role: 'xyz'[count]!, dimension: 'length', toleranced: true, copper: false }]));
+    const part = { is: 'quantity', role: 'xyz'[count]!, dimension: 'length', toleranced: true, copper: false } as const;
+    expect(reading, part);
+    coordinates.push(readQuantityOf(reading, part.role, [part]));
   }
   passNewlinesWithin(cursor);
   if (cursor.isMark(')')) cursor.next();
@@ -39,7 +41,7 @@ function readPointComma(reading: StatementReading): void {
 /** Only as far as the point goes on: after a parenthesis that was left out the next line is a statement. */
 function passNewlinesWithin(cursor: TokenCursor): void {
   const ahead = cursor.beyondNewlines();
-  if (ahead.isMark(')') || ahead.isMark(',') || beginsQuantity(ahead, ['length'])) cursor.passNewlines();
+  if (ahead.kind === 'end' || ahead.isMark(')') || ahead.isMark(',') || beginsQuantity(ahead, ['length'])) cursor.passNewlines();
 }
 
 /** A comma continues the statement on the next line. */
@@ -52,6 +54,6 @@ export function readComma(reading: StatementReading): void {
   cursor.next();
   // A comma continues the statement, but one that was left over must not swallow the next line.
   const ahead = cursor.beyondNewlines();
-  const continues = ahead.isMark('(') || beginsQuantity(ahead, ['resistance', 'capacitance']);
+  const continues = ahead.kind === 'end' || ahead.isMark('(') || beginsQuantity(ahead, ['resistance', 'capacitance']);
   if (continues) cursor.passNewlines();
 }

@@ -29,6 +29,21 @@ export interface StatementReading {
   /** Optional parts that were looked for at `fitsAt` and are not there. */
   fits: Part[];
   fitsAt: number;
+  readonly expectations: Expectations | null;
+}
+
+/** What would fit at the end of the text, collected while it is read: so completion cannot disagree with the parser. */
+export interface Expectations {
+  readonly parts: { readonly part: Part; readonly shape: StatementShape }[];
+  /** A number stands at the end, without a unit. */
+  readonly units: { readonly dimension: Dimension; readonly copper: boolean }[];
+  /** The innermost block that is open at the end. */
+  block: BlockKind | null;
+}
+
+/** Notes that the part would fit, where the text ends and it is certain what is due. */
+export function expect(reading: StatementReading, part: Part): void {
+  if (reading.expectations !== null && reading.cursor.kind === 'end' && !reading.lost) reading.expectations.parts.push({ part, shape: reading.shape });
 }
 
 /** Whether the text at the cursor begins this part. */
@@ -74,6 +89,7 @@ export function decline(reading: StatementReading, part: Part): void {
   if (reading.fitsAt !== reading.cursor.start) reading.fits = [];
   reading.fitsAt = reading.cursor.start;
   reading.fits.push(part);
+  expect(reading, part);
 }
 
 /** What was read last, as it is named in "is missing after". */

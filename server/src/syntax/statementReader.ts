@@ -6,7 +6,7 @@ import type { Part } from './grammar';
 import { quoted } from './mistakes';
 import { beginsNumber } from './numbers';
 import { readComma, readPoint } from './points';
-import { begins, decline, lastText, fail, nameTakenFor, type StatementReading } from './reading';
+import { begins, decline, expect, fail, lastText, nameTakenFor, type StatementReading } from './reading';
 import { tooMuch } from './statementEnd';
 import { readCount, readNameOf, readQuantityOf, readRuleName, readStringOf, readWord, type QuantityPart } from './values';
 import { closest } from './words';
@@ -17,6 +17,7 @@ export function readParts(reading: StatementReading, parts: readonly Part[]): vo
 
 function readPart(reading: StatementReading, part: Part): void {
   const { cursor } = reading;
+  if (!mayBeLeftOut.has(part.is)) expect(reading, part);
   switch (part.is) {
     case 'keyword': return readKeyword(reading, part.word);
     case 'word': return readWord(reading, part);
@@ -43,6 +44,9 @@ function readPart(reading: StatementReading, part: Part): void {
     case 'repeat': return readRepeat(reading, part.parts);
   }
 }
+
+/** These say themselves what would have fitted, once it is known that it is not there. */
+const mayBeLeftOut: ReadonlySet<Part['is']> = new Set(['optional', 'suffixes', 'optional-comma', 'repeat']);
 
 function readKeyword(reading: StatementReading, word: string): void {
   const { cursor, mistakes } = reading;

@@ -8,7 +8,7 @@ import { plainly, quoted } from './mistakes';
 import { readName, readString, readTypographicString } from './names';
 import { beginsNumber } from './numbers';
 import { readQuantity } from './quantities';
-import { lastText, fail, lose, type StatementReading } from './reading';
+import { fail, lastText, lose, type StatementReading } from './reading';
 import type { QuantityValue } from './tree';
 import { closest } from './words';
 
@@ -23,6 +23,8 @@ export function readQuantityOf(reading: StatementReading, role: string, parts: r
   if (read !== null) {
     cursor.readTo(cursor.start, read.end);
     if (Number.isNaN(read.value.value)) reading.broken = true;
+    const lacksUnit = read.value.unit === '' && Number.isNaN(read.value.value) && read.value.dimension !== 'number';
+    if (lacksUnit && cursor.kind === 'end') reading.expectations?.units.push(...parts);
     return read.value;
   }
   missingQuantity(reading, role, dimensions);
