@@ -31,9 +31,9 @@ export interface GridVoltages {
   readonly terminations: readonly [Float64Array, Float64Array];
 }
 
-export function gridVoltages(network: LineNetwork, lattice: Lattice, source: LatticeRequest['source'], grid: Grid): GridVoltages {
+export function gridVoltages(network: LineNetwork, lattice: Lattice, request: Pick<LatticeRequest, 'source' | 'shorted'>, grid: Grid): GridVoltages {
   const { order } = network;
-  const sides = [marchedSide(network, lattice, source, grid, 0), marchedSide(network, lattice, source, grid, 1)] as const;
+  const sides = [marchedSide(network, lattice, request, grid, 0), marchedSide(network, lattice, request, grid, 1)] as const;
   const delays = network.modes.delays.map((delay) => delay / grid.step);
   const taps = Array.from(delays, tapsOf);
   for (let n = 0; n <= grid.steps; n += 1) {
@@ -101,7 +101,7 @@ interface MarchedLead {
   launched: number;
 }
 
-function marchedSide(network: LineNetwork, lattice: Lattice, source: LatticeRequest['source'], grid: Grid, side: 0 | 1): MarchedSide {
+function marchedSide(network: LineNetwork, lattice: Lattice, { source, shorted }: Pick<LatticeRequest, 'source' | 'shorted'>, grid: Grid, side: 0 | 1): MarchedSide {
   const { order, modes } = network;
   const { steps, step } = grid;
   const ends = network.ends[side];
@@ -120,7 +120,9 @@ function marchedSide(network: LineNetwork, lattice: Lattice, source: LatticeRequ
     if (lead !== null || driven || remembers) {
       active.push({
         line, source: driven ? own.source : 0, history: remembers ? own.history : 0, conductance: remembers ? conductance : 0,
-        memory: 0, charge: kinkCharge((lead === null ? lattice.ends : lattice.terminations)[side], order, line, grid), lead,
+        memory: 0, lead,
+        // A capacitor too small to be a short circuit to a kink leaves its current to the resistor.
+        charge: shorted[side][line] === 1 ? kinkCharge((lead === null ? lattice.ends : lattice.terminations)[side], order, line, grid) : new Float64Array(steps + 1),
       });
     }
   }

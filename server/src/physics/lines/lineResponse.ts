@@ -9,10 +9,11 @@
  * Accuracy  reference/coupled-lines.json
  */
 import { seconds, volts, type Time } from '../../units/quantity';
-import type { CoupledLines, LineResponse, Ramp } from './lines';
+import type { CoupledLines, LineResponse, Ramp, Waveform } from './lines';
 import type { Modes } from './modes';
-import { lineNetwork } from './network';
-import { rampedWaveforms, type RampShape } from './rampedWaveforms';
+import { lineNetwork, type LineNetwork } from './network';
+import { rampedWaveforms, type RampedWaveforms, type RampShape } from './rampedWaveforms';
+import { slowEdgeWaveforms } from './slowEdge';
 import { unitResponse, type UnitResponse } from './unitResponse';
 
 export interface PreparedLines {
@@ -43,8 +44,8 @@ export function prepareLines(lines: CoupledLines, refinement = 1): PreparedLines
     response: (ramp, window) => {
       checkRamp(lines, ramp, window);
       const shortest = shortestDuration * network.modes.delays[0];
-      const shape = { amplitude: ramp.amplitude, duration: Math.max(ramp.duration, shortest), window };
-      return rampResponse(lines, unitFor(ramp, Math.max(window, network.modes.delays[0])), shape);
+      const sloped = { ...ramp, duration: seconds(Math.max(ramp.duration, shortest)) };
+      return rampResponse(lines, network, unitFor(ramp, Math.max(window, network.modes.delays[0])), sloped, window);
     },
   };
 }
@@ -52,29 +53,37 @@ export function prepareLines(lines: CoupledLines, refinement = 1): PreparedLines
 /** Of the fastest mode's delay: a step, for every purpose, and still a slope that can be divided by. */
 const shortestDuration = 1e-6;
 
-function rampResponse({ order, left, right }: CoupledLines, unit: UnitResponse, shape: RampShape): LineResponse {
+function rampResponse(lines: CoupledLines, network: LineNetwork, unit: UnitResponse, ramp: Ramp, window: Time): LineResponse {
+  const { order, ends: lineEnds } = network;
+  const followed = unit.horizon < window * (1 - 1e-9);
+  const shape = followed ? endlessRise(ramp, Math.min(unit.horizon, ramp.duration)) : { ...ramp, window };
   const ends = unit.ends.map((voltages) => rampedWaveforms(voltages, order, shape));
-  const terminations = unit.terminations.map((voltages, side) => (hasLeads([left, right][side]) ? rampedWaveforms(voltages, order, shape) : ends[side]));
-  const beyond = (side: 0 | 1) => [left, right][side].map(({ lead }, line) => (lead === null ? ends : terminations)[side].waveforms[line]);
-  const leftOut = Math.abs(shape.amplitude) * (unit.dropped + rounding);
-  return {
-    left: ends[0].waveforms,
-    right: ends[1].waveforms,
-    leftTermination: beyond(0),
-    rightTermination: beyond(1),
-    window: seconds(shape.window),
-    method: unit.method,
-    errorBar: Array.from({ length: order }, (_, line) => volts(leftOut + Math.max(...[...ends, ...terminations].map(({ errors }) => errors[line])))),
-    work: unit.work,
+  const terminations = unit.terminations.map((voltages, side) => (lineEnds[side].leadDelay.some((delay) => delay !== 0) ? rampedWaveforms(voltages, order, shape) : ends[side]));
+  const leftOut = Math.abs(ramp.amplitude) * (unit.dropped + rounding);
+  const errors = Array.from({ length: order }, (_, line) => leftOut + Math.max(...[...ends, ...terminations].map((ramped) => ramped.errors[line])));
+  const finished = (ramped: RampedWaveforms, side: 0 | 1): readonly Waveform[] => {
+    if (!followed) return ramped.waveforms;
+    const slow = slowEdgeWaveforms({ lines, ramp, window, settled: shape.window }, ramped.waveforms.map((waveform, line) => ({ side, line, waveform })));
+    slow.forEach(({ error }, line) => (errors[line] += error));
+    return slow.map(({ waveform }) => waveform);
   };
+  const [leftEnds, rightEnds] = [finished(ends[0], 0), finished(ends[1], 1)];
+  const beyond = (side: 0 | 1, atEnds: readonly Waveform[]) => {
+    if (terminations[side] === ends[side]) return atEnds;
+    const behindLeads = finished(terminations[side], side);
+    return atEnds.map((waveform, line) => (lineEnds[side].leadDelay[line] === 0 ? waveform : behindLeads[line]));
+  };
+  const [leftTermination, rightTermination] = [beyond(0, leftEnds), beyond(1, rightEnds)];
+  return { left: leftEnds, right: rightEnds, leftTermination, rightTermination, window, method: unit.method, errorBar: errors.map(volts), work: unit.work };
+}
+
+/** The ramp's slope going on beyond all that is looked at. */
+function endlessRise({ amplitude, duration }: Ramp, until: number): RampShape {
+  return { amplitude: amplitude * ((2 * until) / duration), duration: 2 * until, window: until };
 }
 
 /** Of the source's amplitude: what sums of a few thousand kinks may be off by. */
 const rounding = 1e-12;
-
-function hasLeads(terminations: CoupledLines['left']): boolean {
-  return terminations.some(({ lead }) => lead !== null);
-}
 
 function checkRamp({ order }: CoupledLines, { line, amplitude, duration }: Ramp, window: Time): void {
   if (!(0 <= line && line < order)) throw new Error(`a ramp on line ${line} of ${order}`);

@@ -12,7 +12,7 @@ import type { Waveform } from './lines';
 export interface Peak {
   /** Signed. */
   readonly value: Voltage;
-  /** Of the first moment, where the peak is flat. */
+  /** Of the last moment, where the peak is flat: echoes lift a flat top, if ever so little, to its end. */
   readonly time: Time;
   /** At half the peak; ends at the waveform's last point where it never comes back. */
   readonly width: Time;
@@ -22,15 +22,15 @@ export function peakOf({ times, values }: Waveform): Peak {
   let largest = 0;
   for (let i = 0; i < values.length; i += 1) largest = Math.max(largest, Math.abs(values[i]));
   if (largest === 0) return { value: volts(0), time: seconds(times.length === 0 ? 0 : times[0]), width: seconds(0) };
-  // A flat top is level but for rounding: its start is the peak, not whichever point rounding lifted most.
   let at = 0;
-  while (Math.abs(values[at]) < largest * (1 - flatness)) at += 1;
+  for (let i = 0; i < values.length; i += 1) if (largest * (1 - flatness) <= Math.abs(values[i])) at = i;
   const half = values[at] / 2;
   const before = crossing({ times, values }, at, -1, half);
   const after = crossing({ times, values }, at, 1, half);
   return { value: volts(Math.sign(values[at]) * largest), time: seconds(times[at]), width: seconds(after - before) };
 }
 
+/** What rounding may do to a level top. */
 const flatness = 1e-9;
 
 /** Walking from the peak in one direction, the time at which the waveform first comes down to half of it. */

@@ -164,13 +164,16 @@ function kinkiness({ count, times, kink, factor }: SlopeChanges, voltage: Float6
   return sum;
 }
 
-/** Adds the tops of the parabolas through the largest and the smallest value, where no kink makes the top. */
+/** Adds the top of the parabola through the value of largest magnitude, and through the other extreme where it is not small. */
 function withVertices(waveform: Waveform, { step }: SmoothPart, kinkinessBetween: (from: number, to: number) => number): Waveform {
   const highest = extremeIndex(waveform.values, 1);
   const lowest = extremeIndex(waveform.values, -1);
+  const largest = Math.max(waveform.values[highest], -waveform.values[lowest]);
   // The later one first, so that the index of the other stays right.
-  const [later, earlier] = highest < lowest ? [lowest, highest] : [highest, lowest];
-  return withVertex(withVertex(waveform, later, step, kinkinessBetween), earlier, step, kinkinessBetween);
+  return [highest, lowest]
+    .filter((at) => 0.1 * largest < Math.abs(waveform.values[at]))
+    .sort((a, b) => b - a)
+    .reduce((known, at) => withVertex(known, at, step, kinkinessBetween), waveform);
 }
 
 function extremeIndex(values: Float64Array, sign: 1 | -1): number {

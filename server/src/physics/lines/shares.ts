@@ -8,8 +8,9 @@
  * Model     run short against the edge; each line at one voltage and one current; weak coupling
  * Formula   capacitive  near = far = R Cm dVG/dt (1 - exp(-T / (R Ct))),  R = Rn || Rf
  *           inductive   near = + Zn/(Zn + Zf) Lm dIG/dt (1 - exp(-T (Zn + Zf) / Lt)),  far = - Zf/(Zn + Zf) of the same
- *           dVG/dt = V/T RL/(RS + RL) (1 - exp(-T / (RG CG))),  RG = RS || RL;  dIG/dt = V / (T (RS + ZL))
- * Symbols   Cm, Lm mutuals over the length; Ct, Lt the victim's own with its ends and leads; CG the aggressor's; T 0-100 % of
+ *           dVG/dt = V/T RL/(RS + RL) (1 - exp(-T / (RG CG))),  RG = RS || RL
+ *           dIG/dt = V / (T (RS + ZL)) (1 - exp(-T (RS + ZL) / LG))
+ * Symbols   Cm, Lm mutuals over the length; Ct, Lt the victim's own with its ends and leads; CG, LG the aggressor's; T 0-100 % of
  *           the edge, V its amplitude; Z an end at the edge's rate
  * Method    an R and C end at the edge's rate: a capacitor that charges through V while the edge lasts draws C V/T on the
  *           average, so it counts as a resistor T/C beside R, 1/Z = 1/R + C/T. That is used where a current divides; where a node

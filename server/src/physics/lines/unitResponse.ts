@@ -55,8 +55,8 @@ export function unitResponse(network: LineNetwork, source: Pick<Ramp, 'line' | '
   const shorted = [shortedAt(network, 0, fine.step), shortedAt(network, 1, fine.step)] as const;
   const lattice = kinkLattice(network, { source, horizon, threshold: kinksFollowed, mostEvents: mostKinks(network.order), shorted });
   const coarse = { step: 2 * fine.step, steps: fine.steps / 2 };
-  const fineVoltages = gridVoltages(network, lattice, source, fine);
-  const coarseVoltages = gridVoltages(network, lattice, source, coarse);
+  const fineVoltages = gridVoltages(network, lattice, { source, shorted }, fine);
+  const coarseVoltages = gridVoltages(network, lattice, { source, shorted }, coarse);
   const parts = (kinks: Kinks, fineRows: Float64Array, coarseRows: Float64Array): UnitVoltages => ({ kinks, smooth: corrected(network.order, kinks, fine, fineRows, coarseRows) });
   const place = (which: 'ends' | 'terminations', side: 0 | 1) => parts(lattice[which][side], fineVoltages[which][side], coarseVoltages[which][side]);
   return {
@@ -72,17 +72,20 @@ function exactLattice(network: LineNetwork, source: Pick<Ramp, 'line' | 'end'>, 
   const curved = network.ends.some(({ resistance, capacitance }) => capacitance.some((value, line) => 0 < value && 0 < resistance[line]));
   if (curved) return null;
   const none = new Uint8Array(order);
-  const lattice = kinkLattice(network, { source, horizon, threshold: exactThreshold, mostEvents: mostExactEvents, shorted: [none, none] });
+  const hasLeads = network.ends.some(({ leadDelay }) => leadDelay.some((delay) => delay !== 0));
+  const threshold = order <= 3 && !hasLeads ? 0 : exactThreshold;
+  const lattice = kinkLattice(network, { source, horizon, threshold, mostEvents: mostExactEvents, shorted: [none, none] });
   return lattice.dropped < exactEnough ? lattice : null;
 }
 
-/** Relative to the first wave launched. Three lines over a whole window have 2300 events, all kept. */
-const exactThreshold = 1e-12;
-const exactEnough = 1e-6;
+/** Relative to the first wave launched. Up to three lines keep everything: 2300 events in a whole window. */
+const exactThreshold = 1e-8;
+/** Of the source's volts, as a sum of magnitudes. */
+const exactEnough = 1e-5;
 const mostExactEvents = 6000;
-/** Kinks below this share of the first wave are left to interpolation, which is good to a few hundredths of a step. */
-const kinksFollowed = 3e-4;
-const mostKinks = (order: number) => Math.max(400, 6000 / order);
+/** Kinks below this share of the first wave are left to interpolation, which is good to a tenth of a step. */
+const kinksFollowed = 2e-4;
+const mostKinks = (order: number) => Math.max(400, 3000 / order);
 
 /**
  * The finer grid: a 24th of the fastest mode's delay, finer where an end's time constant or a lead asks for it and

@@ -36,14 +36,16 @@ export function oneWayDelay(modes: Modes, { left, right }: Pick<CoupledLines, 'l
 }
 
 /**
- * Whether the largest value lies in the last quarter of the window and is more than a hundredth above all that came
- * before: what it would grow to, losses decide, and they are not in the model.
+ * Whether the largest value lies in the last quarter of what follows the edge and is more than a hundredth above all that
+ * came before: what it would grow to, losses decide, and they are not in the model. What the end of a slow edge
+ * itself calls up on a short line is past by then.
  */
-export function stillGrowing({ times, values }: Waveform, window: Time): boolean {
+export function stillGrowing({ times, values }: Waveform, window: Time, duration: Time = seconds(0)): boolean {
+  const lastQuarter = duration + 0.75 * (window - duration);
   let earlier = 0;
   let late = 0;
   for (let i = 0; i < times.length; i += 1) {
-    if (times[i] < 0.75 * window) earlier = Math.max(earlier, Math.abs(values[i]));
+    if (times[i] < lastQuarter) earlier = Math.max(earlier, Math.abs(values[i]));
     else late = Math.max(late, Math.abs(values[i]));
   }
   return 1.01 * earlier < late;
