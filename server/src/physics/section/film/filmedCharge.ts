@@ -45,5 +45,5 @@ export function laminateTop({ layers }: Section): number {
 }
 
 function panelSetting(thickness: number, edge: number, layer: number, effort: number): PanelSetting {
-  return { first: (3 - 0.4 * Math.min(effort, 4)) * thickness, ratio: 4 - 0.4 * Math.min(effort, 4), longest: 3, reach: 50 * 2 ** effort, cornerOrder: 3 + effort, middleOrder: 3 + effort, edge, layer };
+  return { first: (3 - 0.4 * Math.min(effort, 4)) * thickness, firstOverNearest: 1.5, ratio: 4 - 0.4 * Math.min(effort, 4), longest: 3, reach: 50 * 2 ** effort, cornerOrder: 3 + effort, middleOrder: 3 + effort, edge, layer };
 }

@@ -1,17 +1,19 @@
 /**
  * The film's outer face cut into straight panels that its polarisation charge is expanded on.
  *
- *          .-|-----|-.        Method    panels shrink towards the corners, where the charge is singular and the copper's
- *          |         |                  own edges are near; flat film beyond the outermost box is followed outwards by
- *   __|__|_|         |_|__|____|_ _     widening panels, since its charge dies away only as the distance squared
+ *          .-|-----|-.        Method    panels shrink towards the corners, where the charge is singular, down to the
+ *          |         |                  film's thickness (the copper's own edges lie that near) and to the nearest other
+ *   __|__|_|         |_|__|____|_ _     corner; flat film beyond the outermost box is followed outwards by widening
+ *                                       panels, since its charge dies away only as the distance squared
  */
 import { sideBasis } from '../basis/sideBasis';
 import type { Side } from '../basis/side';
 import type { OutlinePoint } from './outline';
 
 export interface PanelSetting {
-  /** Length of the panel next to a corner. */
+  /** Longest panel next to a corner, and over the distance to the nearest other corner. */
   readonly first: number;
+  readonly firstOverNearest: number;
   /** End of a panel over its start, both as distances from the corner. */
   readonly ratio: number;
   /** No panel between two corners is longer. */
@@ -32,16 +34,16 @@ export const noConductor = -1;
 
 /** From left to right; the film lies to the right of the direction of travel, air to the left. */
 export function outlinePanels(corners: readonly OutlinePoint[], setting: PanelSetting): Side[] {
-  const first = corners[0];
-  const last = corners[corners.length - 1];
   const panels: Side[] = [];
-  const far = reachSizes(setting);
-  addCut({ x: first.x - setting.reach, y: first.y }, first, [...far].reverse(), { start: false, end: true });
+  const first = corners.map((corner) => Math.min(setting.first, setting.firstOverNearest * nearestOther(corner, corners)));
+  const [left, right] = [corners[0], corners[corners.length - 1]];
+  addCut({ x: left.x - setting.reach, y: left.y }, left, outwards(first[0], setting).reverse(), { start: false, end: true });
   for (let i = 1; i < corners.length; i += 1) {
     const { x, y } = corners[i - 1];
-    addCut(corners[i - 1], corners[i], betweenCorners(Math.abs(corners[i].x - x) + Math.abs(corners[i].y - y), setting), { start: true, end: true });
+    const length = Math.abs(corners[i].x - x) + Math.abs(corners[i].y - y);
+    addCut(corners[i - 1], corners[i], betweenCorners(length, first[i - 1], first[i], setting), { start: true, end: true });
   }
-  addCut(last, { x: last.x + setting.reach, y: last.y }, far, { start: true, end: false });
+  addCut(right, { x: right.x + setting.reach, y: right.y }, outwards(first[corners.length - 1], setting), { start: true, end: false });
   return panels;
 
   function addCut(from: OutlinePoint, to: OutlinePoint, sizes: readonly number[], corner: { start: boolean; end: boolean }) {
@@ -65,21 +67,33 @@ export function outlinePanels(corners: readonly OutlinePoint[], setting: PanelSe
   }
 }
 
-/** Sizes from one corner to the next, the same from both ends. */
-function betweenCorners(length: number, { first, ratio, longest }: PanelSetting): number[] {
-  const sizes: number[] = [];
-  let covered = 0;
+function nearestOther({ x, y }: OutlinePoint, corners: readonly OutlinePoint[]): number {
+  return corners.reduce((least, other) => (other.x === x && other.y === y ? least : Math.min(least, Math.hypot(other.x - x, other.y - y))), Infinity);
+}
+
+/** Sizes from one corner to the next, graded from both. */
+function betweenCorners(length: number, firstLeft: number, firstRight: number, { ratio, longest }: PanelSetting): number[] {
+  const left: number[] = [];
+  const right: number[] = [];
+  let [fromLeft, fromRight] = [0, 0];
+  // What may follow, and what may span the middle, when `covered` lies behind.
+  const next = (covered: number, first: number) => Math.min(longest, covered === 0 ? first : (ratio - 1) * covered);
   for (;;) {
-    const middle = length - 2 * covered;
-    if (middle <= Math.min(longest, covered === 0 ? 2 * first : 2 * (ratio - 1) * covered)) return [...sizes, middle, ...[...sizes].reverse()];
-    const size = Math.min(covered === 0 ? first : (ratio - 1) * covered, longest, middle / 3);
-    sizes.push(size);
-    covered += size;
+    const middle = length - fromLeft - fromRight;
+    const [nextLeft, nextRight] = [next(fromLeft, firstLeft), next(fromRight, firstRight)];
+    if (middle <= Math.min(longest, 2 * Math.min(nextLeft, nextRight))) return [...left, middle, ...right.reverse()];
+    if (nextLeft <= nextRight) {
+      left.push(Math.min(nextLeft, middle / 2));
+      fromLeft += left[left.length - 1];
+    } else {
+      right.push(Math.min(nextRight, middle / 2));
+      fromRight += right[right.length - 1];
+    }
   }
 }
 
-/** Sizes outwards from the outermost corner. */
-function reachSizes({ first, ratio, reach }: PanelSetting): number[] {
+/** Sizes outwards from an outermost corner. */
+function outwards(first: number, { ratio, reach }: PanelSetting): number[] {
   const sizes: number[] = [];
   let covered = 0;
   while (covered < reach) {

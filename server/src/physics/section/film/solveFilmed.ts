@@ -4,7 +4,7 @@
  * The film changes no inductance: L and C in air are those of the bare section. C with the film is refined until its bars
  * are below what a film's own tolerance makes of them.
  *
- * Formula   bar = |fine - coarse| + floor |fine| + half the asymmetry;  floor 1.5e-4 at effort 0, an eighth at each further
+ * Formula   bar = |fine - coarse| + floor |fine| + half the asymmetry;  floor 1.5e-4 at effort 0, less by 3.5 at each further
  * Model     the coarser system lacks the highest polynomials and the outermost panels of the film's face; what neither
  *           shows (panels too long beside a narrow slot) is below the floor
  * Accuracy  holds in all seeded random sections of the test
@@ -38,7 +38,7 @@ export function solveFilmed(section: Section, { bare, effort, mostEffort }: Film
   for (let level = effort; level <= Math.max(effort, mostEffort); level += 1) {
     const solution = filmedCharge(upright, signals, level);
     if (solution === null) continue;
-    const { capacitance, capacitanceError } = withBars(solution, 1.5e-4 / 8 ** level);
+    const { capacitance, capacitanceError } = withBars(solution, 1.5e-4 / 3.5 ** level);
     const unknowns = Math.max(inAir.solved.unknowns, solution.unknowns);
     if (best === null || excess(capacitanceError, signals.length) < excess(best.capacitanceError, signals.length)) best = { ...inAir.solved, capacitance, capacitanceError, unknowns };
     if (excess(best.capacitanceError, signals.length) <= 1) break;
