@@ -1,7 +1,7 @@
 /**
  * Relative error bars of a matrix from the same with the highest polynomials of every side left out.
  *
- * Formula   |fine - coarse| + 1e-5 |fine| + 1e-8 sqrt(fine_ii fine_jj), over |fine|
+ * Formula   |fine - coarse| + 1e-5 |fine| + 3e-9 sqrt(fine_ii fine_jj), over |fine|
  * Model     the series converges geometrically, so the last step is larger than all that follow; the two floors
  *           are the integrals' and the kernel's own error, which no degree changes
  * Accuracy  holds the truth in all of the seeded random sections of the test; above 1e-5 it is 5 to 50 times too large
@@ -17,7 +17,7 @@ export function errorBars(fine: Float64Array, coarse: Float64Array, order: numbe
 }
 
 const relativeFloor = 1e-5;
-const absoluteFloor = 1e-8;
+const absoluteFloor = 3e-9;
 
 /** The largest relative change, but of entries too weak to matter only what is left of them against a millionth of the diagonal. */
 export function largestChange(fine: Float64Array, coarse: Float64Array, order: number): number {
