@@ -14,11 +14,10 @@
  * Range     resistance at dc: at the corner the skin effect adds less than 2 % to copper up to 100 µm
  */
 import type { Section, SectionConductor } from '../physics/section/section';
-import { solveSection } from '../physics/section/solveSection';
 import { copperResistivity, mu0 } from '../units/constants';
 import type { Frequency } from '../units/quantity';
 import type { RunPart } from './runParts';
-import { sectionKey, type SolveCache } from './solveCache';
+import type { SolveCache } from './solveCache';
 
 /** H/m, in the order of the part's traces; null where the guards and returns balance at this frequency. */
 export function slowInductance(part: RunPart, knee: Frequency, cache: SolveCache): Float64Array | null {
@@ -30,7 +29,7 @@ export function slowInductance(part: RunPart, knee: Frequency, cache: SolveCache
   if (!possible) return null;
   const freed = plane ? references : references.slice(1);
   const section = withSignals(part.section, freed);
-  const solution = cache.section(sectionKey(section), () => solveSection(section));
+  const { solution } = cache.section(section);
   if ('refused' in solution) return null;
   const loops = loopInductances(section, freed, solution.solved);
   const resistance = (index: number) => resistancePerLength(section.conductors[index]) + (plane ? 0 : resistancePerLength(section.conductors[references[0]]));

@@ -121,7 +121,7 @@ function coupledContribution(coupling: Coupling): Contribution {
     errorBar: coupling.errorBar,
     bounds: coupling.bounds,
     method: coupling.model === 'lumped' ? 'coupled lines, short enough to act as a lumped circuit' : 'coupled lines',
-    assumptions: coupling.assumptions,
+    get assumptions() { return coupling.assumptions; },
     coupling,
   };
 }

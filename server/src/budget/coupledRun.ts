@@ -10,7 +10,7 @@ import { slowInductance } from './balancingCurrent';
 import { carriedError } from './carriedError';
 import { couplingAssumptions } from './couplingAssumptions';
 import { arrangementsFor, edgesOf, roleOf, type Arrangement, type Edge } from './excitations';
-import { uncountedSourcesOf } from './notYetCounted';
+import { absent, uncountedSourcesOf } from './notYetCounted';
 import type { Coupling, Unaccounted } from './results';
 import { isReceiver, type Role, type Roles } from './roles';
 import type { RunPart, Trace } from './runParts';
@@ -50,7 +50,7 @@ export function coupledPart(context: PartContext, cache: SolveCache): CoupledPar
   for (const [aggressor, trace] of part.traces.entries()) {
     const receivers = receiversOf(context, trace);
     if (receivers.length === 0) continue;
-    const missing = [...uncountedSourcesOf(trace.net, roleOf(roles, trace).pair, run.name), ...withoutEdge(trace, run)];
+    const missing = [...uncountedSourcesOf(trace.net, roleOf(roles, trace).pair, run.name), ...withoutEdge(trace, run), ...returnResistance(part, trace, run)];
     for (const index of receivers) for (const unaccounted of missing) lacking.push({ victim: part.traces[index].net, unaccounted });
     if (trace.net.swing === null) continue;
     const worst = worstNoise(context, { aggressor, receivers }, cache);
@@ -71,6 +71,12 @@ function withoutEdge({ net, whole }: Trace, run: Run): readonly Unaccounted[] {
   if (net.swing === null || 0 < edgesOf(net).length) return [];
   const why = net.rise === null ? 'it states no `rise`' : 'its `rise` is 0 s';
   return [{ what: `the edge of ${net.name} in run ${run.name} is not counted: ${why}`, place: whole }];
+}
+
+/** Its inductance is in the run's matrices; what its resistance drops is a shared return's. */
+function returnResistance({ section }: RunPart, { net }: Trace, run: Run): readonly Unaccounted[] {
+  if (net.swing === null || section.planeAbove || section.planeBelow) return [];
+  return [absent(`the resistance of the return in run ${run.name}`, run.place)];
 }
 
 interface Pairing {
@@ -152,8 +158,9 @@ function solvedCoupling(context: PartContext, pair: { aggressor: number; victim:
     inductivePart: of(noise.inductivePart),
     errorBar: volts(Math.abs(scale) * passed * (noise.errorBar + carried)),
     bounds: null,
-    waveform: { times: noise.waveform.times, values: noise.waveform.values.map((value) => scale * value) },
-    assumptions: couplingAssumptions(context, pair, found),
+    // Pictures and words are made when they are asked for: a board has hundreds of couplings, and shows one.
+    get waveform() { return { times: noise.waveform.times, values: noise.waveform.values.map((value) => scale * value) }; },
+    get assumptions() { return couplingAssumptions(context, pair, found); },
   };
   return { coupling, rise: edge.rise, growing: noise.growing };
 }

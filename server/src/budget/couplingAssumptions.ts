@@ -14,9 +14,9 @@ export function couplingAssumptions({ run, part, roles, windowed }: PartContext,
   }
   const guards = new Set(part.conductors.flatMap((conductor) => (conductor.kind === 'guard' ? [conductor.name] : [])));
   if (0 < guards.size) said.push(`guard ${[...guards].join(', ')} counts as tied to the reference everywhere`);
-  const knee = inText(kneeFrequency(found.edge.rise), 'frequency');
-  if (found.guards === 'balance') said.push(`the knee at ${knee} is below where guards and returns carry their balancing current: computed as if they did, which gave the larger noise`);
-  if (found.guards === 'idle') said.push(`the knee at ${knee} is below where guards and returns carry their balancing current: computed without it, which gave the larger noise`);
+  const knee = () => inText(kneeFrequency(found.edge.rise), 'frequency');
+  if (found.guards === 'balance') said.push(`the knee at ${knee()} is below where guards and returns carry their balancing current: computed as if they did, which gave the larger noise`);
+  if (found.guards === 'idle') said.push(`the knee at ${knee()} is below where guards and returns carry their balancing current: computed without it, which gave the larger noise`);
   if (found.noise.followed) said.push('slower than the window of the line: followed as a lumped circuit');
   for (const trace of traces) {
     const { before, after } = leadsOf(trace, run.length.value);

@@ -7,21 +7,14 @@ import { copperResistivity, mu0 } from '../units/constants';
 import { inText } from '../units/inText';
 import type { Time } from '../units/quantity';
 import type { SolvedCoupling } from './coupledRun';
-import { leadsOf } from './excitations';
 import { refusalInText } from './refusalInText';
 import type { ModelLimit } from './results';
-import { runTraces } from './runMatrices';
 import { conductorsAtOnce, neighboursEachSide, type RefusedPart, type RunPart } from './runParts';
 
 export function runLimits(run: Run, { separated, windowed }: { readonly separated: boolean; readonly windowed: boolean }): readonly ModelLimit[] {
   const found: ModelLimit[] = [];
   if (separated) found.push(limit(run, `a plane lies between rows of run ${run.name}: they are computed apart, and nothing couples through a plane; cut it away with \`without\` where it ends`));
   if (windowed) found.push(limit(run, `run ${run.name} has more than ${conductorsAtOnce} conductors in one section: each receiver is computed with its ${neighboursEachSide} nearest on each side, and the rest is left out`));
-  for (const trace of runTraces(run)) {
-    const { before, after } = leadsOf(trace, run.length.value);
-    const whole = trace.net.length?.value ?? Infinity;
-    if (whole < (before + after + run.length.value) * (1 - 1e-9)) found.push({ ...limit(run, `${trace.net.name} is ${inText(whole, 'length')} long, and run ${run.name} with what lies before it is longer: computed with the run as stated`), place: trace.whole });
-  }
   return found;
 }
 

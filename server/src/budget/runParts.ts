@@ -5,19 +5,18 @@
  * neighbours on each side.
  */
 import type { Run, RunConductor } from '../board/model';
-import { characteristicImpedance, type LineAlone } from '../physics/lines/characteristicImpedance';
+import type { LineAlone } from '../physics/lines/characteristicImpedance';
 import type { Section, SectionMatrices, SectionRefusal } from '../physics/section/section';
-import { solveSection } from '../physics/section/solveSection';
 import { canonicalSection } from './canonicalSection';
 import { runSections, type RunSection } from './runSection';
-import { sectionKey, type SolveCache } from './solveCache';
+import type { SolveCache } from './solveCache';
 
 export type Trace = RunConductor & { readonly kind: 'trace' };
 
 export interface RunPart {
   readonly section: Section;
   /** Of the section: what its lines are kept under. */
-  readonly key: string;
+  readonly id: number;
   /** Behind the section's conductors, in their order. */
   readonly conductors: readonly RunConductor[];
   /** Those of them that are traces: the order of the matrices. */
@@ -59,12 +58,11 @@ export function runParts(run: Run, cache: SolveCache): RunParts {
 }
 
 function solvedPart({ section, conductors }: Pick<RunSection, 'section' | 'conductors'>, receiver: Trace | null, cache: SolveCache): RunPart | RefusedPart {
-  const key = sectionKey(section);
-  const solution = cache.section(key, () => solveSection(section));
+  const { id, solution, alone } = cache.section(section);
   if ('refused' in solution) return { conductors, refusal: solution.refused };
   const traces = conductors.filter((conductor) => conductor.kind === 'trace');
   const read = receiver === null ? traces.map((_, index) => index) : [traces.indexOf(receiver)];
-  return { section, key, conductors, traces, matrices: solution.solved, alone: characteristicImpedance(solution.solved), read };
+  return { section, id, conductors, traces, matrices: solution.solved, alone, read };
 }
 
 /** A conductor with its nearest on each side, by the middles of all rows from left to right. */

@@ -7,30 +7,49 @@
  * the memory. Keys are written from the numbers themselves, exactly: two sections share a solution
  * only when no digit differs.
  */
+import { characteristicImpedance, type LineAlone } from '../physics/lines/characteristicImpedance';
 import type { Section, SectionSolution } from '../physics/section/section';
+import { solveSection } from '../physics/section/solveSection';
 import type { WorkDone } from './results';
 
 export interface SolveCache {
-  /** The solution of the section with this key, solved where it is not known. */
-  section(key: string, solve: () => SectionSolution): SectionSolution;
+  /** Solved where it is not known. */
+  section(section: Section): KnownSection;
   /** The same for what is drawn from a line; the caller keeps one type to one kind of key. */
   line<Solution extends object>(key: string, solve: () => Solution): Solution;
   /** Counted since the cache was made. */
   work(): WorkDone;
 }
 
-/** Room for a board of 3 000 runs and the edits of an afternoon. */
-const sectionsKept = 8192;
-const linesKept = 32768;
+export interface KnownSection {
+  /** Stands for the section's numbers in the keys of its lines, which would be long otherwise. */
+  readonly id: number;
+  readonly solution: SectionSolution;
+  /** Of each line alone; empty where there is no solution. */
+  readonly alone: readonly LineAlone[];
+}
 
-export function createSolveCache(): SolveCache {
-  const sections = new Recent<SectionSolution>(sectionsKept);
-  const lines = new Recent<object>(linesKept);
+export interface CacheBounds {
+  readonly sections: number;
+  readonly lines: number;
+}
+
+/** Room for a board of 3 000 runs and the edits of an afternoon. */
+const roomy: CacheBounds = { sections: 8192, lines: 32768 };
+
+export function createSolveCache(bounds: CacheBounds = roomy): SolveCache {
+  const sections = new Recent<KnownSection>(bounds.sections);
+  const lines = new Recent<object>(bounds.lines);
   return {
-    section: (key, solve) => sections.find(key, solve),
+    section: (section) => sections.find(sectionKey(section), () => known(section, sections.misses)),
     line: <Solution extends object>(key: string, solve: () => Solution) => lines.find(key, solve) as Solution,
     work: () => ({ sectionsSolved: sections.misses, linesSolved: lines.misses }),
   };
+}
+
+function known(section: Section, id: number): KnownSection {
+  const solution = solveSection(section);
+  return { id, solution, alone: 'solved' in solution ? characteristicImpedance(solution.solved) : [] };
 }
 
 /** A name made of every number of the section. */

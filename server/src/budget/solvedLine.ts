@@ -66,7 +66,7 @@ export function solvedLine(request: LineRequest, cache: SolveCache): SolvedLine 
 }
 
 function lineKey({ part, slow, length, arrangement, aggressor, duration, repeats, receivers }: LineRequest): string {
-  const numbers: (string | number)[] = [part.key, slow ? 'slow' : 'fast', length, aggressor, duration, repeats ?? 'once'];
+  const numbers: (string | number)[] = [part.id, slow ? 'slow' : 'fast', length, aggressor, duration, repeats ?? 'once'];
   for (const side of [arrangement.left, arrangement.right]) {
     for (const { resistance, capacitance, lead } of side) numbers.push(resistance, capacitance, lead?.impedance ?? '-', lead?.delay ?? '-');
   }
@@ -98,7 +98,7 @@ interface Solution {
   readonly shares: CouplingShares;
 }
 
-function received({ arrangement, aggressor }: LineRequest, { index, band }: LineRequest['receivers'][number], { response, later, shares }: Solution): ReceivedNoise {
+function received({ arrangement, aggressor, duration }: LineRequest, { index, band }: LineRequest['receivers'][number], { response, later, shares }: Solution): ReceivedNoise {
   const nearSide = arrangement.sourceAtLeft[aggressor] ? 'left' : 'right';
   const farSide = nearSide === 'left' ? 'right' : 'left';
   const atNearEnd = arrangement.sourceAtLeft[index] !== arrangement.sourceAtLeft[aggressor];
@@ -118,7 +118,7 @@ function received({ arrangement, aggressor }: LineRequest, { index, band }: Line
     capacitivePart: capacitive,
     inductivePart: inductive,
     errorBar: volts(Math.max(response.errorBar[index], followed ? later.errorBar[index] : 0)),
-    growing: !followed && stillGrowing(response[load][index], response.window),
+    growing: !followed && stillGrowing(response[load][index], response.window, duration),
     followed,
     waveform: thinnedWaveform(waveform, volts(Math.abs(peak.value) * drawnWithin)),
   };
