@@ -195,10 +195,10 @@ function accept(march: March, time: number): void {
   march.count += 1;
 }
 
-/** Long after the kink, nothing changes by a billionth of the largest value in as long as that took. */
+/** After the kink, nothing changes by a billionth of the largest value in as long again as all took so far. */
 function standsStill({ count, rates, largest, system: { order } }: March, { kink, atLeast }: StiffRun, now: number): boolean {
   if (now <= Math.max(kink, atLeast)) return false;
-  for (let i = (count - 1) * order; i < count * order; i += 1) if (1e-9 * largest < Math.abs(rates[i]) * (now - kink)) return false;
+  for (let i = (count - 1) * order; i < count * order; i += 1) if (1e-9 * largest < Math.abs(rates[i]) * now) return false;
   return true;
 }
 

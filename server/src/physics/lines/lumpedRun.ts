@@ -29,7 +29,7 @@ function response(left: readonly Waveform[], right: readonly Waveform[], { windo
   return { left, right, leftTermination: left, rightTermination: right, window, method: 'lumped', errorBar: left.map(() => volts(error)), work };
 }
 
-/** When everything has died down to a billionth, as far as each line alone can tell. */
+/** When everything has come within 5e-5 of where it goes, as far as each line alone can tell. */
 function slowestConstant({ order, inductance, capacitance, length, left, right }: CoupledLines): number {
   let slowest = 0;
   for (let i = 0; i < order; i += 1) {
@@ -44,7 +44,7 @@ function slowestConstant({ order, inductance, capacitance, length, left, right }
   return slowest;
 }
 
-const timesWatched = 20;
+const timesWatched = 10;
 
 /** The steps' own points, and the extremes between them. */
 function waveformFrom(voltages: LumpedVoltages, node: number, from: number): Waveform {
