@@ -96,10 +96,31 @@ interface March {
   rates: Float64Array;
   largest: number;
   readonly factors: Map<number, { readonly matrix: Float64Array; readonly exchanged: Int32Array }>;
+  /** Circuits have few entries in a row. */
+  readonly stiffness: SparseRows;
   /** Rates at the stages, one after the other. */
   readonly stage: Float64Array;
   readonly candidate: Float64Array;
   readonly work: Float64Array;
+}
+
+interface SparseRows {
+  /** Where each row starts; one more than rows. */
+  readonly starts: Int32Array;
+  readonly columns: Int32Array;
+  readonly entries: Float64Array;
+}
+
+function sparseRows(matrix: Float64Array, order: number): SparseRows {
+  const starts = new Int32Array(order + 1);
+  const columns: number[] = [];
+  for (let i = 0; i < order; i += 1) {
+    for (let j = 0; j < order; j += 1) if (matrix[i * order + j] !== 0) columns.push(j);
+    starts[i + 1] = columns.length;
+  }
+  const entries = new Float64Array(columns.length);
+  for (let i = 0; i < order; i += 1) for (let at = starts[i]; at < starts[i + 1]; at += 1) entries[at] = matrix[i * order + columns[at]];
+  return { starts, columns: Int32Array.from(columns), entries };
 }
 
 function startMarch(system: StiffLinear, run: StiffRun): March {
@@ -112,6 +133,7 @@ function startMarch(system: StiffLinear, run: StiffRun): March {
     rates: new Float64Array(64 * order),
     largest: 0,
     factors: new Map(),
+    stiffness: sparseRows(system.stiffness, order),
     stage: new Float64Array(stages * order),
     candidate: new Float64Array(order),
     work: new Float64Array(order),
@@ -138,7 +160,7 @@ function factorsFor({ system: { order, mass, stiffness }, factors }: March, step
 
 /** Leaves the new state in `candidate`, and answers the largest entry of its estimated error. */
 function attempt(march: March, run: StiffRun, now: number, step: number): number {
-  const { system: { order, mass, stiffness, forcing }, stage, candidate, work } = march;
+  const { system: { order, mass, forcing }, stiffness: { starts, columns, entries }, stage, candidate, work } = march;
   const { matrix, exchanged } = factorsFor(march, step);
   const state = (march.count - 1) * order;
   for (let s = 0; s < stages; s += 1) {
@@ -150,7 +172,7 @@ function attempt(march: March, run: StiffRun, now: number, step: number): number
     const input = run.input(now + nodes[s] * step);
     for (let i = 0; i < order; i += 1) {
       let sum = forcing[i] * input;
-      for (let j = 0; j < order; j += 1) sum += stiffness[i * order + j] * candidate[j];
+      for (let at = starts[i]; at < starts[i + 1]; at += 1) sum += entries[at] * candidate[columns[at]];
       work[i] = sum;
     }
     luSolve(matrix, exchanged, work);

@@ -5,7 +5,7 @@
  *   --\/\--+----coupled coils----+--\/\--      with the ends' own capacitors beside those; a lead adds its capacitance at its
  *          = C length/2          = C length/2  end and its inductance to the coil
  *
- * Model     one section: right for what is slow against the delay of the run. What oscillates faster than a 32nd of the time
+ * Model     one section: right for what is slow against the delay of the run. What oscillates faster than a twelfth of the time
  *           passed since the ramp's start or end is damped away, as losses do
  * Method    nodal equations for the voltages of both ends and the currents between, in units of the line's own delay and
  *           impedance; an L-stable method of order four with steps that grow with time (`numeric/stiffLinear.ts`)
@@ -33,7 +33,7 @@ export function lumpedVoltages(lines: CoupledLines, ramp: Ramp, atLeast: number,
     until: Math.min(until / units.time, longestFollowed * Math.max(1, duration)),
     atLeast: atLeast / units.time,
     firstStep: Math.min(duration, 1) / 64,
-    leastShare: 1 / 32,
+    leastShare: 1 / 12,
     tolerance: 1e-9,
     mostSteps: 4000,
   });
