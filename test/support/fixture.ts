@@ -40,14 +40,20 @@ export function readFixture(text: string): Fixture {
     else if (!expectation.test(line)) current.push(line);
   }
   const texts = new Map([...files].map(([path, lines]) => [path, ended(lines.join('\n'))]));
-  const wantedFixes = [...text.matchAll(/^# fixes of ([a-z-]+): (.+)$/gm)].map((match) => ({ rule: match[1]!, titles: match[2]!.split(',').map((title) => title.trim()) }));
+  const [before] = text.split(`\n${fixMark}`);
+  const wantedFixes = [...before!.matchAll(/^# fixes of ([a-z-]+): (.+)$/gm)].map((match) => ({ rule: match[1]!, titles: match[2]!.split(',').map((title) => title.trim()) }));
   return { texts, wantedFixes };
 }
 
 export function renderFixture({ texts }: Fixture, findings: readonly Finding[], fixes: readonly FixtureFix[] = []): string {
   const files = [...texts].map(([path, text]) => (path === rootPath ? '' : `${fileMark} ${path}\n`) + withFindings(path, text, findings));
-  const results = fixes.map(({ rule, title, preferred, after }) => `${fixMark} ${rule}: ${title}${preferred ? ' (preferred)' : ''}\n${[...after].map(([path, text]) => (path === rootPath ? '' : `${fileMark} ${path}\n`) + text).join('')}`);
+  const results = fixes.map(({ rule, title, preferred, after }) => `${fixMark} ${rule}: ${title}${preferred ? ' (preferred)' : ''}\n${[...after].map(([path, text]) => (path === rootPath ? '' : `${fileMark} ${path}\n`) + withoutRequests(text)).join('')}`);
   return [...files, ...results].join('');
+}
+
+/** What asks for fixes is said once, at the top. */
+function withoutRequests(text: string): string {
+  return text.replace(/^# fixes of .*\n/gm, '');
 }
 
 const fixMark = '#===';

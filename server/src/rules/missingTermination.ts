@@ -38,5 +38,10 @@ run beside on TOP for 20 mm { trace CLOCK 0.15 mm; gap 0.5 mm; trace SENSE 0.15 
     }
   },
 
-  message: ({ net, ends }) => `${net.name} states no ${ends.map(({ missing, assumed }) => `\`${missing}\` (assumed: ${assumed})`).join(' and no ')}`,
+  message: ({ net, ends }) => {
+    const [first] = ends;
+    const alike = 1 < ends.length && ends.every(({ assumed }) => assumed === first!.assumed);
+    if (alike) return `${net.name} states no \`source\` and no \`load\` (assumed for both: ${first!.assumed})`;
+    return `${net.name} states no ${ends.map(({ missing, assumed }) => `\`${missing}\` (assumed: ${assumed})`).join(' and no ')}`;
+  },
 });
