@@ -1,5 +1,5 @@
 /** One pass: a fresh workspace, one host, one browser, and either the suite or the driven scenes. */
-import { readdirSync } from 'node:fs';
+import { readdirSync, readFileSync } from 'node:fs';
 import path from 'node:path';
 import { fileURLToPath } from 'node:url';
 import { launchBrowser } from './hosts/browser.mjs';
@@ -14,7 +14,7 @@ const longest = 180_000;
 
 const settings = {
   'workbench.startupEditor': 'none', 'workbench.tips.enabled': false, 'workbench.reduceMotion': 'on', 'workbench.colorTheme': 'Light Modern',
-  'editor.minimap.enabled': false, 'editor.accessibilitySupport': 'off', 'chat.disableAIFeatures': true, 'files.hotExit': 'off', 'extensions.autoUpdate': false,
+  'editor.minimap.enabled': false, 'editor.accessibilitySupport': 'off', 'chat.disableAIFeatures': true, 'files.hotExit': 'off', 'files.autoSave': 'off', 'extensions.autoUpdate': false,
   'telemetry.telemetryLevel': 'off', 'security.workspace.trust.enabled': false, 'files.simpleDialog.enable': true,
 };
 
@@ -31,7 +31,7 @@ export async function runPass({ root, modules, chromium, host: kindOfHost, lineE
   };
   try {
     const run = kind === 'suite' ? runSuite : runScenes;
-    await run({ host, page: browser.page, tell, lineEnds, screenshots: path.join(screenshots), name: `${kindOfHost}-${lineEnds}`, only });
+    await run({ host, workspace: workspace.folder, page: browser.page, tell, lineEnds, screenshots, name: `${kindOfHost}-${lineEnds}`, only });
     const outside = [...browser.outside, ...host.outside];
     tell('nothing leaves this machine', outside.length === 0 ? null : outside.join('\n'));
   } catch (error) {
@@ -63,16 +63,23 @@ async function runSuite({ host, page, tell }) {
 }
 
 /** Each file of `driven/` exports scenes: a title, and what a person does and sees. */
-async function runScenes({ host, page, tell, lineEnds, screenshots, name, only }) {
+async function runScenes({ host, workspace, page, tell, lineEnds, screenshots, name, only }) {
   await page.goto(host.address());
   const ui = actions(page, screenshots);
   await ui.ready();
+  /** Line and column, from 1, of a text in a file as it was opened, or of what follows it. */
+  const at = (file, text, further = 0) => {
+    const content = readFileSync(path.join(workspace, file), 'utf8').replace(/\r\n/g, '\n');
+    const before = content.slice(0, content.indexOf(text) + further).split('\n');
+    if (!content.includes(text)) throw new Error(`no ${text} in ${file}`);
+    return [before.length, before[before.length - 1].length + 1];
+  };
   for (const file of readdirSync(path.join(here, 'driven')).sort()) {
     const { scenes } = await import(`./driven/${file}`);
     for (const scene of scenes.filter(({ title }) => title.includes(only))) {
       const shot = (what) => ui.shot(`${name}-${what}`);
       try {
-        await scene.run({ page, ui, shot, lineEnds, host: host.name });
+        await scene.run({ page, ui, shot, lineEnds, host: host.name, at });
         tell(scene.title, null);
       } catch (error) {
         await shot(`failed-${scene.title.replace(/\W+/g, '-')}`);

@@ -14,10 +14,10 @@ export const scenes = [
   },
   {
     title: 'break a line: a squiggle; mend it: none',
-    async run({ ui, shot }) {
+    async run({ ui, shot, at }) {
       await ui.open('quiet-corner.quiet');
       await ui.waitForSquiggles('error', 0);
-      await ui.caret(23, 13);
+      await ui.caret(...at('quiet-corner.quiet', 'trace SENSE', 11));
       await ui.type(' oops');
       await ui.waitForSquiggles('error', 'some');
       await shot('syntax-squiggle');

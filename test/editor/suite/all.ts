@@ -2,4 +2,6 @@
 export async function loadAll(): Promise<void> {
   await import('./language.suite');
   await import('./findings.suite');
+  await import('./fixes.suite');
+  await import('./navigation.suite');
 }
