@@ -34,7 +34,7 @@ export interface SolveOptions {
 }
 
 /** A larger one is worth a finer setting: it is 5 to 50 times the error. */
-const wantedChange = 1e-4;
+const wantedChange = 2e-4;
 
 export function solveSection(section: Section, { effort = 0, mostEffort = 4 }: SolveOptions = {}): SectionSolution {
   const refused = refusalOf(section);

@@ -16,11 +16,12 @@
  */
 import { cholesky, forwardSubstitute } from '../../../numeric/cholesky';
 import type { ChargedConductor } from '../basis/chargedConductor';
-import { polynomialLimit } from '../basis/orthonormalJacobi';
-import type { Side } from '../basis/side';
 import type { Kernel } from '../kernel/layeredKernel';
+import { layOut, type Layout } from './layout';
+import { mutualBlock } from './mutualBlock';
 import { ownBlock } from './ownBlock';
-import { writeSideBlock } from './sideBlock';
+
+export { leftOut } from './layout';
 
 export interface ChargeProblem {
   readonly conductors: readonly ChargedConductor[];
@@ -41,24 +42,16 @@ export interface ChargeSolution {
 /** Null where the matrix is not positive definite: some integral was not accurate enough. */
 export function chargeSolution({ conductors, signals, kernel, constant }: ChargeProblem): ChargeSolution | null {
   const layout = layOut(conductors);
-  const { unknowns, coarse, sides } = layout;
-  const matrix = new Float64Array(unknowns * unknowns);
-  conductors.forEach((conductor, index) => {
-    placeOwn(conductor, index, layout, kernel, matrix);
-    for (let other = 0; other < index; other += 1) placeMutual(layout, [index, other], kernel, matrix);
-  });
-  if (constant !== null) {
-    // Only net charges feel a constant.
-    for (const { start: row } of sides) for (const { start: column } of sides) if (column <= row) matrix[row * unknowns + column] += constant;
-  }
+  const { unknowns, coarse, charges } = layout;
+  const matrix = assembled(conductors, layout, kernel);
+  if (constant !== null) addConstant(charges, constant, matrix, unknowns);
   if (!cholesky(matrix, unknowns)) return null;
   const count = signals.length + (constant === null ? 0 : 1);
   const right = new Float64Array(count * unknowns);
-  for (const { side, start } of sides) {
-    const index = signals.indexOf(side.conductor);
-    if (0 <= index) right[index * unknowns + start] = 1;
-    if (constant !== null) right[signals.length * unknowns + start] = 1;
-  }
+  signals.forEach((conductor, index) => {
+    for (const row of charges[conductor]) right[index * unknowns + row] = 1;
+  });
+  if (constant !== null) for (const rows of charges) for (const row of rows) right[signals.length * unknowns + row] = 1;
   forwardSubstitute(matrix, unknowns, right, count);
   const finish = (to: number) => {
     const products = innerProducts(right, unknowns, to, count);
@@ -67,78 +60,40 @@ export function chargeSolution({ conductors, signals, kernel, constant }: Charge
   return { order: signals.length, fine: finish(unknowns), coarse: finish(coarse), unknowns };
 }
 
-interface Layout {
-  readonly unknowns: number;
-  /** Unknowns without the highest polynomials. */
-  readonly coarse: number;
-  readonly sides: readonly PlacedSide[];
-  /** Where each conductor's sides begin among them; one more at the end. */
-  readonly firstSide: readonly number[];
-}
+let memory = new Float64Array(4096);
 
-interface PlacedSide {
-  readonly side: Side;
-  /** Polynomials of the coarser answer, and where they begin; where the others do. */
-  readonly kept: number;
-  readonly start: number;
-  readonly highest: number;
-}
-
-/** Polynomials that the coarser answer goes without. */
-export const leftOut = (order: number) => (order < 4 ? 1 : 2);
-
-function layOut(conductors: readonly ChargedConductor[]): Layout {
-  const all = conductors.flatMap(({ sides }) => sides);
-  const coarse = all.reduce((sum, { order }) => sum + order - leftOut(order), 0);
-  let start = 0;
-  let highest = coarse;
-  const sides = all.map((side) => {
-    const kept = side.order - leftOut(side.order);
-    const placed = { side, kept, start, highest };
-    start += kept;
-    highest += side.order - kept;
-    return placed;
+/** The lower triangle; what lies above it is whatever was there before. */
+function assembled(conductors: readonly ChargedConductor[], { unknowns, rows }: Layout, kernel: ChargeProblem['kernel']): Float64Array {
+  if (memory.length < unknowns * unknowns) memory = new Float64Array(unknowns * unknowns);
+  conductors.forEach((conductor, index) => {
+    const { layer } = conductor.sides[0];
+    placeBlock(ownBlock(conductor, kernel(layer, layer)), rows[index], rows[index], unknowns);
+    for (let other = 0; other < index; other += 1) {
+      // The kernel wants the conductor in the higher layer first.
+      const [above, below] = layer < conductors[other].sides[0].layer ? [other, index] : [index, other];
+      const between = kernel(conductors[below].sides[0].layer, conductors[above].sides[0].layer);
+      placeBlock(mutualBlock(conductors[above], conductors[below], between), rows[above], rows[below], unknowns);
+    }
   });
-  const firstSide = [0];
-  for (const { sides: own } of conductors) firstSide.push(firstSide[firstSide.length - 1] + own.length);
-  return { unknowns: highest, coarse, sides, firstSide };
+  return memory;
 }
 
-const rowOf = ({ kept, start, highest }: PlacedSide, m: number) => (m < kept ? start + m : highest + m - kept);
-
-/** The lower triangle of a conductor's own block. */
-function placeOwn(conductor: ChargedConductor, index: number, { unknowns, sides, firstSide }: Layout, kernel: ChargeProblem['kernel'], matrix: Float64Array): void {
-  const { layer } = conductor.sides[0];
-  const own = ownBlock(conductor, kernel(layer, layer));
-  const rows: number[] = [];
-  for (let s = firstSide[index]; s < firstSide[index + 1]; s += 1) {
-    for (let m = 0; m < sides[s].side.order; m += 1) rows.push(rowOf(sides[s], m));
-  }
+function placeBlock(block: Float64Array, rows: Int32Array, columns: Int32Array, unknowns: number): void {
+  let at = 0;
   for (let a = 0; a < rows.length; a += 1) {
-    for (let b = 0; b <= a; b += 1) matrix[Math.max(rows[a], rows[b]) * unknowns + Math.min(rows[a], rows[b])] = own[a * rows.length + b];
-  }
-}
-
-const block = new Float64Array(polynomialLimit * polynomialLimit);
-
-function placeMutual({ unknowns, sides, firstSide }: Layout, [first, second]: readonly [number, number], kernel: ChargeProblem['kernel'], matrix: Float64Array): void {
-  // The kernel wants the conductor in the higher layer first.
-  const [above, below] = sides[firstSide[first]].side.layer < sides[firstSide[second]].side.layer ? [second, first] : [first, second];
-  const between = kernel(sides[firstSide[below]].side.layer, sides[firstSide[above]].side.layer);
-  for (let s = firstSide[above]; s < firstSide[above + 1]; s += 1) {
-    for (let t = firstSide[below]; t < firstSide[below + 1]; t += 1) {
-      const [upper, lower] = [sides[s], sides[t]];
-      const columns = lower.side.order;
-      writeSideBlock(upper.side, lower.side, between, block);
-      for (let m = 0; m < upper.side.order; m += 1) {
-        const i = rowOf(upper, m);
-        for (let n = 0; n < columns; n += 1) {
-          const j = rowOf(lower, n);
-          matrix[i < j ? j * unknowns + i : i * unknowns + j] = block[m * columns + n];
-        }
-      }
+    const row = rows[a];
+    for (let b = 0; b < columns.length; b += 1) {
+      const column = columns[b];
+      memory[column < row ? row * unknowns + column : column * unknowns + row] = block[at];
+      at += 1;
     }
   }
+}
+
+/** Only net charges feel it. */
+function addConstant(charges: readonly Int32Array[], constant: number, matrix: Float64Array, unknowns: number): void {
+  const rows = charges.flatMap((own) => [...own]);
+  for (const row of rows) for (const column of rows) if (column <= row) matrix[row * unknowns + column] += constant;
 }
 
 function innerProducts(rows: Float64Array, stride: number, to: number, count: number): Float64Array {

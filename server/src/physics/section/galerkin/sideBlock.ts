@@ -69,6 +69,6 @@ function addFar(upper: Side, lower: Side, parts: readonly PairKernel[], distance
  * Nodes for a kernel whose nearest singularity is `relative` side lengths away: its polynomial content falls as
  * ellipse^-degree (Bernstein), and with n nodes the highest polynomial kept meets an error of ellipse^-(n + 1).
  */
-function farPoints(relative: number): number {
+export function farPoints(relative: number): number {
   return Math.ceil(10 / Math.log(2 * relative + Math.sqrt(4 * relative * relative + 1))) + 1;
 }
