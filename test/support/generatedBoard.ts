@@ -36,7 +36,7 @@ export function generatedBoard(seed: number): string {
   const working = (index: number) => (index === 0 && random.chance(0.4) ? '; working 48 V dc' : '');
   const parts = [
     ...(random.chance(0.6) ? [`board made-up { headroom ${random.pick(['3', '6', '0'])} dB; clearance ${random.pick(['0.12 mm', '5 mil'])} }`] : []),
-    `stackup {\n  ${random.chance(0.5) ? 'mask 25 um er 3.5\n  ' : ''}copper TOP 35 um\n  prepreg ${random.between(0.1, 0.4).toFixed(2)} mm er 4.2\n  copper INNER 18 um\n  core 0.3 mm er 4.2\n  plane GND1 18 um\n}`,
+    `stackup {\n  ${random.chance(0.25) ? 'mask 25 um er 3.5\n  ' : ''}copper TOP 35 um\n  prepreg ${random.between(0.1, 0.4).toFixed(2)} mm er 4.2\n  copper INNER 18 um\n  core 0.3 mm er 4.2\n  plane GND1 18 um\n}`,
     ...sources.map((name, index) => `net ${name} { swing ${random.pick(['3.3 V', '12 V', '5 V'])}; rise ${random.pick(['2 ns', '20 ns', '300 ns'])}; source ${random.pick(['10 ohm', '33 ohm'])}; load ${random.pick(['10 kohm, 100 pF', '1 Mohm, 5 pF', '50 ohm'])}${working(index)} }  # drives`),
     ...receivers.map((name) => `net ${name} {\n  source ${random.pick(['50 ohm', '1 kohm'])}\n  load ${random.pick(['1 Mohm, 10 pF', '10 kohm'])}  # input\n  tolerates ${random.pick(['1 mV', '10 mV', '100 mV'])} peak\n}`),
     ...runs,
