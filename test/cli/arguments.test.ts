@@ -1,0 +1,34 @@
+import assert from 'node:assert/strict';
+import { describe, it } from 'node:test';
+import { readArguments } from '../../server/src/cli/arguments';
+
+const read = (words: string) => readArguments(words.split(' ').filter((word) => word !== ''));
+
+describe('arguments', () => {
+  it('reads a check with its options in any order', () => {
+    assert.deepEqual(read('check a.quiet --format json b.quiet --fail-on=warning'), {
+      read: { command: 'check', files: ['a.quiet', 'b.quiet'], format: 'json', failOn: 'warning', stdinFilename: null },
+    });
+  });
+
+  it('takes - for standard input, with a name', () => {
+    assert.deepEqual(read('check - --stdin-filename board.quiet'), {
+      read: { command: 'check', files: ['-'], format: 'text', failOn: 'error', stdinFilename: 'board.quiet' },
+    });
+  });
+
+  for (const [words, why] of [
+    ['', 'what is to be done?'],
+    ['chek a.quiet', 'no command chek'],
+    ['check', 'check which file?'],
+    ['check a.quiet --format xml', '--format takes text or json, not xml'],
+    ['check a.quiet --format', '--format takes text or json'],
+    ['check a.quiet --fail-on error --fail-on error', '--fail-on stands twice'],
+    ['check - -', '- stands twice'],
+    ['check a.quiet --colour', 'check has no --colour'],
+    ['explain a b', 'explain takes one rule'],
+    ['serve', 'serve takes --stdio'],
+  ]) {
+    it(`says what is wrong with: ${words}`, () => assert.deepEqual(read(words), { refused: why }));
+  }
+});
