@@ -31,6 +31,7 @@ export function expectedAt(tree: SourceTree, offset: number): Expected | null {
   const expectations: Expectations = { parts: [], units: [], block: null };
   const { tokens: read } = readText(before, expectations);
   const number = under?.kind === 'word' ? readNumber(text, span.start, span.end) : null;
+  if (number !== null && offset < number.end) return null;
   if (number !== null) return unitsAfterNumber(text, number.end, span, expectations);
   const { parts, units } = expectations;
   const begins = parts.length === 0 && units.length === 0 && beginsStatement(before, read.at(-1));

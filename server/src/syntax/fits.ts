@@ -9,6 +9,11 @@ export function shapeOf(kind: BlockKind, keyword: string): StatementShape | unde
   return shapes.get(kind)!.get(keyword);
 }
 
+/** Every statement of this block. */
+export function shapesOf(kind: BlockKind): readonly StatementShape[] {
+  return statementShapes[kind];
+}
+
 export function keywordsOf(kind: BlockKind): readonly string[] {
   return [...shapes.get(kind)!.keys()];
 }

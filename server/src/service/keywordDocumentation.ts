@@ -1,0 +1,93 @@
+/** What a word of the language or a unit means, for hovers and completion: from the same table that the parser reads. */
+import { fixedWords, shapeOf } from '../syntax/fits';
+import { formOf } from '../syntax/forms';
+import type { BlockKind, Part, StatementShape } from '../syntax/grammar';
+import type { QuantityValue, SourceTree, Span, Statement, Value } from '../syntax/tree';
+import type { Dimension } from '../units/dimension';
+import { inText } from '../units/inText';
+import { dimensionInWords, exampleOf, fittingUnits, unitSpelt } from '../units/spelling';
+import type { HoverAnswer } from './answers';
+import { wordMeanings } from './wordMeanings';
+
+/** Of the keyword, fixed word or unit at the point; null where there is none. */
+export function keywordDocumentation(tree: SourceTree, offset: number): HoverAnswer | null {
+  const found = statementAt(tree.statements, 'file', offset);
+  if (found === null) return null;
+  const { statement, shape } = found;
+  if (touches(statement.keywordSpan, offset)) return { span: statement.keywordSpan, markdown: statementMarkdown(shape) };
+  const quantity = quantitiesIn(statement.values).find(({ unitSpan }) => unitSpan.start < unitSpan.end && touches(unitSpan, offset));
+  if (quantity !== undefined) return hoverOf(quantity.unitSpan, unitMarkdown(quantity.unit));
+  const named = statement.values.some((value) => value.kind === 'name' && touches(value.span, offset));
+  const token = tree.tokens.find((each) => each.kind === 'word' && touches(each, offset));
+  if (named || token === undefined) return null;
+  const word = tree.text.slice(token.start, token.end);
+  return fixedWords.has(word) ? hoverOf({ start: token.start, end: token.end }, wordMarkdown(word, shape)) : null;
+}
+
+/** What the statement says, its form, and the units that fit. */
+export function statementMarkdown(shape: StatementShape): string {
+  const dimensions = [...new Set(shape.parts.flatMap(dimensionsIn))].filter((dimension) => dimension !== 'number');
+  const units = dimensions.map((dimension) => `- ${dimensionInWords(dimension)}: ${fittingUnits(dimension).map((unit) => `\`${unit}\``).join(', ')}, such as \`${exampleOf(dimension)}\``);
+  return [shape.about, '', '```quietrun', formOf(shape), '```', ...units].join('\n').trimEnd();
+}
+
+/** A word that goes on with a statement. */
+export function wordMarkdown(word: string, shape: StatementShape): string {
+  const meaning = wordMeanings.get(`${shape.keyword} ${word}`) ?? wordMeanings.get(word);
+  return [...(meaning === undefined ? [] : [meaning, '']), '```quietrun', formOf(shape), '```'].join('\n');
+}
+
+/** What a unit measures, and what one of it is. */
+export function unitMarkdown(spelling: string): string | null {
+  const unit = unitSpelt(spelling);
+  if (unit === undefined) return null;
+  const measures = `\`${spelling}\` measures ${dimensionInWords(unit.dimension)}`;
+  switch (unit.dimension) {
+    case 'level': return `${measures}, in decibels.`;
+    case 'fraction': return `${measures}: hundredths.`;
+    case 'angle': return `${measures}: 360 make a full turn.`;
+    default: if (unit.dimension === 'temperature' && !unit.toleranced) return `${measures}: 0 ${spelling} is ${unit.inSi({ digits: '0', exponent: 0 })} K.`;
+      return `${measures}: 1 ${spelling} is ${inSiWords(unit.inSi({ digits: '1', exponent: 0 }), unit.dimension)}.`;
+  }
+}
+
+function inSiWords(value: number, dimension: Dimension): string {
+  // 1 uF is said as 1e-6 F: its own spelling would say nothing.
+  if (dimension === 'length' || dimension === 'area') return inText(value, dimension);
+  const symbols: Partial<Record<Dimension, string>> = { time: 's', frequency: 'Hz', voltage: 'V', current: 'A', resistance: 'Ω', capacitance: 'F', inductance: 'H', field: 'V/m', 'voltage-noise': 'V/√Hz', 'current-noise': 'A/√Hz', temperature: 'K' };
+  const number = String(value).replace('e+', 'e');
+  return `${number} ${symbols[dimension] ?? ''}`.trim();
+}
+
+function hoverOf(span: Span, markdown: string | null): HoverAnswer | null {
+  return markdown === null ? null : { span: { start: span.start, end: span.end }, markdown };
+}
+
+function touches({ start, end }: Span, offset: number): boolean {
+  return start <= offset && offset <= end;
+}
+
+/** The innermost statement around the point, with its shape. */
+function statementAt(statements: readonly Statement[], kind: BlockKind, offset: number): { readonly statement: Statement; readonly shape: StatementShape } | null {
+  const statement = statements.find(({ span }) => touches(span, offset));
+  if (statement === undefined) return null;
+  const inner = statement.block === null || !touches(statement.block.span, offset) ? null : statementAt(statement.block.statements, statement.block.kind, offset);
+  const shape = shapeOf(kind, statement.keyword);
+  return inner ?? (shape === undefined ? null : { statement, shape });
+}
+
+function quantitiesIn(values: readonly Value[]): readonly QuantityValue[] {
+  return values.flatMap((value) => (value.kind === 'quantity' ? [value] : value.kind === 'point' ? [value.x, value.y, ...(value.z === null ? [] : [value.z])] : []));
+}
+
+function dimensionsIn(part: Part): readonly Dimension[] {
+  switch (part.is) {
+    case 'quantity': return [part.dimension];
+    case 'point': return ['length'];
+    case 'optional':
+    case 'repeat': return part.parts.flatMap(dimensionsIn);
+    case 'choice':
+    case 'suffixes': return part.of.flatMap((parts) => parts.flatMap(dimensionsIn));
+    default: return [];
+  }
+}
