@@ -6,7 +6,7 @@ import { kneeFrequency, rampDuration } from '../../../server/src/physics/lines/k
 import type { Waveform } from '../../../server/src/physics/lines/lines';
 import { modesOf } from '../../../server/src/physics/lines/modes';
 import { peakOf } from '../../../server/src/physics/lines/peak';
-import { thinnedWaveform, valueAt, waveformAfter } from '../../../server/src/physics/lines/waveform';
+import { thinnedWaveform, valueAt } from '../../../server/src/physics/lines/waveform';
 import { observationWindow, oneWayDelay, stillGrowing } from '../../../server/src/physics/lines/window';
 import { epsilon0, mu0, speedOfLight } from '../../../server/src/units/constants';
 import { hertz, metres, seconds, volts } from '../../../server/src/units/quantity';
@@ -43,12 +43,6 @@ describe('waveform', () => {
 
   it('is straight between points and constant outside', () => {
     assert.deepEqual([0, 1, 1.5, 3, 4, 9].map((time) => valueAt(steps, seconds(time))), [10, 10, 15, 10, 0, 0]);
-  });
-
-  it('can be cut', () => {
-    assert.deepEqual(waveformAfter(steps, seconds(3)), waveform([[3, 10], [4, 0]]));
-    assert.deepEqual(waveformAfter(steps, seconds(0)), steps);
-    assert.deepEqual(waveformAfter(steps, seconds(9)), waveform([[9, 0]]));
   });
 
   it('is thinned to within a tolerance, and keeps its ends', () => {

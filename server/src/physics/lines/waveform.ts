@@ -1,5 +1,5 @@
 /**
- * Piecewise-linear waveforms: their value at a time, a part of one, and one with fewer points.
+ * Piecewise-linear waveforms: their value at a time, and one with fewer points.
  */
 import type { Time, Voltage } from '../../units/quantity';
 import { volts } from '../../units/quantity';
@@ -13,17 +13,6 @@ export function valueAt({ times, values }: Waveform, time: Time): Voltage {
   const next = firstAfter(times, time);
   const share = (time - times[next - 1]) / (times[next] - times[next - 1]);
   return volts(values[next - 1] + share * (values[next] - values[next - 1]));
-}
-
-/** What happens from a time on, starting with the value there. */
-export function waveformAfter(waveform: Waveform, time: Time): Waveform {
-  const { times, values } = waveform;
-  const from = firstAfter(times, time);
-  if (from === 0) return waveform;
-  return {
-    times: Float64Array.of(time, ...times.subarray(from)),
-    values: Float64Array.of(valueAt(waveform, time), ...values.subarray(from)),
-  };
 }
 
 /**
