@@ -19,6 +19,8 @@ export function placementOf(section: Section): Placement | { readonly refused: S
   const stack = stackOf(section, unit);
   const left = Math.min(...section.conductors.map(({ x }) => x));
   const conductors: Trapezoid[] = [];
+  const smallest = section.conductors.reduce((least, { width, height }) => Math.min(least, width, 0 < height ? height : width), Infinity) / unit;
+  if (stack.layers.some(({ bottom, top }) => top - bottom < thinnest * smallest)) return { refused: { reason: 'not-covered', what: 'a layer thinner than a thousandth of a conductor' } };
   for (const [index, { x, y, width, height, undercut }] of section.conductors.entries()) {
     const placed = place(stack, y / unit, (y + height) / unit, Math.min(width, 0 < height ? height : width) / unit);
     if (placed === null) return { refused: { reason: 'not-in-dielectric', conductor: index } };
@@ -27,6 +29,9 @@ export function placementOf(section: Section): Placement | { readonly refused: S
   }
   return { unit, stack, conductors };
 }
+
+/** Images in a layer or a gap thinner than this, of a conductor's size, are so near that their integrals would take seconds. */
+const thinnest = 1e-3;
 
 /** The stack's height, or where it has none the conductors' own extent. */
 function unitOf(section: Section): number {
@@ -45,7 +50,7 @@ function place({ layers }: Stack, bottom: number, top: number, size: number): { 
     const onHigh = Math.abs(top - high) <= snap;
     // In the face of a plane it is the plane.
     if ((onLow && layer === 0) || (onHigh && layer === layers.length - 1)) return null;
-    if ((!onLow && bottom - low < 1e3 * snap) || (!onHigh && high - top < 1e3 * snap)) return 'near';
+    if ((!onLow && bottom - low < thinnest * size) || (!onHigh && high - top < thinnest * size)) return 'near';
     const placedBottom = onLow ? low : bottom;
     const placedTop = top === bottom ? placedBottom : onHigh ? high : top;
     // A strip of no height in an interface belongs to either side; the mirror makes it the same.

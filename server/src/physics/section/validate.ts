@@ -16,21 +16,22 @@ export function refusalOf(section: Section): SectionRefusal | null {
   if (layers !== null) return layers;
   const degenerate = conductors.findIndex(isDegenerate);
   if (0 <= degenerate) return { reason: 'degenerate', conductor: degenerate };
+  if (conductors.some(isExtreme)) return { reason: 'not-covered', what: `a conductor more than ${flattest} times as wide as thick, or as thick as wide` };
   for (let second = 1; second < conductors.length; second += 1) {
     for (let first = 0; first < second; first += 1) {
       const separation = separationOf(conductors[first], conductors[second]);
       const size = Math.min(smallSize(conductors[first]), smallSize(conductors[second]));
       if (separation < -1e-6 * size) return { reason: 'overlap', first, second };
       if (separation <= 1e-6 * size) return { reason: 'touching', first, second };
-      if (separation < closest * size) return { reason: 'not-covered', what: 'conductors nearer to each other than a thousandth of their size' };
+      if (separation < closest * size) return { reason: 'not-covered', what: 'conductors nearer to each other than a two-hundredth of their size' };
     }
   }
   return null;
 }
 
-/** Of the smaller conductor. Nearer than this, the halving of the near integrals would take seconds. */
-const closest = 1e-3;
-/** Wider ones than this times their height, or lower ones, are beyond what was measured. */
+/** Of the smaller conductor. Nearer than this, the halving of the near integrals would take tenths of a second. */
+const closest = 5e-3;
+/** Wider conductors than this times their height, or narrower ones, would do so as well. */
 const flattest = 2000;
 
 function refusedLayers({ layers, planeBelow, planeAbove }: Section): SectionRefusal | null {
@@ -48,8 +49,10 @@ function isDegenerate({ x, y, width, height, undercut }: SectionConductor): bool
   const finite = [x, y, width, height, undercut].every((value) => Number.isFinite(value) && Math.abs(value) < 1e6);
   if (!finite || !(1e-12 < width) || !(0 <= height)) return true;
   if (height === 0) return undercut !== 0;
-  return flattest * height < width || flattest * width < height || !(1e-3 * width < width - 2 * undercut) || !(Math.abs(undercut) < 4 * height);
+  return !(1e-3 * width < width - 2 * undercut) || !(Math.abs(undercut) < 4 * height);
 }
+
+const isExtreme = ({ width, height }: SectionConductor) => 0 < height && (flattest * height < width || flattest * width < height);
 
 const smallSize = ({ width, height, undercut }: SectionConductor) => Math.min(width, width - 2 * undercut, 0 < height ? height : width);
 

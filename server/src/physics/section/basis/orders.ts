@@ -4,7 +4,7 @@
  * Model     beside an edge the charge changes over the conductor's height and over the gap to its neighbour, so the wider a
  *           side is than these, the more polynomials. Further in than the plane's distance it is nearly uniform, so sides
  *           wider than 2.6 of that are cut: end panels of 1.2, middle panels of 3 that grow threefold; of 2 that do
- *           not grow where it is another conductor that the side faces, whose edges may be anywhere
+ *           not grow where it is another conductor that the side faces, whose edges may be anywhere; 16 of them at most
  * Symbols   effort 0, 1, 2 …: each step adds a polynomial to every side and more to wide ones
  * Accuracy  measured in the test on seeded random sections
  */
@@ -28,7 +28,7 @@ export interface Surroundings {
 }
 
 export function sideOrders({ width, height, gap, depth, facesConductor }: Surroundings, effort: number): SideOrders {
-  const cuts = facesConductor ? cutsOf(width, depth, 2, 1) : cutsOf(width, depth, 3, 3);
+  const cuts = facesConductor ? cutsOf(width, Math.max(depth, width / 32), 2, 1) : cutsOf(width, depth, 3, 3);
   const detail = Math.max(height, 0.02 * width);
   const span = Math.log2(Math.min(width, 2 * depth) / Math.min(4 * detail, 2 * gap));
   const extra = Math.round((1.3 + 0.3 * effort) * Math.max(0, span));
