@@ -114,7 +114,7 @@ function coupledContribution(coupling: Coupling): Contribution {
     channel: 'coupled',
     from: aggressor.name,
     where: run.name,
-    place: victimPlace(coupling),
+    get place() { return victimPlace(coupling); },
     group: aggressor.switchesWith,
     value: volts(Math.abs(inBand ?? atReceiver)),
     unfiltered: inBand === null ? null : volts(Math.abs(atReceiver)),
@@ -127,8 +127,8 @@ function coupledContribution(coupling: Coupling): Contribution {
 }
 
 function victimPlace({ run, victim }: Coupling): Place {
-  const traces = run.rows.flatMap((row) => row.conductors);
-  return traces.find((conductor) => conductor.kind === 'trace' && conductor.net === victim)?.whole ?? run.place;
+  for (const row of run.rows) for (const conductor of row.conductors) if (conductor.kind === 'trace' && conductor.net === victim) return conductor.whole;
+  return run.place;
 }
 
 function largestFirst(a: Contribution, b: Contribution): number {

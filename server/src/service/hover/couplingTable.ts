@@ -1,0 +1,41 @@
+/** What nets of a run put on each other, and what those numbers rest on. */
+import type { Coupling } from '../../budget/results';
+import { inText } from '../../units/inText';
+import { escaped, table } from './markdown';
+
+const couplingsShown = 12;
+
+/** Largest first. */
+export function couplingTable(couplings: readonly Coupling[]): string {
+  const sorted = [...couplings].sort((a, b) => sizeOf(b) - sizeOf(a));
+  const rows = sorted.slice(0, couplingsShown).map((coupling) => [
+    `${escaped(coupling.aggressor.name)} → ${escaped(coupling.victim.name)}`,
+    `**${voltage(coupling.atReceiver)}** ± ${voltage(coupling.errorBar)}${coupling.inBand === null ? '' : `, ${voltage(coupling.inBand)} in its band`}`,
+    voltage(coupling.nearEnd),
+    voltage(coupling.farEnd),
+    voltage(coupling.capacitivePart),
+    voltage(coupling.inductivePart),
+    `${inText(coupling.peakTime, 'time')} after the ${coupling.edge} begins, ${inText(coupling.widthHalf, 'time')} wide`,
+    coupling.model,
+  ]);
+  const rest = sorted.length - rows.length;
+  const words = table(['from → to', 'at the receiver', 'near end', 'far end', 'capacitive', 'inductive', 'peak', 'acts as'], rows);
+  return rest === 0 ? words : `${words}\n\nand ${rest} smaller ones`;
+}
+
+function sizeOf({ inBand, atReceiver }: Coupling): number {
+  return Math.abs(inBand ?? atReceiver);
+}
+
+function voltage(value: number): string {
+  return inText(value, 'voltage');
+}
+
+const assumptionsShown = 6;
+
+export function assumptionsOf(couplings: readonly Coupling[]): string | null {
+  const said = [...new Set(couplings.flatMap(({ assumptions }) => assumptions))];
+  if (said.length === 0) return null;
+  const rest = said.length - assumptionsShown;
+  return `It rests on:\n\n${said.slice(0, assumptionsShown).map((words) => `- ${escaped(words)}`).join('\n')}${0 < rest ? `\n- and ${rest} more` : ''}`;
+}

@@ -1,0 +1,120 @@
+/** A net or pair: what it does, its budget with what makes it up, and what it does to others. */
+import type { End, Net, Pair, Project, Signal } from '../../board/model';
+import type { Budget, Contribution } from '../../budget/results';
+import { causeInText, budgetFault, excessInText, receiverInText, remedyInText, shareOf, voltageInText } from '../../rules/budgetFault';
+import { inText } from '../../units/inText';
+import type { Analysis } from '../session';
+import { bar, escaped, escapedLines, paragraphs, percent, table } from './markdown';
+
+export function signalHover({ project, evaluation }: Analysis, signal: Net | Pair): string {
+  const budgets = evaluation.budgets.filter(({ subject }) => subject === signal);
+  return paragraphs(
+    signal.documentation === null ? null : escapedLines(signal.documentation),
+    `**${escaped(signal.name)}**: ${roleInWords(signal)}`,
+    ...budgets.map((budget) => budgetInWords(project, budget)),
+    signal.kind === 'net' ? disturbedBy(evaluation.budgets, signal) : null,
+  );
+}
+
+function roleInWords(signal: Net | Pair): string {
+  const drives = sourceInWords(signal);
+  const listens = signal.toleratesPeak !== null || signal.toleratesRms !== null;
+  const role = drives === '' ? (listens ? 'a receiver' : `a ${signal.kind} that neither drives nor listens`) : listens ? `a source, ${drives}, and a receiver` : `a source, ${drives}`;
+  const ends = [['source', signal.source], ['load', signal.load]] as const;
+  const stated = ends.map(([name, end]) => (end === null ? `no ${name} stated` : `${name} ${endInText(end)}`));
+  const nets = signal.kind === 'pair' ? [`plus ${escaped(signal.plus?.name ?? '?')}`, `minus ${escaped(signal.minus?.name ?? '?')}`] : [];
+  const family = signal.family === null ? [] : [`of family ${escaped(signal.family)}`];
+  return [role, ...family, ...nets, ...stated].join(', ');
+}
+
+function sourceInWords({ swing, rise, sine, current }: Signal): string {
+  const parts: string[] = [];
+  if (swing !== null) parts.push(`${inText(swing.value, 'voltage')}${rise === null ? '' : ` in ${inText(rise.value, 'time')}`}`);
+  if (sine !== null) parts.push(`a sine of ${inText(sine.amplitude.value, 'voltage')} ${sine.measure}`);
+  if (current !== null) parts.push(`${inText(current.amplitude.value, 'current')} drawn at its load`);
+  return parts.join(' and ');
+}
+
+export function endInText({ resistance, capacitance }: End): string {
+  return [resistance === null ? null : inText(resistance.value, 'resistance'), capacitance === null ? null : inText(capacitance.value, 'capacitance')].filter((part) => part !== null).join(' ‖ ');
+}
+
+/** The number first, then what causes it, then the way out. */
+function budgetInWords(project: Project, budget: Budget): string {
+  return paragraphs(
+    totalInWords(project, budget),
+    budget.contributions.length === 0 ? null : contributionsTable(budget),
+    budget.unaccounted.length === 0 ? null : `Not in it: ${budget.unaccounted.map(({ what }) => escaped(what)).join('; ')}`,
+    wayOut(project, budget),
+  );
+}
+
+function totalInWords(project: Project, budget: Budget): string {
+  const tolerated = `${voltageInText(budget.tolerates, budget)} tolerated${budget.kind === 'common' ? ' of the mean' : ''}`;
+  if (budget.total === null) return `No total of ${tolerated}`;
+  const amount = `**${voltageInText(budget.total, budget)}**${errorInText(budget)} of ${tolerated}`;
+  return `${amount}: ${verdictInWords(project, budget)}`;
+}
+
+function verdictInWords({ board }: Project, { verdict, marginDb, total, tolerates }: Budget): string {
+  const margin = marginDb ?? (total === null || total === 0 ? Infinity : 20 * Math.log10(tolerates / total));
+  const headroom = board.headroom?.value ?? 0;
+  switch (verdict) {
+    case 'over': return `over by ${inText(-margin, 'level')}`;
+    case 'low': return `${inText(margin, 'level')} of the ${inText(headroom, 'level')} wanted`;
+    case 'pass': return margin === Infinity ? 'within budget' : `within budget by ${inText(margin, 'level')}`;
+    case 'unknown': return 'so far, and no margin: the budget is incomplete';
+  }
+}
+
+function errorInText({ errorBar }: Budget): string {
+  return errorBar === null || errorBar === 0 ? '' : ` ± ${inText(errorBar, 'voltage')}`;
+}
+
+const rowsShown = 12;
+
+function contributionsTable(budget: Budget): string {
+  const shown = budget.contributions.slice(0, rowsShown);
+  const rows = shown.map((contribution) => {
+    const share = shareOf(contribution, budget);
+    return [channelInWords(contribution), escaped(contribution.from ?? 'itself'), whereInWords(contribution), valueInWords(contribution, budget), `${bar(share)} ${percent(share)}`];
+  });
+  const rest = budget.contributions.length - shown.length;
+  const sum = budget.measure === 'rms' || budget.combine === 'rss' ? 'Unrelated sources add as squares' : 'All peaks add';
+  return paragraphs(table(['channel', 'from', 'where', 'value', 'share'], rows), `${rest === 0 ? '' : `and ${rest} more. `}${sum}.`);
+}
+
+function channelInWords({ channel, coupling }: Contribution): string {
+  if (coupling === null) return channel;
+  const [capacitive, inductive] = [Math.abs(coupling.capacitivePart), Math.abs(coupling.inductivePart)];
+  if (!(0 < capacitive + inductive)) return channel;
+  return `${channel}, ${capacitive < inductive ? 'mostly inductive' : 'mostly capacitive'}`;
+}
+
+function whereInWords({ where, group }: Contribution): string {
+  return [...(where === null ? [] : [`run ${escaped(where)}`]), ...(group === null ? [] : [`switches with ${escaped(group)}`])].join(', ');
+}
+
+function valueInWords({ value, unfiltered }: Contribution, budget: Budget): string {
+  return `${voltageInText(value, budget)}${unfiltered === null ? '' : ` in its band, ${inText(unfiltered, 'voltage')} before it`}`;
+}
+
+function wayOut(project: Project, budget: Budget): string | null {
+  if (budget.verdict !== 'over' && budget.verdict !== 'low') return null;
+  const fault = budgetFault(project, budget);
+  return `${escaped(causeInText(fault))}: ${excessInText(fault)}. ${remedyInText(fault.largest)}.`;
+}
+
+/** Of a source: whom it disturbs most. */
+function disturbedBy(budgets: readonly Budget[], net: Net): string | null {
+  const most = budgets
+    .flatMap((budget) => {
+      const own = budget.contributions.filter(({ from }) => from === net.name);
+      const value = own.reduce((sum, contribution) => sum + contribution.value, 0);
+      return own.length === 0 ? [] : [{ budget, value, share: value / budget.tolerates }];
+    })
+    .sort((a, b) => b.share - a.share);
+  if (most.length === 0) return null;
+  const shown = most.slice(0, 3).map(({ budget, value, share }) => `${voltageInText(value, budget)} on ${escaped(receiverInText(budget))} (${percent(share)} of what it tolerates)`);
+  return `It puts ${shown.join(', ')}${shown.length < most.length ? ` and less on ${most.length - shown.length} more` : ''}.`;
+}

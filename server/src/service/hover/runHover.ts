@@ -1,0 +1,121 @@
+/** A run, and what of it stands at a point: a trace, a guard or return, a gap, its length. */
+import type { RunConductor } from '../../board/model';
+import type { RunResult } from '../../budget/results';
+import { refusalInText } from '../../budget/refusalInText';
+import type { FixContext } from '../../fixes/fix';
+import { sufficientGap, sufficientLength, type Sufficient } from '../../fixes/sufficient';
+import { gapsBetween } from '../../rules/gapsBetween';
+import { inText } from '../../units/inText';
+import { assumptionsOf, couplingTable } from './couplingTable';
+import { escaped, escapedLines, paragraphs, table } from './markdown';
+import type { RunPoint } from './runPoint';
+
+/** `context` is asked for only where a search answers. */
+export function runHover(result: RunResult): string {
+  const { run, couplings } = result;
+  return paragraphs(
+    run.documentation === null ? null : escapedLines(run.documentation),
+    `**run ${escaped(run.name)}**: ${inText(run.length.value, 'length')}${delayInWords(result)}`,
+    couplings.length === 0 ? nothingCouples(result) : couplingTable(couplings),
+    result.matrices === null ? null : linesTable(result),
+    assumptionsOf(couplings),
+  );
+}
+
+export function runPointHover(result: RunResult, point: RunPoint, context: () => FixContext): string {
+  switch (point.on) {
+    case 'length': return paragraphs(lengthInWords(sufficientLength(context(), result.run)), runHover(result));
+    case 'gap': return gapHover(result, point, context());
+    case 'conductor': return point.conductor.kind === 'trace' ? traceHover(result, point.conductor) : guardHover(result, point.conductor);
+  }
+}
+
+/** All traces of one row where it names a range. */
+function traceHover(result: RunResult, { place }: RunConductor & { readonly kind: 'trace' }): string {
+  const traces = result.traces.filter((trace) => trace.place === place || (trace.place.path === place.path && trace.place.span.start === place.span.start));
+  const nets = new Set(traces.map(({ net }) => net));
+  const onto = result.couplings.filter(({ victim }) => nets.has(victim));
+  const from = result.couplings.filter(({ aggressor }) => nets.has(aggressor));
+  const lines = traces.slice(0, 4).map((trace) => {
+    const index = result.traces.indexOf(trace);
+    const line = result.impedance[index] === undefined ? '' : `, ${inText(result.impedance[index], 'resistance')}, ${inText(result.delay[index] * result.run.length.value, 'time')} from end to end`;
+    return `**${escaped(trace.net.name)}** in run ${escaped(result.run.name)}: ${inText(trace.width.value, 'length')} wide${line}${trace.reversed ? ', laid against the others' : ''}`;
+  });
+  return paragraphs(
+    [...lines, ...(lines.length < traces.length ? [`and ${traces.length - lines.length} more`] : [])].join('  \n'),
+    onto.length === 0 ? null : `Put on it here:\n\n${couplingTable(onto)}`,
+    from.length === 0 ? null : `Put by it here:\n\n${couplingTable(from)}`,
+    onto.length + from.length === 0 ? nothingCouples(result) : null,
+    assumptionsOf([...onto, ...from]),
+  );
+}
+
+function guardHover({ run, looseGuards }: RunResult, conductor: Exclude<RunConductor, { kind: 'trace' }>): string {
+  const head = `**${conductor.kind} ${escaped(conductor.name)}** in run ${escaped(run.name)}: ${inText(conductor.width.value, 'length')} wide`;
+  if (conductor.kind === 'return') return paragraphs(head, 'It carries the current back; several are joined at both ends of the run.');
+  const loose = looseGuards.find(({ guard }) => guard === conductor);
+  const tied = conductor.stitched === null ? `tied at its two ends, ${inText(run.length.value, 'length')} apart` : `tied every ${inText(conductor.stitched.value, 'length')}`;
+  return paragraphs(head, loose === undefined ? `It is ${tied}, and counts as tied everywhere.` : `It is ${tied}; at most ${inText(loose.largest, 'length')} hold at the fastest edge here. Its noise is computed as if they held, and is not to be trusted until they do.`);
+}
+
+function gapHover(result: RunResult, { gap, index }: RunPoint & { readonly on: 'gap' }, context: FixContext): string {
+  const { run, couplings } = result;
+  const across = couplings.filter(({ aggressor, victim }) => {
+    const between = gapsBetween(run, aggressor, victim);
+    return between !== null && gapIndices(result, between).includes(index);
+  });
+  const sufficient = sufficientGap(context, run, index);
+  return paragraphs(
+    `**${inText(gap.value, 'length')}**${neighboursOf(result, index)}`,
+    sufficient === null ? null : gapInWords(sufficient),
+    across.length === 0 ? 'Nothing that is computed couples across it.' : couplingTable(across),
+  );
+}
+
+function gapIndices({ run }: RunResult, { row, gaps }: { readonly row: number; readonly gaps: readonly number[] }): readonly number[] {
+  const first = run.rows.slice(0, row).reduce((count, each) => count + each.gaps.length, 0);
+  return gaps.map((gap) => first + gap);
+}
+
+function neighboursOf({ run }: RunResult, index: number): string {
+  let first = 0;
+  for (const { conductors, gaps } of run.rows) {
+    if (index < first + gaps.length) return ` between ${conductors.slice(index - first, index - first + 2).map((each) => escaped(each.kind === 'trace' ? each.net.name : each.name)).join(' and ')}`;
+    first += gaps.length;
+  }
+  return '';
+}
+
+function gapInWords({ written, enough, receivers }: Sufficient): string {
+  const whom = receivers.map(escaped).join(', ');
+  return enough ? `${written} would just do for ${whom}, with the headroom wanted.` : `No gap up to ${written} is enough for ${whom}: a shorter run, a guard or another layer is.`;
+}
+
+function lengthInWords(sufficient: Sufficient | null): string | null {
+  if (sufficient === null) return null;
+  const { written, enough, receivers } = sufficient;
+  const whom = receivers.map(escaped).join(', ');
+  return enough ? `${written} would just do for ${whom}, with the headroom wanted.` : `No length down to ${written} is enough for ${whom}: a wider gap, a guard or another layer is.`;
+}
+
+function nothingCouples({ refusal, run, matrices }: RunResult): string {
+  if (matrices === null && refusal !== null) return `It has no numbers: ${escaped(refusalInText(refusal, run.rows.flatMap((row) => row.conductors)))}.`;
+  return 'No source with an edge lies beside a receiver here: nothing is computed but the lines themselves.';
+}
+
+function delayInWords({ delay, run }: RunResult): string {
+  return delay.length === 0 ? '' : `, ${inText(Math.max(...delay) * run.length.value, 'time')} from end to end`;
+}
+
+const linesShown = 8;
+
+/** Of each trace alone, the others at zero potential. */
+function linesTable({ traces, impedance, delay, matrices }: RunResult): string {
+  const order = traces.length;
+  const rows = traces.slice(0, linesShown).map(({ net }, index) => [
+    escaped(net.name), inText(impedance[index], 'resistance'), `${inText(delay[index] * 1e-3, 'time')}/mm`,
+    `${inText(matrices!.capacitance[index * (order + 1)] * 1e-3, 'capacitance')}/mm`, `${inText(matrices!.inductance[index * (order + 1)] * 1e-3, 'inductance')}/mm`,
+  ]);
+  const error = Math.max(...matrices!.capacitanceError.filter(Number.isFinite), ...matrices!.inductanceError.filter(Number.isFinite));
+  return paragraphs(table(['line', 'impedance', 'delay', 'C', 'L'], rows), `${linesShown < order ? `and ${order - linesShown} more lines. ` : ''}C and L to ${inText(error, 'fraction')}.`);
+}
