@@ -71,9 +71,9 @@ describe('what a budget says is not yet counted', () => {
     assert.deepEqual(budget.contributions.filter(({ channel }) => channel === 'coupled').map(({ from }) => from), ['A']);
   });
 
-  it('says of a source without rise that its edge is not counted', () => {
+  it('says of a source without rise that its rise is not counted', () => {
     const project = projectOf(`${microstrip}${receiver}net A { swing 3 V; source 50 ohm; load 50 ohm }\n${beside('A')}`);
     const budget = budgetOf(evaluate(project, createSolveCache()), 'V');
-    assert.ok(budget.unaccounted.some(({ what }) => what === 'the edge of A in run r is not counted: it states no `rise`'), JSON.stringify(budget.unaccounted));
+    assert.ok(budget.unaccounted.some(({ what }) => what === 'the `rise` of A in run r is not counted: it states none'), JSON.stringify(budget.unaccounted));
   });
 });

@@ -141,6 +141,16 @@ describe('the section of a run (language reference, "stackup" and "run")', () =>
     assert.deepEqual([only.planeBelow, only.planeAbove, only.conductors.length], [false, false, 2]);
   });
 
+  it('with films on both faces in one section keeps one, and says that the other counts as planar', () => {
+    const rows = 'mask 20 um er 3.5; copper TOP 35 um; core 0.5 mm er 4.4; copper BOTTOM 35 um; mask 20 um er 3.5';
+    const project = projectOf(`stackup { ${rows} }\nnet A { swing 1 V; rise 1 ns }\nnet B { tolerates 1 V peak }\nrun r for 10 mm { on TOP { trace A 0.2 mm; gap 0.3 mm; return GND 1 mm }; on BOTTOM { trace B 0.2 mm } }`);
+    const [{ section, undersidePlanar }] = runSections(project.runs[0]);
+    assert.equal(undersidePlanar, true);
+    assert.deepEqual(shown(section).layers, [[1, Infinity], [3.5, 55], [4.4, 500], [1, Infinity]]);
+    assert.deepEqual(shown(section).film, ['above', 3.5, 20]);
+    assert.deepEqual(shown(section).conductors.map(([, , y]) => y), [555, 555, 20]);
+  });
+
   it('without planes has air on both sides, and a return or a guard for reference', () => {
     const rows = 'copper TOP 35 um; core 1.5 mm er 4.7';
     assert.deepEqual(shown(sectionOf(rows, 'run r on TOP for 10 mm { trace A 0.4 mm; gap 1 mm; trace B 0.4 mm; gap 1 mm; return GND 2 mm }')), {

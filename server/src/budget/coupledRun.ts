@@ -68,9 +68,11 @@ function receiversOf({ part }: PartContext, aggressor: Trace): readonly number[]
 }
 
 function withoutEdge({ net, whole }: Trace, run: Run): readonly Unaccounted[] {
-  if (net.swing === null || 0 < edgesOf(net).length) return [];
-  const why = net.rise === null ? 'it states no `rise`' : 'its `rise` is 0 s';
-  return [{ what: `the edge of ${net.name} in run ${run.name} is not counted: ${why}`, place: whole }];
+  if (net.swing === null) return [];
+  // A `fall` alone says nothing of the rise; a rise alone is the fall as well.
+  const [rise, fall] = [net.rise?.value ?? null, net.fall?.value ?? null];
+  const missing = rise === null ? ['`rise`', 'it states none'] : rise === 0 ? ['`rise`', 'it is 0 s'] : fall === 0 ? ['`fall`', 'it is 0 s'] : null;
+  return missing === null ? [] : [{ what: `the ${missing[0]} of ${net.name} in run ${run.name} is not counted: ${missing[1]}`, place: whole }];
 }
 
 /** Its inductance is in the run's matrices; what its resistance drops is a shared return's. */

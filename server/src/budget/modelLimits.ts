@@ -9,12 +9,13 @@ import type { Time } from '../units/quantity';
 import type { SolvedCoupling } from './coupledRun';
 import { refusalInText } from './refusalInText';
 import type { ModelLimit } from './results';
-import { conductorsAtOnce, neighboursEachSide, type RefusedPart, type RunPart } from './runParts';
+import { conductorsAtOnce, neighboursEachSide, type RefusedPart, type RunPart, type RunParts } from './runParts';
 
-export function runLimits(run: Run, { separated, windowed }: { readonly separated: boolean; readonly windowed: boolean }): readonly ModelLimit[] {
+export function runLimits(run: Run, { separated, windowed, undersidePlanar }: Pick<RunParts, 'separated' | 'windowed' | 'undersidePlanar'>): readonly ModelLimit[] {
   const found: ModelLimit[] = [];
   if (separated) found.push(limit(run, `a plane lies between rows of run ${run.name}: they are computed apart, and nothing couples through a plane; cut it away with \`without\` where it ends`));
   if (windowed) found.push(limit(run, `run ${run.name} has more than ${conductorsAtOnce} conductors in one section: each receiver is computed with its ${neighboursEachSide} nearest on each side, and the rest is left out`));
+  if (undersidePlanar) found.push(limit(run, `mask follows the copper on both faces of run ${run.name}: that on the underside counts as planar, which makes its couplings a few per cent too large`));
   return found;
 }
 
@@ -26,6 +27,19 @@ export function refusalLimits(run: Run, { refusal, conductors }: RefusedPart): r
 
 /** `fastest`: the shortest 10–90 % time of what moves in the part. */
 export function partLimits(run: Run, part: RunPart, fastest: Time | null): readonly ModelLimit[] {
+  return [...accuracyLimits(run, part), ...sizeLimits(run, part, fastest)];
+}
+
+function accuracyLimits(run: Run, { matrices }: RunPart): readonly ModelLimit[] {
+  const bars = [...matrices.capacitanceError, ...matrices.inductanceError].filter(Number.isFinite);
+  const worst = Math.max(...bars);
+  return coarse < worst ? [limit(run, `the capacitances and inductances of run ${run.name} are known to ${inText(worst, 'fraction')} only: its cross-section is beyond what is solved to ${inText(coarse, 'fraction')}`)] : [];
+}
+
+/** Relative, of any entry of the matrices. */
+const coarse = 0.05;
+
+function sizeLimits(run: Run, part: RunPart, fastest: Time | null): readonly ModelLimit[] {
   if (fastest === null) return [];
   const knee = kneeFrequency(fastest);
   const across = sizeAcross(part);

@@ -39,6 +39,7 @@ export interface RunParts {
   readonly separated: boolean;
   /** Sections were cut down to each receiver's neighbours. */
   readonly windowed: boolean;
+  readonly undersidePlanar: boolean;
 }
 
 /** Sections of more conductors are solved once for each receiver, with this many neighbours on each side. */
@@ -54,7 +55,7 @@ export function runParts(run: Run, cache: SolveCache): RunParts {
     if (whole.conductors.length <= conductorsAtOnce) keep(solvedPart(whole, null, cache));
     else for (const [index, conductor] of whole.conductors.entries()) if (conductor.kind === 'trace') keep(solvedPart(neighbourhood(whole, index), conductor, cache));
   }
-  return { parts, refused, separated: 1 < sections.length, windowed: sections.some(({ conductors }) => conductorsAtOnce < conductors.length) };
+  return { parts, refused, separated: 1 < sections.length, windowed: sections.some(({ conductors }) => conductorsAtOnce < conductors.length), undersidePlanar: sections.some(({ undersidePlanar }) => undersidePlanar) };
 }
 
 function solvedPart({ section, conductors }: Pick<RunSection, 'section' | 'conductors'>, receiver: Trace | null, cache: SolveCache): RunPart | RefusedPart {

@@ -23,7 +23,8 @@ export interface RunSection {
   readonly section: Section;
   /** What stands behind each conductor of the section, in its order: that of the text. */
   readonly conductors: readonly RunConductor[];
-  readonly rows: readonly RunRow[];
+  /** Mask follows the copper on both faces: that on the underside counts as planar, since a section has one film. */
+  readonly undersidePlanar: boolean;
 }
 
 /** The sections of a run, uppermost first: one, unless a plane lies between its rows. */
@@ -90,7 +91,7 @@ function sectionOf(run: Run, board: Laminate, rows: readonly RunRow[]): RunSecti
   const surroundings = layersBetween(board, used, { ...between, ...faces });
   const conductors = rows.flatMap((row) => conductorsOf(row, rows[0], board, surroundings.zero));
   const section: Section = { layers: surroundings.layers, ...faces, conductors, film: surroundings.film };
-  return { section: canonicalSection(section), conductors: rows.flatMap((row) => row.conductors), rows };
+  return { section: canonicalSection(section), conductors: rows.flatMap((row) => row.conductors), undersidePlanar: surroundings.undersidePlanar };
 }
 
 interface Surroundings {
@@ -98,6 +99,7 @@ interface Surroundings {
   readonly film: SectionFilm | null;
   /** Height in the board that the section counts from. */
   readonly zero: number;
+  readonly undersidePlanar: boolean;
 }
 
 interface Bounds {
@@ -112,7 +114,9 @@ function layersBetween(board: Laminate, used: ReadonlySet<StackupRow>, bounds: B
   const bodies: Mutable<SectionLayer>[] = [];
   let zero = heightBelow(board, bounds.to - 1);
   const above = bounds.planeAbove ? null : faceOf(board, used, 'above');
-  const below = bounds.planeBelow ? null : faceOf(board, used, 'below');
+  const filmed = bounds.planeBelow ? null : faceOf(board, used, 'below');
+  const undersidePlanar = above?.film != null && filmed?.film != null;
+  const below = undersidePlanar ? faceOf({ ...board, maskBelow: board.maskBelow === null ? null : { ...board.maskBelow, flat: true } }, used, 'below') : filmed;
   if (below !== null) {
     bodies.push({ permittivity: 1, thickness: metres(Infinity) });
     if (below.outer) zero += board.rows[board.rows.length - 1].thickness.value;
@@ -128,7 +132,7 @@ function layersBetween(board: Laminate, used: ReadonlySet<StackupRow>, bounds: B
   if (above?.layer != null) bodies.push(above.layer);
   if (above !== null) bodies.push({ permittivity: 1, thickness: metres(Infinity) });
   const film = above?.film ?? below?.film ?? null;
-  return merged(bodies, { film, zero, planeBelow: bounds.planeBelow });
+  return { ...merged(bodies, { film, zero }), undersidePlanar };
 }
 
 interface Face {
@@ -157,7 +161,7 @@ function faceOf(board: Laminate, used: ReadonlySet<StackupRow>, side: 'above' | 
 type Mutable<T> = { -readonly [K in keyof T]: T[K] };
 
 /** Neighbours of one permittivity become one layer, so that a trace touches a boundary only where there is one. */
-function merged(bodies: readonly SectionLayer[], at: { film: SectionFilm | null; zero: number; planeBelow: boolean }): Surroundings {
+function merged(bodies: readonly SectionLayer[], at: Omit<Surroundings, 'layers' | 'undersidePlanar'>): Omit<Surroundings, 'undersidePlanar'> {
   const layers: Mutable<SectionLayer>[] = [];
   let { zero } = at;
   bodies.forEach((body, index) => {
