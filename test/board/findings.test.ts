@@ -182,6 +182,14 @@ describe('bad-value', () => {
     check(net('repeats 1 MHz duty 100 %'), 'bad-value [100 %]: duty of net A cannot be 100 %: it has to be below 100 %');
   });
 
+  it('of nets that are shorter than their runs', () => {
+    const text = (length: string, after = '') => `${layers}net A { length ${length} }\nrun r on TOP for 20 mm { trace A 0.2 mm${after} }\n`;
+    check(text('20 mm'));
+    check(text('60 mm', ' after 40 mm'));
+    check(text('19 mm'), 'bad-value [A]: A is shorter in all than its way to the end of run r');
+    check(text('60 mm', ' after 41 mm'), 'bad-value [A]: A is shorter in all than its way to the end of run r');
+  });
+
   it('of runs over two boards', () => {
     const flex = 'stackup flex { copper F1 18 um; dielectric 50 um er 3.2; plane FG 18 um }\n';
     check(`${flex}${run(`on TOP { ${rows} }\non F1 { trace B 0.2 mm }`, 'run r for 20 mm')}`, 'bad-value [F1]: run r lies in the unnamed stackup; this is a layer of stackup flex');

@@ -28,68 +28,75 @@ interface Edge {
 }
 
 export function closureOf(root: string, sources: Sources): Closure {
-  const files: ProjectFile[] = [];
-  const includes: Include[] = [];
-  const errors: BoardError[] = [];
-  const unread: Place[] = [];
-  const edges = new Map<string, Edge[]>();
-  const answers = new Map<string, SourceProblem | 'read'>();
-
-  const refuse = (place: Place, message: string, correction?: string) => {
-    const corrections = correction === undefined ? [] : [{ title: `Change to ${quoted(correction)}`, place, newText: quoted(correction) }];
-    errors.push({ rule: 'include', place, message, related: [], corrections });
-  };
-  const read = (path: string): SourceProblem | 'read' => {
-    const known = answers.get(path);
-    if (known !== undefined) return known;
-    const answer = sources.read(path);
-    const outcome = 'problem' in answer ? answer : 'read';
-    answers.set(path, outcome);
-    if ('tree' in answer) files.push({ path, tree: answer.tree });
-    return outcome;
-  };
-
-  const first = read(root);
-  if (first !== 'read') {
-    const place = { path: root, span: { start: 0, end: 0 } };
-    unread.push(place);
-    if (first.problem !== 'unread') refuse(place, problemText(root, first));
-  }
+  const growing: Growing = { root, sources, files: [], includes: [], errors: [], unread: [], edges: new Map(), answers: new Map() };
+  const first = read(growing, root);
+  if (first !== 'read') lack(growing, { path: root, span: { start: 0, end: 0 } }, root, first);
   let depth = 0;
-  for (let begin = 0, end = files.length; begin < end; begin = end, end = files.length, depth += 1) {
-    for (const file of files.slice(begin, end)) {
-      const outgoing: Edge[] = [];
-      edges.set(file.path, outgoing);
-      for (const use of usesOf(file.tree)) {
-        const place = { path: file.path, span: use.span };
-        const joined = usePath(file.path, use.text);
-        const target = 'path' in joined ? joined.path : null;
-        includes.push({ place, path: target });
-        if ('problem' in joined) {
-          unread.push(place);
-          refuse(place, joinText(use.text, joined.problem), joined.problem === 'backslash' ? use.text.replaceAll('\\', '/') : undefined);
-          continue;
-        }
-        const isNew = !answers.has(joined.path);
-        if (isNew && (sourceLimits.depth <= depth || sourceLimits.files <= files.length)) {
-          unread.push(place);
-          refuse(place, depth < sourceLimits.depth ? `a project has at most ${sourceLimits.files} files; ${quoted(use.text)} is one more` : `${quoted(use.text)} is more than ${sourceLimits.depth} files away from ${lastPart(root)}`);
-          continue;
-        }
-        const outcome = read(joined.path);
-        if (outcome === 'read') {
-          outgoing.push({ place, to: joined.path });
-          continue;
-        }
-        unread.push(place);
-        if (outcome.problem === 'unread') continue;
-        const actual = outcome.actual === undefined ? undefined : respelt(use.text, outcome.actual);
-        refuse(place, problemText(use.text, { problem: outcome.problem, ...(actual === undefined ? {} : { actual }) }), actual);
-      }
+  for (let begin = 0, end = growing.files.length; begin < end; begin = end, end = growing.files.length, depth += 1) {
+    for (const file of growing.files.slice(begin, end)) {
+      const outgoing = usesOf(file.tree).flatMap((use) => followUse(growing, file, use, depth) ?? []);
+      growing.edges.set(file.path, outgoing);
     }
   }
-  errors.push(...cycles(root, edges));
-  return { files, includes, errors, unread };
+  const { files, includes, errors, unread, edges } = growing;
+  return { files, includes, errors: [...errors, ...cycles(root, edges)], unread };
+}
+
+/** A closure while it is being read. */
+interface Growing {
+  readonly root: string;
+  readonly sources: Sources;
+  readonly files: ProjectFile[];
+  readonly includes: Include[];
+  readonly errors: BoardError[];
+  readonly unread: Place[];
+  readonly edges: Map<string, readonly Edge[]>;
+  readonly answers: Map<string, SourceProblem | 'read'>;
+}
+
+/** Reads the file that a `use` names, unless that has been done; null, and said, where it cannot be had. */
+function followUse(growing: Growing, file: ProjectFile, use: StringValue, depth: number): Edge | null {
+  const { root, files, includes, unread, answers } = growing;
+  const place = { path: file.path, span: use.span };
+  const joined = usePath(file.path, use.text);
+  includes.push({ place, path: 'path' in joined ? joined.path : null });
+  if ('problem' in joined) {
+    unread.push(place);
+    refuse(growing, place, joinText(use.text, joined.problem), joined.problem === 'backslash' ? use.text.replaceAll('\\', '/') : undefined);
+    return null;
+  }
+  if (!answers.has(joined.path) && (sourceLimits.depth <= depth || sourceLimits.files <= files.length)) {
+    unread.push(place);
+    refuse(growing, place, depth < sourceLimits.depth ? `a project has at most ${sourceLimits.files} files; ${quoted(use.text)} is one more` : `${quoted(use.text)} is more than ${sourceLimits.depth} files away from ${lastPart(root)}`);
+    return null;
+  }
+  const outcome = read(growing, joined.path);
+  if (outcome === 'read') return { place, to: joined.path };
+  lack(growing, place, use.text, outcome);
+  return null;
+}
+
+function read({ sources, files, answers }: Growing, path: string): SourceProblem | 'read' {
+  const known = answers.get(path);
+  if (known !== undefined) return known;
+  const answer = sources.read(path);
+  const outcome = 'problem' in answer ? answer : 'read';
+  answers.set(path, outcome);
+  if ('tree' in answer) files.push({ path, tree: answer.tree });
+  return outcome;
+}
+
+function lack(growing: Growing, place: Place, written: string, { problem, actual }: SourceProblem): void {
+  growing.unread.push(place);
+  // What has been asked for and has not arrived is nobody's mistake.
+  if (problem === 'unread') return;
+  const right = actual === undefined ? undefined : respelt(written, actual);
+  refuse(growing, place, problemText(written, { problem, ...(right === undefined ? {} : { actual: right }) }), right);
+}
+
+function refuse({ errors }: Growing, place: Place, message: string, correction?: string): void {
+  const corrections = correction === undefined ? [] : [{ title: `Change to ${quoted(correction)}`, place, newText: quoted(correction) }];
+  errors.push({ rule: 'include', place, message, related: [], corrections });
 }
 
 export function usesOf(tree: SourceTree): readonly StringValue[] {

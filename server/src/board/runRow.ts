@@ -53,8 +53,9 @@ function isAlternating(scope: Scope, block: Block, parts: readonly Statement[]):
   }
   const isSilent = 0 < strayIn(scope.unreadable, block).length;
   for (const { before, message } of faults) {
+    if (isSilent) break;
     gap(scope, valuesSpan(before), `the order of the row in ${scope.owner.called}`);
-    if (!isSilent) report(scope, 'missing-value', valuesSpan(before), message);
+    report(scope, 'missing-value', valuesSpan(before), message);
   }
   return faults.length === 0 && !isSilent;
 }
@@ -83,10 +84,7 @@ function traces(scope: Scope, statement: Statement, nets: ReadonlyMap<string, Ne
   }
   const resolved = names?.map((name) => nets.get(name));
   const isWhole = (spaced !== null || !isRange) && (after !== null || quantityIn(statement, 'after') === null);
-  if (value === null || width === null || !isWhole || resolved === undefined || resolved.includes(undefined)) {
-    gap(scope, statement.span, `trace ${title} in ${scope.owner.called}`);
-    return null;
-  }
+  if (value === null || width === null || !isWhole || resolved === undefined || resolved.includes(undefined)) return null;
   const reversed = statement.values.some((word) => word.role === 'reversed');
   const places = { place: placeIn(scope, value.span), whole: placeIn(scope, statement.span) };
   const conductors = resolved.map((net) => ({ kind: 'trace' as const, net: net!, width, reversed, after, ...places }));

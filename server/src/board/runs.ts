@@ -50,6 +50,7 @@ function resolveRun(declaration: Declaration, context: RunContext): Run | null {
     gap(scope, nameValue.span, `the stackup around ${scope.owner.called}`);
     return null;
   }
+  checkLengths(scope, contents, length.value);
   const filled = contents.filter(({ conductors }) => 0 < conductors.length);
   return filled.length === 0 ? null : { ...declared(declaration, nameValue.name), length, stackup: board.stackup, rows: filled, without: cutAway };
 }
@@ -104,6 +105,19 @@ function resolveRow(scope: Scope, { layer, block, statements }: WrittenRow, { la
   const copper = layer === null ? null : copperNamed(scope, layer, layers);
   const content = rowOfRun(scope, { block, statements, nets, isFirst, layer: copper?.row ?? null });
   return copper && { ...copper, content };
+}
+
+/** A net cannot be shorter than the part of it that lies in a run. */
+function checkLengths(scope: Scope, rows: readonly RunRow[], length: number): void {
+  for (const conductor of rows.flatMap(({ conductors }) => conductors)) {
+    if (conductor.kind !== 'trace' || conductor.net.length === null) continue;
+    const { net, after, place } = conductor;
+    const whole = net.length!;
+    // Lengths that are equal as written may differ in the last digit.
+    if ((after?.value ?? 0) + length <= whole.value * (1 + 1e-9)) continue;
+    report(scope, 'bad-value', place.span, `${shown(net.name)} is shorter in all than its way to the end of ${scope.owner.called}`, { related: [{ place: whole.place, message: `the length of ${shown(net.name)}` }] });
+    gap(scope, place.span, `the length of ${shown(net.name)} in ${scope.owner.called}`);
+  }
 }
 
 function planesCutAway(scope: Scope, block: Block | null, layers: Layers): readonly Located<PlaneRow>[] {
