@@ -1,5 +1,4 @@
-import { readFileSync, readdirSync, statSync } from 'node:fs';
-import { existsSync } from 'node:fs';
+import { existsSync, readFileSync, readdirSync, statSync } from 'node:fs';
 
 export interface SourceFile {
   readonly file: string;
@@ -11,11 +10,11 @@ export function sourceFiles(folder: string, endings: readonly string[] = ['.ts']
   if (!existsSync(folder)) return [];
   return readdirSync(folder).flatMap((entry) => {
     const file = `${folder}/${entry}`;
-    if (passedOver.has(entry)) return [];
+    if (passedOver.has(entry) || entry.startsWith('.')) return [];
     if (statSync(file).isDirectory()) return sourceFiles(file, endings);
     return endings.some((ending) => file.endsWith(ending)) ? [{ file, text: readFileSync(file, 'utf8') }] : [];
   });
 }
 
-/** Not ours, or made. */
-const passedOver: ReadonlySet<string> = new Set(['node_modules', 'dist', '.git', '.test-build', '.tools', '.cache', '.vscode-test', 'package-lock.json']);
+/** Not ours, or made; so is whatever begins with a dot. */
+const passedOver: ReadonlySet<string> = new Set(['node_modules', 'dist', 'package-lock.json']);
