@@ -18,7 +18,7 @@ import { luInOrder, solveUnitLower, solveUpperTransposed } from '../../../numeri
 import { polynomialLimit, writePolynomials } from '../basis/orthonormalJacobi';
 import type { Side } from '../basis/side';
 import type { ChargedConductor } from '../basis/chargedConductor';
-import type { ChargeSolution } from '../galerkin/chargeSolution';
+import { leftOut, type ChargeSolution } from '../galerkin/chargeSolution';
 import { ownBlock } from '../galerkin/ownBlock';
 import { writeSideBlock } from '../galerkin/sideBlock';
 import type { Kernel } from '../kernel/layeredKernel';
@@ -80,10 +80,10 @@ interface Layout {
   readonly rest: Int32Array;
 }
 
-/** The coarser system lacks the highest polynomial of every side and panel, and the outermost panels: both must matter little. */
+/** The coarser system lacks the highest polynomials of every side, one of every panel, and the outermost panels: all must matter little. */
 function layOut(sides: readonly Side[], panels: readonly Side[]): Layout {
   const all = [...sides, ...panels];
-  const kept = Int32Array.from(all, ({ order }, s) => (s === sides.length || s === all.length - 1 && sides.length < s ? 0 : order - 1));
+  const kept = Int32Array.from(all, ({ order }, s) => (s < sides.length ? order - leftOut(order) : s === sides.length || s === all.length - 1 ? 0 : order - 1));
   const start = new Int32Array(all.length);
   const rest = new Int32Array(all.length);
   let at = 0;

@@ -28,16 +28,18 @@ export function filmOutline(conductors: readonly FilmedConductor[], laminate: nu
   const boxes = conductors.map(({ left, right, top }) => ({ left: left - thickness, right: right + thickness, roof: top + thickness }));
   const corners: OutlinePoint[] = [];
   let height = flat;
-  for (const { from, roof } of steps(boxes, flat, negligible * thickness)) {
-    if (Math.abs(roof - height) <= negligible * thickness) continue;
+  for (const { from, roof } of steps(boxes, flat, closedSlot * thickness)) {
+    if (Math.abs(roof - height) <= negligibleStep * thickness) continue;
     corners.push({ x: from, y: height }, { x: from, y: roof });
     height = roof;
   }
   return corners;
 }
 
-/** Of the film's thickness: slots and steps below this are closed, since no film has them and no solver resolves them. */
-const negligible = 1e-3;
+/** Of the film's thickness: no film leaves such a slot, and the charge on its walls is the hardest to resolve. */
+const closedSlot = 0.02;
+/** Of the film's thickness: lower steps are none. */
+export const negligibleStep = 1e-3;
 
 interface Box { readonly left: number; readonly right: number; readonly roof: number }
 

@@ -16,8 +16,11 @@ export interface PanelSetting {
   readonly firstOverNearest: number;
   /** End of a panel over its start, both as distances from the corner. */
   readonly ratio: number;
-  /** No panel between two corners is longer. */
+  /** No panel between two corners is longer; and none on a roof over several conductors, whose edges lie beneath it. */
   readonly longest: number;
+  readonly longestOverEdges: number;
+  /** Where conductors begin and end. */
+  readonly edges: readonly number[];
   /** How far flat film is followed beyond the outermost corners. */
   readonly reach: number;
   /** Polynomials on a panel at a corner, and on one between others. */
@@ -41,7 +44,10 @@ export function outlinePanels(corners: readonly OutlinePoint[], setting: PanelSe
   for (let i = 1; i < corners.length; i += 1) {
     const { x, y } = corners[i - 1];
     const length = Math.abs(corners[i].x - x) + Math.abs(corners[i].y - y);
-    addCut(corners[i - 1], corners[i], betweenCorners(length, first[i - 1], first[i], setting), { start: true, end: true });
+    // The edges of the outermost conductors under a roof lie at its corners, where panels are short anyway.
+    const beneath = setting.edges.filter((edge) => x < edge && edge < corners[i].x).length;
+    const longest = 2 < beneath ? setting.longestOverEdges : setting.longest;
+    addCut(corners[i - 1], corners[i], betweenCorners(length, [first[i - 1], first[i]], setting.ratio, longest), { start: true, end: true });
   }
   addCut(right, { x: right.x + setting.reach, y: right.y }, outwards(first[corners.length - 1], setting), { start: true, end: false });
   return panels;
@@ -72,7 +78,7 @@ function nearestOther({ x, y }: OutlinePoint, corners: readonly OutlinePoint[]):
 }
 
 /** Sizes from one corner to the next, graded from both. */
-function betweenCorners(length: number, firstLeft: number, firstRight: number, { ratio, longest }: PanelSetting): number[] {
+function betweenCorners(length: number, [firstLeft, firstRight]: readonly [number, number], ratio: number, longest: number): number[] {
   const left: number[] = [];
   const right: number[] = [];
   let [fromLeft, fromRight] = [0, 0];
