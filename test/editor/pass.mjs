@@ -14,7 +14,7 @@ const longest = 180_000;
 
 const settings = {
   'workbench.startupEditor': 'none', 'workbench.tips.enabled': false, 'workbench.reduceMotion': 'on', 'workbench.colorTheme': 'Light Modern',
-  'editor.minimap.enabled': false, 'editor.accessibilitySupport': 'off', 'chat.disableAIFeatures': true, 'files.hotExit': 'off', 'files.autoSave': 'off', 'extensions.autoUpdate': false,
+  'workbench.secondarySideBar.defaultVisibility': 'hidden', 'editor.minimap.enabled': false, 'editor.accessibilitySupport': 'off', 'chat.disableAIFeatures': true, 'files.hotExit': 'off', 'files.autoSave': 'off', 'extensions.autoUpdate': false,
   'telemetry.telemetryLevel': 'off', 'security.workspace.trust.enabled': false, 'files.simpleDialog.enable': true,
 };
 

@@ -7,11 +7,14 @@ import { rules } from '../rules/index';
 import { rulePage } from '../rules/rulePage';
 import { Session } from '../service/session';
 import { answerCodeActions } from './codeAction';
+import { answerCompletions } from './completion';
 import { answerDefinition } from './definition';
 import { answerPulls, pushFindings } from './diagnostics';
 import { Documents } from './documents';
 import { answerSymbols } from './documentSymbol';
 import { guarded } from './guard';
+import { answerHover } from './hover';
+import { answerInlayHints } from './inlayHint';
 import { explainMethod, type ClientOptions, type ExplainParams } from './messages';
 import { clientReader, type FileReader } from './reader';
 import { answerReferences } from './references';
@@ -63,7 +66,10 @@ export function startServer(connection: Connection, ownReader: FileReader): void
   });
 
   documents.listen(connection);
+  answerHover(server);
+  answerInlayHints(server);
   answerCodeActions(server);
+  answerCompletions(server);
   answerDefinition(server);
   answerReferences(server);
   answerSymbols(server);
@@ -78,6 +84,9 @@ function abilities(capabilities: ClientCapabilities): InitializeResult {
       positionEncoding: 'utf-16',
       textDocumentSync: { openClose: true, change: TextDocumentSyncKind.Incremental },
       ...(pulls(capabilities) ? { diagnosticProvider: { identifier: 'quietrun', interFileDependencies: true, workspaceDiagnostics: true } } : {}),
+      hoverProvider: true,
+      inlayHintProvider: true,
+      completionProvider: { resolveProvider: true },
       codeActionProvider: { codeActionKinds: [CodeActionKind.QuickFix] },
       definitionProvider: true,
       referencesProvider: true,

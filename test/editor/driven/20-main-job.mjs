@@ -7,8 +7,9 @@ const valve = 'valve/valve.quiet';
 export const scenes = [
   {
     title: 'open an example: what is over budget is underlined',
-    async run({ ui, shot }) {
+    async run({ ui, shot, at }) {
       await ui.open(board);
+      await ui.caret(...at(board, 'net HYDRO_A'));
       await ui.waitForSquiggles('error', 'some');
       const problems = await ui.problems();
       assert.ok(problems.some((text) => /of 2\.00 mV on HYDRO_A.*over-budget/.test(text)), problems.join('\n'));

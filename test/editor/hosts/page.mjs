@@ -35,10 +35,12 @@ export function actions(page, screenshots) {
       await page.mouse.move(5, 5);
     },
 
+    /** Clicks in the middle of what is seen of the editor; the element itself is as tall as the file. */
     async focusEditor() {
       await page.mouse.move(5, 5);
       await page.keyboard.press('Escape');
-      await page.locator(`${editor} .view-lines`).first().click({ position: { x: 600, y: 300 } });
+      const box = await page.locator(editor).first().boundingBox();
+      await page.mouse.click(box.x + box.width * 0.6, box.y + box.height * 0.6);
       await page.mouse.move(5, 5);
     },
 
@@ -104,9 +106,15 @@ export function actions(page, screenshots) {
       return (await rows.allTextContents()).map((text) => text.replace(/\s+/g, ' ').trim());
     },
 
+    /** By keyboard: the list takes no click in its first moments, lest one be meant for what it covers. */
     async choose(title) {
-      await page.locator('.action-widget .monaco-list-row.action').filter({ hasText: title }).first().click();
-      await page.locator('.action-widget').waitFor({ state: 'hidden' });
+      const titles = await page.locator('.action-widget .monaco-list-row.action').allTextContents();
+      const index = titles.findIndex((each) => each.replace(/\s+/g, ' ').includes(title));
+      if (index < 0) throw new Error(`no ${title} among ${titles.join(' | ')}`);
+      const focused = page.locator('.action-widget .monaco-list-row.action.focused').filter({ hasText: title });
+      for (let i = 0; i < titles.length && !(await focused.isVisible()); i += 1) await page.keyboard.press('ArrowDown');
+      await page.keyboard.press('Enter');
+      await page.locator('.action-widget .monaco-list-row.action').first().waitFor({ state: 'hidden' });
     },
 
     async suggestions() {
