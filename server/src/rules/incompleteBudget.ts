@@ -2,7 +2,7 @@ import type { Place, Project } from '../board/model';
 import type { Budget, Evaluation, Unaccounted } from '../budget/results';
 import { placesInFiles, receiverInText, subjectOf, voltageInText } from './budgetFault';
 import { defineRule, type Fault } from './rule';
-import { hasUnreadablePart, isWithin } from './unreadableParts';
+import { hasUnreadablePart } from './unreadableParts';
 
 interface IncompleteBudget extends Fault {
   /** The receivers that lack the same, the first of which is the subject. */
@@ -31,11 +31,12 @@ run beside on TOP for 20 mm { trace A 0.15 mm; gap 0.5 mm; trace B 0.15 mm }
 
   *find(evaluation) {
     const { project } = evaluation;
+    const text = unreadableText(project);
     for (const budget of evaluation.budgets) {
-      const lacks = budget.unaccounted.filter(({ place }) => !isUnreadable(place, project) && !followsFromUnreadable(place, project));
+      const lacks = budget.unaccounted.filter(({ place }) => !text.isUnreadable(place) && !text.follows(place));
       if (0 < lacks.length) yield fault(project, [budget], lacks);
     }
-    for (const { budgets, lacks } of unreadable(evaluation)) yield fault(project, budgets, lacks);
+    for (const { budgets, lacks } of lackingText(evaluation, text)) yield fault(project, budgets, lacks);
   },
 
   message: ({ budgets: [first, ...others], lacks }) => {
@@ -64,38 +65,54 @@ function fault(project: Project, budgets: readonly [Budget, ...Budget[]], lacks:
   };
 }
 
+interface UnreadableText {
+  /** Something stands there that could not be read. */
+  isUnreadable(place: Place | null): boolean;
+  /** A trace of a net of which a part could not be read: that it `states no rise` is no second mistake. */
+  follows(place: Place | null): boolean;
+}
+
+function unreadableText(project: Project): UnreadableText {
+  const gaps = new Set(project.gaps.map(({ place }) => startOf(place)));
+  const broken = new Set<string>();
+  if (0 < gaps.size) {
+    const nets = new Set([...project.nets.values()].filter((net) => hasUnreadablePart(project, net)));
+    const conductors = project.runs.flatMap(({ rows }) => rows.flatMap((row) => row.conductors));
+    for (const conductor of conductors) if (conductor.kind === 'trace' && nets.has(conductor.net)) broken.add(startOf(conductor.whole));
+  }
+  return { isUnreadable: (place) => place !== null && gaps.has(startOf(place)), follows: (place) => place !== null && broken.has(startOf(place)) };
+}
+
+function startOf({ path, span }: Place): string {
+  return `${span.start} ${path}`;
+}
+
+interface Lacking {
+  readonly budgets: [Budget, ...Budget[]];
+  readonly lacks: Unaccounted[];
+}
+
 /**
  * One unreadable value can leave every budget of a board incomplete; it has a finding of its own, and
  * one more says whose budgets it takes with it, not one for each. What the same receivers lack is said
  * in one.
  */
-function unreadable({ project, budgets }: Evaluation): Iterable<{ budgets: readonly [Budget, ...Budget[]]; lacks: readonly Unaccounted[] }> {
-  const causes = new Map<string, { lack: Unaccounted; budgets: Budget[] }>();
+function lackingText({ budgets }: Evaluation, text: UnreadableText): Iterable<Lacking> {
+  const causes = new Map<string, { lack: Unaccounted; budgets: Map<object, Budget> }>();
   for (const budget of budgets) {
     for (const lack of budget.unaccounted) {
-      if (!isUnreadable(lack.place, project)) continue;
-      const cause = causes.get(lack.what) ?? { lack, budgets: [] };
+      if (!text.isUnreadable(lack.place)) continue;
+      const cause = causes.get(lack.what) ?? { lack, budgets: new Map<object, Budget>() };
       causes.set(lack.what, cause);
-      if (!cause.budgets.some(({ subject }) => subject === budget.subject)) cause.budgets.push(budget);
+      if (!cause.budgets.has(budget.subject)) cause.budgets.set(budget.subject, budget);
     }
   }
-  const sets = new Map<string, { budgets: [Budget, ...Budget[]]; lacks: Unaccounted[] }>();
+  const sets = new Map<string, Lacking>();
   for (const { lack, budgets: taken } of causes.values()) {
-    const key = JSON.stringify(taken.map(({ subject }) => [subject.kind, subject.name]));
+    const key = JSON.stringify([...taken.values()].map(({ subject }) => [subject.kind, subject.name]));
     const known = sets.get(key);
-    if (known === undefined) sets.set(key, { budgets: taken as [Budget, ...Budget[]], lacks: [lack] });
+    if (known === undefined) sets.set(key, { budgets: [...taken.values()] as [Budget, ...Budget[]], lacks: [lack] });
     else known.lacks.push(lack);
   }
   return sets.values();
-}
-
-function isUnreadable(place: Place | null, { gaps }: Project): boolean {
-  return place !== null && gaps.some((gap) => gap.place.path === place.path && gap.place.span.start === place.span.start);
-}
-
-/** `it states no rise`, where the `rise` is what could not be read. */
-function followsFromUnreadable(place: Place | null, project: Project): boolean {
-  if (place === null || project.gaps.length === 0) return false;
-  const conductors = project.runs.flatMap(({ rows }) => rows.flatMap((row) => row.conductors));
-  return conductors.some((conductor) => conductor.kind === 'trace' && isWithin(conductor.whole, place) && hasUnreadablePart(project, conductor.net));
 }

@@ -3,7 +3,7 @@
  *
  * Source  IEC 61010-1, from memory; other standards and wet conditions have lower or different ones.
  */
-import type { Net, Project, Signal } from '../board/model';
+import type { Net, Pair, Project, Signal } from '../board/model';
 import { inText } from '../units/inText';
 
 const limits = { rms: 30, peak: 42.4, dc: 60 } as const;
@@ -33,9 +33,22 @@ export function hazardInText({ value, measure }: HazardousVoltage): string {
   return `${inText(value, 'voltage')} ${measure}`;
 }
 
+/** The net and the pairs that it is part of: what a pair states holds for both of its nets. */
 export function signalsOf(net: Net, project: Project): readonly Signal[] {
-  const pairs = [...project.pairs.values()].filter(({ plus, minus }) => plus?.name === net.name || minus?.name === net.name);
-  return [net, ...pairs];
+  return [net, ...(pairsIn(project).get(net.name) ?? [])];
+}
+
+const pairsByNet = new WeakMap<Project, ReadonlyMap<string, readonly Pair[]>>();
+
+function pairsIn(project: Project): ReadonlyMap<string, readonly Pair[]> {
+  const known = pairsByNet.get(project);
+  if (known !== undefined) return known;
+  const index = new Map<string, Pair[]>();
+  for (const pair of project.pairs.values()) {
+    for (const net of [pair.plus, pair.minus]) if (net !== null) index.set(net.name, [...(index.get(net.name) ?? []), pair]);
+  }
+  pairsByNet.set(project, index);
+  return index;
 }
 
 function voltagesOf({ working, sine, swing }: Signal): Omit<HazardousVoltage, 'limit'>[] {

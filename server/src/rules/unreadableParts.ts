@@ -15,6 +15,6 @@ export function hasUnreadablePart({ gaps, families }: Project, net: Net): boolea
   return gaps.some(({ place }) => declared.some((whole) => isWithin(place, whole)));
 }
 
-export function isWithin(part: Place, whole: Place): boolean {
+function isWithin(part: Place, whole: Place): boolean {
   return part.path === whole.path && whole.span.start <= part.span.start && part.span.end <= whole.span.end;
 }

@@ -2,7 +2,7 @@ import type { Waiver } from '../board/model';
 import type { Budget, Evaluation } from '../budget/results';
 import { defineRule, type Fault } from './rule';
 import { isChecked, isRuleName, isWaivable } from './ruleNames';
-import { waiverOf } from './waivers';
+import { keyOf, waivedBy, waiverOf } from './waivers';
 
 export interface UnusedWaiver extends Fault {
   readonly waiver: Waiver;
@@ -34,7 +34,8 @@ waive dominant-coupling on beside because "B is read 10 us after A has settled"
   *find(evaluation, found) {
     const { waivers } = evaluation.project;
     const used = new Set(found.map((finding) => waiverOf(finding, waivers)));
-    const matched = (waiver: Waiver) => found.some((finding) => waiverOf(finding, [waiver]) !== null);
+    const hidden = new Set(found.flatMap(({ rule, subject }) => (subject === null ? [] : [keyOf(rule, subject.name)])));
+    const matched = (waiver: Waiver) => waivedBy(waiver).some((key) => hidden.has(key));
     for (const waiver of waivers) {
       if (used.has(waiver) || !isRuleName(waiver.rule)) continue;
       const because = matched(waiver) ? 'hidden-already' : isWaivable(waiver.rule) ? 'nothing' : 'not-waivable';

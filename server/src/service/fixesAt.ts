@@ -7,7 +7,7 @@ import type { Session } from './session';
 export function fixesAt(session: Session, path: string, span: Span): readonly Fix[] {
   const found = new Map<string, Fix>();
   for (const root of session.projectsOf(path)) {
-    const touched = session.analyse(root).findings.filter(({ at }) => at.path === path && at.span.start <= span.end && span.start <= at.span.end);
+    const touched = session.analyse(root).findings.filter(({ at }) => at.path === path && at.span.start <= span.end && span.start <= at.span.end).slice(0, mostFindings);
     const context = touched.length === 0 ? null : session.fixContext(root);
     for (const finding of touched) {
       for (const fix of fixesFor(finding, context!)) {
@@ -20,6 +20,9 @@ export function fixesAt(session: Session, path: string, span: Span): readonly Fi
   }
   return withOnePreferred([...found.values()]);
 }
+
+/** Each is solved for: with all of a file selected, a menu of what begins it is better than a minute's wait. */
+const mostFindings = 12;
 
 /** The first of several: an editor applies the preferred one without asking. */
 function withOnePreferred(fixes: readonly Fix[]): readonly Fix[] {
