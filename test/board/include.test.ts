@@ -51,6 +51,8 @@ describe('use', () => {
   it('mends the case of a path', () => {
     const { errors } = resolved('use "Common.quiet"\n', { 'Common.quiet': { problem: 'case', actual: 'common.quiet' } });
     assert.deepEqual(errors[0].corrections.map(({ newText }) => newText), ['"common.quiet"']);
+    const elsewhere = resolved('use "Parts/Common.quiet"\n', { 'Parts/Common.quiet': { problem: 'case', actual: '/home/x/parts/common.quiet' } });
+    assert.deepEqual(elsewhere.errors[0].corrections.map(({ newText }) => newText), ['"parts/common.quiet"']);
   });
 
   it('waits in silence for a file that has not been read yet', () => {

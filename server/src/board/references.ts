@@ -1,5 +1,5 @@
 /** Names where they refer to something: found, recorded as used, or reported with the name that was probably meant. */
-import { quoted } from '../syntax/mistakes';
+import { plainly, quoted } from '../syntax/mistakes';
 import type { NameValue } from '../syntax/tree';
 import { writtenName } from '../syntax/writtenName';
 import type { NameRecord, NameSet } from './model';
@@ -65,7 +65,8 @@ export function reportUnknown(scope: Scope, value: NameValue, { name, inWords, m
 
 /** A name in a message: as it stands, but short and without what could disturb a terminal. */
 export function shown(name: string): string {
-  return quoted(name).slice(1, -1);
+  // The usual name is shown as it stands, and this is asked for every value of a board.
+  return /^[\w.+\-/#]{1,40}$/.test(name) ? name : plainly(name);
 }
 
 const kindInWords: Partial<Record<NameRecord['kind'], string>> = { copper: 'copper layer' };
