@@ -36,7 +36,8 @@ run beside on TOP for 20 mm { trace A 0.15 mm; gap 0.5 mm; trace B 0.15 mm }
       const lacks = budget.unaccounted.filter(({ place }) => !text.isUnreadable(place) && !text.follows(place));
       if (0 < lacks.length) yield fault(project, [budget], lacks);
     }
-    for (const { budgets, lacks } of lackingText(evaluation, text)) yield fault(project, budgets, lacks);
+    const lacking = lackingText(evaluation, text);
+    if (lacking !== null) yield fault(project, lacking.budgets, lacking.lacks);
   },
 
   message: ({ budgets: [first, ...others], lacks }) => {
@@ -88,31 +89,22 @@ function startOf({ path, span }: Place): string {
 }
 
 interface Lacking {
-  readonly budgets: [Budget, ...Budget[]];
-  readonly lacks: Unaccounted[];
+  readonly budgets: readonly [Budget, ...Budget[]];
+  readonly lacks: readonly Unaccounted[];
 }
 
 /**
- * One unreadable value can leave every budget of a board incomplete; it has a finding of its own, and
- * one more says whose budgets it takes with it, not one for each. What the same receivers lack is said
- * in one.
+ * One unreadable word can leave every budget of a board incomplete, and by several ways at once. What
+ * cannot be read has its own finding where it stands; one more says which budgets that takes with it.
  */
-function lackingText({ budgets }: Evaluation, text: UnreadableText): Iterable<Lacking> {
-  const causes = new Map<string, { lack: Unaccounted; budgets: Map<object, Budget> }>();
+function lackingText({ budgets }: Evaluation, text: UnreadableText): Lacking | null {
+  const lacks = new Map<string, Unaccounted>();
+  const taken = new Map<object, Budget>();
   for (const budget of budgets) {
-    for (const lack of budget.unaccounted) {
-      if (!text.isUnreadable(lack.place)) continue;
-      const cause = causes.get(lack.what) ?? { lack, budgets: new Map<object, Budget>() };
-      causes.set(lack.what, cause);
-      if (!cause.budgets.has(budget.subject)) cause.budgets.set(budget.subject, budget);
-    }
+    const unread = budget.unaccounted.filter(({ place }) => text.isUnreadable(place));
+    for (const lack of unread) lacks.set(lack.what, lack);
+    if (0 < unread.length && !taken.has(budget.subject)) taken.set(budget.subject, budget);
   }
-  const sets = new Map<string, Lacking>();
-  for (const { lack, budgets: taken } of causes.values()) {
-    const key = JSON.stringify([...taken.values()].map(({ subject }) => [subject.kind, subject.name]));
-    const known = sets.get(key);
-    if (known === undefined) sets.set(key, { budgets: [...taken.values()] as [Budget, ...Budget[]], lacks: [lack] });
-    else known.lacks.push(lack);
-  }
-  return sets.values();
+  const [first, ...others] = taken.values();
+  return first === undefined ? null : { budgets: [first, ...others], lacks: [...lacks.values()] };
 }

@@ -30,8 +30,7 @@ run beside on TOP for 20 mm { trace A 0.15 mm; gap 0.5 mm; trace B 0.15 mm }
   },
 
   *find({ project }) {
-    // A file that has not been read may use anything.
-    if (project.includes.some(({ path }) => path === null || !project.files.includes(path))) return;
+    if (mayBeUsedUnread(project)) return;
     yield* unusedOf(project, 'net', 'signal', [...project.nets.values()]);
     yield* unusedOf(project, 'family', 'family', [...project.families.values()].filter(({ builtIn }) => !builtIn));
   },
@@ -42,6 +41,14 @@ run beside on TOP for 20 mm { trace A 0.15 mm; gap 0.5 mm; trace B 0.15 mm }
     return others.length === 0 ? `${first} lies in no run and nothing else refers to it` : `${first} and ${others.length} more lie in no run and nothing else refers to them`;
   },
 });
+
+/** A file that has not been read may use anything; a word that is missing or misspelt may be any name. */
+function mayBeUsedUnread({ includes, files, errors }: Project): boolean {
+  const read = new Set(files);
+  return includes.some(({ path }) => path === null || !read.has(path)) || errors.some(({ rule }) => couldBeName.has(rule));
+}
+
+const couldBeName: ReadonlySet<string> = new Set(['syntax', 'missing-value', 'unknown-name', 'include']);
 
 function* unusedOf(project: Project, kind: 'net' | 'family', set: NameSet, declared: readonly Declared[]): Iterable<UnusedDeclaration> {
   const records = project.names.get(set);
