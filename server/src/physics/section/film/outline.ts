@@ -4,8 +4,9 @@
  *          ._________.                     Geometry  flat at `thickness` over the laminate; over each conductor a box
  *          |  .---.  |      ._____                   whose roof is `thickness` above the conductor's top and whose
  *   _______|  |   |  |______|                        sides are vertical, `thickness` from its wider face (also where
- *   ----------'---'------------- laminate            the copper is undercut); square corners. Boxes that meet or
- *                                                    overlap are one: the film fills the gap up to the roof
+ *   ----------'---'------------- laminate            the copper is undercut); square corners. Boxes that meet, overlap, or leave
+ *                                                    less than a fiftieth of the film's thickness of air between
+ *                                                    them are one: the film fills the gap up to the roof
  *
  * Real film has rounded, thinner shoulders; this is the usual idealisation, and that of the reference cases.
  */

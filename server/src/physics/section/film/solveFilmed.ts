@@ -41,7 +41,7 @@ export function solveFilmed(section: Section, { bare, effort, mostEffort }: Film
   for (let level = effort; level <= Math.max(effort, mostEffort); level += 1) {
     const solution = filmedCharge(upright, signals, level);
     if (solution === null) continue;
-    const attempt = { ...inAir.solved, ...withBars(solution), unknowns: Math.max(inAir.solved.unknowns, solution.unknowns) };
+    const attempt = { ...inAir.solved, ...withBars(solution, (i, j) => screened(section, signals[i], signals[j])), unknowns: Math.max(inAir.solved.unknowns, solution.unknowns) };
     if (best === null || excess(attempt) < excess(best)) best = attempt;
     if (excess(best) <= 1) break;
   }
@@ -57,7 +57,14 @@ function excess({ order, capacitance, capacitanceError }: SectionMatrices): numb
   }, 0);
 }
 
-function withBars({ fine, coarse, order, unseen }: FilmedSolution): { capacitance: Float64Array; capacitanceError: Float64Array } {
+/** Whether another conductor stands between two. */
+function screened({ conductors }: Section, first: number, second: number): boolean {
+  const centre = (index: number) => conductors[index].x + conductors[index].width / 2;
+  const [low, high] = [Math.min(centre(first), centre(second)), Math.max(centre(first), centre(second))];
+  return conductors.some((_, index) => low < centre(index) && centre(index) < high);
+}
+
+function withBars({ fine, coarse, order, unseen }: FilmedSolution, isScreened: (i: number, j: number) => boolean): { capacitance: Float64Array; capacitanceError: Float64Array } {
   const capacitance = new Float64Array(order * order);
   const capacitanceError = new Float64Array(order * order);
   for (let i = 0; i < order; i += 1) {
@@ -65,7 +72,8 @@ function withBars({ fine, coarse, order, unseen }: FilmedSolution): { capacitanc
       const [at, mirrored] = [i * order + j, j * order + i];
       const value = (fine[at] + fine[mirrored]) / 2;
       const scale = Math.sqrt(Math.abs(fine[i * order + i] * fine[j * order + j]));
-      const bar = Math.abs(value - (coarse[at] + coarse[mirrored]) / 2) + Math.abs(fine[at] - fine[mirrored]) / 2 + Math.max(unseen, leastFloor) * Math.abs(value) + absoluteFloor * scale;
+      const missed = isScreened(i, j) ? screenedFactor * unseen : unseen;
+      const bar = Math.abs(value - (coarse[at] + coarse[mirrored]) / 2) + Math.abs(fine[at] - fine[mirrored]) / 2 + Math.max(missed, leastFloor) * Math.abs(value) + absoluteFloor * scale;
       capacitance[at] = value * 2 * Math.PI * epsilon0;
       capacitanceError[at] = value === 0 ? 1 : bar / Math.abs(value);
     }
@@ -74,5 +82,7 @@ function withBars({ fine, coarse, order, unseen }: FilmedSolution): { capacitanc
 }
 
 const leastFloor = 1e-5;
+/** What a conductor in between lets through is the small rest of what it takes, with the latter's error: measured. */
+const screenedFactor = 8;
 /** Of the self entries: what the kernel's own error may do to a vanishing mutual. */
 const absoluteFloor = 1e-8;
