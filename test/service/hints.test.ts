@@ -77,9 +77,9 @@ describe('inlay hints', () => {
     assert.match(said, /trace D\[0\.\.3\] 0\.2 mm spaced 0\.2 mm(«≥ [\d.]+ mm»)?«≈/);
   });
 
-  it('say that no gap and no length does', () => {
+  it('say that no gap and no length is enough', () => {
     const said = shown(board.replace('tolerates 10 mV', 'tolerates 1 nV') + run);
-    assert.match(said, /10 mm«no length does»[^]*0\.2 mm«no gap does»/);
+    assert.match(said, /10 mm«no length is enough»[^]*0\.2 mm«no gap is enough»/);
   });
 
   it('say alike of two boards once, and of a used file what each board makes of it', () => {

@@ -17,7 +17,7 @@ export function couplingAssumptions({ run, part, roles, windowed }: PartContext,
   const knee = () => inText(kneeFrequency(found.edge.rise), 'frequency');
   if (found.guards === 'balance') said.push(`the knee at ${knee()} is below where guards and returns carry their balancing current: computed as if they did, which gave the larger noise`);
   if (found.guards === 'idle') said.push(`the knee at ${knee()} is below where guards and returns carry their balancing current: computed without it, which gave the larger noise`);
-  if (found.noise.followed) said.push('slower than the window of the line: followed as a lumped circuit');
+  if (found.noise.followed) said.push('slower than the echoes on the line: followed to its peak as a lumped circuit');
   for (const trace of traces) {
     const { before, after } = leadsOf(trace, run.length.value);
     if (0 < before + after) said.push(`${inText(before, 'length')} of ${trace.net.name} before the run and ${inText(after, 'length')} after it count as uncoupled line`);

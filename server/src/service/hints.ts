@@ -104,7 +104,7 @@ function sufficientHint(kind: 'gap' | 'length', place: Place, { written, enough,
   return {
     kind,
     offset: place.span.end,
-    parts: [{ text: enough ? `${sign} ${written}` : `no ${kind} does`, target: null }],
+    parts: [{ text: enough ? `${sign} ${written}` : `no ${kind} is enough`, target: null }],
     tooltip: enough ? `${written} would just do for ${whom}, with the headroom wanted.` : `No ${kind} ${bound} ${written} is enough for ${whom}: ${other}.`,
   };
 }

@@ -20,7 +20,14 @@ export function couplingTable(couplings: readonly Coupling[]): string {
   ]);
   const rest = sorted.length - rows.length;
   const words = table(['from → to', 'at the receiver', 'near end', 'far end', 'capacitive', 'inductive', 'peak', 'acts as'], rows);
-  return rest === 0 ? words : `${words}\n\nand ${rest} smaller ones`;
+  return [words, ...(rest === 0 ? [] : [`and ${rest} smaller ones`]), ...(sorted.every(partsAddUp) ? [] : [partsNote])].join('\n\n');
+}
+
+/** An engineer who adds the two parts and gets another number must not think that the number is wrong. */
+const partsNote = 'The capacitive and the inductive part are each that of a short line by itself. Where the current turns later than the voltage they peak at different times, and do not add up to the whole.';
+
+function partsAddUp({ capacitivePart, inductivePart, atReceiver }: Coupling): boolean {
+  return Math.abs(capacitivePart + inductivePart - atReceiver) <= 0.1 * Math.abs(atReceiver);
 }
 
 function sizeOf({ inBand, atReceiver }: Coupling): number {
