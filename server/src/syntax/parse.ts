@@ -8,15 +8,16 @@
  */
 import { TokenCursor } from './cursor';
 import { documentationAbove } from './documentation';
-import { keywordsOf, listed, shapeOf, someOf } from './fits';
+import { shapeOf } from './fits';
 import type { BlockKind, StatementShape } from './grammar';
 import { tokensOf } from './lexer';
 import { Mistakes, quoted } from './mistakes';
-import { beginsQuantity, type Expectations, type StatementReading } from './reading';
+import { isDeclarationAt, passSeparators, type Parser } from './parser';
+import type { Expectations, StatementReading } from './reading';
+import { blocksHolding, passHead, passOver, passStrayText, reportUnknownStatement } from './recovery';
 import { readParts } from './statementReader';
 import { tooMuch } from './statementEnd';
-import type { Block, SourceTree, Span, Statement } from './tree';
-import { closest } from './words';
+import type { Block, SourceTree, Statement } from './tree';
 
 export const languageVersion = 1;
 
@@ -41,21 +42,6 @@ export function readText(text: string, expectations: Expectations | null): Sourc
   }
   if (expectations !== null) expectations.block ??= 'file';
   return { text, tokens, version, statements, errors: mistakes.all, unread };
-}
-
-interface Parser {
-  readonly cursor: TokenCursor;
-  readonly mistakes: Mistakes;
-  readonly unread: Span[];
-  /** Kinds of the blocks around the cursor, outermost first. */
-  readonly open: BlockKind[];
-  /** Index of the token at which open blocks were last found to lack their brace: said once for all of them. */
-  unclosedAt: number;
-  readonly expectations: Expectations | null;
-}
-
-function passSeparators(cursor: TokenCursor): void {
-  while (cursor.kind === 'newline' || cursor.isMark(';')) cursor.next();
 }
 
 function readVersion(parser: Parser): SourceTree['version'] {
@@ -189,81 +175,4 @@ function endsOpenBlock({ cursor, open }: Parser, kind: BlockKind): boolean {
   if (isDeclarationAt(cursor)) return true;
   const around = open.at(-2)!;
   return cursor.atLineStart && cursor.kind === 'word' && around !== 'file' && shapeOf(kind, cursor.word) === undefined && shapeOf(around, cursor.word) !== undefined;
-}
-
-/** `return` and `waive` begin a statement of a block as well: what follows tells them apart. */
-function isDeclarationAt(cursor: TokenCursor): boolean {
-  if (!cursor.atLineStart || cursor.kind !== 'word') return false;
-  const word = cursor.word;
-  if (shapeOf('file', word) === undefined) return false;
-  if (word !== 'return' && word !== 'waive') return true;
-  const ahead = cursor.copy();
-  ahead.next();
-  if (ahead.atEnd || (ahead.kind !== 'word' && ahead.kind !== 'string')) return false;
-  ahead.next();
-  return word === 'return' ? ahead.beyondNewlines().isMark('{') : ahead.isWord('on');
-}
-
-function reportUnknownStatement({ cursor, mistakes }: Parser, kind: BlockKind): void {
-  const span = cursor.span;
-  const found = cursor.word;
-  const meant = cursor.kind === 'word' ? closest(found, keywordsOf(kind)) : null;
-  const place = kind === 'row' || kind === 'stackup' ? `row of a ${kind === 'row' ? 'run' : kind}` : `statement of ${kind === 'ambient' ? 'an' : 'a'} ${kind}`;
-  if (meant !== null) mistakes.report('syntax', span, `${quoted(found)}? ${meant}`, [{ title: `Write ${meant}`, span, newText: meant }]);
-  else mistakes.report('syntax', span, `${quoted(found)} begins no ${place}; fits: ${someOf(keywordsOf(kind))}`);
-}
-
-/** Stray text outside of declarations, up to the next line that begins with one: one error a stretch. */
-function passStrayText(parser: Parser, after: Statement | undefined): void {
-  const { cursor, mistakes, unread } = parser;
-  const span = cursor.span;
-  const found = cursor.word;
-  const meant = cursor.kind === 'word' ? closest(found, keywordsOf('file')) : null;
-  // What follows a statement that stood outside its block is the rest of that block, and no second mistake.
-  const remains = after?.broken === true && (found === '}' || 0 < blocksHolding(found).length);
-  if (!remains && meant !== null) mistakes.report('syntax', span, `${quoted(found)}? ${meant}`, [{ title: `Write ${meant}`, span, newText: meant }]);
-  else if (!remains) mistakes.report('syntax', span, strayMessage(found));
-  do cursor.next();
-  while (cursor.kind !== 'end' && !isDeclarationAt(cursor));
-  unread.push({ start: span.start, end: cursor.last.end });
-}
-
-function strayMessage(found: string): string {
-  if (found === '}') return 'this `}` closes nothing';
-  if (found === 'quietrun') return '`quietrun` and the version stand before everything else, once';
-  const kinds = blocksHolding(found).map((kind) => (kind === 'row' ? 'run' : kind));
-  return `${quoted(found)} begins no declaration; ${0 < kinds.length ? `it belongs in the block of a ${listed([...new Set(kinds)])}` : `fits: ${someOf(keywordsOf('file'))}`}`;
-}
-
-function blocksHolding(word: string): readonly BlockKind[] {
-  return (['board', 'stackup', 'net', 'pair', 'run', 'row', 'loop', 'return', 'link', 'shield', 'ambient'] as const).filter((kind) => shapeOf(kind, word) !== undefined);
-}
-
-/** To where the statement ends, blocks that do not belong to it included. */
-function passOver(parser: Parser): void {
-  const { cursor, unread } = parser;
-  const start = cursor.start;
-  let depth = 0;
-  while (cursor.kind !== 'end') {
-    if (depth === 0 ? cursor.atEnd && !continues(cursor) : isDeclarationAt(cursor)) break;
-    const closes = cursor.isMark('}');
-    depth += cursor.isMark('{') ? 1 : closes ? -1 : 0;
-    cursor.next();
-    if (closes && depth === 0) break;
-  }
-  if (start < cursor.last.end) unread.push({ start, end: cursor.last.end });
-}
-
-/** A line that ends with a comma goes on where the next begins with a value. */
-function continues(cursor: TokenCursor): boolean {
-  if (cursor.kind !== 'newline' || cursor.text[cursor.last.end - 1] !== ',') return false;
-  const ahead = cursor.beyondNewlines();
-  return ahead.isMark('(') || beginsQuantity(ahead, ['resistance', 'capacitance']);
-}
-
-/** To the block of a declaration or, where it has none, to the end of the head. */
-function passHead({ cursor, unread }: Parser): void {
-  const start = cursor.start;
-  while (!cursor.atEnd && !cursor.isMark('{')) cursor.next();
-  if (start < cursor.last.end) unread.push({ start, end: cursor.last.end });
 }
