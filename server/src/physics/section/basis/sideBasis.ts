@@ -39,18 +39,20 @@ export interface SelfTable {
   readonly entries: Float64Array;
 }
 
-/** A stack has few kinds of edge; the bound only guards against a file that sweeps permittivities. */
-const kept = new Map<string, SideBasis>();
-const keptLimit = 128;
+/** By the two exponents. A stack has few kinds of edge; the bound only guards against a file that sweeps permittivities. */
+const kept = new Map<number, Map<number, SideBasis>>();
+const keptLimit = 64;
 
 export function sideBasis(start: number, end: number): SideBasis {
-  const key = `${start.toFixed(13)} ${end.toFixed(13)}`;
-  const known = kept.get(key);
-  if (known !== undefined) return known;
-  const made = makeBasis(start, end);
-  if (keptLimit <= kept.size) kept.clear();
-  kept.set(key, made);
-  return made;
+  let row = kept.get(start);
+  if (row === undefined || keptLimit < row.size) {
+    if (keptLimit <= kept.size) kept.clear();
+    row = new Map();
+    kept.set(start, row);
+  }
+  let basis = row.get(end);
+  if (basis === undefined) row.set(end, (basis = makeBasis(start, end)));
+  return basis;
 }
 
 function makeBasis(start: number, end: number): SideBasis {

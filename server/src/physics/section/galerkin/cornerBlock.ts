@@ -34,7 +34,8 @@ export function addCorner(first: CornerPart, second: CornerPart, cosine: number,
 
 /** Entry (m of outer, n of inner) is at m × outerStride + n × innerStride. */
 function addHalf(outer: CornerPart, inner: CornerPart, cosine: number, outerCount: number, innerCount: number, block: Float64Array, outerStride: number, innerStride: number): void {
-  const { radialWeights, radialLogWeights, spoke, nodes, angularWeights, fan, fanSum } = cornerTables(outer, inner);
+  const size = outerCount <= 8 && innerCount <= 8 ? 8 : polynomialLimit;
+  const { radialWeights, radialLogWeights, spoke, nodes, angularWeights, fan, fanSum } = cornerTables(outer, inner, size);
   const ratio = inner.length / outer.length;
   const logOuter = -Math.log(outer.length);
   for (let k = 0; k < angularPoints; k += 1) {
@@ -46,9 +47,9 @@ function addHalf(outer: CornerPart, inner: CornerPart, cosine: number, outerCoun
     const logged = radialLogWeights[i] + plain * logOuter;
     for (let n = 0; n < innerCount; n += 1) {
       let sum = 0;
-      for (let k = 0; k < angularPoints; k += 1) sum += angular[k] * fan[(i * angularPoints + k) * polynomialLimit + n];
-      const value = plain * sum + logged * fanSum[i * polynomialLimit + n];
-      for (let m = 0; m < outerCount; m += 1) block[m * outerStride + n * innerStride] += spoke[i * polynomialLimit + m] * value;
+      for (let k = 0; k < angularPoints; k += 1) sum += angular[k] * fan[(i * angularPoints + k) * size + n];
+      const value = plain * sum + logged * fanSum[i * size + n];
+      for (let m = 0; m < outerCount; m += 1) block[m * outerStride + n * innerStride] += spoke[i * size + m] * value;
     }
   }
 }
@@ -68,14 +69,14 @@ interface CornerTables {
   readonly fanSum: Float64Array;
 }
 
-function cornerTables(outer: CornerPart, inner: CornerPart): CornerTables {
-  const key = `corner ${outer.level} ${inner.level} ${inner.basis.start} ${inner.basis.end}`;
+/** `size` polynomials of either part: most sides need few, and the tables' work is all in them. */
+function cornerTables(outer: CornerPart, inner: CornerPart, size: number): CornerTables {
+  const key = `corner ${size} ${outer.level} ${inner.level} ${inner.basis.start} ${inner.basis.end}`;
   const known = outer.basis.tables.get(key) as CornerTables | undefined;
   if (known !== undefined) return known;
   const radial = keptLogRule(radialPoints, outer.basis.start + inner.basis.start + 1);
   const { nodes, weights } = keptRule(angularPoints, 0, inner.basis.start);
   const scale = 2 ** -(inner.basis.start + 1);
-  const size = polynomialLimit;
   const made: CornerTables = {
     radialWeights: radial.weights,
     radialLogWeights: radial.logWeights,
@@ -86,10 +87,10 @@ function cornerTables(outer: CornerPart, inner: CornerPart): CornerTables {
     fanSum: new Float64Array(radialPoints * size),
   };
   for (let i = 0; i < radialPoints; i += 1) {
-    writeWithoutPower(outer, radial.nodes[i], made.spoke, i * size);
+    writeWithoutPower(outer, radial.nodes[i], made.spoke, i * size, size);
     for (let k = 0; k < angularPoints; k += 1) {
       const at = (i * angularPoints + k) * size;
-      writeWithoutPower(inner, radial.nodes[i] * made.nodes[k], made.fan, at);
+      writeWithoutPower(inner, radial.nodes[i] * made.nodes[k], made.fan, at, size);
       for (let n = 0; n < size; n += 1) made.fanSum[i * size + n] += made.angularWeights[k] * made.fan[at + n];
     }
   }
@@ -98,9 +99,9 @@ function cornerTables(outer: CornerPart, inner: CornerPart): CornerTables {
 }
 
 /** w p_m du / dR at R, without the factor R^start that the rules hold. */
-function writeWithoutPower({ basis, level }: CornerPart, radius: number, values: Float64Array, at: number): void {
+function writeWithoutPower({ basis, level }: CornerPart, radius: number, values: Float64Array, at: number, count: number): void {
   const { start, end, total, recurrence } = basis;
-  const size = 2 * 2 ** -level;
-  const scale = (size ** (start + 1) * (2 - size * radius) ** end) / total;
-  writePolynomials(recurrence, size * radius - 1, scale, values, at, polynomialLimit);
+  const reach = 2 * 2 ** -level;
+  const scale = (reach ** (start + 1) * (2 - reach * radius) ** end) / total;
+  writePolynomials(recurrence, reach * radius - 1, scale, values, at, count);
 }
