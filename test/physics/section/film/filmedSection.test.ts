@@ -132,6 +132,11 @@ describe('identities under a mask', () => {
     }
   });
 
+  it('is the same to the last digit whatever was solved before', () => {
+    solved(board(conductors.map((conductor, i) => ({ ...conductor, x: metres(conductor.x + 1.3e-6 * i) })), film(20)));
+    assert.deepEqual(solved(section), result);
+  });
+
   it('reduces a reference out: the same with it as a signal at zero potential', () => {
     const all = solved(board(conductors.map((conductor) => ({ ...conductor, role: 'signal' as const })), film(20))).capacitance;
     for (let i = 0; i < 3; i += 1) for (let j = 0; j < 3; j += 1) near(result.capacitance[i * 3 + j], all[i * 4 + j], bars[i * 3 + j] + 1e-9);
@@ -177,6 +182,8 @@ describe('refusals', () => {
     for (const permittivity of [0.5, NaN, Infinity]) refused(board(pair, film(25, permittivity)));
     refused({ ...board(pair, film(25)), layers: [{ permittivity: 4.2, thickness: metres(200 * um) }, { permittivity: 1, thickness: metres(500 * um) }], planeAbove: true });
     refused(board([trace(0, 200, 35), trace(0, 200, 35, { y: metres(300 * um) })], film(25)));
+    // Buried copper whose top is a hair below the laminate's face.
+    refused(board([trace(0, 200, 35), trace(500, 200, 35, { y: metres(164.99 * um) })], film(25)));
   });
 });
 

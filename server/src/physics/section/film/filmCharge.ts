@@ -20,9 +20,11 @@ import type { Side } from '../basis/side';
 import type { ChargedConductor } from '../basis/chargedConductor';
 import { leftOut, type ChargeSolution } from '../galerkin/chargeSolution';
 import { ownBlock } from '../galerkin/ownBlock';
+import { segmentDistance } from '../galerkin/segmentDistance';
 import { writeSideBlock } from '../galerkin/sideBlock';
 import type { Kernel } from '../kernel/layeredKernel';
-import { addFluxBlock, plainBasis } from './fluxBlock';
+import { acrossGap, addFluxBlock, plainBasis } from './fluxBlock';
+import { keptBlock, shapeOf, type Shape } from './keptBlocks';
 
 export interface FilmProblem {
   readonly conductors: readonly ChargedConductor[];
@@ -71,6 +73,7 @@ interface Layout {
   readonly sides: readonly Side[];
   /** Sides, then panels. */
   readonly all: readonly Side[];
+  readonly shapes: readonly Shape[];
   readonly unknowns: number;
   /** Unknowns of the coarser system, which come first. */
   readonly coarse: number;
@@ -96,12 +99,36 @@ function layOut(sides: readonly Side[], panels: readonly Side[]): Layout {
     rest[s] = at;
     at += order - kept[s];
   });
-  return { sides, all, unknowns: at, coarse, kept, start, rest };
+  return { sides, all, shapes: all.map(shapeOf), unknowns: at, coarse, kept, start, rest };
 }
 
 const rowOf = ({ kept, start, rest }: Layout, s: number, m: number) => (m < kept[s] ? start[s] + m : rest[s] + m - kept[s]);
 
 const block = new Float64Array(polynomialLimit * polynomialLimit);
+
+/** Into `block`: of the first side's potentials, or of the flux through it, from the second's charge. */
+function writeBlock(kind: 'potential' | 'flux', kernel: Kernel, { all, shapes }: Layout, [first, second]: readonly [number, number]): void {
+  const reach = nearRatio * Math.max(all[first].length, all[second].length);
+  const near = acrossGap(all[first], all[second]) < reach && segmentDistance(all[first], all[second]) < reach;
+  if (near) block.set(keptBlock({ kind, kernel, first: shapes[first], second: shapes[second], apart: all[second].x0 - all[first].x0 }, (a, b) => computed(kind, kernel, a, b)));
+  else compute(kind, kernel, all[first], all[second]);
+}
+
+/** Pairs nearer than this part of the longer one cost enough to be worth keeping. */
+const nearRatio = 1.5;
+
+function compute(kind: 'potential' | 'flux', kernel: Kernel, first: Side, second: Side): void {
+  if (kind === 'potential') writeSideBlock(first, second, kernel, block);
+  else {
+    block.fill(0, 0, first.order * second.order);
+    addFluxBlock(kernel, first, second, 1, block);
+  }
+}
+
+function computed(kind: 'potential' | 'flux', kernel: Kernel, first: Side, second: Side): Float64Array {
+  compute(kind, kernel, first, second);
+  return block.slice(0, first.order * second.order);
+}
 
 /** Copies `block`, the rows of it those of side or panel `row`; or its transpose. */
 function place(layout: Layout, row: number, column: number, transposed: boolean, matrix: Float64Array): void {
@@ -128,7 +155,7 @@ function placeConductors({ conductors, kernel }: FilmProblem, layout: Layout, ma
       for (let t = last; t < all.length; t += 1) {
         // The kernel wants the side in the higher layer first.
         const [upper, lower] = all[s].layer < all[t].layer ? [t, s] : [s, t];
-        writeSideBlock(all[upper], all[lower], kernel(all[lower].layer, all[upper].layer), block);
+        writeBlock('potential', kernel(all[lower].layer, all[upper].layer), layout, [upper, lower]);
         place(layout, s, t, upper !== s, matrix);
         if (t < sides.length) place(layout, t, s, upper === s, matrix);
       }
@@ -142,8 +169,8 @@ function placePanels({ panels, kernel, permittivity, outside }: FilmProblem, lay
   const contrast = (permittivity - outside) / (permittivity + outside);
   panels.forEach((panel, p) => {
     layout.all.forEach((source, t) => {
-      block.fill(0, 0, panel.order * source.order);
-      addFluxBlock(kernel(source.layer, panel.layer), panel, source, -contrast * permittivity, block);
+      writeBlock('flux', kernel(source.layer, panel.layer), layout, [layout.sides.length + p, t]);
+      for (let at = 0; at < panel.order * source.order; at += 1) block[at] *= -contrast * permittivity;
       if (panel === source) addOwnCharge(panel);
       place(layout, layout.sides.length + p, t, false, matrix);
     });

@@ -1,6 +1,7 @@
 /** Which films are refused before anything is computed. `section` has its film above. */
 import type { Section, SectionRefusal } from '../section';
-import { laminateTop } from './filmedCharge';
+import { placementOf } from '../placement';
+import { filledWithFilm, laminateTop } from './filmedCharge';
 
 export function filmRefusal(section: Section): SectionRefusal | null {
   const { film, layers, planeAbove, conductors } = section;
@@ -12,12 +13,14 @@ export function filmRefusal(section: Section): SectionRefusal | null {
   for (const { y, height, width } of conductors) {
     const size = height === 0 ? width : Math.min(width, height);
     if (laminate + 1e-6 * size < y) return notCovered('a conductor over a mask that does not lie on the laminate');
-    if (laminate - 1e-6 * size <= y && film.thickness < thinnest * Math.max(width, height)) return notCovered('a mask thinner than a five-hundredth of the trace');
+    if (laminate - 1e-6 * size <= y && film.thickness < Math.max(thinnest * height, thinnestOverWidth * width)) return notCovered('a mask thinner than a hundredth of the copper or a two-thousandth of its width');
   }
-  return null;
+  const placement = placementOf(filledWithFilm(section));
+  return 'refused' in placement ? placement.refused : null;
 }
 
-/** Of the conductor's larger side: thinner film would need more panels than were measured. */
-const thinnest = 1 / 500;
+/** Of the height and of the width: thinner film would need more panels than were measured. */
+const thinnest = 1 / 100;
+const thinnestOverWidth = 1 / 2000;
 
 const notCovered = (what: string): SectionRefusal => ({ reason: 'not-covered', what });

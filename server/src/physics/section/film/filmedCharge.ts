@@ -27,8 +27,7 @@ export function filmedCharge(section: Section, signals: readonly number[], effor
   const { film, layers } = section;
   if (film === null) throw new Error('a section without a film');
   const outside = layers[layers.length - 1].permittivity;
-  // As if the film filled all the space above the laminate.
-  const placement = placementOf({ ...section, layers: [...layers.slice(0, -1), { ...layers[layers.length - 1], permittivity: film.permittivity }] });
+  const placement = placementOf(filledWithFilm(section));
   if ('refused' in placement) return null;
   const { unit, stack, conductors } = placement;
   const laminate = laminateTop(section) / unit;
@@ -58,11 +57,18 @@ export function filmedCharge(section: Section, signals: readonly number[], effor
     conductors: chargedConductors(conductors, stack, effort + 1), signals, panels, kernel: kernelsOf(stack),
     permittivity: film.permittivity, outside, constant: openConstant(conductors, stack),
   });
-  return solution === null ? null : { ...solution, unseen: (slotted ? 4e-4 : 1.5e-4) / 3.5 ** effort };
+  return solution === null ? null : { ...solution, unseen: (slotted ? 6e-4 : 1.5e-4) / 3.5 ** effort };
 }
 
 /** Of the film's thickness. */
 const narrow = 0.3;
+
+/** As if the film filled all the space above the laminate. */
+export function filledWithFilm(section: Section): Section {
+  const { film, layers } = section;
+  const last = layers[layers.length - 1];
+  return { ...section, film: null, layers: [...layers.slice(0, -1), { ...last, permittivity: film === null ? last.permittivity : film.permittivity }] };
+}
 
 /** Height of the face that the film lies on: the top of the uppermost finite layer. */
 export function laminateTop({ layers }: Section): number {

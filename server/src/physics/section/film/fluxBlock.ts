@@ -22,6 +22,15 @@ import { writeFluxMoments } from './fluxMoments';
 export function addFluxBlock(kernel: Kernel, target: Side, source: Side, scale: number, block: Float64Array): void {
   const legendre = plainBasis();
   const longer = Math.max(target.length, source.length);
+  // Images lie above or below their source: what is far enough across needs no distances.
+  const across = acrossGap(target, source);
+  if (farRatio * longer <= across) {
+    farLines = 0;
+    keepLine(scale * kernel.direct, 1, 0);
+    for (const { factor, at } of kernel.mirrors) keepLine(scale * factor, -1, 2 * at);
+    addProduct(target, source, legendre.whole(farPoints(across / target.length, target.order)), source.basis.whole(farPoints(across / source.length, source.order)), farLines, kernel.rest?.families ?? none, scale, block);
+    return;
+  }
   let nearest = Infinity;
   farLines = 0;
   if (!collinear(target, source)) nearest = placeLine(target, source, scale * kernel.direct, identity, block);
@@ -63,11 +72,20 @@ function placeLine(target: Side, source: Side, factor: number, image: Image, blo
     addNearLogarithm(target, { ...source, ...imaged }, factor, block);
     return Infinity;
   }
-  farFactors[farLines] = factor;
-  farSigns[farLines] = image.sign;
-  farShifts[farLines] = image.shift;
-  farLines += 1;
+  keepLine(factor, image.sign, image.shift);
   return distance;
+}
+
+function keepLine(factor: number, sign: number, shift: number): void {
+  farFactors[farLines] = factor;
+  farSigns[farLines] = sign;
+  farShifts[farLines] = shift;
+  farLines += 1;
+}
+
+/** How far two sides are apart across the section; below 0 where they overlap. */
+export function acrossGap(a: Segment, b: Segment): number {
+  return Math.max(Math.min(a.x0, a.x1) - Math.max(b.x0, b.x1), Math.min(b.x0, b.x1) - Math.max(a.x0, a.x1));
 }
 
 const farRatio = 0.8;
