@@ -1,3 +1,4 @@
+#!/usr/bin/env node
 /** The command `quietrun`. */
 import { createConnection, StreamMessageReader, StreamMessageWriter } from 'vscode-languageserver/node';
 import { version } from '../../package.json';
