@@ -19,7 +19,7 @@ export function errorBars(fine: Float64Array, coarse: Float64Array, order: numbe
 const relativeFloor = 1e-5;
 const absoluteFloor = 3e-9;
 
-/** The largest relative change, but of entries too weak to matter only what is left of them against a millionth of the diagonal. */
+/** The largest relative change, but of entries too weak to matter only against a ten-thousandth of the diagonal. */
 export function largestChange(fine: Float64Array, coarse: Float64Array, order: number): number {
   return fine.reduce((largest, value, at) => {
     const scale = Math.sqrt(Math.abs(fine[Math.floor(at / order) * (order + 1)] * fine[(at % order) * (order + 1)]));
@@ -27,4 +27,4 @@ export function largestChange(fine: Float64Array, coarse: Float64Array, order: n
   }, 0);
 }
 
-const weak = 1e-6;
+const weak = 1e-4;

@@ -70,5 +70,5 @@ function addFar(upper: Side, lower: Side, parts: readonly PairKernel[], distance
  * ellipse^-degree (Bernstein), and with n nodes the highest polynomial kept meets an error of ellipse^-(n + 1).
  */
 export function farPoints(relative: number): number {
-  return Math.ceil(10 / Math.log(2 * relative + Math.sqrt(4 * relative * relative + 1))) + 1;
+  return Math.ceil(9 / Math.log(2 * relative + Math.sqrt(4 * relative * relative + 1))) + 1;
 }
