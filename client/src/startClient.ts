@@ -24,7 +24,8 @@ export async function startClient(context: vscode.ExtensionContext, host: Host):
     documentSelector: [{ language: 'quietrun' }],
     initializationOptions: clientOptions,
     outputChannel: output,
-    diagnosticPullOptions: { onChange: true, onSave: true, onTabs: false },
+    // On focus too: an edit in one file changes what another shows, which was not in view then.
+    diagnosticPullOptions: { onChange: true, onSave: true, onFocus: true, onTabs: false },
     markdown: { isTrusted: false, supportHtml: false },
   });
   const status = createStatusItem(client);

@@ -19,12 +19,12 @@ export async function runEditorTests(words = []) {
     const tools = setUp();
     build(words);
     const { buildSuite } = await import('./suite/build.mjs');
-    await buildSuite();
+    const only = words.includes('--only') ? words[words.indexOf('--only') + 1] : '';
+    await buildSuite(only);
     const { runPass } = await import('./pass.mjs');
     const screenshots = path.join(here, 'screenshots');
     if (!words.includes('--keep')) rmSync(screenshots, { recursive: true, force: true });
     mkdirSync(screenshots, { recursive: true });
-    const only = words.includes('--only') ? words[words.indexOf('--only') + 1] : '';
     for (const host of among(words, ['web', 'node'])) {
       for (const lineEnds of among(words, ['lf', 'crlf'])) {
         for (const kind of among(words, ['suite', 'driven'])) {

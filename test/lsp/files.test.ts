@@ -1,8 +1,9 @@
 /** How files get to the server that no one has open. */
 import assert from 'node:assert/strict';
 import { describe, it } from 'node:test';
+import type { ClientCapabilities } from 'vscode-languageserver-protocol/node';
 import type { ReadFileAnswer, ReadFileParams } from '../../server/src/lsp/messages';
-import { pulling, startClient, type ClientSetup, type TestClient } from './client';
+import { eventually, pulling, startClient, type ClientSetup, type TestClient } from './client';
 
 const folder = 'memory://box/boards';
 const board = `${folder}/board.quiet`;
@@ -30,6 +31,25 @@ describe('files that a board uses', () => {
     assert.equal(asked.length, 2);
     assert.ok(first.includes('unknown-name'));
     assert.ok(!second.includes('unknown-name'));
+    await client.stop();
+  });
+
+  it('make the client ask anew when they have changed or were closed', async () => {
+    let refreshed = 0;
+    const parts = 'memory://box/boards/parts.quiet';
+    const capabilities = { textDocument: { diagnostic: {} }, workspace: { diagnostics: { refreshSupport: true } } };
+    const { client } = await reading({ [parts]: 'net A { once }\n' }, undefined, [], capabilities, () => { refreshed += 1; });
+    await client.open(board, 'use "parts.quiet"\n');
+    await client.diagnostics(board);
+    await eventually(() => (refreshed === 1 ? true : undefined), 'a refresh when the workspace was read');
+    await client.connection.sendNotification('workspace/didChangeWatchedFiles', { changes: [{ uri: parts, type: 2 }] });
+    await eventually(() => (refreshed === 2 ? true : undefined), 'a refresh after a change');
+    await client.open(parts, 'net B { once }\n');
+    await client.close(parts);
+    await eventually(() => (refreshed === 3 ? true : undefined), 'a refresh after closing');
+    await client.open(parts, 'net B { once }\n');
+    await client.change(parts, 2, 'net C { once }\n');
+    await eventually(() => (refreshed === 4 ? true : undefined), 'a refresh after an edit that another open file shows');
     await client.stop();
   });
 
@@ -107,13 +127,17 @@ describe('files that a board uses', () => {
   });
 });
 
-async function reading(files: Record<string, string>, answer?: ReadFileAnswer, listed: readonly string[] = []): Promise<{ client: TestClient; asked: ReadFileParams[] }> {
+async function reading(files: Record<string, string>, answer?: ReadFileAnswer, listed: readonly string[] = [], capabilities: ClientCapabilities = pulling, refreshed: () => void = () => {}): Promise<{ client: TestClient; asked: ReadFileParams[] }> {
   const asked: ReadFileParams[] = [];
   const setup: ClientSetup = {
-    capabilities: pulling,
+    capabilities,
     folders: [folder],
     options: { readsFiles: true },
     answers(connection) {
+      connection.onRequest('workspace/diagnostic/refresh', () => {
+        refreshed();
+        return null;
+      });
       connection.onRequest('quietrun/listFiles', () => ({ uris: listed }));
       connection.onRequest('quietrun/readFile', (params: ReadFileParams) => {
         asked.push(params);

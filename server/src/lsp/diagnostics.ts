@@ -22,7 +22,7 @@ export function answerPulls(options: DiagnosticsOptions): void {
     connection,
     name: 'diagnostics',
     async answer({ textDocument, previousResultId }): Promise<DocumentDiagnosticReport> {
-      const file = await documents.at(textDocument.uri);
+      const file = await documents.known(textDocument.uri); // a client asks once more when it has closed a file
       const items = file === null ? [] : diagnosticsOf(file.path, options);
       if (file !== null) computed(file.path);
       const resultId = textHash(JSON.stringify(items));

@@ -11,8 +11,8 @@ import { Superseded } from './guard';
 import { Paths } from './paths';
 import { noReader, type FileReader } from './reader';
 
-/** An open document as a request finds it. */
-export interface OpenFile {
+/** A document as a request finds it. */
+export interface KnownFile {
   readonly path: string;
   readonly document: TextDocument;
 }
@@ -29,6 +29,8 @@ export class Documents {
   /** Reads that answers wait for: of a file whose text is known to be old. */
   readonly #due = new Set<Promise<void>>();
   readonly #listeners = new Set<(path: string) => void>();
+  readonly #rereadListeners: (() => void)[] = [];
+  readonly #editListeners: ((path: string) => void)[] = [];
 
   constructor(session: Session) {
     this.session = session;
@@ -47,6 +49,16 @@ export class Documents {
     return () => this.#listeners.delete(listener);
   }
 
+  /** Is told when a file was read anew for a reason that the client may not connect with what it shows. */
+  onReread(listener: () => void): void {
+    this.#rereadListeners.push(listener);
+  }
+
+  /** Is told of each edit of an open file. */
+  onEdit(listener: (path: string) => void): void {
+    this.#editListeners.push(listener);
+  }
+
   /** Every file of the workspace that may be a board, so that it is known who uses whom. */
   async readWorkspace(): Promise<void> {
     const uris = await this.reader.list(this.paths.folders.map((folder) => this.paths.uriOf(folder)));
@@ -58,16 +70,23 @@ export class Documents {
    * The file that a request is about, when all that its projects use has been read. Null for one that is
    * not open, which is not ours to answer for.
    */
-  async at(uri: string): Promise<OpenFile | null> {
+  async at(uri: string): Promise<KnownFile | null> {
     const path = this.paths.keyOf(uri);
-    const document = path === null ? undefined : this.#open.get(uri);
-    if (path === null || document === undefined) return null;
-    const { version } = document;
+    if (path === null || this.#open.get(uri) === undefined) return null;
+    return this.known(uri);
+  }
+
+  /** The same for any file that is known, open or not. */
+  async known(uri: string): Promise<KnownFile | null> {
+    const path = this.paths.keyOf(uri);
+    if (path === null) return null;
+    const version = this.#open.get(uri)?.version;
     // Edits that have already arrived go first.
     await new Promise((resolve) => setTimeout(resolve, 0));
     await this.settle();
     if (this.#open.get(uri)?.version !== version) throw new Superseded();
-    return { path, document };
+    const document = this.textOf(path);
+    return document === null ? null : { path, document };
   }
 
   /** Reads until no project lacks a file that could still be read. */
@@ -104,6 +123,7 @@ export class Documents {
     this.#read.delete(path);
     this.session.setText(path, document.getText());
     this.#changed(path);
+    for (const listener of this.#editListeners) listener(path);
   }
 
   #closed({ document }: TextDocumentChangeEvent<TextDocument>): void {
@@ -118,6 +138,9 @@ export class Documents {
     // What is being read already may have been read before the change.
     const reading = (this.#reading.get(path) ?? Promise.resolve()).then(() => this.#readFile(path)).finally(() => this.#due.delete(reading));
     this.#due.add(reading);
+    void reading.then(() => {
+      if (this.#due.size === 0) for (const listener of this.#rereadListeners) listener();
+    });
     return reading;
   }
 

@@ -10,7 +10,7 @@ export function createSettings(connection: Connection, capabilities: () => Clien
   const known = new Map<string, Promise<Readonly<Record<HintKind, boolean>>>>();
   connection.onDidChangeConfiguration(() => {
     known.clear();
-    if (capabilities().workspace?.inlayHint?.refreshSupport === true) void connection.languages.inlayHint.refresh();
+    if (capabilities().workspace?.inlayHint?.refreshSupport === true) connection.languages.inlayHint.refresh().catch((error: unknown) => connection.console.warn(`refresh: ${String(error)}`));
   });
   const ask = async (uri: string) => {
     const answer = capabilities().workspace?.configuration === true ? ((await connection.workspace.getConfiguration({ scopeUri: uri, section: 'quietrun.inlayHints' })) as Partial<Record<HintKind, unknown>> | null) : null;

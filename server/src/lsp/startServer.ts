@@ -18,13 +18,15 @@ import { answerInlayHints } from './inlayHint';
 import { explainMethod, type ClientOptions, type ExplainParams } from './messages';
 import { clientReader, type FileReader } from './reader';
 import { answerReferences } from './references';
+import { createRefresher, type Refresher } from './refresh';
 import type { Server } from './server';
 import { createSettings } from './settings';
 import { sendStatus } from './status';
 
 /** `ownReader` reads for a client that does not offer to read for the server. */
 export function startServer(connection: Connection, ownReader: FileReader): void {
-  const documents = new Documents(new Session());
+  const session = new Session({ log: (rule, error) => connection.console.error(`${rule}: ${error instanceof Error ? (error.stack ?? error.message) : String(error)}`) });
+  const documents = new Documents(session);
   let capabilities: ClientCapabilities = {};
   let clientOptions: ClientOptions = {};
   const server: Server = {
@@ -33,6 +35,8 @@ export function startServer(connection: Connection, ownReader: FileReader): void
     settings: createSettings(connection, () => capabilities),
     guard: (name, otherwise, answer) => guarded({ connection, name, answer, otherwise: () => otherwise }),
   };
+
+  const refresher = createRefresher(connection, documents, () => capabilities);
 
   connection.onInitialize((params) => {
     capabilities = params.capabilities;
@@ -50,16 +54,13 @@ export function startServer(connection: Connection, ownReader: FileReader): void
     if (capabilities.workspace?.workspaceFolders === true) {
       connection.workspace.onDidChangeWorkspaceFolders(async () => {
         documents.paths.setFolders(((await connection.workspace.getWorkspaceFolders()) ?? []).map(({ uri }) => uri));
-        await readWorkspace(server, capabilities);
+        await readWorkspace(server, refresher);
       });
     }
-    await readWorkspace(server, capabilities);
+    await readWorkspace(server, refresher);
   });
 
-  connection.onDidChangeWatchedFiles(async (params) => {
-    await documents.changedOnDisk(params);
-    refresh(server, capabilities);
-  });
+  connection.onDidChangeWatchedFiles((params) => documents.changedOnDisk(params));
   connection.onRequest(explainMethod, (params: ExplainParams) => {
     const rule = rules.find(({ name }) => name === params.rule);
     return rule === undefined ? null : rulePage(rule);
@@ -108,17 +109,11 @@ async function register(connection: Connection, { workspace }: ClientCapabilitie
 }
 
 /** A folder that cannot be listed is no reason to answer nothing: files are then read as they are used. */
-async function readWorkspace(server: Server, capabilities: ClientCapabilities): Promise<void> {
+async function readWorkspace(server: Server, refresher: Refresher): Promise<void> {
   try {
     await server.documents.readWorkspace();
   } catch (error) {
     server.connection.console.warn(`the files of the workspace could not be listed: ${String(error)}`);
   }
-  refresh(server, capabilities);
-}
-
-/** What the client was told may have changed without an edit of its own. */
-function refresh({ connection }: Server, { workspace }: ClientCapabilities): void {
-  if (workspace?.diagnostics?.refreshSupport === true) void connection.languages.diagnostics.refresh();
-  if (workspace?.inlayHint?.refreshSupport === true) void connection.languages.inlayHint.refresh();
+  refresher.now();
 }

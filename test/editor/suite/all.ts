@@ -2,6 +2,9 @@
 export async function loadAll(): Promise<void> {
   await import('./language.suite');
   await import('./findings.suite');
+  await import('./reading.suite');
   await import('./fixes.suite');
+  await import('./completion.suite');
   await import('./navigation.suite');
+  await import('./files.suite');
 }

@@ -3,8 +3,12 @@ import Mocha from 'mocha';
 import { loadAll } from './all';
 import { report } from './report';
 
+/** Set when the suite is bundled. */
+declare const ONLY: string;
+
 export async function run(): Promise<void> {
   const mocha = new Mocha({ ui: 'bdd', timeout: 30_000, reporter: class {} as never });
+  if (ONLY !== '') mocha.fgrep(ONLY);
   mocha.suite.emit('pre-require', globalThis, '', mocha);
   await loadAll();
   const counts = await new Promise<{ passed: number; failed: number }>((resolve) => {

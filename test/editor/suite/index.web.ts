@@ -3,8 +3,12 @@ import 'mocha/mocha.js';
 import { loadAll } from './all';
 import { report } from './report';
 
+/** Set when the suite is bundled. */
+declare const ONLY: string;
+
 export async function run(): Promise<void> {
   mocha.setup({ ui: 'bdd', timeout: 30_000, reporter: class {} as never });
+  if (ONLY !== '') mocha.fgrep(ONLY);
   await loadAll();
   const counts = await new Promise<{ passed: number; failed: number }>((resolve) => {
     const runner = mocha.run(() => resolve(counts_));

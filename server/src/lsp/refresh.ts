@@ -1,0 +1,39 @@
+/**
+ * Asks the client to ask anew for what it shows. It asks of its own accord about the file that is being
+ * edited; it cannot know of a file read again from the disk, nor that one file shows what another says.
+ */
+import type { ClientCapabilities, Connection } from 'vscode-languageserver';
+import type { Documents } from './documents';
+
+export interface Refresher {
+  /** At once. */
+  readonly now: () => void;
+}
+
+/** Long enough to wait for the end of a word that is being typed. */
+const pause = 150;
+
+export function createRefresher(connection: Connection, documents: Documents, capabilities: () => ClientCapabilities): Refresher {
+  let due: ReturnType<typeof setTimeout> | undefined;
+  const now = () => {
+    clearTimeout(due);
+    due = undefined;
+    const { workspace } = capabilities();
+    const failed = (error: unknown) => connection.console.warn(`refresh: ${String(error)}`);
+    if (workspace?.diagnostics?.refreshSupport === true) connection.languages.diagnostics.refresh().catch(failed);
+    if (workspace?.inlayHint?.refreshSupport === true) connection.languages.inlayHint.refresh().catch(failed);
+  };
+  documents.onReread(now);
+  documents.onEdit((path) => {
+    clearTimeout(due);
+    due = setTimeout(() => { if (isSeenElsewhere(documents, path)) now(); }, pause);
+  });
+  return { now };
+}
+
+/** Another file that is open belongs to a project of this one. */
+function isSeenElsewhere(documents: Documents, path: string): boolean {
+  const { session } = documents;
+  const projects = new Set(session.projectsOf(path));
+  return documents.openPaths().some((other) => other !== path && session.projectsOf(other).some((root) => projects.has(root)));
+}
