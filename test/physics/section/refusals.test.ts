@@ -62,12 +62,14 @@ describe('sections at the end of the range', () => {
       { ...over([trace({}), trace({ x: 0.3e-3 })]), layers: [layer(4.2, h), layer(3.4, t), layer(1, Infinity)] },
       { ...over([trace({}), trace({ x: 0.3e-3 })]), layers: [layer(4.2, h), layer(3.4, t + 1e-6), layer(1, Infinity)] },
       { ...over([trace({}), trace({ x: 0.3e-3 })]), layers: [layer(1e5, h), layer(1, Infinity)] },
+      { ...over([trace({ width: 40e-3 }), trace({ x: 90e-3 }), trace({ x: 3 })]), layers: [layer(4.2, h), layer(3.7, h)], planeAbove: true },
       { ...over([trace({}), trace({ y: h + t + 5e-6 })]), layers: [layer(4.2, 3 * h)], planeAbove: true },
     ];
     extremes.forEach((section, i) => {
       const solution = solveSection(section);
       assert.ok('solved' in solution, `${i}: ${JSON.stringify(solution)}`);
       const { capacitance, capacitanceError, inductanceError } = solution.solved;
+      assert.ok([...capacitance, ...solution.solved.inductance].every(Number.isFinite), `${i}`);
       for (const bar of [...capacitanceError, ...inductanceError]) assert.ok(bar < 1e-3 || Math.abs(capacitance[1]) < 1e-5 * capacitance[0], `${i}: bar ${bar}`);
     });
   });

@@ -22,7 +22,7 @@ describe('kernel of a charge on a laminate over a plane', () => {
           series += strength * Math.log(Math.hypot(dx, y + source - 2 + 2 * n));
           strength *= contrast;
         }
-        close(potential(kernel, dx, y, source), series, 3e-10, `er ${permittivity}, dx ${dx}`);
+        close(potential(kernel, dx, y, source), series, 6e-10, `er ${permittivity}, dx ${dx}`);
       }
     }
   });

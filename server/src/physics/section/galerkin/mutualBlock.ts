@@ -6,11 +6,12 @@
  */
 import type { ChargedConductor } from '../basis/chargedConductor';
 import { polynomialLimit } from '../basis/orthonormalJacobi';
-import type { PartRule } from '../basis/partRule';
 import type { Side } from '../basis/side';
-import { restValue, type Kernel } from '../kernel/layeredKernel';
+import type { Kernel } from '../kernel/layeredKernel';
+import { writeKernelValues } from './kernelValues';
+import { NodeSet } from './nodeSet';
 import { farRatio } from './pairIntegral';
-import { farPoints, writeSideBlock } from './sideBlock';
+import { writeSideBlock } from './sideBlock';
 
 export function mutualBlock(upper: ChargedConductor, lower: ChargedConductor, kernel: Kernel): Float64Array {
   const rows = orderOf(upper);
@@ -46,37 +47,6 @@ function writeBySides(upper: ChargedConductor, lower: ChargedConductor, kernel: 
   }
 }
 
-/** The nodes of all sides of a conductor, each side's rule as fine as the distance asks for. */
-class NodeSet {
-  readonly rules: PartRule[] = [];
-  x = new Float64Array(64);
-  y = new Float64Array(64);
-  count = 0;
-
-  place(sides: readonly Side[], distance: number): void {
-    this.rules.length = 0;
-    this.count = 0;
-    for (const side of sides) {
-      const rule = side.basis.whole(farPoints(distance / side.length));
-      if (this.x.length < this.count + rule.count) this.grow();
-      for (let i = 0; i < rule.count; i += 1) {
-        this.x[this.count + i] = side.x0 + (side.x1 - side.x0) * rule.t[i];
-        this.y[this.count + i] = side.y0 + (side.y1 - side.y0) * rule.t[i];
-      }
-      this.rules.push(rule);
-      this.count += rule.count;
-    }
-  }
-
-  private grow(): void {
-    const [x, y] = [this.x, this.y];
-    this.x = new Float64Array(2 * x.length);
-    this.y = new Float64Array(2 * y.length);
-    this.x.set(x);
-    this.y.set(y);
-  }
-}
-
 const firstNodes = new NodeSet();
 const secondNodes = new NodeSet();
 let values = new Float64Array(1024);
@@ -90,38 +60,9 @@ function writeAtOnce(upper: ChargedConductor, lower: ChargedConductor, kernel: K
     values = new Float64Array(2 * size);
     half = new Float64Array(2 * size);
   }
-  writeValues(kernel);
+  writeKernelValues(kernel, firstNodes, secondNodes, values);
   sumOverColumns(lower.sides, columns);
   sumOverRows(upper.sides, columns);
-}
-
-/** The whole kernel between all nodes. */
-function writeValues({ direct, mirrors, rest }: Kernel): void {
-  // A plain image in a plane makes one logarithm of a quotient with the charge itself.
-  const plane = mirrors.find(({ factor }) => factor === -direct) ?? null;
-  const others = mirrors.filter((mirror) => mirror !== plane);
-  const [x, y] = [secondNodes.x, secondNodes.y];
-  let at = 0;
-  for (let i = 0; i < firstNodes.count; i += 1) {
-    const xi = firstNodes.x[i];
-    const yi = firstNodes.y[i];
-    for (let j = 0; j < secondNodes.count; j += 1) {
-      const dx = xi - x[j];
-      const dy = yi - y[j];
-      let square = dx * dx + dy * dy;
-      if (plane !== null) {
-        const up = yi + y[j] - 2 * plane.at;
-        square /= dx * dx + up * up;
-      }
-      let sum = direct * Math.log(square);
-      for (let m = 0; m < others.length; m += 1) {
-        const up = yi + y[j] - 2 * others[m].at;
-        sum += others[m].factor * Math.log(dx * dx + up * up);
-      }
-      values[at] = rest === null ? -0.5 * sum : restValue(rest, dx, yi, y[j]) - 0.5 * sum;
-      at += 1;
-    }
-  }
 }
 
 /** half[i, n] = sum over j of values[i, j] w p_n; what a rule cannot tell from lower polynomials stays zero. */

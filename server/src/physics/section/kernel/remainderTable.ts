@@ -14,11 +14,12 @@
  *             in closed form. No images are fitted, so there is no fit residual
  *   Formula   F(z) = -f(0) ln z + integral of (f - f(0)) e^(-kz)/k;  n-th coefficient: (-k)^n / n! in the integrand
  *   Source    discrete-image methods fit f by exponentials (Hua & Sarkar 1989); contour and rule are our own
- *   Accuracy  3e-10 absolute of f's largest value (the test, against images in closed form); 12 µs for a cell, 40 ns for a value
+ *   Accuracy  4e-10 absolute of f's largest value (the test, against images in closed form); 12 µs for a cell, 40 ns for a value
  */
 import { complex, minus, type Complex } from './complex';
 
-const order = 14;
+/** Odd, so that even and odd degrees come in pairs. */
+const order = 13;
 const stride = 2 * (order + 1);
 const sectors = 4;
 /** Of ln k. */
@@ -57,16 +58,22 @@ export class RemainderTable {
     const cell = this.cellAt(re, im);
     const zr = re - cell[stride];
     const zi = im - cell[stride + 1];
-    let at = stride - 2;
-    let fr = cell[at];
-    let fi = cell[at + 1];
-    while (0 < at) {
-      at -= 2;
-      const next = fr * zr - fi * zi + cell[at];
-      fi = fr * zi + fi * zr + cell[at + 1];
-      fr = next;
+    // Even and odd degrees side by side, in powers of z²: two short chains of sums instead of a long one.
+    const sr = zr * zr - zi * zi;
+    const si = 2 * zr * zi;
+    let er = cell[stride - 4];
+    let ei = cell[stride - 3];
+    let or = cell[stride - 2];
+    let oi = cell[stride - 1];
+    for (let at = stride - 8; 0 <= at; at -= 4) {
+      const nextEven = er * sr - ei * si + cell[at];
+      const nextOdd = or * sr - oi * si + cell[at + 2];
+      ei = er * si + ei * sr + cell[at + 1];
+      oi = or * si + oi * sr + cell[at + 3];
+      er = nextEven;
+      or = nextOdd;
     }
-    return fr;
+    return er + or * zr - oi * zi;
   }
 
   /** Rate of change of Re F along a step of z = a + i b. */
