@@ -34,7 +34,7 @@ describe('colouring', () => {
   const scopes = (line: string) => colouredLine(grammar, line).map(({ text, scope }) => `${text}: ${scope.replace('.quietrun', '')}`);
   const check = (title: string, line: string, ...expected: readonly string[]) => it(title, () => assert.deepEqual(scopes(line), expected));
   const declares = 'storage.type.declaration';
-  const states = 'support.type.property-name';
+  const states = 'support.function.statement';
 
   check('a declaration and its name', 'net VALVE_PWM {', `net: ${declares}`, 'VALVE_PWM: entity.name.type', '{: punctuation.section.block');
   check('a name that looks like something else', 'net is is 10k', `net: ${declares}`, 'is: entity.name.type', 'is: keyword.other', '10k: entity.other.inherited-class');
