@@ -40,8 +40,7 @@ export function solveSection(section: Section, { effort = 0, mostEffort = 4 }: S
   const refused = refusalOf(section);
   if (refused !== null) return { refused };
   if (section.film !== null) {
-    // A film's first setting is the coarser one: its own unknowns dominate.
-    return solveFilmed(section, { bare: (without) => solveSection(without, { effort, mostEffort }), effort: effort - 1, mostEffort });
+    return solveFilmed(section, { bare: (without) => solveSection(without, { effort, mostEffort }), effort, mostEffort });
   }
   const placement = placementOf(section);
   if ('refused' in placement) return placement;
