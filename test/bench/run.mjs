@@ -1,8 +1,11 @@
 /**
  * Runs the benchmarks: `node test/bench/run.mjs [name…]`. Bundles every `*.bench.ts` beside it whose name holds one of the words,
- * runs each in a process of its own, and prints medians and, where a case names another, the ratio to it.
+ * runs each in a process of its own, and prints medians, 95th percentiles, the median processor time (more than
+ * the time where the machine collects garbage beside it, less where others use the machine) and, where a case
+ * names another, the ratio to it.
  *
- * A bench exports `cases`: a list of { name, run, against? }. `run` does the work once; its inputs are seeded.
+ * A bench exports `cases`: a list of { name, run, prepare?, against? }. `run` does the work once, with what
+ * `prepare` made for it off the clock; inputs are seeded.
  */
 import { spawnSync } from 'node:child_process';
 import { mkdirSync, readdirSync, writeFileSync } from 'node:fs';
@@ -39,22 +42,31 @@ import { pathToFileURL } from 'node:url';
 const { cases } = await import(pathToFileURL(process.argv[2]).href);
 const milliseconds = () => Number(process.hrtime.bigint()) / 1e6;
 const medians = new Map();
-for (const { name, run, against } of cases) {
-  const first = milliseconds();
-  run();
-  const cold = milliseconds() - first;
+for (const { name, run, against, prepare } of cases) {
   const samples = [];
-  // Half a second, or five runs where one takes long; the first tenth warms up.
-  for (const start = milliseconds(); samples.length < 5 || (milliseconds() - start < 500 && samples.length < 2000);) {
+  const processor = [];
+  let spent = 0;
+  const once = () => {
+    const input = prepare?.();
+    const usage = process.cpuUsage();
     const before = milliseconds();
-    run();
-    samples.push(milliseconds() - before);
-  }
+    run(input);
+    const took = milliseconds() - before;
+    const { user, system } = process.cpuUsage(usage);
+    processor.push((user + system) / 1e3);
+    spent += took;
+    return took;
+  };
+  const cold = once();
+  processor.length = 0;
+  spent = 0;
+  // Half a second, or ten runs where one takes long; the first tenth warms up.
+  while (samples.length < 10 || (spent < 500 && samples.length < 2000)) samples.push(once());
   const warm = samples.slice(Math.floor(samples.length / 10)).sort((a, b) => a - b);
   const median = warm[Math.floor(warm.length / 2)];
   medians.set(name, median);
   const ratio = against === undefined ? '' : (median / medians.get(against)).toFixed(2) + ' of ' + against;
-  console.log('  ' + name.padEnd(44) + inText(median).padStart(10) + '  best ' + inText(warm[0]).padStart(9) + '  first ' + inText(cold).padStart(9) + '  ' + ratio);
+  console.log('  ' + name.padEnd(44) + inText(median).padStart(10) + '  p95 ' + inText(warm[Math.floor(warm.length * 0.95)]).padStart(9) + '  cpu ' + inText(processor.sort((a, b) => a - b)[Math.floor(processor.length / 2)]).padStart(9) + '  first ' + inText(cold).padStart(9) + '  ' + ratio);
 }
 function inText(value) {
   return value < 1 ? (value * 1e3).toPrecision(3) + ' us' : value.toPrecision(3) + ' ms';
