@@ -14,7 +14,6 @@
  *             fluxes are our own
  *   Accuracy  filmedSection.ts
  */
-import { luInOrder, solveUnitLower, solveUpperTransposed } from '../../../numeric/luInOrder';
 import { polynomialLimit, writePolynomials } from '../basis/orthonormalJacobi';
 import type { Side } from '../basis/side';
 import type { ChargedConductor } from '../basis/chargedConductor';
@@ -24,7 +23,9 @@ import { segmentDistance } from '../galerkin/segmentDistance';
 import { writeSideBlock } from '../galerkin/sideBlock';
 import type { Kernel } from '../kernel/layeredKernel';
 import { acrossGap, addFluxBlock, plainBasis } from './fluxBlock';
+import { FoldedSystem } from './foldedSystem';
 import { keptBlock, shapeOf, type Shape } from './keptBlocks';
+import { mirrorImages } from './mirrorImages';
 
 export interface FilmProblem {
   readonly conductors: readonly ChargedConductor[];
@@ -43,71 +44,70 @@ export interface FilmProblem {
 /** Null where a pivot vanishes: the system means nothing then. */
 export function filmCharge(problem: FilmProblem): ChargeSolution | null {
   const { conductors, panels, signals, constant } = problem;
-  const layout = layOut(conductors.flatMap(({ sides }) => sides), panels);
-  const { unknowns, coarse, sides, start } = layout;
-  const matrix = new Float64Array(unknowns * unknowns);
-  placeConductors(problem, layout, matrix);
-  placePanels(problem, layout, matrix);
+  const sides = conductors.flatMap((conductor) => conductor.sides);
+  const all = [...sides, ...panels];
+  const images = mirrorImages(all);
+  const kept = keptOrders(sides, panels);
+  const signs = images === null ? [1 as const] : [1 as const, -1 as const];
+  const systems = signs.map((sign, i) => new FoldedSystem(all, { images, sign, kept }, (size) => memoryOf(i, size)));
+  const assembly = { problem, all, shapes: all.map(shapeOf), sides: sides.length, images, systems };
+  placeConductors(assembly);
+  placePanels(assembly);
+  const everySide = sides.map((_, s) => s);
+  const sets = signals.map((signal) => everySide.filter((s) => sides[s].conductor === signal));
   if (constant !== null) {
-    for (let s = 0; s < sides.length; s += 1) for (let t = 0; t < sides.length; t += 1) matrix[start[s] * unknowns + start[t]] += constant;
+    sets.push(everySide);
+    for (const system of systems) system.addConstant(sides.length, constant);
   }
-  if (!luInOrder(matrix, unknowns)) return null;
-  const count = signals.length + (constant === null ? 0 : 1);
-  const excitation = new Float64Array(count * unknowns);
-  sides.forEach(({ conductor }, s) => {
-    const index = signals.indexOf(conductor);
-    if (0 <= index) excitation[index * unknowns + start[s]] = 1;
-    if (constant !== null) excitation[signals.length * unknowns + start[s]] = 1;
-  });
-  const charges = Float64Array.from(excitation);
-  solveUnitLower(matrix, unknowns, charges, count);
-  solveUpperTransposed(matrix, unknowns, excitation, count);
-  const finish = (to: number) => {
-    const products = innerProducts(excitation, charges, unknowns, to, count);
-    return constant === null ? products : neutral(products, count);
-  };
-  return { order: signals.length, fine: finish(unknowns), coarse: finish(coarse), unknowns };
+  const count = sets.length;
+  const fine = new Float64Array(count * count);
+  const coarse = new Float64Array(count * count);
+  let unknowns = 0;
+  for (const system of systems) {
+    const products = system.products(sets);
+    if (products === null) return null;
+    products.fine.forEach((value, at) => { fine[at] += value; });
+    products.coarse.forEach((value, at) => { coarse[at] += value; });
+    unknowns += system.unknowns;
+  }
+  const finish = (products: Float64Array) => (constant === null ? products : neutral(products, count));
+  return { order: signals.length, fine: finish(fine), coarse: finish(coarse), unknowns };
 }
 
-interface Layout {
-  readonly sides: readonly Side[];
-  /** Sides, then panels. */
-  readonly all: readonly Side[];
-  readonly shapes: readonly Shape[];
-  readonly unknowns: number;
-  /** Unknowns of the coarser system, which come first. */
-  readonly coarse: number;
-  /** Of each side and panel: its unknowns in the coarser system, where they start, and where the others do. */
-  readonly kept: Int32Array;
-  readonly start: Int32Array;
-  readonly rest: Int32Array;
+/** One for each system: hundreds of kilobytes, which made afresh cost as much as filling them. */
+const memories: Float64Array[] = [];
+
+function memoryOf(index: number, size: number): Float64Array {
+  if (!(size <= memories[index]?.length)) memories[index] = new Float64Array(size);
+  return memories[index];
 }
 
 /** The coarser system lacks the highest polynomials of every side, one of every panel, and the outermost panels: all must matter little. */
-function layOut(sides: readonly Side[], panels: readonly Side[]): Layout {
-  const all = [...sides, ...panels];
-  const kept = Int32Array.from(all, ({ order }, s) => (s < sides.length ? order - leftOut(order) : s === sides.length || s === all.length - 1 ? 0 : order - 1));
-  const start = new Int32Array(all.length);
-  const rest = new Int32Array(all.length);
-  let at = 0;
-  all.forEach((_, s) => {
-    start[s] = at;
-    at += kept[s];
+function keptOrders(sides: readonly Side[], panels: readonly Side[]): Int32Array {
+  return Int32Array.from([...sides, ...panels], ({ order }, s) => {
+    if (s < sides.length) return order - leftOut(order);
+    return s === sides.length || s === sides.length + panels.length - 1 ? 0 : order - 1;
   });
-  const coarse = at;
-  all.forEach(({ order }, s) => {
-    rest[s] = at;
-    at += order - kept[s];
-  });
-  return { sides, all, shapes: all.map(shapeOf), unknowns: at, coarse, kept, start, rest };
 }
 
-const rowOf = ({ kept, start, rest }: Layout, s: number, m: number) => (m < kept[s] ? start[s] + m : rest[s] + m - kept[s]);
+interface Assembly {
+  readonly problem: FilmProblem;
+  /** Sides, then panels. */
+  readonly all: readonly Side[];
+  readonly shapes: readonly Shape[];
+  /** How many of them are sides. */
+  readonly sides: number;
+  readonly images: Int32Array | null;
+  readonly systems: readonly FoldedSystem[];
+}
+
+/** Whether rows of side or panel `s` are asked for: those of its image say the same. */
+const leads = ({ images }: Assembly, s: number) => images === null || s <= images[s];
 
 const block = new Float64Array(polynomialLimit * polynomialLimit);
 
 /** Into `block`: of the first side's potentials, or of the flux through it, from the second's charge. */
-function writeBlock(kind: 'potential' | 'flux', kernel: Kernel, { all, shapes }: Layout, [first, second]: readonly [number, number]): void {
+function writeBlock(kind: 'potential' | 'flux', kernel: Kernel, { all, shapes }: Assembly, first: number, second: number): void {
   const reach = nearRatio * Math.max(all[first].length, all[second].length);
   const near = acrossGap(all[first], all[second]) < reach && segmentDistance(all[first], all[second]) < reach;
   if (near) block.set(keptBlock({ kind, kernel, first: shapes[first], second: shapes[second], apart: all[second].x0 - all[first].x0 }, (a, b) => computed(kind, kernel, a, b)));
@@ -130,51 +130,67 @@ function computed(kind: 'potential' | 'flux', kernel: Kernel, first: Side, secon
   return block.slice(0, first.order * second.order);
 }
 
-/** Copies `block`, the rows of it those of side or panel `row`; or its transpose. */
-function place(layout: Layout, row: number, column: number, transposed: boolean, matrix: Float64Array): void {
-  const rows = layout.all[row].order;
-  const columns = layout.all[column].order;
-  for (let m = 0; m < rows; m += 1) {
-    const at = rowOf(layout, row, m) * layout.unknowns;
-    for (let n = 0; n < columns; n += 1) matrix[at + rowOf(layout, column, n)] = transposed ? block[n * rows + m] : block[m * columns + n];
-  }
+/** Adds entries to every system's matrix, `values` as FoldedSystem.add takes them. */
+function place({ systems }: Assembly, row: number, column: number, values: Float64Array, from: number, down: number, along: number): void {
+  for (let i = 0; i < systems.length; i += 1) systems[i].add(row, column, values, from, down, along);
 }
 
 /** Potentials of conductors and panels on conductors. */
-function placeConductors({ conductors, kernel }: FilmProblem, layout: Layout, matrix: Float64Array): void {
-  const { all, sides, unknowns } = layout;
+function placeConductors(assembly: Assembly): void {
+  const { problem: { conductors, kernel }, all, sides } = assembly;
   let first = 0;
   for (const conductor of conductors) {
-    const { layer } = conductor.sides[0];
-    const own = ownBlock(conductor, kernel(layer, layer));
-    const rows: number[] = [];
-    conductor.sides.forEach(({ order }, s) => { for (let m = 0; m < order; m += 1) rows.push(rowOf(layout, first + s, m)); });
-    for (let a = 0; a < rows.length; a += 1) for (let b = 0; b < rows.length; b += 1) matrix[rows[a] * unknowns + rows[b]] = own[a * rows.length + b];
     const last = first + conductor.sides.length;
+    placeOwn(assembly, conductor, first);
     for (let s = first; s < last; s += 1) {
       for (let t = last; t < all.length; t += 1) {
+        const mirrored = t < sides && leads(assembly, t);
+        if (!leads(assembly, s) && !mirrored) continue;
         // The kernel wants the side in the higher layer first.
         const [upper, lower] = all[s].layer < all[t].layer ? [t, s] : [s, t];
-        writeBlock('potential', kernel(all[lower].layer, all[upper].layer), layout, [upper, lower]);
-        place(layout, s, t, upper !== s, matrix);
-        if (t < sides.length) place(layout, t, s, upper === s, matrix);
+        writeBlock('potential', kernel(all[lower].layer, all[upper].layer), assembly, upper, lower);
+        const stride = all[lower].order;
+        if (leads(assembly, s)) place(assembly, s, t, block, 0, upper === s ? stride : 1, upper === s ? 1 : stride);
+        if (mirrored) place(assembly, t, s, block, 0, upper === t ? stride : 1, upper === t ? 1 : stride);
       }
     }
     first = last;
   }
 }
 
-/** Fluxes of conductors and panels through panels. */
-function placePanels({ panels, kernel, permittivity, outside }: FilmProblem, layout: Layout, matrix: Float64Array): void {
-  const contrast = (permittivity - outside) / (permittivity + outside);
-  panels.forEach((panel, p) => {
-    layout.all.forEach((source, t) => {
-      writeBlock('flux', kernel(source.layer, panel.layer), layout, [layout.sides.length + p, t]);
-      for (let at = 0; at < panel.order * source.order; at += 1) block[at] *= -contrast * permittivity;
-      if (panel === source) addOwnCharge(panel);
-      place(layout, layout.sides.length + p, t, false, matrix);
-    });
+/** Of a conductor on itself; `first` is the first of its sides. */
+function placeOwn(assembly: Assembly, conductor: ChargedConductor, first: number): void {
+  const { layer } = conductor.sides[0];
+  const own = ownBlock(conductor, assembly.problem.kernel(layer, layer));
+  const stride = conductor.sides.reduce((sum, { order }) => sum + order, 0);
+  let row = 0;
+  conductor.sides.forEach((side, s) => {
+    let column = 0;
+    if (leads(assembly, first + s)) {
+      conductor.sides.forEach(({ order }, t) => {
+        place(assembly, first + s, first + t, own, row * stride + column, stride, 1);
+        column += order;
+      });
+    }
+    row += side.order;
   });
+}
+
+/** Fluxes of conductors and panels through panels. */
+function placePanels(assembly: Assembly): void {
+  const { problem: { kernel, permittivity, outside }, all, sides } = assembly;
+  const contrast = (permittivity - outside) / (permittivity + outside);
+  for (let p = sides; p < all.length; p += 1) {
+    if (!leads(assembly, p)) continue;
+    const panel = all[p];
+    for (let t = 0; t < all.length; t += 1) {
+      const source = all[t];
+      writeBlock('flux', kernel(source.layer, panel.layer), assembly, p, t);
+      for (let at = 0; at < panel.order * source.order; at += 1) block[at] *= -contrast * permittivity;
+      if (p === t) addOwnCharge(panel);
+      place(assembly, p, t, block, 0, source.order, 1);
+    }
+  }
 }
 
 /** pi s, tested with the Legendre polynomials. */
@@ -188,18 +204,6 @@ function addOwnCharge({ basis, order }: Side): void {
       for (let m = 0; m < order; m += 1) block[n * order + m] += values[n] * rule.weighted[g * polynomialLimit + m];
     }
   }
-}
-
-function innerProducts(left: Float64Array, right: Float64Array, stride: number, to: number, count: number): Float64Array {
-  const products = new Float64Array(count * count);
-  for (let a = 0; a < count; a += 1) {
-    for (let b = 0; b < count; b += 1) {
-      let sum = 0;
-      for (let i = 0; i < to; i += 1) sum += left[a * stride + i] * right[b * stride + i];
-      products[a * count + b] = sum;
-    }
-  }
-  return products;
 }
 
 /** C - (C 1)(1^T C) / (1^T C 1), the last row and column belonging to all conductors at potential 1 together. */
