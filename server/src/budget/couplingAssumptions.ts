@@ -1,9 +1,10 @@
 import { kneeFrequency } from '../physics/lines/knee';
 import { inText } from '../units/inText';
-import type { Found, PartContext } from './coupledRun';
+import type { PartContext } from './coupledRun';
 import { assumptionsFor } from './ends';
 import { leadsOf, roleOf } from './excitations';
 import { neighboursEachSide } from './runParts';
+import type { Found } from './worstNoise';
 
 /** What a coupling's numbers rest on beyond the text: a clause each. */
 export function couplingAssumptions({ run, part, roles, windowed }: PartContext, { aggressor, victim }: { aggressor: number; victim: number }, found: Found): readonly string[] {

@@ -7,14 +7,18 @@ import { budgetsOf } from './budgets';
 import { assumptionsFor } from './ends';
 import { isReceiver, rolesOf, type Role, type Roles } from './roles';
 import type { AssumedEnd, Evaluation } from './results';
+import { runKeys } from './runKey';
 import { runOutcome, type RunOutcome } from './runOutcome';
 import { runTraces } from './runMatrices';
 import type { SolveCache } from './solveCache';
+import { solvedRun, type SolvedRun } from './solvedRun';
 
 export function evaluate(project: Project, cache: SolveCache): Evaluation {
   const before = cache.work();
   const roles = rolesOf(project);
-  const outcomes = project.runs.map((run) => guarded(run, roles, cache));
+  const keyOf = runKeys(roles, cache);
+  const solved = (run: Run) => cache.run(keyOf(run), () => solvedRun(run, roles, cache));
+  const outcomes = project.runs.map((run) => guarded(run, roles, solved));
   const budgets = budgetsOf(project, roles, outcomes);
   const after = cache.work();
   return {
@@ -28,9 +32,9 @@ export function evaluate(project: Project, cache: SolveCache): Evaluation {
 }
 
 /** A bug, or numbers beyond what doubles hold, in one run leaves the others standing, and is said where it is. */
-function guarded(run: Run, roles: Roles, cache: SolveCache): RunOutcome {
+function guarded(run: Run, roles: Roles, solved: (run: Run) => SolvedRun): RunOutcome {
   try {
-    return runOutcome(run, roles, cache);
+    return runOutcome(run, roles, solved(run));
   } catch (error) {
     const what = error instanceof Error ? error.message : String(error);
     const traces = runTraces(run);

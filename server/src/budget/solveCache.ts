@@ -11,12 +11,17 @@ import { characteristicImpedance, type LineAlone } from '../physics/lines/charac
 import type { Section, SectionSolution } from '../physics/section/section';
 import { solveSection } from '../physics/section/solveSection';
 import type { WorkDone } from './results';
+import type { SolvedRun } from './solvedRun';
 
 export interface SolveCache {
   /** Solved where it is not known. */
   section(section: Section): KnownSection;
   /** The same for what is drawn from a line; the caller keeps one type to one kind of key. */
   line<Solution extends object>(key: string, solve: () => Solution): Solution;
+  /** All of a run, by every number and name that enters it. */
+  run(key: string, solve: () => SolvedRun): SolvedRun;
+  /** A short name for a long one, in the keys of runs; never given twice. */
+  number(content: string): number;
   /** Counted since the cache was made. */
   work(): WorkDone;
 }
@@ -32,17 +37,22 @@ export interface KnownSection {
 export interface CacheBounds {
   readonly sections: number;
   readonly lines: number;
+  readonly runs: number;
 }
 
 /** Room for a board of 3 000 runs and the edits of an afternoon. */
-const roomy: CacheBounds = { sections: 8192, lines: 32768 };
+const roomy: CacheBounds = { sections: 8192, lines: 32768, runs: 8192 };
 
 export function createSolveCache(bounds: CacheBounds = roomy): SolveCache {
   const sections = new Recent<KnownSection>(bounds.sections);
   const lines = new Recent<object>(bounds.lines);
+  const runs = new Recent<SolvedRun>(bounds.runs);
+  const numbers = new Recent<number>(bounds.runs);
   return {
     section: (section) => sections.find(sectionKey(section), () => known(section, sections.misses)),
     line: <Solution extends object>(key: string, solve: () => Solution) => lines.find(key, solve) as Solution,
+    run: (key, solve) => runs.find(key, solve),
+    number: (content) => numbers.find(content, () => numbers.misses),
     work: () => ({ sectionsSolved: sections.misses, linesSolved: lines.misses }),
   };
 }

@@ -1,0 +1,94 @@
+/**
+ * What of a run rests on nothing but its numbers and names: its matrices, the noise that its nets put on each other,
+ * and where it is beyond a model. Kept under its key, and bound to the text as that now stands: it holds no place
+ * and no object of the board, but indices of the run's conductors, counted through its rows.
+ */
+import type { Run, RunConductor } from '../board/model';
+import type { SectionRefusal } from '../physics/section/section';
+import { seconds, type Length, type Time } from '../units/quantity';
+import { edgesOf } from './excitations';
+import { looseGuards } from './looseGuards';
+import { partLimits, refusalLimits, runLimits } from './modelLimits';
+import type { RunResult } from './results';
+import type { Roles } from './roles';
+import { runMatrices, runTraces } from './runMatrices';
+import { runParts, type RefusedPart, type RunPart } from './runParts';
+import type { SolveCache } from './solveCache';
+import { worstNoise, type FoundByReceiver } from './worstNoise';
+
+export interface SolvedRun {
+  readonly whole: Pick<RunResult, 'matrices' | 'refusal' | 'impedance' | 'delay'>;
+  readonly parts: readonly SolvedPart[];
+  readonly refused: readonly { readonly at: readonly number[]; readonly refusal: SectionRefusal }[];
+  readonly windowed: boolean;
+  readonly loose: readonly { readonly at: number; readonly spacing: Length; readonly largest: Length }[];
+  /** Each a sentence with its range. */
+  readonly limits: readonly string[];
+}
+
+interface SolvedPart extends Omit<HeardPart, 'conductors' | 'traces'> {
+  readonly at: readonly number[];
+}
+
+/** A part with what each of its traces, by index, puts on the others. */
+export interface HeardPart extends RunPart {
+  readonly noise: readonly FoundByReceiver[];
+}
+
+export function solvedRun(run: Run, roles: Roles, cache: SolveCache): SolvedRun {
+  const solved = runParts(run, cache);
+  const parts = solved.parts.map((part): HeardPart => ({ ...part, noise: part.traces.map((_, aggressor) => worstNoise(part, aggressor, { roles, length: run.length.value, cache })) }));
+  const indices = new Map(conductorsOf(run).map((conductor, index) => [conductor, index]));
+  const at = (conductor: RunConductor) => indices.get(conductor) as number;
+  const loose = new Map(parts.flatMap((part) => looseGuards(run, part, fastestEdge(part))).map((each) => [each.guard, each]));
+  return {
+    whole: wholeOf(run, parts, solved.refused),
+    parts: parts.map(({ section, id, conductors, matrices, alone, read, noise }) => ({ section, id, matrices, alone, read, noise, at: conductors.map(at) })),
+    refused: solved.refused.map(({ conductors, refusal }) => ({ at: conductors.map(at), refusal })),
+    windowed: solved.windowed,
+    loose: [...loose.values()].map(({ guard, spacing, largest }) => ({ at: at(guard), spacing, largest })),
+    limits: [...new Set([...runLimits(run, solved), ...parts.flatMap((part) => partLimits(run, part, fastestEdge(part))), ...solved.refused.flatMap((part) => refusalLimits(run, part))])],
+  };
+}
+
+export interface BoundRun {
+  readonly parts: readonly HeardPart[];
+  readonly refused: readonly RefusedPart[];
+  readonly loose: RunResult['looseGuards'];
+}
+
+/** The same, of a run with the same numbers and names, wherever it stands. */
+export function boundTo(run: Run, { parts, refused, loose }: SolvedRun): BoundRun {
+  const all = conductorsOf(run);
+  const bound = (at: readonly number[]) => at.map((index) => all[index]);
+  return {
+    parts: parts.map(({ at, ...part }) => {
+      const conductors = bound(at);
+      return { ...part, conductors, traces: conductors.filter((conductor) => conductor.kind === 'trace') };
+    }),
+    refused: refused.map(({ at, refusal }) => ({ conductors: bound(at), refusal })),
+    loose: loose.flatMap(({ at, spacing, largest }) => {
+      const guard = all[at];
+      return guard.kind === 'guard' ? [{ guard, spacing, largest }] : [];
+    }),
+  };
+}
+
+function conductorsOf({ rows }: Run): readonly RunConductor[] {
+  return rows.length === 1 ? rows[0].conductors : rows.flatMap(({ conductors }) => conductors);
+}
+
+/** 10–90 % */
+function fastestEdge({ traces }: RunPart): Time | null {
+  const edges = traces.filter(({ net }) => net.swing !== null).flatMap(({ net }) => edgesOf(net).map(({ rise }) => rise));
+  return edges.length === 0 ? null : seconds(Math.min(...edges));
+}
+
+function wholeOf(run: Run, parts: readonly RunPart[], refused: readonly RefusedPart[]): SolvedRun['whole'] {
+  const traces = runTraces(run);
+  const refusal: SectionRefusal | null = refused.find((part) => part.refusal.reason !== 'no-signal')?.refusal ?? refused[0]?.refusal ?? null;
+  const alone = new Map(parts.flatMap((part) => part.read.map((index) => [part.traces[index], part.alone[index]] as const)));
+  const all = traces.flatMap((trace) => alone.get(trace) ?? []);
+  if (traces.length === 0 || all.length < traces.length) return { matrices: null, refusal, impedance: [], delay: [] };
+  return { matrices: runMatrices(traces, parts), refusal: null, impedance: all.map(({ impedance }) => impedance), delay: all.map(({ delay }) => delay) };
+}
