@@ -2,17 +2,24 @@
  * Blocks of near pairs, kept with their kernel by the shapes of the two sides and how far they are apart: an edit of a gap, and
  * the next trace of the same width, meet most of them again. Near pairs cost most of a solve.
  *
- * Every block is computed with the first side at the origin and distances rounded, so that it is the same to the last digit
- * whoever asked first.
+ * A pair and its mirror image have the same block but for signs (mirrorImages.ts): the two halves of a box share theirs.
+ * Every block is computed with the first side at the origin, distances rounded, and of the two images always the same one, so
+ * that it is the same to the last digit whoever asked first.
  */
+import { sideBasis } from '../basis/sideBasis';
 import type { Side } from '../basis/side';
 import type { Kernel } from '../kernel/layeredKernel';
 
 /** A side without its place along the section. */
 export interface Shape {
   readonly id: number;
+  readonly key: string;
+  /** From its start to its end, in grains. */
+  readonly across: number;
   /** Starting at x = 0. */
   readonly atOrigin: Side;
+  /** The same side in a mirror, run through backwards. */
+  readonly mirrored: () => Shape;
 }
 
 const shapes = new Map<string, Shape>();
@@ -28,7 +35,9 @@ export function shapeOf(side: Side): Shape {
   if (known !== undefined) return known;
   if (shapeLimit <= shapes.size) shapes.clear();
   const x1 = across * grain;
-  const made = { id: nextId, atOrigin: { ...side, x0: 0, x1, length: Math.hypot(x1, side.y1 - side.y0) } };
+  let image: Shape | null = null;
+  const atOrigin = { ...side, x0: 0, x1, length: Math.hypot(x1, side.y1 - side.y0) };
+  const made: Shape = { id: nextId, key, across, atOrigin, mirrored: () => (image ??= shapeOf({ ...atOrigin, y0: side.y1, y1: side.y0, basis: sideBasis(side.basis.end, side.basis.start) })) };
   nextId += 1;
   shapes.set(key, made);
   return made;
@@ -53,24 +62,51 @@ export interface PairOfShapes {
   readonly apart: number;
 }
 
-/** `compute` gets both sides in place and answers a block of its own. */
-export function keptBlock({ kind, kernel, first, second, apart }: PairOfShapes, compute: (first: Side, second: Side) => Float64Array): Float64Array {
+/** `compute` gets both sides in place and answers a block of its own, row by row of the first side's polynomials. */
+export function keptBlock(pair: PairOfShapes, compute: (first: Side, second: Side) => Float64Array): Float64Array {
+  return keptAt(pair, Math.round(pair.apart / grain), compute);
+}
+
+function keptAt(pair: PairOfShapes, steps: number, compute: (first: Side, second: Side) => Float64Array): Float64Array {
+  const { kind, kernel, first, second } = pair;
   const store = kind === 'potential' ? potentials : fluxes;
   let kept = store.get(kernel);
   if (kept === undefined) store.set(kernel, (kept = { blocks: new Map(), size: 0 }));
-  const pair = first.id * 2 ** 26 + second.id;
-  const steps = Math.round(apart / grain);
-  const known = kept.blocks.get(pair)?.get(steps);
+  const ids = first.id * 2 ** 26 + second.id;
+  const known = kept.blocks.get(ids)?.get(steps);
   if (known !== undefined) return known;
-  const x = steps * grain;
-  const made = compute(first.atOrigin, { ...second.atOrigin, x0: x, x1: x + second.atOrigin.x1 });
+  const made = blockOf(pair, steps, compute);
   if (keptLimit < kept.size + made.length) {
     kept.blocks.clear();
     kept.size = 0;
   }
   kept.size += made.length;
-  const row = kept.blocks.get(pair);
-  if (row === undefined) kept.blocks.set(pair, new Map([[steps, made]]));
+  const row = kept.blocks.get(ids);
+  if (row === undefined) kept.blocks.set(ids, new Map([[steps, made]]));
   else row.set(steps, made);
   return made;
+}
+
+/** Computed as it stands, or taken from its mirror image. */
+function blockOf(pair: PairOfShapes, steps: number, compute: (first: Side, second: Side) => Float64Array): Float64Array {
+  const { first, second } = pair;
+  const stepsInMirror = first.across - second.across - steps;
+  if (stepsInMirror < steps || (stepsInMirror === steps && !mirrorIsFirst(first, second))) {
+    const x = steps * grain;
+    return compute(first.atOrigin, { ...second.atOrigin, x0: x, x1: x + second.atOrigin.x1 });
+  }
+  const image = keptAt({ ...pair, first: first.mirrored(), second: second.mirrored() }, stepsInMirror, compute);
+  const block = Float64Array.from(image);
+  const columns = second.atOrigin.order;
+  for (let m = 0; m * columns < block.length; m += 1) {
+    // Run through backwards, p_n changes its sign with its parity.
+    for (let n = (m + 1) % 2; n < columns && m * columns + n < block.length; n += 2) block[m * columns + n] = -block[m * columns + n];
+  }
+  return block;
+}
+
+/** Which of two images at equal distances is computed: by what they are, not by who came first. */
+function mirrorIsFirst(first: Shape, second: Shape): boolean {
+  const [own, other] = [`${first.key} ${second.key}`, `${first.mirrored().key} ${second.mirrored().key}`];
+  return other < own;
 }
