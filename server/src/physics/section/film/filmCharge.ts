@@ -26,6 +26,7 @@ import { acrossGap, addFluxBlock, plainBasis } from './fluxBlock';
 import { FoldedSystem } from './foldedSystem';
 import { keptBlock, shapeOf, type Shape } from './keptBlocks';
 import { mirrorImages } from './mirrorImages';
+import { writePotentialBlock } from './potentialBlock';
 
 export interface FilmProblem {
   readonly conductors: readonly ChargedConductor[];
@@ -118,7 +119,9 @@ function writeBlock(kind: 'potential' | 'flux', kernel: Kernel, { all, shapes }:
 const nearRatio = 1.5;
 
 function compute(kind: 'potential' | 'flux', kernel: Kernel, first: Side, second: Side): void {
-  if (kind === 'potential') writeSideBlock(first, second, kernel, block);
+  // Two conductors may be as near as they like, and are no more than a few pairs.
+  if (kind === 'potential' && 0 <= first.conductor && 0 <= second.conductor) writeSideBlock(first, second, kernel, block);
+  else if (kind === 'potential') writePotentialBlock(first, second, kernel, block);
   else {
     block.fill(0, 0, first.order * second.order);
     addFluxBlock(kernel, first, second, 1, block);

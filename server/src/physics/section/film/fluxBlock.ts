@@ -17,6 +17,7 @@ import { imageOf } from '../galerkin/pairIntegral';
 import { segmentDistance } from '../galerkin/segmentDistance';
 import type { Family, Image, Kernel, KernelRest } from '../kernel/layeredKernel';
 import { writeFluxMoments } from './fluxMoments';
+import { nearRule } from './nearRules';
 
 /** Adds scale × flux to `block`, target.order × source.order. */
 export function addFluxBlock(kernel: Kernel, target: Side, source: Side, scale: number, block: Float64Array): void {
@@ -152,7 +153,7 @@ function addNearLogarithm(target: Side, source: Side, scale: number, block: Floa
   if (level < deepest && distance < clearance * source.length * size) {
     addNearLogarithm(target, source, scale, block, level + 1, 2 * index);
     addNearLogarithm(target, source, scale, block, level + 1, 2 * index + 1);
-  } else addExact(target, source, level === 0 ? source.basis.whole(source.order + 6) : source.basis.part(level, index), scale, block);
+  } else addExact(target, source, nearRule(source.basis, level, index, distance / (source.length * size), source.order), scale, block);
 }
 
 function pointDistance(x: number, y: number, x0: number, y0: number, x1: number, y1: number): number {
