@@ -12,7 +12,18 @@ export function luInOrder(matrix: Float64Array, order: number): boolean {
   for (let i = 0; i < order; i += 1) {
     const row = i * order;
     const before = Math.abs(matrix[row + i]);
-    for (let k = 0; k < i; k += 1) {
+    let k = 0;
+    // Two rows at a time: the row that is worked on is read and written half as often.
+    for (; k + 1 < i; k += 2) {
+      const top = k * order;
+      const next = top + order;
+      const factor = matrix[row + k] / matrix[top + k];
+      const second = (matrix[row + k + 1] - factor * matrix[top + k + 1]) / matrix[next + k + 1];
+      matrix[row + k] = factor;
+      matrix[row + k + 1] = second;
+      for (let j = k + 2; j < order; j += 1) matrix[row + j] -= factor * matrix[top + j] + second * matrix[next + j];
+    }
+    if (k < i) {
       const top = k * order;
       const factor = matrix[row + k] / matrix[top + k];
       matrix[row + k] = factor;

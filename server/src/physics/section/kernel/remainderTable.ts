@@ -81,13 +81,23 @@ export class RemainderTable {
     const cell = this.cellAt(re, im);
     const zr = re - cell[stride];
     const zi = im - cell[stride + 1];
-    let fr = 0;
-    let fi = 0;
-    for (let n = order; 0 < n; n -= 1) {
-      const next = fr * zr - fi * zi + n * cell[2 * n];
-      fi = fr * zi + fi * zr + n * cell[2 * n + 1];
-      fr = next;
+    // F' = sum of n c_n z^(n-1), even and odd powers side by side as above.
+    const sr = zr * zr - zi * zi;
+    const si = 2 * zr * zi;
+    let er = order * cell[2 * order];
+    let ei = order * cell[2 * order + 1];
+    let or = 0;
+    let oi = 0;
+    for (let n = order - 2; 0 < n; n -= 2) {
+      const nextOdd = or * sr - oi * si + (n + 1) * cell[2 * n + 2];
+      const nextEven = er * sr - ei * si + n * cell[2 * n];
+      oi = or * si + oi * sr + (n + 1) * cell[2 * n + 3];
+      ei = er * si + ei * sr + n * cell[2 * n + 1];
+      or = nextOdd;
+      er = nextEven;
     }
+    const fr = er + or * zr - oi * zi;
+    const fi = ei + or * zi + oi * zr;
     return fr * a - fi * b;
   }
 
