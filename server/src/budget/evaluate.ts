@@ -11,13 +11,13 @@ import { runKeys } from './runKey';
 import { runOutcome, type RunOutcome } from './runOutcome';
 import { runTraces } from './runMatrices';
 import type { SolveCache } from './solveCache';
-import { solvedRun, type SolvedRun } from './solvedRun';
+import { keepSolution, solvedRun, type SolvedRun } from './solvedRun';
 
 export function evaluate(project: Project, cache: SolveCache): Evaluation {
   const before = cache.work();
   const roles = rolesOf(project);
   const keyOf = runKeys(roles, cache);
-  const solved = (run: Run) => cache.run(keyOf(run), () => solvedRun(run, roles, cache));
+  const solved = (run: Run) => keepSolution(run, cache.run(keyOf(run), () => solvedRun(run, roles, cache)));
   const outcomes = project.runs.map((run) => guarded(run, roles, solved));
   const budgets = budgetsOf(project, roles, outcomes);
   const after = cache.work();

@@ -51,6 +51,18 @@ export function solvedRun(run: Run, roles: Roles, cache: SolveCache): SolvedRun 
   };
 }
 
+const solutions = new WeakMap<Run, SolvedRun>();
+
+/** What a run was found to be when it was evaluated: the same object for the same numbers and names, while it is kept. */
+export function solutionOf(run: Run): SolvedRun | undefined {
+  return solutions.get(run);
+}
+
+export function keepSolution(run: Run, solved: SolvedRun): SolvedRun {
+  solutions.set(run, solved);
+  return solved;
+}
+
 export interface BoundRun {
   readonly parts: readonly HeardPart[];
   readonly refused: readonly RefusedPart[];

@@ -37,14 +37,10 @@ export function partOf(budget: Budget | null, { from, where }: Contribution): nu
   return budget?.contributions.find((other) => other.from === from && other.where === where)?.value ?? 0;
 }
 
-/**
- * The receivers' runs, and those of the nets that lie beside them there: what of a net lies outside a
- * run is its length less all its runs. Nets that lie in none of them are left out with their budgets.
- */
+/** The runs that the receivers lie in, and the nets in those: nothing else puts anything on them. */
 function changed(project: Project, changes: readonly Change[], budgets: readonly Budget[]): Project {
   const receivers = new Set(budgets.flatMap(({ subject }) => (subject.kind === 'net' ? [subject.name] : [subject.plus?.name, subject.minus?.name])));
-  const beside = new Set(project.runs.map(netsOf).filter((nets) => nets.some(({ name }) => receivers.has(name))).flat());
-  const runs = project.runs.filter((run) => netsOf(run).some((net) => beside.has(net)));
+  const runs = project.runs.filter((run) => netsOf(run).some(({ name }) => receivers.has(name)));
   const concerned = new Set(runs.flatMap(netsOf));
   return {
     ...project,

@@ -8,5 +8,5 @@ export interface Server {
   readonly documents: Documents;
   readonly settings: Settings;
   /** See `guard.ts`: `otherwise` is answered where `answer` has a fault. */
-  readonly guard: <P, R>(name: string, otherwise: R, answer: (params: P) => Promise<R>) => (params: P, token: CancellationToken) => Promise<R>;
+  readonly guard: <P, R>(name: string, otherwise: R, answer: (params: P, token: CancellationToken) => Promise<R>) => (params: P, token: CancellationToken) => Promise<R>;
 }

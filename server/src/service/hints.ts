@@ -10,26 +10,54 @@ import { sufficientGap, sufficientLength, type Sufficient } from '../fixes/suffi
 import { traceOf } from '../rules/gapsBetween';
 import type { Span } from '../syntax/tree';
 import { inText } from '../units/inText';
-import type { Hint } from './answers';
+import type { Hint, HintKind } from './answers';
 import { escaped, paragraphs, percent } from './hover/markdown';
 import type { Session } from './session';
 
 /** In the order of the text. */
 export function hints(session: Session, path: string, span: Span): readonly Hint[] {
-  const found = new Map<string, Hint>();
+  return [...hintsOf(session, path, span)].filter((hint) => hint !== null).sort((a, b) => a.offset - b.offset);
+}
+
+/**
+ * One by one, since each may take a search: whoever asks can do other work between two of them. Null stands for work
+ * that gave none. They are those of the text as it is at the first; when it changes, there are no more.
+ */
+export function* hintsOf(session: Session, path: string, span: Span, wants: Wanted = () => true): Generator<Hint | null> {
+  const said = new Set<string>();
   for (const root of session.projectsOf(path)) {
-    const inSight = session.project(root).runs.filter(({ whole }) => isIn(whole, path, span));
-    if (inSight.length === 0) continue;
+    const project = session.project(root);
+    const inSight = new Set(project.runs.filter(({ whole }) => isIn(whole, path, span)));
+    if (inSight.size === 0) continue;
     const { evaluation } = session.analyse(root);
     const context = session.fixContext(root);
-    for (const run of inSight) {
-      const result = evaluation.runs.find((each) => each.run === run);
-      const all = result === undefined ? [] : [...noiseHints(evaluation, result), ...gapHints(context, run), ...lengthHints(context, run)];
-      // Two projects that hold the run say the same once; what they say differently stands side by side.
-      for (const { place, hint } of all) if (isIn(place, path, span)) found.set(`${hint.offset} ${hint.parts.map(({ text }) => text).join('')}`, hint);
+    for (const result of evaluation.runs) {
+      if (!inSight.has(result.run)) continue;
+      for (const placed of hintsOfRun(context, result, (kind, place) => wants(kind) && isIn(place, path, span))) {
+        yield placed === null ? null : once(said, placed.hint);
+        if (session.project(root) !== project) return;
+      }
     }
   }
-  return [...found.values()].sort((a, b) => a.offset - b.offset);
+}
+
+/** Two projects that hold a run say the same once; what they say differently stands side by side. */
+function once(said: Set<string>, hint: Hint): Hint | null {
+  const identity = `${hint.offset} ${hint.parts.map(({ text }) => text).join('')}`;
+  if (said.has(identity)) return null;
+  said.add(identity);
+  return hint;
+}
+
+/** A kind that nobody sees is not searched for. */
+type Wanted = (kind: HintKind) => boolean;
+type WantedAt = (kind: HintKind, place: Place) => boolean;
+
+function* hintsOfRun(context: FixContext, result: RunResult, wants: WantedAt): Generator<Placed | null> {
+  const { run } = result;
+  for (const noise of noiseHints(context.evaluation, result)) if (wants('noise', noise.place)) yield noise;
+  yield* gapHints(context, run, wants);
+  if (wants('length', run.length.place)) yield lengthHint(context, run);
 }
 
 interface Placed {
@@ -80,22 +108,20 @@ function noiseHint(run: Run, { net, whole }: RunConductor & { readonly kind: 'tr
   };
 }
 
-function gapHints(context: FixContext, run: Run): readonly Placed[] {
-  const placed: Placed[] = [];
+function* gapHints(context: FixContext, run: Run, wants: WantedAt): Generator<Placed | null> {
   const seen = new Set<number>();
-  run.rows.flatMap((row) => row.gaps).forEach(({ place }, index) => {
+  for (const [index, { place }] of run.rows.flatMap((row) => row.gaps).entries()) {
     // The gaps of a `spaced` range are one number in the text.
-    if (seen.has(place.span.start)) return;
+    if (seen.has(place.span.start) || !wants('gap', place)) continue;
     seen.add(place.span.start);
     const sufficient = sufficientGap(context, run, index);
-    if (sufficient !== null) placed.push({ place, hint: sufficientHint('gap', place, sufficient) });
-  });
-  return placed;
+    yield sufficient === null ? null : { place, hint: sufficientHint('gap', place, sufficient) };
+  }
 }
 
-function lengthHints(context: FixContext, run: Run): readonly Placed[] {
+function lengthHint(context: FixContext, run: Run): Placed | null {
   const sufficient = sufficientLength(context, run);
-  return sufficient === null ? [] : [{ place: run.length.place, hint: sufficientHint('length', run.length.place, sufficient) }];
+  return sufficient === null ? null : { place: run.length.place, hint: sufficientHint('length', run.length.place, sufficient) };
 }
 
 function sufficientHint(kind: 'gap' | 'length', place: Place, { written, enough, receivers }: Sufficient): Hint {
