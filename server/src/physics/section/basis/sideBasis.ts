@@ -72,10 +72,16 @@ function makeBasis(start: number, end: number): SideBasis {
     self: (order) => {
       // The work grows with the cube of the size: most sides need a small one.
       const stride = order <= 8 ? 8 : polynomialLimit;
-      if (self.stride < stride) self = { stride, entries: selfTable(basis, stride) };
+      // The walls of a conductor have the same exponents the other way round.
+      if (self.stride < stride) self = { stride, entries: start < end ? runBackwards(basis.reversed().self(stride)) : selfTable(basis, stride) };
       return self;
     },
     tables: new Map(),
   };
   return basis;
+}
+
+/** Of the reversed side: p_m and p_n change their signs with their parities. */
+function runBackwards({ stride, entries }: SelfTable): Float64Array {
+  return entries.map((value, at) => ((Math.floor(at / stride) + (at % stride)) % 2 === 0 ? value : -value));
 }

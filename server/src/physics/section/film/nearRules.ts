@@ -12,15 +12,18 @@ import type { SideBasis } from '../basis/sideBasis';
 const digits = 13;
 /** Of the ellipse through a point one part's length off its end, where the edge's power is singular. */
 const besideEdge = Math.log(3 + Math.sqrt(8));
-const leastPoints = 4;
-const mostPoints = 16;
+/** Few kinds of rule: making one costs as much as a dozen uses. */
+const counts = [4, 6, 8, 10, 13, 16];
 
 /** `relative` is the distance of the kernel's singularity over the part's length; level 0 is the whole side. */
 export function nearRule(basis: SideBasis, level: number, index: number, relative: number, order: number): PartRule {
   const ellipse = Math.log(2 * relative + Math.sqrt(4 * relative * relative + 1));
   const tame = level === 0 ? ellipse : Math.min(ellipse, besideEdge);
-  const count = Math.min(mostPoints, Math.max(leastPoints, Math.ceil((digits + order) / (2 * tame))));
-  if (level === 0) return basis.whole(Math.max(count, order));
+  const wanted = Math.max((digits + order) / (2 * tame), level === 0 ? order : 0);
+  let at = 0;
+  while (at < counts.length - 1 && counts[at] < wanted) at += 1;
+  const count = counts[at];
+  if (level === 0) return basis.whole(count);
   let rules = kept.get(basis);
   if (rules === undefined) kept.set(basis, (rules = new Map()));
   const key = (2 ** level + index) * 32 + count;
