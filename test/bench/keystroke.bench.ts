@@ -45,7 +45,19 @@ function keystroke(): number {
 }
 
 /** What an editor shows at once around the edit. */
-const screen = 1500;
+function screenAt(at: number) {
+  return { start: at - 750, end: at + 750 };
+}
+
+/** The same screen as before the edit, shown and searched through already. */
+function shownBefore(): number {
+  session.setText(path, text);
+  const { edited, at } = editedGap();
+  hints(session, path, screenAt(at));
+  session.setText(path, edited);
+  session.analyse(path);
+  return at;
+}
 
 function failing() {
   const at = keystroke();
@@ -61,6 +73,7 @@ export const cases = [
   { name: 'findings', prepare: () => evaluate(projectOf(editedGap().edited), cache), run: findingsOf },
   { name: 'edit to findings', prepare: editedGap, run: ({ edited }: { edited: string }) => { session.setText(path, edited); return session.findings(path); } },
   { name: 'hover after it', prepare: () => { const at = keystroke(); session.analyse(path); return at; }, run: (at: number) => hover(session, path, at) },
-  { name: 'hints of a screen after it', prepare: () => { const at = keystroke(); session.analyse(path); return at; }, run: (at: number) => hints(session, path, { start: at - screen / 2, end: at + screen / 2 }) },
+  { name: 'hints of the screen after it', prepare: shownBefore, run: (at: number) => hints(session, path, screenAt(at)) },
+  { name: 'hints of a screen never shown', prepare: () => { const at = keystroke(); session.analyse(path); return at; }, run: (at: number) => hints(session, path, screenAt(at)) },
   { name: 'fixes of one finding after it', prepare: failing, run: (finding: ReturnType<typeof failing>) => fixesFor(finding, session.fixContext(path)) },
 ];

@@ -19,7 +19,7 @@ export function largeBoard(runs: number, seed = 1): LargeBoard {
     'board large { combine worst; headroom 6 dB; clearance 0.12 mm }',
     'stackup {\n  mask 20 um er 3.5 flat\n  copper TOP 35 um\n  prepreg 0.2 mm er 4.2\n  plane GND 18 um\n}',
     ...names.map((index) => `## Drives the load of channel ${index}.\nnet DRIVE_${index} {\n  swing ${random.pick(['3.3 V', '5 V', '12 V'])}; rise ${random.pick(['2 ns', '5 ns', '20 ns'])}\n  source ${random.pick(['10 ohm', '33 ohm'])}; load ${random.pick(['10 kohm, 20 pF', '1 kohm', '50 ohm'])}\n}`),
-    ...names.map((index) => `net SENSE_${index} {\n  source ${random.pick(['50 ohm', '1 kohm'])}\n  load ${random.pick(['1 Mohm, 10 pF', '10 kohm', '50 ohm'])}\n  tolerates ${random.pick(['5 mV', '20 mV', '100 mV'])} peak  # by its comparator\n}`),
+    ...names.map((index) => `net SENSE_${index} {\n  source ${random.pick(['50 ohm', '1 kohm'])}\n  load ${random.pick(['1 Mohm, 10 pF', '10 kohm', '50 ohm'])}\n  tolerates ${random.pick(['50 mV', '0.3 V', '0.8 V'])} peak  # by its comparator\n}`),
     ...Array.from({ length: runs }, (_, index) => runOf(random, index, pairs)),
   ].join('\n\n');
   return { text: `${text}\n`, gaps: [...text.matchAll(/gap +(\d+\.\d+) mm/g)].map((match) => ({ start: match.index + match[0].indexOf(match[1]!), end: match.index + match[0].indexOf(match[1]!) + match[1]!.length })) };

@@ -4,6 +4,7 @@
  */
 import type { Given, Run } from '../board/model';
 import type { Budget } from '../budget/results';
+import { totalOf } from '../budget/totals';
 import type { Length } from '../units/quantity';
 import type { FixContext } from './fix';
 import { search, type SearchResult } from './search';
@@ -34,11 +35,21 @@ export interface Goal {
   readonly budgets: readonly Budget[];
   /** Logarithm of what there is over what is wanted. */
   excess(trial: Trial): number;
+  /** It is missed whatever becomes of these runs: there is no need to try. */
+  missedWithout?(runs: ReadonlySet<Run>): boolean;
 }
 
 /** Down to what the budgets tolerate, less the headroom. */
 export function withinBudget(context: FixContext, budgets: readonly Budget[]): Goal {
-  return { budgets, excess: ({ budgets: after }) => excessOf(after, context.project) };
+  return {
+    budgets,
+    excess: ({ budgets: after }) => excessOf(after, context.project),
+    // Magnitudes only add: what comes from elsewhere is the least that a receiver will have.
+    missedWithout: (runs) => budgets.some((budget) => {
+      const elsewhere = budget.contributions.filter(({ coupling }) => coupling === null || !runs.has(coupling.run));
+      return 0 < excessOf([{ ...budget, total: totalOf(elsewhere, budget.combine).total }], context.project);
+    }),
+  };
 }
 
 /** Null where it cannot be computed. */
@@ -46,14 +57,14 @@ export function solve(context: FixContext, adjustables: readonly [Adjustable, ..
   const excessAt = (values: readonly Length[]) => goal.excess(trial(context, changesTo(adjustables, values), goal.budgets));
   const atFactor = (factor: number) => adjustables.map(({ given }) => (given.value * factor) as Length);
   const tolerance = Math.min(...adjustables.map(({ given, written }) => written.grid / given.value / 4), 0.01);
-  const found = search({
-    excess: (factor) => excessAt(atFactor(factor)),
-    better: adjustables[0].outward === 'up' ? 'more' : 'less',
-    smallest: Math.max(...adjustables.map(({ given, smallest }) => smallest / given.value)),
-    largest: Math.min(...adjustables.map(({ given, largest }) => largest / given.value)),
-    tolerance,
-    slope: adjustables[0].slope,
-  });
+  const better = adjustables[0].outward === 'up' ? 'more' : 'less';
+  const smallest = Math.max(...adjustables.map((each) => each.smallest / each.given.value));
+  const largest = Math.min(...adjustables.map((each) => each.largest / each.given.value));
+  if (goal.missedWithout?.(new Set(adjustables.map(({ run }) => run))) === true) {
+    const [values] = roundedCandidates(adjustables, { factor: better === 'more' ? largest : smallest, enough: false, evaluations: 0 }, tolerance);
+    return { values: values!, enough: false, evaluations: 0, changes: changesTo(adjustables, values!) };
+  }
+  const found = search({ excess: (factor) => excessAt(atFactor(factor)), better, smallest, largest, tolerance, slope: adjustables[0].slope });
   if (found === null) return null;
   let { evaluations } = found;
   for (const values of roundedCandidates(adjustables, found, tolerance)) {
