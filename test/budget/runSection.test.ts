@@ -1,6 +1,6 @@
 import { describe, it } from 'node:test';
 import assert from 'node:assert/strict';
-import { runSections } from '../../server/src/budget/runSection';
+import { runSections } from '../../server/src/budget/runs/runSection';
 import { sectionKey } from '../../server/src/budget/solveCache';
 import type { Section } from '../../server/src/physics/section/section';
 import { projectOf } from './project';

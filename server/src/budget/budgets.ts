@@ -8,7 +8,7 @@ import { decibels, volts, type Decibels, type Voltage } from '../units/quantity'
 import { notYetCounted, notYetCountedPair } from './notYetCounted';
 import type { Budget, Contribution, Coupling, Unaccounted, Verdict } from './results';
 import type { Roles } from './roles';
-import type { RunOutcome } from './runOutcome';
+import type { RunOutcome } from './runs/runOutcome';
 import { thermalContribution } from './thermalContribution';
 import { totalOf } from './totals';
 

@@ -7,11 +7,11 @@ import { budgetsOf } from './budgets';
 import { assumptionsFor } from './ends';
 import { isReceiver, rolesOf, type Role, type Roles } from './roles';
 import type { AssumedEnd, Evaluation } from './results';
-import { runKeys } from './runKey';
-import { runOutcome, type RunOutcome } from './runOutcome';
-import { runTraces } from './runMatrices';
+import { runKeys } from './runs/runKey';
+import { runOutcome, type RunOutcome } from './runs/runOutcome';
+import { runTraces } from './runs/runMatrices';
 import type { SolveCache } from './solveCache';
-import { keepSolution, solvedRun, type SolvedRun } from './solvedRun';
+import { keepSolution, solvedRun, type SolvedRun } from './runs/solvedRun';
 
 export function evaluate(project: Project, cache: SolveCache): Evaluation {
   const before = cache.work();

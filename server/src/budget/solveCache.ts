@@ -11,7 +11,7 @@ import { characteristicImpedance, type LineAlone } from '../physics/lines/charac
 import type { Section, SectionSolution } from '../physics/section/section';
 import { solveSection } from '../physics/section/solveSection';
 import type { WorkDone } from './results';
-import type { SolvedRun } from './solvedRun';
+import type { SolvedRun } from './runs/solvedRun';
 
 export interface SolveCache {
   /** Solved where it is not known. */

@@ -5,7 +5,7 @@
  */
 import type { Run } from '../board/model';
 import type { Budget, Evaluation } from '../budget/results';
-import { solutionOf } from '../budget/solvedRun';
+import { solutionOf } from '../budget/runs/solvedRun';
 import { gapsBetween } from '../rules/gapsBetween';
 import type { Length } from '../units/quantity';
 import type { GapPlace } from './changedRun';

@@ -1,7 +1,7 @@
 /** A run, and what of it stands at a point: a trace, a guard or return, a gap, its length. */
 import type { RunConductor } from '../../board/model';
 import type { RunResult } from '../../budget/results';
-import { refusalInText } from '../../budget/refusalInText';
+import { refusalInText } from '../../budget/runs/refusalInText';
 import type { FixContext } from '../../fixes/fix';
 import { sufficientGap, sufficientLength, type Sufficient } from '../../fixes/sufficient';
 import { gapsBetween } from '../../rules/gapsBetween';

@@ -4,10 +4,10 @@
  *
  * Formula   largest = 1 / (20 · knee · delay), with the slowest propagation in the run
  */
-import type { Run } from '../board/model';
-import { kneeFrequency } from '../physics/lines/knee';
-import { metres, type Time } from '../units/quantity';
-import type { LooseGuard } from './results';
+import type { Run } from '../../board/model';
+import { kneeFrequency } from '../../physics/lines/knee';
+import { metres, type Time } from '../../units/quantity';
+import type { LooseGuard } from '../results';
 import type { RunPart } from './runParts';
 
 /** `fastest`: the shortest 10–90 % time of what moves in the part; null where nothing does. */

@@ -13,9 +13,9 @@
  *
  * Deliberately absent: tolerances, and any judgement of whether the section can be solved.
  */
-import type { CopperRow, Run, RunConductor, RunRow, StackupRow } from '../board/model';
-import type { Section, SectionConductor, SectionFilm, SectionLayer } from '../physics/section/section';
-import { metres } from '../units/quantity';
+import type { CopperRow, Run, RunConductor, RunRow, StackupRow } from '../../board/model';
+import type { Section, SectionConductor, SectionFilm, SectionLayer } from '../../physics/section/section';
+import { metres } from '../../units/quantity';
 import { canonicalSection } from './canonicalSection';
 
 /** A part of a run that no plane separates, as the solver sees it. */

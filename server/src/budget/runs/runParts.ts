@@ -4,12 +4,12 @@
  * conductors than are solved at once; then each receiver has a part of its own, with its nearest
  * neighbours on each side.
  */
-import type { Run, RunConductor } from '../board/model';
-import type { LineAlone } from '../physics/lines/characteristicImpedance';
-import type { Section, SectionMatrices, SectionRefusal } from '../physics/section/section';
+import type { Run, RunConductor } from '../../board/model';
+import type { LineAlone } from '../../physics/lines/characteristicImpedance';
+import type { Section, SectionMatrices, SectionRefusal } from '../../physics/section/section';
 import { canonicalSection } from './canonicalSection';
 import { runSections, type RunSection } from './runSection';
-import type { SolveCache } from './solveCache';
+import type { SolveCache } from '../solveCache';
 
 export type Trace = RunConductor & { readonly kind: 'trace' };
 

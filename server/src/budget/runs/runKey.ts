@@ -2,9 +2,9 @@
  * The name of a run under which its solution is kept: every number and name that enters it, exactly. Whatever
  * `solvedRun` comes to read of a run, a stackup or a net has to stand here.
  */
-import type { End, Net, Run, RunConductor, Stackup } from '../board/model';
-import { isReceiver, type Role, type Roles } from './roles';
-import type { SolveCache } from './solveCache';
+import type { End, Net, Run, RunConductor, Stackup } from '../../board/model';
+import { isReceiver, type Role, type Roles } from '../roles';
+import type { SolveCache } from '../solveCache';
 
 /** Keys of one project's runs: its nets and stackups are written out once. */
 export function runKeys(roles: Roles, cache: SolveCache): (run: Run) => string {

@@ -3,17 +3,17 @@
  * and where it is beyond a model. Kept under its key, and bound to the text as that now stands: it holds no place
  * and no object of the board, but indices of the run's conductors, counted through its rows.
  */
-import type { Run, RunConductor } from '../board/model';
-import type { SectionRefusal } from '../physics/section/section';
-import { seconds, type Length, type Time } from '../units/quantity';
+import type { Run, RunConductor } from '../../board/model';
+import type { SectionRefusal } from '../../physics/section/section';
+import { seconds, type Length, type Time } from '../../units/quantity';
 import { edgesOf } from './excitations';
 import { looseGuards } from './looseGuards';
 import { partLimits, refusalLimits, runLimits } from './modelLimits';
-import type { RunResult } from './results';
-import type { Roles } from './roles';
+import type { RunResult } from '../results';
+import type { Roles } from '../roles';
 import { runMatrices, runTraces } from './runMatrices';
 import { runParts, type RefusedPart, type RunPart } from './runParts';
-import type { SolveCache } from './solveCache';
+import type { SolveCache } from '../solveCache';
 import { worstNoise, type FoundByReceiver } from './worstNoise';
 
 export interface SolvedRun {

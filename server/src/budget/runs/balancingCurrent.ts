@@ -13,11 +13,11 @@
  * Source    Ott, shield cut-off frequency, and Paul, from memory; 0.4 to 0.8 MHz for 0.25 mm of 35 µm copper
  * Range     resistance at dc: at the corner the skin effect adds less than 2 % to copper up to 100 µm
  */
-import type { Section, SectionConductor } from '../physics/section/section';
-import { copperResistivity, mu0 } from '../units/constants';
-import type { Frequency } from '../units/quantity';
+import type { Section, SectionConductor } from '../../physics/section/section';
+import { copperResistivity, mu0 } from '../../units/constants';
+import type { Frequency } from '../../units/quantity';
 import type { RunPart } from './runParts';
-import type { SolveCache } from './solveCache';
+import type { SolveCache } from '../solveCache';
 
 /** H/m, in the order of the part's traces; null where the guards and returns balance at this frequency. */
 export function slowInductance(part: RunPart, knee: Frequency, cache: SolveCache): Float64Array | null {

@@ -6,18 +6,18 @@
  * than that, such as that of a high-impedance node, is followed by the lumped circuit of the same run,
  * whose peak counts where it is larger.
  */
-import { prepareLines } from '../physics/lines/lineResponse';
-import { lumpedRun } from '../physics/lines/lumpedRun';
-import type { CoupledLines, LineResponse, Ramp, Waveform } from '../physics/lines/lines';
-import { peakOf } from '../physics/lines/peak';
-import { thinnedWaveform } from '../physics/lines/waveform';
-import { couplingShares, type CouplingShares } from '../physics/lines/shares';
-import { observationWindow, oneWayDelay, stillGrowing } from '../physics/lines/window';
-import { peakInBand, type Band } from '../physics/noise/receiverBand';
-import { seconds, volts, type Frequency, type Length, type Time, type Voltage } from '../units/quantity';
+import { prepareLines } from '../../physics/lines/lineResponse';
+import { lumpedRun } from '../../physics/lines/lumpedRun';
+import type { CoupledLines, LineResponse, Ramp, Waveform } from '../../physics/lines/lines';
+import { peakOf } from '../../physics/lines/peak';
+import { thinnedWaveform } from '../../physics/lines/waveform';
+import { couplingShares, type CouplingShares } from '../../physics/lines/shares';
+import { observationWindow, oneWayDelay, stillGrowing } from '../../physics/lines/window';
+import { peakInBand, type Band } from '../../physics/noise/receiverBand';
+import { seconds, volts, type Frequency, type Length, type Time, type Voltage } from '../../units/quantity';
 import type { Arrangement } from './excitations';
 import type { RunPart } from './runParts';
-import type { SolveCache } from './solveCache';
+import type { SolveCache } from '../solveCache';
 
 export interface LineRequest {
   readonly part: RunPart;

@@ -1,5 +1,5 @@
-import type { RunConductor } from '../board/model';
-import type { SectionRefusal } from '../physics/section/section';
+import type { RunConductor } from '../../board/model';
+import type { SectionRefusal } from '../../physics/section/section';
 
 /** Why a run has no numbers: a clause to follow "run alley:". */
 export function refusalInText(refusal: SectionRefusal, conductors: readonly RunConductor[]): string {

@@ -1,11 +1,11 @@
 /** The couplings of a part of a run as the text now names and places them, and what its receivers lack. */
-import type { Net, Run } from '../board/model';
-import { volts } from '../units/quantity';
+import type { Net, Run } from '../../board/model';
+import { volts } from '../../units/quantity';
 import { couplingAssumptions } from './couplingAssumptions';
 import { roleOf } from './excitations';
-import { absent, uncountedSourcesOf } from './notYetCounted';
-import type { Coupling, Unaccounted } from './results';
-import type { Role, Roles } from './roles';
+import { absent, uncountedSourcesOf } from '../notYetCounted';
+import type { Coupling, Unaccounted } from '../results';
+import type { Role, Roles } from '../roles';
 import type { RunPart, Trace } from './runParts';
 import type { HeardPart } from './solvedRun';
 import { isFiniteNoise, receiversOf, type Found } from './worstNoise';

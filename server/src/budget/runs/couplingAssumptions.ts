@@ -1,7 +1,7 @@
-import { kneeFrequency } from '../physics/lines/knee';
-import { inText } from '../units/inText';
+import { kneeFrequency } from '../../physics/lines/knee';
+import { inText } from '../../units/inText';
 import type { PartContext } from './coupledRun';
-import { assumptionsFor } from './ends';
+import { assumptionsFor } from '../ends';
 import { leadsOf, roleOf } from './excitations';
 import { neighboursEachSide } from './runParts';
 import type { Found } from './worstNoise';

@@ -4,8 +4,8 @@
  * what lies on its top; its leftmost edge at zero; lengths on a grid far below any that matters, so that a
  * height which went through other sums is the same height.
  */
-import type { Section, SectionConductor } from '../physics/section/section';
-import { metres } from '../units/quantity';
+import type { Section, SectionConductor } from '../../physics/section/section';
+import { metres } from '../../units/quantity';
 
 export function canonicalSection(section: Section): Section {
   return onGrid(hangs(section) ? upsideDown(section) : section);

@@ -3,8 +3,8 @@
  * do not couple. Where each receiver has a part of its own, a mutual is the mean of what the two
  * neighbourhoods say, and nothing beyond them.
  */
-import type { Run } from '../board/model';
-import type { SectionMatrices } from '../physics/section/section';
+import type { Run } from '../../board/model';
+import type { SectionMatrices } from '../../physics/section/section';
 import type { RunPart, Trace } from './runParts';
 
 export function runTraces(run: Run): readonly Trace[] {

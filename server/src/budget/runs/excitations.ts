@@ -5,13 +5,13 @@
  *   source -[ lead ]-- run -- [ lead ]- load                  right unless it is `reversed`; a net that is
  *                                                             `both ways` is also driven from its load end
  */
-import type { Net } from '../board/model';
-import { rampDuration } from '../physics/lines/knee';
-import type { Termination } from '../physics/lines/lines';
-import { seconds, type Length, type Time } from '../units/quantity';
-import { hasUnstatedSource, loadEnd, sourceEnd, type UnstatedSource } from './ends';
+import type { Net } from '../../board/model';
+import { rampDuration } from '../../physics/lines/knee';
+import type { Termination } from '../../physics/lines/lines';
+import { seconds, type Length, type Time } from '../../units/quantity';
+import { hasUnstatedSource, loadEnd, sourceEnd, type UnstatedSource } from '../ends';
 import type { RunPart, Trace } from './runParts';
-import type { Role, Roles } from './roles';
+import type { Role, Roles } from '../roles';
 
 export interface Edge {
   readonly kind: 'rise' | 'fall';

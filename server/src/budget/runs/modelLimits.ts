@@ -1,11 +1,11 @@
 /**
  * Where a run goes beyond what its models were made for: one sentence each, with the range.
  */
-import type { Run } from '../board/model';
-import { kneeFrequency } from '../physics/lines/knee';
-import { copperResistivity, mu0 } from '../units/constants';
-import { inText } from '../units/inText';
-import type { Time } from '../units/quantity';
+import type { Run } from '../../board/model';
+import { kneeFrequency } from '../../physics/lines/knee';
+import { copperResistivity, mu0 } from '../../units/constants';
+import { inText } from '../../units/inText';
+import type { Time } from '../../units/quantity';
 import { refusalInText } from './refusalInText';
 import { conductorsAtOnce, neighboursEachSide, type RefusedPart, type RunPart, type RunParts } from './runParts';
 import type { HeardPart } from './solvedRun';

@@ -2,17 +2,17 @@
  * What one line of a part of a run puts on the receivers in it, for a swing of one volt: the worst of its edges, of
  * the directions in which it and they are driven, and of what is assumed for sources that nobody stated.
  */
-import type { Net } from '../board/model';
-import { electricalLength } from '../physics/lines/electricalLength';
-import { kneeFrequency } from '../physics/lines/knee';
+import type { Net } from '../../board/model';
+import { electricalLength } from '../../physics/lines/electricalLength';
+import { kneeFrequency } from '../../physics/lines/knee';
 import { slowInductance } from './balancingCurrent';
 import { carriedError } from './carriedError';
 import { arrangementsFor, edgesOf, type Arrangement, type Edge } from './excitations';
-import { isReceiver, type Roles } from './roles';
+import { isReceiver, type Roles } from '../roles';
 import type { RunPart, Trace } from './runParts';
 import { solvedLine, type ReceivedNoise } from './solvedLine';
-import type { SolveCache } from './solveCache';
-import type { Length } from '../units/quantity';
+import type { SolveCache } from '../solveCache';
+import type { Length } from '../../units/quantity';
 
 /** One way to compute a coupling, and what came of it. */
 export interface Found {

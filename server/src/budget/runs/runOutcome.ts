@@ -2,12 +2,12 @@
  * A solved run as the text now stands: what each net that moves puts on each that listens, and what could not
  * be had, with their names and places.
  */
-import type { Run } from '../board/model';
+import type { Run } from '../../board/model';
 import { coupledPart, type Lacking } from './coupledRun';
 import { roleOf } from './excitations';
 import { refusalInText } from './refusalInText';
-import type { ModelLimit, RunResult } from './results';
-import { isReceiver, type Role, type Roles } from './roles';
+import type { ModelLimit, RunResult } from '../results';
+import { isReceiver, type Role, type Roles } from '../roles';
 import { runTraces } from './runMatrices';
 import type { RefusedPart } from './runParts';
 import { boundTo, type SolvedRun } from './solvedRun';

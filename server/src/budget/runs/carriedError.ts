@@ -5,7 +5,7 @@
  * Accuracy  a bound where couplings are weak; where the short-line shares do not add up to the peak, as on long
  *           lines, the larger of the two mutuals' errors counts for all of it
  */
-import type { SectionMatrices } from '../physics/section/section';
+import type { SectionMatrices } from '../../physics/section/section';
 
 export interface CarriedTo {
   readonly aggressor: number;
