@@ -21,6 +21,18 @@ export interface CoupledLines {
   readonly length: Length;
   readonly left: readonly Termination[];
   readonly right: readonly Termination[];
+  /** Between two lines' terminations, beyond the leads. Absent where there is nothing. */
+  readonly leftAcross?: readonly Across[];
+  readonly rightAcross?: readonly Across[];
+}
+
+/** A resistance and a capacitance, side by side, between two lines at one end. */
+export interface Across {
+  readonly first: number;
+  readonly second: number;
+  /** Above zero; Infinity where there is only a capacitance. */
+  readonly resistance: Resistance;
+  readonly capacitance: Capacitance;
 }
 
 export interface Termination {
