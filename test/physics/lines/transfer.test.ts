@@ -167,7 +167,7 @@ describe('transfer of lines at one frequency', () => {
   });
 
   it('the error bound holds between equal problems in different order', () => {
-    const swapped: CoupledLines = { ...crowded, left: crowded.right, right: crowded.left, leftAcross: crowded.rightAcross, rightAcross: crowded.leftAcross };
+    const swapped: CoupledLines = { ...crowded, left: crowded.right, right: crowded.left, leftAcross: crowded.rightAcross!, rightAcross: crowded.leftAcross! };
     const frequency = hertz(3.21e8);
     const one = lineTransfer(crowded, [volt(0)], frequency);
     const other = lineTransfer(swapped, [volt(0, 'right')], frequency);

@@ -77,14 +77,16 @@ function transferAt(system: TransferSystem, drives: readonly Drive[], frequency:
 
 export interface SolvedFrequency {
   readonly unknowns: ComplexNumbers;
+  /** Their derivative by omega; null unless asked for. */
+  readonly slopes: ComplexNumbers | null;
   /** No resonance lies nearer than about this in the complex plane of omega, rad/s. 0 unless asked for. */
   readonly clearance: number;
   /** 0 unless checked. */
   readonly error: number;
 }
 
-/** `plain`: the unknowns only; `cleared`: with the clearance; `checked`: with error as well. Null where nothing is finite. */
-export function solveAt(system: TransferSystem, drives: readonly Drive[], omega: number, effort: 'plain' | 'cleared' | 'checked'): SolvedFrequency | null {
+/** `plain`: the unknowns only; `cleared`: with the clearance; `sloped`, `checked`: with slopes, or the error, as well. Null where nothing is finite. */
+export function solveAt(system: TransferSystem, drives: readonly Drive[], omega: number, effort: 'plain' | 'cleared' | 'sloped' | 'checked'): SolvedFrequency | null {
   const { network: { order }, matrix, slope } = system;
   const size = 2 * order;
   assemble(system, omega);
@@ -100,8 +102,9 @@ export function solveAt(system: TransferSystem, drives: readonly Drive[], omega:
   complexLuSolve(matrix, exchanged, unknowns);
   if (!unknowns.real.every(Number.isFinite) || !unknowns.imaginary.every(Number.isFinite)) return null;
   const clearance = effort === 'plain' ? 0 : clearanceOf(matrix, exchanged, slope);
+  const slopes = effort === 'sloped' ? slopesOf(matrix, exchanged, slope, unknowns) : null;
   const error = magnitudes === null ? 0 : forwardError(system, { exchanged, magnitudes, sources, unknowns, omega });
-  return { unknowns, clearance, error };
+  return { unknowns, slopes, clearance, error };
 }
 
 /**
@@ -121,6 +124,21 @@ function clearanceOf(factors: ComplexNumbers, exchanged: Int32Array, slope: Comp
   let sum = 0;
   for (let at = 0; at < size * size; at += 1) sum += columns.real[at] ** 2 + columns.imaginary[at] ** 2;
   return 0 < sum && sum < Infinity ? 1 / Math.sqrt(sum) : sum === 0 ? Infinity : 0;
+}
+
+/** M x = b, whose right side does not change within a row's scale: M x' = - M' x. */
+function slopesOf(factors: ComplexNumbers, exchanged: Int32Array, slope: ComplexNumbers, { real, imaginary }: ComplexNumbers): ComplexNumbers {
+  const size = exchanged.length;
+  const sides = complexNumbers(size);
+  for (let i = 0; i < size; i += 1) {
+    for (let k = 0; k < size; k += 1) {
+      const at = i * size + k;
+      sides.real[i] -= slope.real[at] * real[k] - slope.imaginary[at] * imaginary[k];
+      sides.imaginary[i] -= slope.real[at] * imaginary[k] + slope.imaginary[at] * real[k];
+    }
+  }
+  complexLuSolve(factors, exchanged, sides);
+  return sides;
 }
 
 interface Solved {
