@@ -1,7 +1,7 @@
 /**
  * What a run of coupled lines answers to a ramp: waveforms at both ends and at the terminations.
  *
- * Model     lossless quasi-TEM coupled lines, each end R or R and C, with leads (`lines.ts`)
+ * Model     lossless quasi-TEM coupled lines, each end R or R and C, with leads, and R and C across two ends (`lines.ts`)
  * Method    `unitResponse.ts` chooses between the exact lattice and the method of characteristics; `rampedWaveforms.ts` makes the
  *           ramp of it. One preparation holds the modes and every answer to a unit rise that was asked for, so that rise and
  *           fall, and windows no longer than one before, cost next to nothing
@@ -9,6 +9,7 @@
  * Accuracy  reference/coupled-lines.json
  */
 import { seconds, volts, type Time } from '../../units/quantity';
+import { hasAcross, prepareAcross } from './across';
 import type { CoupledLines, LineResponse, Ramp, Waveform } from './lines';
 import type { Modes } from './modes';
 import { lineNetwork, type LineNetwork } from './network';
@@ -28,6 +29,12 @@ export function lineResponse(lines: CoupledLines, ramp: Ramp, window: Time): Lin
 
 /** `refinement` divides every step of time: to measure with. */
 export function prepareLines(lines: CoupledLines, refinement = 1): PreparedLines {
+  const plain = (one: CoupledLines) => prepareUnbridged(one, refinement);
+  return hasAcross(lines) ? prepareAcross(lines, plain) : plain(lines);
+}
+
+/** Lines of which nothing is across. */
+function prepareUnbridged(lines: CoupledLines, refinement: number): PreparedLines {
   const network = lineNetwork(lines);
   const known = new Map<string, { readonly asked: number; readonly unit: UnitResponse }>();
   const unitFor = ({ end, line }: Ramp, horizon: number): UnitResponse => {

@@ -2,8 +2,8 @@
  * A run of lines as one lumped circuit, and its voltages while it answers a ramp.
  *
  *    R           L length         R
- *   --\/\--+----coupled coils----+--\/\--      with the ends' own capacitors beside those; a lead adds its capacitance at its
- *          = C length/2          = C length/2  end and its inductance to the coil
+ *   --\/\--+----coupled coils----+--\/\--      with the ends' own capacitors beside those, and what is across two ends between
+ *          = C length/2          = C length/2  them; a lead adds its capacitance at its end and its inductance to the coil
  *
  * Model     one section: right for what is slow against the delay of the run. What oscillates faster than a twelfth of the time
  *           passed since the ramp's start or end is damped away, as losses do
@@ -76,7 +76,7 @@ function unitsOf({ inductance, capacitance, length }: CoupledLines): Units {
 }
 
 /** Unknowns: left ends' voltages, right ends' voltages, currents from left to right times the unit of impedance. */
-function nodalSystem({ order, inductance, capacitance, left, right }: CoupledLines, ramp: Ramp, { time, impedance, length }: Units): StiffLinear {
+function nodalSystem({ order, inductance, capacitance, left, right, leftAcross = [], rightAcross = [] }: CoupledLines, ramp: Ramp, { time, impedance, length }: Units): StiffLinear {
   const size = 3 * order;
   const mass = new Float64Array(size * size);
   const stiffness = new Float64Array(size * size);
@@ -100,7 +100,21 @@ function nodalSystem({ order, inductance, capacitance, left, right }: CoupledLin
       if (ramp.line === i && ramp.end === (side === 0 ? 'left' : 'right')) forcing[node] = conductance;
     });
   }
+  [leftAcross, rightAcross].forEach((across, side) => {
+    for (const { first, second, resistance, capacitance: charge } of across) {
+      const [a, b] = [side * order + first, side * order + second];
+      addBetween(stiffness, size, a, b, -Math.min(impedance / resistance, largestConductance));
+      addBetween(mass, size, a, b, Math.min((charge * impedance) / time, largestCapacitance));
+    }
+  });
   return { order: size, mass, stiffness, forcing };
+}
+
+function addBetween(matrix: Float64Array, size: number, a: number, b: number, value: number): void {
+  matrix[a * (size + 1)] += value;
+  matrix[b * (size + 1)] += value;
+  matrix[a * size + b] -= value;
+  matrix[b * size + a] -= value;
 }
 
 export function leadInductance({ lead }: Termination): number {
