@@ -3,7 +3,8 @@ import { describe, it } from 'node:test';
 import type { CoupledLines } from '../../../server/src/physics/lines/lines';
 import { prepareTransfer, type Drive } from '../../../server/src/physics/lines/transfer';
 import { magnitudeOf, worstTransfer, everyPlace, type Reading } from '../../../server/src/physics/lines/worstTransfer';
-import { hertz } from '../../../server/src/units/quantity';
+import { bandTransfer } from '../../../server/src/physics/noise/bandTransfer';
+import { hertz, type Frequency } from '../../../server/src/units/quantity';
 import { near } from '../../support/near';
 import { end, lines, pair, rowOfLines } from './build';
 
@@ -72,6 +73,25 @@ describe('worst transfer over a range of frequencies', () => {
       [{ line: 0, place: 'right', factor: 0.5 }, { line: 1, place: 'right', factor: 0.5 }],
     ]).readings;
     assert.ok(difference.magnitude < 1e-12 && 1 < mean.magnitude);
+  });
+
+  it('weighs every frequency as the receiver does', () => {
+    // A receiver of 10 kHz to 4 MHz, deep below what the line alone would call its worst.
+    const coupled = cases[0][1];
+    const band = { from: hertz(1e4), to: hertz(4e6) };
+    const weight = (frequency: Frequency) => bandTransfer(frequency, band);
+    const reading: Reading = [{ line: 1, place: 'left', factor: 1 }];
+    const { readings: [{ magnitude }] } = worstTransfer(coupled, driven, { from: hertz(0), to: hertz(1e9), weight }, [reading]);
+    const prepared = prepareTransfer(coupled);
+    let best = 0;
+    for (let n = 0; n < 6000; n += 1) {
+      const frequency = hertz(1e3 * 10 ** (n / 1000));
+      best = Math.max(best, weight(frequency) * magnitudeOf(reading, prepared.at(driven, frequency)));
+    }
+    near(magnitude, best, 1e-5);
+    const source: Reading = [{ line: 0, place: 'right', factor: 1 }];
+    const passed = worstTransfer(coupled, driven, { from: hertz(0), to: hertz(1e9), weight }, [source]).readings[0];
+    near(passed.frequency, Math.sqrt(1e4 * 4e6), 0.02);
   });
 
   it('one frequency is the transfer there', () => {

@@ -3,7 +3,8 @@ import assert from 'node:assert/strict';
 import fc from 'fast-check';
 import { peakInBand, type Band } from '../../../server/src/physics/noise/receiverBand';
 import type { Waveform } from '../../../server/src/physics/lines/lines';
-import { hertz } from '../../../server/src/units/quantity';
+import { bandTransfer } from '../../../server/src/physics/noise/bandTransfer';
+import { hertz, seconds } from '../../../server/src/units/quantity';
 
 const band = (from: number, to: number): Band => ({ from: hertz(from), to: hertz(to) });
 const wave = (...points: readonly (readonly [number, number])[]): Waveform => ({ times: Float64Array.from(points, ([t]) => t), values: Float64Array.from(points, ([, v]) => v) });
@@ -70,5 +71,42 @@ describe('a receiver’s first-order band', () => {
     assert.ok(Math.abs(peakInBand(scaled(-2), limits).peak + 2 * peak) < 1e-12);
     assert.ok(Math.abs(peakInBand(scaled(1), band(0, 200e6)).peak) <= 0.3);
     assert.equal(peakInBand(wave([0, 0]), limits).peak, 0);
+  });
+
+  it('counts from a moment on what is left then: the decay of what came before', () => {
+    const tau = 1 / (2 * Math.PI * 1e6);
+    const pulse = wave([0, 0], [1e-9, 1], [2e-9, 0]);
+    const whole = peakInBand(pulse, band(0, 1e6), seconds(2e-9));
+    const later = peakInBand(pulse, band(0, 1e6), seconds(500e-9));
+    assert.ok(Math.abs(later.peak / whole.peak / Math.exp(-(500e-9 - whole.time) / tau) - 1) < 1e-9 && later.time === 500e-9);
+    // Inside the waveform, and before it.
+    const ramped = wave([0, 0], [1e-6, 1], [2e-6, 0.5], [3e-6, 0]);
+    assert.deepEqual(peakInBand(ramped, band(0, 1e8), seconds(-1)), peakInBand(ramped, band(0, 1e8)));
+    const { peak, time } = peakInBand(ramped, band(0, 1e9), seconds(1.5e-6));
+    assert.ok(Math.abs(peak - 0.75) < 1e-3 && time === 1.5e-6);
+  });
+
+  it('a high pass undershoots after the waveform, which is seen by who samples late', () => {
+    const pulse = wave([0, 0], [1e-9, 1], [100e-9, 1], [101e-9, 0]);
+    const later = peakInBand(pulse, band(1e6, 1e9), seconds(150e-9));
+    // The droop of 100 ns, decaying for another 49 ns and a half: exp(-w t) (exp(-w 100 ns) - 1), edges aside.
+    const w = 2 * Math.PI * 1e6;
+    assert.ok(Math.abs(later.peak / (Math.exp(-w * 49.5e-9) * Math.expm1(-w * 100e-9)) - 1) < 2e-3, `${later.peak}`);
+  });
+
+  it('a sine settles at the ratio that the transfer says', () => {
+    const limits = band(2e5, 3e6);
+    for (const frequency of [5e4, 8e5, 1e7]) {
+      const points = 40_000;
+      const periods = 30 + frequency * 2e-5;
+      const sine: Waveform = {
+        times: Float64Array.from({ length: points + 1 }, (_, n) => (n * periods) / (points * frequency)),
+        values: Float64Array.from({ length: points + 1 }, (_, n) => Math.sin((2 * Math.PI * n * periods) / points)),
+      };
+      const settled = peakInBand({ times: sine.times, values: sine.values }, limits, seconds((periods - 5) / frequency));
+      assert.ok(Math.abs(Math.abs(settled.peak) / bandTransfer(hertz(frequency), limits) - 1) < 1e-3, `${frequency}`);
+    }
+    assert.equal(bandTransfer(hertz(0), limits), 0);
+    assert.equal(bandTransfer(hertz(0), band(0, 1e6)), 1);
   });
 });

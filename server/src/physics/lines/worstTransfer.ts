@@ -16,6 +16,8 @@ import { checkDrives, prepareTransfer, solveAt, standstill, undampedWithin, volt
 export interface FrequencyRange {
   readonly from: Frequency;
   readonly to: Frequency;
+  /** What a receiver's filter leaves of each frequency: smooth over octaves. */
+  readonly weight?: (frequency: Frequency) => number;
 }
 
 /** A sum of voltages, with signs: a difference of two lines is two terms. */
@@ -54,7 +56,7 @@ export function worstTransfer(lines: CoupledLines | PreparedTransfer, drives: re
     const found = refined(march, at, (omega) => {
       work += 1;
       const solved = solveAt(prepared.system, drives, omega, 'plain');
-      return solved === null ? 0 : magnitudeOf(readings[at], voltagesOf(prepared.system, solved.unknowns, omega));
+      return solved === null ? 0 : weightOf(range, omega) * magnitudeOf(readings[at], voltagesOf(prepared.system, solved.unknowns, omega));
     });
     return { magnitude: volts(found.magnitude), frequency: hertz(found.omega / (2 * Math.PI)) };
   });
@@ -83,6 +85,12 @@ const longestStride = 0.25;
 /** Equations cubed times frequencies: what one answer may cost, about a second. */
 const mostWork = 2.5e8;
 const mostSteps = 20_000;
+/** Of the range's end: below it a weight counts as one step. */
+const weightFrom = 1e-9;
+
+function weightOf({ weight }: FrequencyRange, omega: number): number {
+  return weight === undefined ? 1 : weight(hertz(omega / (2 * Math.PI)));
+}
 
 function marched(prepared: PreparedTransfer, drives: readonly Drive[], range: FrequencyRange, readings: readonly Reading[]): March {
   const { system } = prepared;
@@ -104,10 +112,11 @@ function marched(prepared: PreparedTransfer, drives: readonly Drive[], range: Fr
     else {
       const voltages = voltagesOf(system, solved!.unknowns, omega);
       omegas.push(omega);
-      magnitudes.push(Float64Array.from(readings, (reading) => magnitudeOf(reading, voltages)));
+      magnitudes.push(Float64Array.from(readings, (reading) => weightOf(range, omega) * magnitudeOf(reading, voltages)));
     }
     if (to <= omega) break;
-    const wanted = Math.max(shortest, Math.min(stride * clearance, longestStride / longest));
+    const smooth = range.weight === undefined ? Infinity : Math.max(stride * omega, weightFrom * to);
+    const wanted = Math.max(shortest, Math.min(stride * clearance, longestStride / longest, smooth));
     // Half the work follows every resonance; the rest must reach the end.
     const spread = (to - omega) / Math.max(1, allowed - work);
     if (allowed / 2 < work && wanted < spread) resolved = false;

@@ -17,13 +17,13 @@ export interface Band {
   readonly to: Frequency;
 }
 
-/** The value of largest magnitude, with its sign, and when it is reached. */
-export function peakInBand(waveform: Waveform, band: Band): { readonly peak: Voltage; readonly time: Time } {
+/** The value of largest magnitude, with its sign, and when it is reached; of what is left from the moment `after` on, where given. */
+export function peakInBand(waveform: Waveform, band: Band, after: Time | null = null): { readonly peak: Voltage; readonly time: Time } {
   const w1 = 2 * Math.PI * band.from;
   // The two exponentials must differ; a band narrower than this is one frequency.
   const w2 = 2 * Math.PI * Math.max(band.to, band.from * (1 + 1e-6));
-  const { times, values } = waveform;
-  let best = { peak: 0, time: times[0] ?? 0 };
+  const { times, values } = after === null ? waveform : splitAt(waveform, after, w1, w2);
+  let best = { peak: 0, time: after ?? times[0] ?? 0 };
   let y = 0;
   let q = 0;
   for (let index = 0; index + 1 < times.length; index += 1) {
@@ -32,12 +32,36 @@ export function peakInBand(waveform: Waveform, band: Band): { readonly peak: Vol
     const piece: Piece = { y, q, level: values[index], slope: (values[index + 1] - values[index]) / duration, w1, w2 };
     const inside = extremeInside(piece);
     for (const time of 0 < inside && inside < duration ? [inside, duration] : [duration]) {
-      const state = after(time, piece);
+      const state = stateAfter(time, piece);
+      if (after !== null && times[index] + time < after) continue;
       if (Math.abs(best.peak) < Math.abs(state.y - state.q)) best = { peak: state.y - state.q, time: times[index] + time };
     }
-    ({ y, q } = after(duration, piece));
+    ({ y, q } = stateAfter(duration, piece));
   }
   return { peak: volts(best.peak), time: seconds(best.time) };
+}
+
+/** With a point at the moment, and held at its last value until both filters have settled. */
+function splitAt({ times, values }: Waveform, moment: number, w1: number, w2: number): Waveform {
+  const last = times.length - 1;
+  if (last < 0) return { times, values };
+  const settled = 40 / w2 + (w1 === 0 ? 0 : 40 / w1);
+  const found = times.findIndex((time) => moment <= time);
+  const next = found < 0 ? last + 1 : found;
+  const inserted = next === 0 || times[next] === moment ? [] : [moment];
+  const between = inserted.map(() => (last < next ? values[last] : values[next - 1] + ((moment - times[next - 1]) / (times[next] - times[next - 1])) * (values[next] - values[next - 1])));
+  const joined = (before: Float64Array, middle: readonly number[], after: Float64Array, end: number) => {
+    const all = new Float64Array(before.length + middle.length + after.length + 1);
+    all.set(before);
+    all.set(middle, before.length);
+    all.set(after, before.length + middle.length);
+    all[all.length - 1] = end;
+    return all;
+  };
+  return {
+    times: joined(times.subarray(0, next), inserted, times.subarray(next), Math.max(times[last], moment) + settled),
+    values: joined(values.subarray(0, next), between, values.subarray(next), values[last]),
+  };
 }
 
 interface Piece {
@@ -56,7 +80,7 @@ function lowPassAmplitude({ y, level, slope, w2 }: Piece): number {
   return y - level + slope / w2;
 }
 
-function after(time: number, piece: Piece): { readonly y: number; readonly q: number } {
+function stateAfter(time: number, piece: Piece): { readonly y: number; readonly q: number } {
   const { q, level, slope, w1, w2 } = piece;
   const amplitude = lowPassAmplitude(piece);
   const fast = Math.exp(-w2 * time);
