@@ -21,11 +21,11 @@ export async function readFile({ uri: written, inside }: ReadFileParams, realPat
     if (spelling.is !== 'same') return spelling.is === 'missing' ? { problem: 'missing' } : { problem: 'case', spelling: spelling.path };
     if (spelling.linked && !(await staysInside(uri, folders, realPath))) return { problem: 'outside' };
     const found = await vscode.workspace.fs.stat(uri);
-    if ((found.type & vscode.FileType.Directory) !== 0) return { problem: 'unread' };
+    if ((found.type & vscode.FileType.Directory) !== 0) return { problem: 'unreadable' };
     if (largestFile < found.size) return { problem: 'too-large' };
     return { text: new TextDecoder('utf-8').decode(await vscode.workspace.fs.readFile(uri)) };
   } catch (error) {
-    return { problem: error instanceof vscode.FileSystemError && error.code === 'FileNotFound' ? 'missing' : 'unread' };
+    return { problem: error instanceof vscode.FileSystemError && error.code === 'FileNotFound' ? 'missing' : 'unreadable' };
   }
 }
 

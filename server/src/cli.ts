@@ -6,6 +6,13 @@ import { run } from './cli/run';
 import { diskReader } from './lsp/diskReader';
 import { startServer } from './lsp/startServer';
 
+// A reader that has gone, `quietrun check … | head`, is no fault: the exit status stands, read or not.
+for (const stream of [process.stdout, process.stderr]) {
+  stream.on('error', (error: NodeJS.ErrnoException) => {
+    if (error.code !== 'EPIPE') throw error;
+  });
+}
+
 async function readStandardInput(): Promise<string> {
   const chunks: Buffer[] = [];
   for await (const chunk of process.stdin) chunks.push(chunk as Buffer);

@@ -37,7 +37,7 @@ describe('the disk reader', () => {
     assert.deepEqual(await read('boards', 'b.quiet'), { problem: 'missing' });
     assert.deepEqual(await read('boards', 'nowhere', 'b.quiet'), { problem: 'missing' });
     assert.deepEqual(await read('boards', 'a.quiet', 'b.quiet'), { problem: 'missing' });
-    assert.deepEqual(await read('boards', 'common'), { problem: 'unread' });
+    assert.deepEqual(await read('boards', 'common'), { problem: 'unreadable' });
     assert.deepEqual(await read('boards', 'huge.quiet'), { problem: 'too-large' });
     assert.deepEqual(await read('boards', 'common', 'parts.quiet'), { problem: 'case', spelling: 'common/Parts.quiet' });
     assert.deepEqual(await read('outside', 'secret.quiet'), { problem: 'outside' });

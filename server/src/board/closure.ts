@@ -157,6 +157,7 @@ function problemText(written: string, { problem, actual }: SourceProblem): strin
     case 'outside': return `${quoted(written)} lies outside the workspace folder`;
     case 'case': return actual === undefined ? `${quoted(written)} differs from the file's name in case` : `${quoted(written)} differs in case from the file's name, ${quoted(actual)}`;
     case 'too-large': return `${quoted(written)} is larger than 8 MiB`;
+    case 'unreadable': return `${quoted(written)} is no file that can be read`;
     case 'unread': return `${quoted(written)} has not been read`;
   }
 }

@@ -16,9 +16,10 @@ export interface SourceProblem {
    * outside    it is not inside the workspace folder
    * case       the file's name differs from the path in case
    * too-large  over 8 MiB
+   * unreadable it is a folder or a device, or may not be read
    * unread     it has been asked for and has not arrived: no finding, but the project is incomplete
    */
-  readonly problem: 'missing' | 'outside' | 'case' | 'too-large' | 'unread';
+  readonly problem: 'missing' | 'outside' | 'case' | 'too-large' | 'unreadable' | 'unread';
   /** With `case`: the path as the file system spells it, from whatever folder. */
   readonly actual?: string;
 }

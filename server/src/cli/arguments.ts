@@ -48,6 +48,11 @@ function readCheck(words: readonly string[]): ReadArguments {
   const files: string[] = [];
   const given = new Map<string, string>();
   for (let at = 0; at < words.length; at += 1) {
+    // As with every command line, what follows is a name, whatever it looks like.
+    if (words[at] === '--') {
+      files.push(...words.slice(at + 1));
+      break;
+    }
     const [name, attached] = splitOption(words[at]);
     if (!name.startsWith('-') || name === '-') {
       files.push(words[at]);

@@ -5,3 +5,8 @@
 export function printable(text: string): string {
   return text.replace(/[\u0000-\u0008\u000b-\u001f\u007f-\u009f\u202a-\u202e\u2066-\u2069]/g, '\ufffd');
 }
+
+/** The same for what has to stay on its line: the name of a file may hold a line end. */
+export function printableWord(text: string): string {
+  return printable(text).replace(/[\t\n]/g, '\ufffd');
+}

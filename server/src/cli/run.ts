@@ -6,6 +6,7 @@ import { checkedFiles } from './checkedFiles';
 import { checkReport } from './checkReport';
 import type { Summary } from './checkSchema';
 import { paintFor } from './paint';
+import { printableWord } from './printable';
 import { textOutput } from './textOutput';
 
 export interface Surroundings {
@@ -24,7 +25,7 @@ export const status = { clean: 0, findings: 1, notRun: 2 } as const;
 export async function run(words: readonly string[], around: Surroundings): Promise<number> {
   const answer = readArguments(words);
   if ('refused' in answer) {
-    around.complain(`quietrun: ${answer.refused}\n\n${usage}\n`);
+    around.complain(`quietrun: ${printableWord(answer.refused)}\n\n${usage}\n`);
     return status.notRun;
   }
   const command = answer.read;
@@ -40,7 +41,7 @@ export async function run(words: readonly string[], around: Surroundings): Promi
 async function check(command: CheckCommand, around: Surroundings): Promise<number> {
   const answer = await checkedFiles({ ...command, ...around, log: (rule, error) => around.complain(`quietrun: ${rule} failed: ${error instanceof Error ? (error.stack ?? error.message) : String(error)}\n`) });
   if ('refused' in answer) {
-    around.complain(`quietrun: ${answer.refused}\n`);
+    around.complain(`quietrun: ${printableWord(answer.refused)}\n`);
     return status.notRun;
   }
   const report = checkReport(answer.checked, around.version);
@@ -60,7 +61,7 @@ function explain(name: string | null, around: Surroundings): number {
   }
   const rule = rules.find((each) => each.name === name);
   if (rule === undefined) {
-    around.complain(`quietrun: no rule ${name}; quietrun explain lists them\n`);
+    around.complain(`quietrun: no rule ${printableWord(name)}; quietrun explain lists them\n`);
     return status.notRun;
   }
   around.write(`${rulePage(rule)}\n`);

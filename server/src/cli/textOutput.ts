@@ -6,7 +6,7 @@ import type { CheckedFile } from './checkedFiles';
 import type { Summary } from './checkSchema';
 import type { Paint } from './paint';
 import { linesOf } from './positions';
-import { printable } from './printable';
+import { printable, printableWord } from './printable';
 
 export function textOutput(checked: readonly CheckedFile[], summary: Summary, paint: Paint): string {
   const blocks = checked.flatMap((file) => [heading(file, paint), ...file.analysis.findings.map((finding) => findingBlock(finding, file, paint))]);
@@ -16,7 +16,7 @@ export function textOutput(checked: readonly CheckedFile[], summary: Summary, pa
 function heading({ path, analysis }: CheckedFile, paint: Paint): string {
   const { project, evaluation } = analysis;
   const named = project.board.name === null ? '' : `  board ${printable(project.board.name)}`;
-  return [paint.strong(`${path}${named}`), ...budgetTable(evaluation.budgets, paint)].join('\n');
+  return [paint.strong(`${printableWord(path)}${named}`), ...budgetTable(evaluation.budgets, paint)].join('\n');
 }
 
 function findingBlock(finding: Finding, file: CheckedFile, paint: Paint): string {
@@ -45,7 +45,7 @@ function underlined({ path, span }: Place, file: CheckedFile, colour: (text: str
   const cut = printable(line.slice(from, from + widest).replace(/\t/g, ' '));
   const carets = '^'.repeat(Math.max(1, Math.min(widthOf(line.slice(start.character, last)), from + widest - start.character)));
   return {
-    where: `${path}:${start.line + 1}:${start.character + 1}`,
+    where: `${printableWord(path)}:${start.line + 1}:${start.character + 1}`,
     shown: [`  ${number} | ${cut}`, `  ${' '.repeat(number.length)} | ${' '.repeat(widthOf(line.slice(from, start.character)))}${colour(carets)}`],
   };
 }
@@ -56,7 +56,7 @@ const widthOf = (text: string) => [...text].length;
 function summaryLine({ errors, warnings, information, hints, waived, worst }: Summary, files: number, paint: Paint): string {
   const counts = [[errors, 'error', 'errors'], [warnings, 'warning', 'warnings'], [information, 'note', 'notes'], [hints, 'hint', 'hints'], [waived, 'waived', 'waived']] as const;
   const said = counts.filter(([count]) => 0 < count).map(([count, one, many]) => `${count} ${count === 1 ? one : many}`);
-  const least = worst === null ? '' : ` Least margin: ${worst.budget}, ${worst.marginDb.toFixed(1)} dB.`;
+  const least = worst === null ? '' : ` Least margin: ${printableWord(worst.budget)}, ${worst.marginDb.toFixed(1)} dB.`;
   const findings = said.length === 0 ? `No findings in ${files === 1 ? 'this file' : `${files} files`}.` : `${said.join(', ')}.`;
   return paint.strong(findings) + least;
 }

@@ -10,13 +10,13 @@ export const largestFile = sourceLimits.bytes;
 
 export type FileAnswer =
   | { readonly text: string }
-  | { readonly problem: 'missing' | 'outside' | 'case' | 'too-large' | 'unread'; /** As the file system spells it, from the folder. */ readonly spelling?: string };
+  | { readonly problem: 'missing' | 'outside' | 'case' | 'too-large' | 'unreadable' | 'unread'; /** As the file system spells it, from the folder. */ readonly spelling?: string };
 
 export async function usedFile(file: string, folders: readonly string[]): Promise<FileAnswer> {
   try {
     return await readInside(file, folders);
   } catch (error) {
-    return { problem: /^(ENOENT|ENOTDIR)$/.test((error as NodeJS.ErrnoException).code ?? '') ? 'missing' : 'unread' };
+    return { problem: /^(ENOENT|ENOTDIR)$/.test((error as NodeJS.ErrnoException).code ?? '') ? 'missing' : 'unreadable' };
   }
 }
 
@@ -30,7 +30,7 @@ async function readInside(file: string, folders: readonly string[]): Promise<Fil
   const realFolders = await Promise.all(folders.map((each) => realpath(each)));
   if (!realFolders.some((each) => isBelow(real, each))) return { problem: 'outside' };
   const found = await stat(real);
-  if (!found.isFile()) return { problem: 'unread' };
+  if (!found.isFile()) return { problem: 'unreadable' };
   if (largestFile < found.size) return { problem: 'too-large' };
   return { text: new TextDecoder('utf-8').decode(await readFile(real)) };
 }

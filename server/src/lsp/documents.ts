@@ -152,7 +152,7 @@ export class Documents {
 
   async #readNow(path: string): Promise<void> {
     const inside = this.paths.foldersAround(path, this.openPaths());
-    const answer = inside.length === 0 ? { problem: 'outside' as const } : await this.reader.read(this.paths.uriOf(path), inside.map((folder) => this.paths.uriOf(folder))).catch(() => ({ problem: 'unread' as const }));
+    const answer = inside.length === 0 ? { problem: 'outside' as const } : await this.reader.read(this.paths.uriOf(path), inside.map((folder) => this.paths.uriOf(folder))).catch(() => ({ problem: 'unreadable' as const }));
     if (this.#isOpen(path)) return; // it was opened meanwhile, and that text counts
     if ('text' in answer) {
       this.#read.set(path, TextDocument.create(this.paths.uriOf(path), 'quietrun', 0, answer.text));

@@ -24,7 +24,7 @@ export interface ReadFileParams {
 
 export type ReadFileAnswer =
   | { readonly text: string }
-  | { readonly problem: 'missing' | 'outside' | 'case' | 'too-large' | 'unread'; /** As the file system spells it. */ readonly spelling?: string };
+  | { readonly problem: 'missing' | 'outside' | 'case' | 'too-large' | 'unreadable' | 'unread'; /** As the file system spells it. */ readonly spelling?: string };
 
 /** Server to client, no parameters: the board files of the workspace. */
 export const listFilesMethod = 'quietrun/listFiles';
