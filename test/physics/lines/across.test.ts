@@ -9,7 +9,7 @@ import type { Across, CoupledLines, LineResponse, Waveform } from '../../../serv
 import { lumpedRun } from '../../../server/src/physics/lines/lumpedRun';
 import { peakOf } from '../../../server/src/physics/lines/peak';
 import { prepareTransfer, type Drive, type Place } from '../../../server/src/physics/lines/transfer';
-import { magnitudeOf } from '../../../server/src/physics/lines/worstTransfer';
+import { magnitudeOf } from '../../../server/src/physics/lines/reading';
 import { valueAt } from '../../../server/src/physics/lines/waveform';
 import { farads, hertz, ohms, seconds } from '../../../server/src/units/quantity';
 import { near } from '../../support/near';

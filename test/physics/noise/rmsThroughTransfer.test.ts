@@ -5,7 +5,7 @@ import { lineResponse } from '../../../server/src/physics/lines/lineResponse';
 import type { CoupledLines, Waveform } from '../../../server/src/physics/lines/lines';
 import { prepareTransfer, type Drive } from '../../../server/src/physics/lines/transfer';
 import { transferAtHarmonics } from '../../../server/src/physics/lines/transferAtHarmonics';
-import { magnitudeOf, type Reading } from '../../../server/src/physics/lines/worstTransfer';
+import { magnitudeOf, type Reading } from '../../../server/src/physics/lines/reading';
 import { harmonicsOf, type PulseTrain } from '../../../server/src/physics/noise/harmonics';
 import { addedInGroup, harmonicsInBand, rmsThroughTransfer } from '../../../server/src/physics/noise/rmsThroughTransfer';
 import { hertz, ratio, seconds, volts } from '../../../server/src/units/quantity';

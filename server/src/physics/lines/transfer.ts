@@ -173,7 +173,7 @@ function forwardError({ network: { order, modes, ends }, matrix }: TransferSyste
 }
 
 /** v = Tv (c u ± j s w) at both ends; through the leads to the terminations. */
-export function voltagesOf({ network: { order, modes, ends } }: TransferSystem, { real, imaginary }: ComplexNumbers, omega: number): Readonly<Record<Place, ComplexNumbers>> {
+function voltagesOf({ network: { order, modes, ends } }: TransferSystem, { real, imaginary }: ComplexNumbers, omega: number): Readonly<Record<Place, ComplexNumbers>> {
   const places = [0, 1].map((side) => {
     const sign = side === 0 ? 1 : -1;
     const atEnd = complexNumbers(order);

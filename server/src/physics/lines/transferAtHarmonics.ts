@@ -11,9 +11,9 @@
  */
 import { hertz, type Frequency } from '../../units/quantity';
 import type { ComplexNumbers } from '../../numeric/complexLu';
-import { checkDrives, solveAt, undampedWithin, voltagesOf, type Drive, type PreparedTransfer } from './transfer';
+import { magnitudeOf, magnitudesRead, type Reading } from './reading';
+import { checkDrives, solveAt, undampedWithin, type Drive, type PreparedTransfer } from './transfer';
 import { complexNumbers } from './transferSystem';
-import { magnitudeOf, type Reading } from './worstTransfer';
 
 export interface HarmonicNumbers {
   readonly fundamental: Frequency;
@@ -35,7 +35,7 @@ export function transferAtHarmonics(prepared: PreparedTransfer, drives: readonly
   checkDrives(system, drives, Math.max(0, last) * fundamental);
   const unit = 2 * Math.PI * fundamental;
   const magnitudes = readings.map(() => new Float64Array(Math.max(0, last - first + 1)));
-  const tell = (n: number, voltages: ReturnType<typeof voltagesOf>) => readings.forEach((reading, at) => (magnitudes[at][n - first] = magnitudeOf(reading, voltages)));
+  const tell = (n: number, read: Float64Array) => read.forEach((magnitude, at) => (magnitudes[at][n - first] = magnitude));
   let undamped = false;
   let work = 0;
   let before: Node | null = null;
@@ -44,12 +44,13 @@ export function transferAtHarmonics(prepared: PreparedTransfer, drives: readonly
     work += 1;
     if (node === null) {
       undamped = true;
-      tell(n, prepared.at(drives, hertz(n * fundamental)));
+      const beside = prepared.at(drives, hertz(n * fundamental));
+      tell(n, Float64Array.from(readings, (reading) => magnitudeOf(reading, beside)));
     } else {
-      tell(n, voltagesOf(system, node.unknowns, node.omega));
+      tell(n, magnitudesRead(system, readings, node.unknowns, node.omega));
       if (before !== null) {
         const from = Math.round(before.omega / unit);
-        for (let between = from + 1; between < n; between += 1) tell(between, voltagesOf(system, hermite(before, node, between * unit), between * unit));
+        for (let between = from + 1; between < n; between += 1) tell(between, magnitudesRead(system, readings, hermite(before, node, between * unit), between * unit));
       }
     }
     before = node;

@@ -11,22 +11,14 @@
  */
 import { hertz, volts, type Frequency, type Voltage } from '../../units/quantity';
 import type { CoupledLines } from './lines';
-import { checkDrives, prepareTransfer, solveAt, standstill, undampedWithin, voltagesOf, type Drive, type Place, type PreparedTransfer } from './transfer';
+import { magnitudesRead, type Reading } from './reading';
+import { checkDrives, prepareTransfer, solveAt, standstill, undampedWithin, type Drive, type Place, type PreparedTransfer } from './transfer';
 
 export interface FrequencyRange {
   readonly from: Frequency;
   readonly to: Frequency;
   /** What a receiver's filter leaves of each frequency: smooth over octaves. */
   readonly weight?: (frequency: Frequency) => number;
-}
-
-/** A sum of voltages, with signs: a difference of two lines is two terms. */
-export type Reading = readonly ReadingTerm[];
-
-export interface ReadingTerm {
-  readonly line: number;
-  readonly place: Place;
-  readonly factor: number;
 }
 
 export interface WorstTransfer {
@@ -56,7 +48,7 @@ export function worstTransfer(lines: CoupledLines | PreparedTransfer, drives: re
     const found = refined(march, at, (omega) => {
       work += 1;
       const solved = solveAt(prepared.system, drives, omega, 'plain');
-      return solved === null ? 0 : weightOf(range, omega) * magnitudeOf(readings[at], voltagesOf(prepared.system, solved.unknowns, omega));
+      return solved === null ? 0 : weightOf(range, omega) * magnitudesRead(prepared.system, [readings[at]], solved.unknowns, omega)[0];
     });
     return { magnitude: volts(found.magnitude), frequency: hertz(found.omega / (2 * Math.PI)) };
   });
@@ -110,9 +102,8 @@ function marched(prepared: PreparedTransfer, drives: readonly Drive[], range: Fr
     const clearance = solved?.clearance ?? 0;
     if (clearance < shortest) undamped = true;
     else {
-      const voltages = voltagesOf(system, solved!.unknowns, omega);
       omegas.push(omega);
-      magnitudes.push(Float64Array.from(readings, (reading) => weightOf(range, omega) * magnitudeOf(reading, voltages)));
+      magnitudes.push(magnitudesRead(system, readings, solved!.unknowns, omega).map((magnitude) => weightOf(range, omega) * magnitude));
     }
     if (to <= omega) break;
     const smooth = range.weight === undefined ? Infinity : Math.max(stride * omega, weightFrom * to);
@@ -123,16 +114,6 @@ function marched(prepared: PreparedTransfer, drives: readonly Drive[], range: Fr
     omega = Math.min(to, omega + (allowed / 2 < work ? Math.max(wanted, spread) : wanted));
   }
   return { omegas, magnitudes, undamped, resolved, work };
-}
-
-export function magnitudeOf(reading: Reading, voltages: Readonly<Record<Place, { readonly real: Float64Array; readonly imaginary: Float64Array }>>): number {
-  let real = 0;
-  let imaginary = 0;
-  for (const { line, place, factor } of reading) {
-    real += factor * voltages[place].real[line];
-    imaginary += factor * voltages[place].imaginary[line];
-  }
-  return Math.hypot(real, imaginary);
 }
 
 /** Steps near a resonance are half its width: a maximum between two of them stands at most this much above both. */
