@@ -20,7 +20,8 @@ describe('evaluations of generated boards', () => {
         assert.ok(marginDb === null || Number.isFinite(marginDb), `seed ${seed}`);
       }
       for (const { couplings } of evaluation.runs) {
-        for (const { nearEnd, farEnd, atReceiver, peakTime, widthHalf, capacitivePart, inductivePart, waveform } of couplings) {
+        for (const { nearEnd, farEnd, atReceiver, peakTime, widthHalf, capacitivePart, inductivePart, ...coupling } of couplings) {
+          const waveform = coupling.waveform!;
           for (const value of [nearEnd, farEnd, atReceiver, peakTime, widthHalf, capacitivePart, inductivePart, ...waveform.values, ...waveform.times]) assert.ok(Number.isFinite(value), `seed ${seed}: ${value}`);
           const largest = waveform.values.reduce((most, value) => Math.max(most, Math.abs(value)), 0);
           near(largest, Math.abs(atReceiver), 2e-3, `seed ${seed}: the picture's peak`);

@@ -3,86 +3,81 @@
  * tolerated, and the verdict. A budget that lacks something has no margin, and is over or unknown,
  * never within.
  */
-import type { Given, Net, Pair, Place, Project } from '../board/model';
-import { decibels, volts, type Decibels, type Voltage } from '../units/quantity';
-import { notYetCounted, notYetCountedPair } from './notYetCounted';
-import type { Budget, Contribution, Coupling, Unaccounted, Verdict } from './results';
+import type { Given, Project } from '../board/model';
+import { decibels, type Decibels, type Voltage } from '../units/quantity';
+import { contributionsOf } from './contributions';
+import type { Heard } from './heard';
+import { lackingOutside } from './notYetCounted';
+import { ownNoise } from './ownNoise';
+import type { Receiver } from './receivers';
+import type { Budget, Contribution, Unaccounted, Verdict } from './results';
 import type { Roles } from './roles';
-import type { RunOutcome } from './runs/runOutcome';
-import { thermalContribution } from './thermalContribution';
 import { totalOf } from './totals';
 
+export interface Channels {
+  readonly heard: readonly Heard[];
+  readonly lacking: readonly { readonly receiver: Receiver; readonly unaccounted: Unaccounted }[];
+}
+
 /** In the order of the text: files as they are used, then places. */
-export function budgetsOf(project: Project, roles: Roles, outcomes: readonly RunOutcome[]): readonly Budget[] {
-  const onNet = new Map<Net, NetChannels>();
-  for (const outcome of outcomes) gather(outcome, onNet);
-  const budgets = [
-    ...[...project.nets.values()].flatMap((net) => netBudgets(project, roles, net, onNet.get(net) ?? nothing)),
-    ...[...project.pairs.values()].flatMap((pair) => pairBudgets(project, pair)),
-  ];
+export function budgetsOf(project: Project, roles: Roles, receivers: readonly Receiver[], channels: Channels): readonly Budget[] {
+  const heard = byReceiver(channels.heard, (each) => each);
+  const lacking = byReceiver(channels.lacking, ({ unaccounted }) => unaccounted);
+  const budgets = receivers.flatMap((receiver) => receiverBudgets(project, roles, receiver, { heard: heard.get(receiver) ?? [], lacking: lacking.get(receiver) ?? [] }));
   const files = new Map(project.files.map((path, index) => [path, index]));
   const rank = ({ subject: { place } }: Budget) => files.get(place.path) ?? files.size;
   return budgets.sort((a, b) => rank(a) - rank(b) || a.subject.place.span.start - b.subject.place.span.start);
 }
 
-interface NetChannels {
-  readonly couplings: Coupling[];
-  readonly lacking: Unaccounted[];
-}
-
-const nothing: NetChannels = { couplings: [], lacking: [] };
-
-function gather({ result, lacking }: RunOutcome, onNet: Map<Net, NetChannels>): void {
-  const of = (net: Net) => {
-    const known = onNet.get(net) ?? { couplings: [], lacking: [] };
-    onNet.set(net, known);
-    return known;
-  };
-  for (const coupling of result.couplings) of(coupling.victim).couplings.push(coupling);
-  for (const { victim, unaccounted } of lacking) of(victim).lacking.push(unaccounted);
-}
-
-function netBudgets(project: Project, roles: Roles, net: Net, channels: NetChannels): readonly Budget[] {
-  const budgets: Budget[] = [];
-  const lacking = () => once([...channels.lacking, ...notYetCounted(project, roles, net)]);
-  if (net.toleratesPeak !== null) {
-    const thermal = thermalContribution(project, roles, net);
-    const contributions = [...channels.couplings.map(coupledContribution), ...(thermal === null ? [] : [thermal])];
-    budgets.push(budgetOf(project, { subject: net, kind: 'net', measure: 'peak' }, { tolerates: net.toleratesPeak, contributions, unaccounted: lacking() }));
+function byReceiver<Each extends { readonly receiver: Receiver }, Value>(all: readonly Each[], valueOf: (each: Each) => Value): ReadonlyMap<Receiver, readonly Value[]> {
+  const found = new Map<Receiver, Value[]>();
+  for (const each of all) {
+    const known = found.get(each.receiver);
+    if (known === undefined) found.set(each.receiver, [valueOf(each)]);
+    else known.push(valueOf(each));
   }
-  if (net.toleratesRms !== null) {
-    const unaccounted = [{ what: `what ${net.name} has as rms is not yet counted`, place: net.toleratesRms.place }, ...lacking()];
-    budgets.push(budgetOf(project, { subject: net, kind: 'net', measure: 'rms' }, { tolerates: net.toleratesRms, contributions: [], unaccounted }));
-  }
-  return budgets;
+  return found;
 }
 
-function pairBudgets(project: Project, pair: Pair): readonly Budget[] {
-  const budgets: Budget[] = [];
-  const add = (kind: 'pair' | 'common', measure: 'peak' | 'rms', tolerates: Given<Voltage> | null) => {
-    if (tolerates !== null) budgets.push(budgetOf(project, { subject: pair, kind, measure }, { tolerates, contributions: [], unaccounted: once(notYetCountedPair(project, pair)) }));
-  };
-  add('pair', 'peak', pair.toleratesPeak);
-  add('pair', 'rms', pair.toleratesRms);
-  if (pair.commonTolerates !== null) add('common', pair.commonTolerates.measure, pair.commonTolerates.voltage);
-  return budgets;
+interface ReceiverChannels {
+  readonly heard: readonly Heard[];
+  readonly lacking: readonly Unaccounted[];
+}
+
+function receiverBudgets(project: Project, roles: Roles, receiver: Receiver, { heard, lacking }: ReceiverChannels): readonly Budget[] {
+  const outside = lackingOutside(project, roles, receiver);
+  return (['peak', 'rms'] as const).flatMap((measure) => {
+    const tolerates = measure === 'peak' ? receiver.toleratesPeak : receiver.toleratesRms;
+    if (tolerates === null) return [];
+    const counted = contributionsOf(heard, measure);
+    const own = ownNoise(project, roles, receiver, measure);
+    return [budgetOf(project, receiver, {
+      measure,
+      tolerates,
+      contributions: [...counted.contributions, ...own.contributions],
+      unaccounted: once([...lacking, ...outside, ...counted.lacking, ...own.lacking]),
+    })];
+  });
 }
 
 interface Content {
+  readonly measure: 'peak' | 'rms';
   readonly tolerates: Given<Voltage>;
   readonly contributions: readonly Contribution[];
   readonly unaccounted: readonly Unaccounted[];
 }
 
-function budgetOf(project: Project, head: Pick<Budget, 'subject' | 'kind' | 'measure'>, { tolerates, contributions, unaccounted }: Content): Budget {
-  const combine = head.measure === 'rms' ? 'rss' : project.board.combine;
+function budgetOf(project: Project, { subject, kind }: Receiver, { measure, tolerates, contributions, unaccounted }: Content): Budget {
+  const combine = measure === 'rms' ? 'rss' : project.board.combine;
   const sorted = [...contributions].sort(largestFirst);
   const complete = unaccounted.length === 0;
   const known = complete || 0 < sorted.length;
   const { total, errorBar } = totalOf(sorted, combine);
   const marginDb = complete ? marginBetween(tolerates.value, total) : null;
   return {
-    ...head,
+    subject,
+    kind,
+    measure,
     tolerates: tolerates.value,
     toleratesPlace: tolerates.place,
     combine,
@@ -106,29 +101,6 @@ function verdictOf(state: { complete: boolean; total: Voltage; tolerates: Voltag
   if (state.tolerates < state.total) return 'over';
   if (!state.complete) return 'unknown';
   return state.marginDb !== null && state.marginDb < state.headroom ? 'low' : 'pass';
-}
-
-function coupledContribution(coupling: Coupling): Contribution {
-  const { run, aggressor, inBand, atReceiver } = coupling;
-  return {
-    channel: 'coupled',
-    from: aggressor.name,
-    where: run.name,
-    get place() { return victimPlace(coupling); },
-    group: aggressor.switchesWith,
-    value: volts(Math.abs(inBand ?? atReceiver)),
-    unfiltered: inBand === null ? null : volts(Math.abs(atReceiver)),
-    errorBar: coupling.errorBar,
-    bounds: coupling.bounds,
-    method: coupling.model === 'lumped' ? 'coupled lines, short enough to act as a lumped circuit' : 'coupled lines',
-    get assumptions() { return coupling.assumptions; },
-    coupling,
-  };
-}
-
-function victimPlace({ run, victim }: Coupling): Place {
-  for (const row of run.rows) for (const conductor of row.conductors) if (conductor.kind === 'trace' && conductor.net === victim) return conductor.whole;
-  return run.place;
 }
 
 function largestFirst(a: Contribution, b: Contribution): number {

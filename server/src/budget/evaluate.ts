@@ -5,7 +5,8 @@
 import type { Project, Run } from '../board/model';
 import { budgetsOf } from './budgets';
 import { assumptionsFor } from './ends';
-import { isReceiver, rolesOf, type Role, type Roles } from './roles';
+import { receiversOf } from './receivers';
+import { rolesOf, type Role, type Roles } from './roles';
 import type { AssumedEnd, Evaluation } from './results';
 import { runKeys } from './runs/runKey';
 import { runOutcome, type RunOutcome } from './runs/runOutcome';
@@ -15,11 +16,13 @@ import { keepSolution, solvedRun, type SolvedRun } from './runs/solvedRun';
 
 export function evaluate(project: Project, cache: SolveCache): Evaluation {
   const before = cache.work();
-  const roles = rolesOf(project);
+  const receivers = receiversOf(project);
+  const roles = rolesOf(project, receivers);
   const keyOf = runKeys(roles, cache);
   const solved = (run: Run) => keepSolution(run, cache.run(keyOf(run), () => solvedRun(run, roles, cache)));
   const outcomes = project.runs.map((run) => guarded(run, roles, solved));
-  const budgets = budgetsOf(project, roles, outcomes);
+  const channels = { heard: outcomes.flatMap(({ heard }) => heard), lacking: outcomes.flatMap(({ lacking }) => lacking) };
+  const budgets = budgetsOf(project, roles, receivers, channels);
   const after = cache.work();
   return {
     project,
@@ -41,7 +44,8 @@ function guarded(run: Run, roles: Roles, solved: (run: Run) => SolvedRun): RunOu
     const unaccounted = { what: `run ${run.name} is not counted: its computation failed (${what})`, place: run.place };
     return {
       result: { run, traces, matrices: null, refusal: { reason: 'not-solved', what }, impedance: [], delay: [], couplings: [], looseGuards: [] },
-      lacking: traces.filter(({ net }) => isReceiver(net)).map(({ net }) => ({ victim: net, unaccounted })),
+      heard: [],
+      lacking: [...new Set(traces.flatMap(({ net }) => roles.get(net)?.receivers ?? []))].map((receiver) => ({ receiver, unaccounted })),
       limits: [{ subject: { kind: 'run', name: run.name }, place: run.place, message: `run ${run.name} has no numbers: its computation failed (${what})` }],
       coupled: [],
     };

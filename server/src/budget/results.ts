@@ -3,7 +3,7 @@
  * here. Values are SI and nominal; `errorBar` is numerical and relative unless said otherwise.
  */
 import type { Net, Pair, Place, Project, Run, RunConductor } from '../board/model';
-import type { Decibels, DelayPerLength, Length, Resistance, Time, Voltage } from '../units/quantity';
+import type { Decibels, DelayPerLength, Frequency, Length, Resistance, Time, Voltage } from '../units/quantity';
 import type { SectionMatrices, SectionRefusal } from '../physics/section/section';
 import type { Waveform } from '../physics/lines/lines';
 
@@ -51,18 +51,23 @@ export interface LooseGuard {
 /** What one aggressor puts on one victim of a run: the worst of its edges and directions. */
 export interface Coupling {
   readonly run: Run;
-  readonly aggressor: Net;
-  readonly victim: Net;
+  readonly aggressor: Net | Pair;
+  readonly victim: Net | Pair;
+  /** What is read of the victim: a net; of a pair, the difference or the mean. */
+  readonly kind: Budget['kind'];
   readonly edge: 'rise' | 'fall' | 'sine';
   readonly model: 'lumped' | 'line';
   /** Signed peaks: at the victim's near and far end of the run, and at its load end. */
   readonly nearEnd: Voltage;
   readonly farEnd: Voltage;
   readonly atReceiver: Voltage;
-  /** What the victim's `band` leaves of the receiver's peak, signed; null where it states none, or tolerates no peak. */
-  readonly inBand: Voltage | null;
-  readonly peakTime: Time;
-  readonly widthHalf: Time;
+  /** What the victim's `band` and its moment of sampling leave of the receiver's peak, signed; null where it states none, or tolerates no peak. */
+  readonly counted: Voltage | null;
+  /** Of a sine: the worst in its range. Its voltages are magnitudes. */
+  readonly frequency: Frequency | null;
+  /** Null of a sine. */
+  readonly peakTime: Time | null;
+  readonly widthHalf: Time | null;
   /** Shares of the receiver's peak by the short-line model, signed. */
   readonly capacitivePart: Voltage;
   readonly inductivePart: Voltage;
@@ -70,8 +75,8 @@ export interface Coupling {
   readonly errorBar: Voltage;
   /** Over the stated tolerances; null until they are carried through. */
   readonly bounds: readonly [Voltage, Voltage] | null;
-  /** At the victim's receiver, for pictures. */
-  readonly waveform: Waveform;
+  /** At the victim's receiver, for pictures; null of a sine. */
+  readonly waveform: Waveform | null;
   readonly assumptions: readonly string[];
 }
 
@@ -81,6 +86,8 @@ export interface Contribution {
   readonly channel: Channel;
   /** The aggressor, or null where the noise is the circuit's own. */
   readonly from: string | null;
+  /** Contributions of one cause add as magnitudes; causes know nothing of each other. */
+  readonly cause: string;
   /** Name of the run, loop, return or link in which it arises. */
   readonly where: string | null;
   readonly place: Place | null;
@@ -94,6 +101,15 @@ export interface Contribution {
   readonly method: string;
   readonly assumptions: readonly string[];
   readonly coupling: Coupling | null;
+  /** In an rms budget, of what repeats: harmonics of one cause add as magnitudes, each frequency by itself. */
+  readonly spectrum: Spectrum | null;
+}
+
+/** Volts rms of harmonics of one fundamental, from the one numbered `first`. */
+export interface Spectrum {
+  readonly fundamental: Frequency;
+  readonly first: number;
+  readonly rms: Float64Array;
 }
 
 export type Verdict = 'pass' | 'low' | 'over' | 'unknown';

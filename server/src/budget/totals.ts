@@ -1,7 +1,7 @@
 /**
- * One number out of many contributions (physics.md of the design, "budgets"): what one source or one group
- * that switches together causes adds as magnitudes, wherever it arises; groups, sources and the circuit's
- * own noise, which know nothing of each other, then add as magnitudes (`worst`) or as squares (`rss`).
+ * One number out of many contributions (physics.md of the design, "budgets"): what one cause (a source, or a group that
+ * switches together) makes adds as magnitudes, wherever it arises; causes know nothing of each other, and add
+ * as magnitudes (`worst`) or as squares (`rss`).
  */
 import { volts, type Voltage } from '../units/quantity';
 import type { Contribution } from './results';
@@ -11,30 +11,49 @@ export interface Total {
   readonly errorBar: Voltage;
 }
 
-export function totalOf(contributions: readonly Contribution[], combine: 'worst' | 'rss'): Total {
-  const sources = unrelatedSources(contributions);
-  if (combine === 'worst') return { total: volts(sum(sources.map(({ value }) => value))), errorBar: volts(sum(sources.map(({ errorBar }) => errorBar))) };
+type Adding = Pick<Contribution, 'cause' | 'value' | 'errorBar' | 'spectrum'>;
+
+export function totalOf(contributions: readonly Adding[], combine: 'worst' | 'rss'): Total {
+  const causes = causesOf(contributions);
+  if (combine === 'worst') return { total: volts(sum(causes.map(({ value }) => value))), errorBar: volts(sum(causes.map(({ errorBar }) => errorBar))) };
   // hypot does not overflow or vanish where the squares would.
-  const total = sources.reduce((root, { value }) => Math.hypot(root, value), 0);
-  const errorBar = total === 0 ? 0 : sum(sources.map(({ value, errorBar }) => (value / total) * errorBar));
+  const total = causes.reduce((root, { value }) => Math.hypot(root, value), 0);
+  const errorBar = total === 0 ? 0 : sum(causes.map(({ value, errorBar }) => (value / total) * errorBar));
   return { total: volts(total), errorBar: volts(errorBar) };
 }
 
-function unrelatedSources(contributions: readonly Contribution[]): readonly { value: number; errorBar: number }[] {
-  const sources = new Map<string, { value: number; errorBar: number }>();
-  for (const contribution of contributions) {
-    const key = sourceKey(contribution);
-    const known = sources.get(key) ?? { value: 0, errorBar: 0 };
-    sources.set(key, { value: known.value + contribution.value, errorBar: known.errorBar + contribution.errorBar });
-  }
-  // Summed largest first, whatever the order of the text: a total must not depend on it in its last digit.
-  return [...sources.values()].sort((a, b) => b.value - a.value || b.errorBar - a.errorBar);
+interface Cause {
+  readonly value: number;
+  readonly errorBar: number;
 }
 
-/** A group and a net may have one name; they are not one source. */
-function sourceKey({ group, from, channel }: Contribution): string {
-  if (group !== null) return `group ${group}`;
-  return from === null ? `own ${channel}` : `net ${from}`;
+function causesOf(contributions: readonly Adding[]): readonly Cause[] {
+  const members = new Map<string, Adding[]>();
+  for (const contribution of contributions) {
+    const known = members.get(contribution.cause);
+    if (known === undefined) members.set(contribution.cause, [contribution]);
+    else known.push(contribution);
+  }
+  // Summed largest first, whatever the order of the text: a total must not depend on it in its last digit.
+  return [...members.values()].map(causeOf).sort((a, b) => b.value - a.value || b.errorBar - a.errorBar);
+}
+
+function causeOf(members: readonly Adding[]): Cause {
+  const sorted = [...members].sort((a, b) => b.value - a.value || b.errorBar - a.errorBar);
+  const errorBar = sum(sorted.map((member) => member.errorBar));
+  const spectra = sorted.filter(({ spectrum }) => spectrum !== null);
+  if (spectra.length < 2) return { value: sum(sorted.map(({ value }) => value)), errorBar };
+  // Harmonics of different frequencies know nothing of each other, even of one cause.
+  const byFrequency = new Map<string, number>();
+  for (const { spectrum } of spectra) {
+    const { fundamental, first, rms } = spectrum!;
+    rms.forEach((value, at) => {
+      const key = ((first + at) * fundamental).toPrecision(12);
+      byFrequency.set(key, (byFrequency.get(key) ?? 0) + value);
+    });
+  }
+  const ofSpectra = [...byFrequency.values()].sort((a, b) => b - a).reduce((root, value) => Math.hypot(root, value), 0);
+  return { value: ofSpectra + sum(sorted.filter(({ spectrum }) => spectrum === null).map(({ value }) => value)), errorBar };
 }
 
 function sum(values: readonly number[]): number {

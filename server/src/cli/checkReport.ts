@@ -76,8 +76,8 @@ function runReport(result: RunResult, named: (thing: { readonly name: string; re
 }
 
 function couplingReport(coupling: Coupling): FileReport['runs'][number]['couplings'][number] {
-  const { aggressor, victim, edge, model, nearEnd, farEnd, atReceiver, peakTime, widthHalf, capacitivePart, inductivePart, errorBar, bounds } = coupling;
-  return { aggressor: aggressor.name, victim: victim.name, edge, model, nearEnd, farEnd, atReceiver, peakTime, widthHalf, capacitivePart, inductivePart, errorBar, bounds: pairOf(bounds) };
+  const { aggressor, victim, kind, edge, model, frequency, nearEnd, farEnd, atReceiver, peakTime, widthHalf, capacitivePart, inductivePart, errorBar, bounds } = coupling;
+  return { aggressor: aggressor.name, victim: victim.name, kind, edge, frequency, model, nearEnd, farEnd, atReceiver, peakTime, widthHalf, capacitivePart, inductivePart, errorBar, bounds: pairOf(bounds) };
 }
 
 function budgetReport(budget: Budget, placed: Placed): FileReport['budgets'][number] {

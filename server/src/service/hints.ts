@@ -75,7 +75,7 @@ function noiseHints({ budgets }: Evaluation, { run }: RunResult): readonly Place
   for (const conductor of run.rows.flatMap((row) => row.conductors)) {
     if (conductor.kind !== 'trace') continue;
     for (const budget of budgets) {
-      if (budget.subject !== conductor.net || budget.kind !== 'net') continue;
+      if (!isReadAt(budget, conductor.net)) continue;
       const here = budget.contributions.filter(({ coupling, where }) => coupling !== null && where === run.name);
       if (here.length === 0) continue;
       const { total } = totalOf(here, budget.combine);
@@ -87,6 +87,11 @@ function noiseHints({ budgets }: Evaluation, { run }: RunResult): readonly Place
   return [...worst.values()].map(({ placed }) => placed);
 }
 
+/** Of a pair, what it makes of its two nets stands beside either. */
+function isReadAt({ subject }: Budget, net: Net): boolean {
+  return subject.kind === 'net' ? subject === net : subject.plus === net || subject.minus === net;
+}
+
 interface Noise {
   readonly budget: Budget;
   readonly here: readonly Contribution[];
@@ -94,11 +99,11 @@ interface Noise {
   readonly share: number;
 }
 
-function noiseHint(run: Run, { net, whole }: RunConductor & { readonly kind: 'trace' }, { budget, here, total, share }: Noise): Placed {
+function noiseHint(run: Run, { whole }: RunConductor & { readonly kind: 'trace' }, { budget, here, total, share }: Noise): Placed {
   const largest = here[0].coupling;
   const from = largest === null ? null : traceOf(run, largest.aggressor)?.whole ?? null;
   const tooltip = paragraphs(
-    `${inText(total, 'voltage')} on **${escaped(net.name)}** in run ${escaped(run.name)}, ${percent(share)} of the ${inText(budget.tolerates, 'voltage')} that it tolerates.`,
+    `${voltageInText(total, budget)} on **${escaped(receiverInText(budget))}** in run ${escaped(run.name)}, ${percent(share)} of the ${voltageInText(budget.tolerates, budget)} that it tolerates.`,
     here.slice(0, 6).map(({ from: source, value }) => `- ${inText(value, 'voltage')} from ${escaped(source ?? '')}`).join('\n'),
     budget.total !== null && `${inText(budget.total, 'voltage')} over all its runs and channels${budget.complete ? '' : ', and something is not yet counted'}.`,
   );

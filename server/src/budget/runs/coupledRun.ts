@@ -1,14 +1,19 @@
 /** The couplings of a part of a run as the text now names and places them, and what its receivers lack. */
-import type { Net, Run } from '../../board/model';
-import { volts } from '../../units/quantity';
-import { couplingAssumptions } from './couplingAssumptions';
-import { roleOf } from './excitations';
-import { absent, uncountedSourcesOf } from '../notYetCounted';
+import type { Place, Run } from '../../board/model';
+import { seconds, volts } from '../../units/quantity';
+import type { Heard } from '../heard';
+import { absent } from '../notYetCounted';
+import type { Receiver } from '../receivers';
+import type { FoundSpectrum } from '../repeatedSpectrum';
 import type { Coupling, Unaccounted } from '../results';
 import type { Role, Roles } from '../roles';
-import type { RunPart, Trace } from './runParts';
+import { timelessOf } from '../sources';
+import { roleOf } from './arrangements';
+import { couplingAssumptions, guardsInWords } from './couplingAssumptions';
+import { listeners, partReceivers, partSources, type PartReceiver, type PartSource } from './partPlayers';
+import type { FoundSine } from './sineNoise';
 import type { HeardPart } from './solvedRun';
-import { isFiniteNoise, receiversOf, type Found } from './worstNoise';
+import { isFiniteNoise, scaleOf, type Found } from './worstNoise';
 
 export interface PartContext {
   readonly run: Run;
@@ -19,6 +24,7 @@ export interface PartContext {
 
 export interface CoupledPart {
   readonly couplings: readonly Coupling[];
+  readonly heard: readonly Heard[];
   readonly lacking: readonly Lacking[];
   /** Nets whose ends took part. */
   readonly coupled: readonly Role[];
@@ -26,69 +32,141 @@ export interface CoupledPart {
 
 /** A receiver's budget lacks something that arises in this run. */
 export interface Lacking {
-  readonly victim: Net;
+  readonly receiver: Receiver;
   readonly unaccounted: Unaccounted;
 }
 
 export function coupledPart(context: PartContext): CoupledPart {
-  const { run, part, roles } = context;
-  const couplings: Coupling[] = [];
+  const { part, roles } = context;
+  const receivers = partReceivers(part, roles);
+  const heard: Heard[] = [];
   const lacking: Lacking[] = [];
-  for (const [aggressor, trace] of part.traces.entries()) {
-    const receivers = receiversOf(part, trace);
-    if (receivers.length === 0) continue;
-    const missing = [...uncountedSourcesOf(trace.net, roleOf(roles, trace).pair, run.name), ...withoutEdge(trace, run), ...returnResistance(part, trace, run)];
-    for (const index of receivers) for (const unaccounted of missing) lacking.push({ victim: part.traces[index].net, unaccounted });
-    for (const [index, found] of part.noise[aggressor]) {
-      if (isFiniteNoise(found)) couplings.push(couplingOf(context, { aggressor, victim: index }, found));
-      else lacking.push({ victim: part.traces[index].net, unaccounted: { what: `what ${trace.net.name} puts on it in run ${run.name} is beyond what can be computed`, place: trace.whole } });
+  partSources(part, roles).forEach((source, nth) => {
+    for (const index of listeners(receivers, source)) {
+      const meeting = new Meeting(context, source, receivers[index]);
+      const { edges, sines, spectra } = part.noise[nth];
+      const found = meeting.heard({ edge: edges.get(index) ?? null, sines: sines.get(index) ?? [], spectrum: spectra.get(index) ?? null });
+      heard.push(found);
+      for (const unaccounted of meeting.lacking(edges.get(index) ?? null)) lacking.push({ receiver: receivers[index].receiver, unaccounted });
     }
+  });
+  const couplings = heard.flatMap(({ edge, sines }) => [...(edge === null ? [] : [edge]), ...sines].flatMap(({ coupling }) => coupling ?? []));
+  return { couplings, heard, lacking, coupled: couplings.length === 0 ? [] : part.traces.map((trace) => roleOf(roles, trace)) };
+}
+
+/** One source and one receiver in one part of a run. */
+class Meeting {
+  constructor(private readonly context: PartContext, private readonly source: PartSource, private readonly receiver: PartReceiver) {}
+
+  heard({ edge, sines, spectrum }: { edge: Found | null; sines: readonly FoundSine[]; spectrum: FoundSpectrum | null }): Heard {
+    const { context: { run }, source: { source }, receiver: { receiver } } = this;
+    const byEdge = edge === null || !isFiniteNoise(edge) ? null : this.edgeCoupling(edge);
+    const place = this.place();
+    return {
+      channel: 'coupled', source, receiver, where: run.name, place,
+      edge: byEdge === null ? null : {
+        value: volts(Math.abs(byEdge.counted ?? byEdge.atReceiver)),
+        unfiltered: byEdge.counted === null ? null : volts(Math.abs(byEdge.atReceiver)),
+        errorBar: byEdge.errorBar,
+        method: byEdge.model === 'lumped' ? 'coupled lines, short enough to act as a lumped circuit' : 'coupled lines',
+        get assumptions() { return byEdge.assumptions; },
+        coupling: byEdge,
+      },
+      sines: sines.map((found) => {
+        const coupling = this.sineCoupling(found);
+        return {
+          value: volts(coupling.counted ?? coupling.atReceiver),
+          unfiltered: coupling.counted === null ? null : coupling.atReceiver,
+          errorBar: coupling.errorBar,
+          method: found.sine.from === found.sine.to ? 'coupled lines at one frequency' : 'coupled lines at the worst frequency of the range',
+          get assumptions() { return coupling.assumptions; },
+          coupling,
+          frequency: found.frequency,
+          rms: volts((found.withinBand * found.sine.amplitude) / Math.SQRT2),
+        };
+      }),
+      spectrum: spectrum === null ? null : {
+        spectrum: spectrum.spectrum,
+        errorBar: spectrum.errorBar,
+        method: 'Fourier series of the repeated edges through coupled lines',
+        get assumptions() { return byEdge?.assumptions ?? []; },
+        coupling: byEdge,
+      },
+    };
   }
-  return { couplings, lacking, coupled: couplings.length === 0 ? [] : part.traces.map((trace) => roleOf(roles, trace)) };
-}
 
-function withoutEdge({ net, whole }: Trace, run: Run): readonly Unaccounted[] {
-  if (net.swing === null) return [];
-  // A `fall` alone says nothing of the rise; a rise alone is the fall as well.
-  const [rise, fall] = [net.rise?.value ?? null, net.fall?.value ?? null];
-  const missing = rise === null ? ['`rise`', 'it states none'] : rise === 0 ? ['`rise`', 'it is 0 s'] : fall === 0 ? ['`fall`', 'it is 0 s'] : null;
-  return missing === null ? [] : [{ what: `the ${missing[0]} of ${net.name} in run ${run.name} is not counted: ${missing[1]}`, place: whole }];
-}
+  lacking(edge: Found | null): readonly Unaccounted[] {
+    const { context: { run, part }, source: { source: { signal } } } = this;
+    const missing: Unaccounted[] = timelessOf(signal).map(({ what, why }) => ({ what: `the ${what} of ${signal.name} in run ${run.name} is not counted: ${why}`, place: this.sourcePlace() }));
+    // Its inductance is in the run's matrices; what its resistance drops is a shared return's.
+    if (!part.section.planeAbove && !part.section.planeBelow) missing.push(absent(`the resistance of the return in run ${run.name}`, run.place));
+    if (edge !== null && !isFiniteNoise(edge)) missing.push({ what: `what ${signal.name} puts on it in run ${run.name} is beyond what can be computed`, place: this.sourcePlace() });
+    return missing;
+  }
 
-/** Its inductance is in the run's matrices; what its resistance drops is a shared return's. */
-function returnResistance({ section }: RunPart, { net }: Trace, run: Run): readonly Unaccounted[] {
-  if (net.swing === null || section.planeAbove || section.planeBelow) return [];
-  return [absent(`the resistance of the return in run ${run.name}`, run.place)];
-}
+  private place(): Place {
+    return this.context.part.traces[this.receiver.terms[0]!.index].whole;
+  }
 
-function couplingOf(context: PartContext, pair: { aggressor: number; victim: number }, found: Found): Coupling {
-  const { run, part } = context;
-  const { edge, noise, model, carried } = found;
-  const aggressor = part.traces[pair.aggressor].net;
-  const swing = aggressor.swing?.value ?? 0;
-  // A falling edge is the mirror image of a rising one as fast.
-  const scale = edge.kind === 'fall' ? -swing : swing;
-  const of = (value: number) => volts(scale * value);
-  // A band takes from the error what it takes from the peak.
-  const passed = noise.inBand === null || noise.atReceiver === 0 ? 1 : Math.abs(noise.inBand / noise.atReceiver);
-  return {
-    run,
-    aggressor,
-    victim: part.traces[pair.victim].net,
-    edge: edge.kind,
-    model,
-    nearEnd: of(noise.nearEnd),
-    farEnd: of(noise.farEnd),
-    atReceiver: of(noise.atReceiver),
-    inBand: noise.inBand === null ? null : of(noise.inBand),
-    peakTime: noise.peakTime,
-    widthHalf: noise.widthHalf,
-    capacitivePart: of(noise.capacitivePart),
-    inductivePart: of(noise.inductivePart),
-    errorBar: volts(Math.abs(scale) * passed * (noise.errorBar + carried)),
-    bounds: null,
-    // Pictures and words are made when they are asked for: a board has hundreds of couplings, and shows one.
-    get waveform() { return { times: noise.waveform.times, values: noise.waveform.values.map((value) => scale * value) }; },
-    get assumptions() { return couplingAssumptions(context, pair, found); },
-  };
+  private sourcePlace(): Place {
+    return this.context.part.traces[this.source.lines[0]!.index].whole;
+  }
+
+  private edgeCoupling(found: Found): Coupling {
+    const { context, source, receiver } = this;
+    const { edge, noise, model, carried } = found;
+    const scale = scaleOf(edge);
+    const of = (value: number) => volts(scale * value);
+    // A filter takes from the error what it takes from the peak.
+    const passed = noise.counted === null || noise.atReceiver === 0 ? 1 : Math.abs(noise.counted / noise.atReceiver);
+    return {
+      run: context.run,
+      aggressor: source.source.signal,
+      victim: receiver.receiver.subject,
+      kind: receiver.receiver.kind,
+      edge: edge.kind,
+      model,
+      nearEnd: of(noise.nearEnd),
+      farEnd: of(noise.farEnd),
+      atReceiver: of(noise.atReceiver),
+      counted: noise.counted === null ? null : of(noise.counted),
+      frequency: null,
+      peakTime: noise.peakTime,
+      widthHalf: noise.widthHalf,
+      capacitivePart: of(noise.capacitivePart),
+      inductivePart: of(noise.inductivePart),
+      errorBar: volts(Math.abs(scale) * passed * (noise.errorBar + carried)),
+      bounds: null,
+      // Pictures and words are made when they are asked for: a board has hundreds of couplings, and shows one.
+      get waveform() { return { times: noise.waveform.times, values: noise.waveform.values.map((value) => scale * value) }; },
+      get assumptions() { return couplingAssumptions(context, { source, receiver }, { ...guardsInWords(found.guards, edge.rise), followed: noise.followed }); },
+    };
+  }
+
+  private sineCoupling(found: FoundSine): Coupling {
+    const { context, source, receiver } = this;
+    const { amplitude } = found.sine;
+    const of = (value: number) => volts(amplitude * value);
+    return {
+      run: context.run,
+      aggressor: source.source.signal,
+      victim: receiver.receiver.subject,
+      kind: receiver.receiver.kind,
+      edge: 'sine',
+      model: found.model,
+      nearEnd: of(found.nearEnd),
+      farEnd: of(found.farEnd),
+      atReceiver: of(found.atReceiver),
+      counted: found.counted === null ? null : of(found.counted),
+      frequency: found.frequency,
+      peakTime: null,
+      widthHalf: null,
+      capacitivePart: of(found.capacitivePart),
+      inductivePart: of(found.inductivePart),
+      errorBar: volts(amplitude * found.errorBar * (found.counted ?? found.atReceiver)),
+      bounds: null,
+      waveform: null,
+      get assumptions() { return couplingAssumptions(context, { source, receiver }, { ...guardsInWords(found.guards, seconds(0.35 / found.frequency)), followed: false }); },
+    };
+  }
 }

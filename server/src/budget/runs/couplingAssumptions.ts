@@ -1,28 +1,42 @@
 import { kneeFrequency } from '../../physics/lines/knee';
 import { inText } from '../../units/inText';
-import type { PartContext } from './coupledRun';
+import type { Time } from '../../units/quantity';
 import { assumptionsFor } from '../ends';
-import { leadsOf, roleOf } from './excitations';
+import { leadsOf, roleOf } from './arrangements';
+import type { PartContext } from './coupledRun';
+import type { PartReceiver, PartSource } from './partPlayers';
 import { neighboursEachSide } from './runParts';
 import type { Found } from './worstNoise';
 
+export interface FoundInWords {
+  /** What had to be said of guards and returns; null where they carry their balancing current. */
+  readonly guards: string | null;
+  readonly followed: boolean;
+}
+
 /** What a coupling's numbers rest on beyond the text: a clause each. */
-export function couplingAssumptions({ run, part, roles, windowed }: PartContext, { aggressor, victim }: { aggressor: number; victim: number }, found: Found): readonly string[] {
+export function couplingAssumptions({ run, part, roles, windowed }: PartContext, { source, receiver }: { source: PartSource; receiver: PartReceiver }, { guards: slow, followed }: FoundInWords): readonly string[] {
   const said: string[] = [];
-  const traces = [part.traces[aggressor], part.traces[victim]];
+  const traces = [...source.lines, ...receiver.terms].map(({ index }) => part.traces[index]);
   for (const trace of traces) {
     for (const { missing, assumed } of assumptionsFor(roleOf(roles, trace))) said.push(`${trace.net.name} states no \`${missing}\`: ${assumed}`);
   }
   const guards = new Set(part.conductors.flatMap((conductor) => (conductor.kind === 'guard' ? [conductor.name] : [])));
   if (0 < guards.size) said.push(`guard ${[...guards].join(', ')} counts as tied to the reference everywhere`);
-  const knee = () => inText(kneeFrequency(found.edge.rise), 'frequency');
-  if (found.guards === 'balance') said.push(`the knee at ${knee()} is below where guards and returns carry their balancing current: computed as if they did, which gave the larger noise`);
-  if (found.guards === 'idle') said.push(`the knee at ${knee()} is below where guards and returns carry their balancing current: computed without it, which gave the larger noise`);
-  if (found.noise.followed) said.push('slower than the echoes on the line: followed to its peak as a lumped circuit');
+  if (slow !== null) said.push(slow);
+  if (followed) said.push('slower than the echoes on the line: followed to its peak as a lumped circuit');
   for (const trace of traces) {
-    const { before, after } = leadsOf(trace, run.length.value);
+    const { before, after } = leadsOf(trace, roleOf(roles, trace), run.length.value);
     if (0 < before + after) said.push(`${inText(before, 'length')} of ${trace.net.name} before the run and ${inText(after, 'length')} after it count as uncoupled line`);
   }
+  const { receiver: { kind, subject, leak } } = receiver;
+  if (kind === 'pair' && leak === 0 && 1 < receiver.terms.length) said.push(`${subject.name} states no \`rejects\`: what its two nets have in common counts for nothing`);
   if (windowed) said.push(`with the ${neighboursEachSide} nearest conductors on each side`);
   return said;
+}
+
+export function guardsInWords(guards: Found['guards'], rise: Time): Pick<FoundInWords, 'guards'> {
+  if (guards === 'ideal') return { guards: null };
+  const knee = inText(kneeFrequency(rise), 'frequency');
+  return { guards: `the knee at ${knee} is below where guards and returns carry their balancing current: computed ${guards === 'balance' ? 'as if they did' : 'without it'}, which gave the larger noise` };
 }

@@ -6,8 +6,10 @@ import { kneeFrequency } from '../../physics/lines/knee';
 import { copperResistivity, mu0 } from '../../units/constants';
 import { inText } from '../../units/inText';
 import type { Time } from '../../units/quantity';
+import type { Roles } from '../roles';
 import { refusalInText } from './refusalInText';
 import { conductorsAtOnce, neighboursEachSide, type RefusedPart, type RunPart, type RunParts } from './runParts';
+import { fastestEdge, partReceivers, partSources } from './partPlayers';
 import type { HeardPart } from './solvedRun';
 import { isFiniteNoise } from './worstNoise';
 
@@ -25,9 +27,8 @@ export function refusalLimits(run: Run, { refusal, conductors }: RefusedPart): r
   return [`run ${run.name} has no numbers: ${refusalInText(refusal, conductors)}`];
 }
 
-/** `fastest`: the shortest 10–90 % time of what moves in the part. */
-export function partLimits(run: Run, part: HeardPart, fastest: Time | null): readonly string[] {
-  return [...accuracyLimits(run, part), ...sizeLimits(run, part, fastest), ...noiseLimits(run, part)];
+export function partLimits(run: Run, part: HeardPart, roles: Roles): readonly string[] {
+  return [...accuracyLimits(run, part), ...sizeLimits(run, part, fastestEdge(part, roles)), ...noiseLimits(run, part, roles)];
 }
 
 function accuracyLimits(run: Run, { matrices }: RunPart): readonly string[] {
@@ -55,18 +56,20 @@ function sizeAcross({ section: { conductors, planeBelow } }: RunPart): number {
   return Math.max(right, Math.max(...conductors.map(({ y, height }) => y + height)) - bottom);
 }
 
-function noiseLimits(run: Run, part: HeardPart): readonly string[] {
-  const heard = part.noise.flatMap((receivers, aggressor) => [...receivers].flatMap(([victim, noise]) => (isFiniteNoise(noise) ? [{ aggressor, victim, noise }] : [])));
-  const growing = heard.filter(({ noise }) => noise.noise.growing);
-  const found: string[] = [];
-  if (0 < growing.length) {
-    const [{ aggressor, victim }] = growing;
-    found.push(`what ${part.traces[aggressor].net.name} puts on ${part.traces[victim].net.name} in run ${run.name}${growing.length === 1 ? '' : ` (and ${growing.length - 1} more)`} still grows 20 delays of the run after the edge: losses decide its peak, and they are not in the model`);
-  }
-  const neglected = heard.filter(({ noise }) => noise.model === 'line').map(({ noise }) => internalInductance(part, noise.edge.rise));
+function noiseLimits(run: Run, part: HeardPart, roles: Roles): readonly string[] {
+  const [sources, receivers] = [partSources(part, roles), partReceivers(part, roles)];
+  const said = (source: number, receiver: number) => `what ${sources[source]!.source.signal.name} puts on ${receivers[receiver]!.receiver.subject.name} in run ${run.name}`;
+  const more = (count: number) => (count === 1 ? '' : ` (and ${count - 1} more)`);
+  const byEdges = part.noise.flatMap(({ edges }, source) => [...edges].flatMap(([receiver, found]) => (isFiniteNoise(found) ? [{ source, receiver, found }] : [])));
+  const growing = byEdges.filter(({ found }) => found.noise.growing);
+  const limits: string[] = [];
+  if (0 < growing.length) limits.push(`${said(growing[0]!.source, growing[0]!.receiver)}${more(growing.length)} still grows 20 delays of the run after the edge: losses decide its peak, and they are not in the model`);
+  const resonant = part.noise.flatMap(({ sines }, source) => [...sines].flatMap(([receiver, all]) => all.filter(({ unresolved }) => unresolved).map(() => ({ source, receiver }))));
+  if (0 < resonant.length) limits.push(`${said(resonant[0]!.source, resonant[0]!.receiver)}${more(resonant.length)} has a resonance in the range of its sine that nothing damps: losses decide how high it is, and they are not in the model`);
+  const neglected = byEdges.filter(({ found }) => found.model === 'line').map(({ found }) => internalInductance(part, found.edge.rise));
   const largest = Math.max(0, ...neglected);
-  if (worthSaying < largest) found.push(`the inductance inside the copper of run ${run.name} is left out: up to ${inText(largest, 'fraction')} of a trace's own at the knee of its edges, said from ${inText(worthSaying, 'fraction')}`);
-  return found;
+  if (worthSaying < largest) limits.push(`the inductance inside the copper of run ${run.name} is left out: up to ${inText(largest, 'fraction')} of a trace's own at the knee of its edges, said from ${inText(worthSaying, 'fraction')}`);
+  return limits;
 }
 
 const worthSaying = 0.05;

@@ -3,8 +3,10 @@
  * `solvedRun` comes to read of a run, a stackup or a net has to stand here.
  */
 import type { End, Net, Run, RunConductor, Stackup } from '../../board/model';
-import { isReceiver, type Role, type Roles } from '../roles';
+import type { Receiver } from '../receivers';
+import type { Role, Roles } from '../roles';
 import type { SolveCache } from '../solveCache';
+import type { Source } from '../sources';
 
 /** Keys of one project's runs: its nets and stackups are written out once. */
 export function runKeys(roles: Roles, cache: SolveCache): (run: Run) => string {
@@ -38,11 +40,29 @@ function stackupContent({ rows }: Stackup): string {
 }
 
 function netContent(net: Net, role: Role | undefined): string {
-  const { name, swing, rise, fall, bothWays, length, repeats, band, toleratesPeak } = net;
+  const { pair } = role ?? {};
   return written([
-    'net', name, role?.drives, role?.receives, ...endContent(role?.source), ...endContent(role?.load), isReceiver(net), toleratesPeak !== null,
-    swing !== null, rise?.value, fall?.value, bothWays, length?.value, repeats?.frequency.value, band?.from.value, band?.to.value,
+    'net', net.name, role?.bothWays, role?.length, ...endContent(role?.source), ...endContent(role?.load),
+    'pair', pair?.name, pair?.plus?.name, pair?.minus?.name, ...endContent(pair?.across),
+    ...(role?.sources ?? []).flatMap(sourceContent), ...(role?.receivers ?? []).flatMap(receiverContent),
   ]);
+}
+
+function sourceContent({ signal, moves }: Source) {
+  const { kind, name, swing, rise, fall, sine, current, repeats, once, switchesWith } = signal;
+  const drawn = current === null ? [] : [current.form, current.amplitude.value, ...(current.form === 'ramp' ? [current.rise?.value] : [current.measure, current.from.value, current.to?.value])];
+  const tone = sine === null ? [] : [sine.amplitude.value, sine.measure, sine.from.value, sine.to?.value];
+  return [
+    'source', kind, name, ...moves.flatMap(({ net, sign }) => [net.name, sign]), switchesWith,
+    // With a current beside it the swing is no mere factor.
+    swing !== null, current === null ? null : swing?.value, rise?.value, fall?.value, 'sine', ...tone, 'current', ...drawn,
+    'repeats', repeats?.frequency.value, repeats?.duty?.value, once,
+  ];
+}
+
+function receiverContent({ subject, kind, terms, leak, toleratesPeak, toleratesRms }: Receiver) {
+  const { band, samples } = subject;
+  return ['receiver', subject.kind, subject.name, kind, ...terms.flatMap(({ net, weight }) => [net.name, weight]), leak, toleratesPeak !== null, toleratesRms !== null, band?.from.value, band?.to.value, samples?.delay.value, samples?.group];
 }
 
 function endContent(end: End | null | undefined) {

@@ -4,16 +4,18 @@
  */
 import type { Run } from '../../board/model';
 import { coupledPart, type Lacking } from './coupledRun';
-import { roleOf } from './excitations';
+import { roleOf } from './arrangements';
 import { refusalInText } from './refusalInText';
+import type { Heard } from '../heard';
 import type { ModelLimit, RunResult } from '../results';
-import { isReceiver, type Role, type Roles } from '../roles';
+import { hears, type Role, type Roles } from '../roles';
 import { runTraces } from './runMatrices';
 import type { RefusedPart } from './runParts';
 import { boundTo, type SolvedRun } from './solvedRun';
 
 export interface RunOutcome {
   readonly result: RunResult;
+  readonly heard: readonly Heard[];
   readonly lacking: readonly Lacking[];
   readonly limits: readonly ModelLimit[];
   /** Nets whose ends took part in a coupling. */
@@ -25,6 +27,7 @@ export function runOutcome(run: Run, roles: Roles, solved: SolvedRun): RunOutcom
   const outcomes = parts.map((part) => coupledPart({ run, part, roles, windowed: solved.windowed }));
   return {
     result: { run, traces: runTraces(run), ...solved.whole, couplings: outcomes.flatMap(({ couplings }) => couplings), looseGuards: loose },
+    heard: outcomes.flatMap(({ heard }) => heard),
     lacking: [...outcomes.flatMap(({ lacking }) => lacking), ...refused.flatMap((part) => lackingOf(run, roles, part))],
     limits: solved.limits.map((message) => ({ subject: { kind: 'run', name: run.name }, place: run.place, message })),
     coupled: outcomes.flatMap(({ coupled }) => coupled),
@@ -33,8 +36,9 @@ export function runOutcome(run: Run, roles: Roles, solved: SolvedRun): RunOutcom
 
 /** What a receiver would have got in a part of a run that could not be solved. */
 function lackingOf(run: Run, roles: Roles, { conductors, refusal }: RefusedPart): readonly Lacking[] {
-  const traces = conductors.filter((conductor) => conductor.kind === 'trace');
-  return traces
-    .filter(({ net }) => isReceiver(net) && traces.some((other) => other.net !== net && roleOf(roles, other).drives))
-    .map(({ net }) => ({ victim: net, unaccounted: { what: `run ${run.name} is not counted: ${refusalInText(refusal, conductors)}`, place: run.place } }));
+  const there = conductors.flatMap((conductor) => (conductor.kind === 'trace' ? [roleOf(roles, conductor)] : []));
+  const receivers = new Set(there.flatMap(({ receivers: all }) => all));
+  return [...receivers]
+    .filter((receiver) => there.some(({ sources }) => sources.some((source) => hears(receiver, source))))
+    .map((receiver) => ({ receiver, unaccounted: { what: `run ${run.name} is not counted: ${refusalInText(refusal, conductors)}`, place: run.place } }));
 }

@@ -5,15 +5,17 @@
  */
 import type { Run, RunConductor } from '../../board/model';
 import type { SectionRefusal } from '../../physics/section/section';
-import { seconds, type Length, type Time } from '../../units/quantity';
-import { edgesOf } from './excitations';
+import type { Length } from '../../units/quantity';
 import { looseGuards } from './looseGuards';
 import { partLimits, refusalLimits, runLimits } from './modelLimits';
 import type { RunResult } from '../results';
+import { fastestEdge, partReceivers, partSources } from './partPlayers';
 import type { Roles } from '../roles';
 import { runMatrices, runTraces } from './runMatrices';
 import { runParts, type RefusedPart, type RunPart } from './runParts';
 import type { SolveCache } from '../solveCache';
+import { repeatedNoise, type SpectraByReceiver } from './repeatedNoise';
+import { sineNoise, type SinesByReceiver } from './sineNoise';
 import { worstNoise, type FoundByReceiver } from './worstNoise';
 
 export interface SolvedRun {
@@ -30,24 +32,35 @@ interface SolvedPart extends Omit<HeardPart, 'conductors' | 'traces'> {
   readonly at: readonly number[];
 }
 
-/** A part with what each of its traces, by index, puts on the others. */
+/** A part with what each of its sources, in the order of `partSources`, puts on those that listen. */
 export interface HeardPart extends RunPart {
-  readonly noise: readonly FoundByReceiver[];
+  readonly noise: readonly SourceNoise[];
+}
+
+/** What one source puts on every receiver of the part. */
+export interface SourceNoise {
+  readonly edges: FoundByReceiver;
+  readonly sines: SinesByReceiver;
+  readonly spectra: SpectraByReceiver;
 }
 
 export function solvedRun(run: Run, roles: Roles, cache: SolveCache): SolvedRun {
   const solved = runParts(run, cache);
-  const parts = solved.parts.map((part): HeardPart => ({ ...part, noise: part.traces.map((_, aggressor) => worstNoise(part, aggressor, { roles, length: run.length.value, cache })) }));
+  const parts = solved.parts.map((part): HeardPart => {
+    const receivers = partReceivers(part, roles);
+    const context = { roles, length: run.length.value, cache };
+    return { ...part, noise: partSources(part, roles).map((source) => ({ edges: worstNoise(part, source, receivers, context), sines: sineNoise(part, source, receivers, context), spectra: repeatedNoise(part, source, receivers, context) })) };
+  });
   const indices = new Map(conductorsOf(run).map((conductor, index) => [conductor, index]));
   const at = (conductor: RunConductor) => indices.get(conductor) as number;
-  const loose = new Map(parts.flatMap((part) => looseGuards(run, part, fastestEdge(part))).map((each) => [each.guard, each]));
+  const loose = new Map(parts.flatMap((part) => looseGuards(run, part, fastestEdge(part, roles))).map((each) => [each.guard, each]));
   return {
     whole: wholeOf(run, parts, solved.refused),
     parts: parts.map(({ section, id, conductors, matrices, alone, read, noise }) => ({ section, id, matrices, alone, read, noise, at: conductors.map(at) })),
     refused: solved.refused.map(({ conductors, refusal }) => ({ at: conductors.map(at), refusal })),
     windowed: solved.windowed,
     loose: [...loose.values()].map(({ guard, spacing, largest }) => ({ at: at(guard), spacing, largest })),
-    limits: [...new Set([...runLimits(run, solved), ...parts.flatMap((part) => partLimits(run, part, fastestEdge(part))), ...solved.refused.flatMap((part) => refusalLimits(run, part))])],
+    limits: [...new Set([...runLimits(run, solved), ...parts.flatMap((part) => partLimits(run, part, roles)), ...solved.refused.flatMap((part) => refusalLimits(run, part))])],
   };
 }
 
@@ -88,12 +101,6 @@ export function boundTo(run: Run, { parts, refused, loose }: SolvedRun): BoundRu
 
 function conductorsOf({ rows }: Run): readonly RunConductor[] {
   return rows.length === 1 ? rows[0].conductors : rows.flatMap(({ conductors }) => conductors);
-}
-
-/** 10–90 % */
-function fastestEdge({ traces }: RunPart): Time | null {
-  const edges = traces.filter(({ net }) => net.swing !== null).flatMap(({ net }) => edgesOf(net).map(({ rise }) => rise));
-  return edges.length === 0 ? null : seconds(Math.min(...edges));
 }
 
 function wholeOf(run: Run, parts: readonly RunPart[], refused: readonly RefusedPart[]): SolvedRun['whole'] {

@@ -1,18 +1,20 @@
 /**
- * What one line of a part of a run puts on the receivers in it, for a swing of one volt: the worst of its edges, of
- * the directions in which it and they are driven, and of what is assumed for sources that nobody stated.
+ * What one source in a part of a run puts on those that listen there: the worst of its edges, of the directions in
+ * which it and they are driven, and of what is assumed for sources that nobody stated.
  */
-import type { Net } from '../../board/model';
 import { electricalLength } from '../../physics/lines/electricalLength';
 import { kneeFrequency } from '../../physics/lines/knee';
+import { volts, type Length } from '../../units/quantity';
+import { bandOf, sampledAfter } from '../receivers';
+import type { Roles } from '../roles';
+import type { SolveCache } from '../solveCache';
+import { edgesOf, type Edge } from '../sources';
+import { arrangementsFor, type Arrangement } from './arrangements';
 import { slowInductance } from './balancingCurrent';
 import { carriedError } from './carriedError';
-import { arrangementsFor, edgesOf, type Arrangement, type Edge } from './excitations';
-import { isReceiver, type Roles } from '../roles';
-import type { RunPart, Trace } from './runParts';
-import { solvedLine, type ReceivedNoise } from './solvedLine';
-import type { SolveCache } from '../solveCache';
-import type { Length } from '../../units/quantity';
+import { listeners, type PartReceiver, type PartSource } from './partPlayers';
+import type { RunPart } from './runParts';
+import { solvedLine, type Reading, type ReceivedNoise } from './solvedLine';
 
 /** One way to compute a coupling, and what came of it. */
 export interface Found {
@@ -21,56 +23,66 @@ export interface Found {
   /** Where the edge is too slow for them: whether they carry their balancing current all the same. */
   readonly guards: 'ideal' | 'balance' | 'idle';
   readonly model: ReturnType<typeof electricalLength>;
-  /** For one volt of a rising edge. */
+  /** For a rising edge; for one volt of it where the voltage alone moves. */
   readonly noise: ReceivedNoise;
   /** Of the peak at the receiver, by the cross-section's error bars. */
   readonly carried: number;
 }
 
-/** By the index of the receiving trace. */
+/** By the index of the part's receiver. */
 export type FoundByReceiver = ReadonlyMap<number, Found>;
 
-export function worstNoise(part: RunPart, aggressor: number, { roles, length, cache }: { roles: Roles; length: Length; cache: SolveCache }): FoundByReceiver {
-  const { net } = part.traces[aggressor];
-  const receivers = receiversOf(part, part.traces[aggressor]);
+export interface NoiseContext {
+  readonly roles: Roles;
+  readonly length: Length;
+  readonly cache: SolveCache;
+}
+
+export function worstNoise(part: RunPart, player: PartSource, receivers: readonly PartReceiver[], { roles, length, cache }: NoiseContext): FoundByReceiver {
+  const { signal } = player.source;
+  const heard = listeners(receivers, player);
   const worst = new Map<number, Omit<Found, 'carried'>>();
-  if (receivers.length === 0 || net.swing === null) return new Map();
-  const read = receivers.map((index) => ({ index, band: bandOf(part.traces[index].net) }));
-  for (const edge of edgesOf(net)) {
+  if (heard.length === 0) return new Map();
+  const readings = heard.map((index) => readingOf(receivers[index], player));
+  const moving = player.lines.map(({ index }) => index);
+  for (const edge of edgesOf(signal)) {
     const slowed = slowInductance(part, kneeFrequency(edge.rise), cache);
-    for (const arrangement of arrangementsFor(part, roles, aggressor, length)) {
+    // The voltage alone is solved for one volt, so that another swing finds it again.
+    const voltage = edge.voltage !== null && edge.current === null ? { ...edge.voltage, amplitude: volts(1) } : edge.voltage;
+    for (const arrangement of arrangementsFor(part, roles, moving, length)) {
       for (const inductance of slowed === null ? [part.matrices.inductance] : [part.matrices.inductance, slowed]) {
         const guards = inductance === slowed ? 'idle' : slowed === null ? 'ideal' : 'balance';
-        const request = { part, inductance, slow: inductance === slowed, length, arrangement, aggressor, duration: edge.duration, repeats: net.repeats?.frequency.value ?? null, receivers: read };
-        const { delay, receivers: noises } = solvedLine(request, cache);
+        const request = { part, inductance, slow: inductance === slowed, length, arrangement, moving: player.lines, voltage, current: edge.current, repeats: signal.repeats?.frequency.value ?? null, readings };
+        const { delay, readings: noises } = solvedLine(request, cache);
         noises.forEach((noise, at) => {
-          const known = worst.get(receivers[at]);
-          if (known === undefined || counted(known.noise) < counted(noise)) worst.set(receivers[at], { edge, arrangement, guards, model: electricalLength(delay, edge.rise), noise });
+          const known = worst.get(heard[at]);
+          if (known === undefined || countedOf(known.noise) < countedOf(noise)) worst.set(heard[at], { edge, arrangement, guards, model: electricalLength(delay, edge.rise), noise });
         });
       }
     }
   }
-  return new Map([...worst].map(([victim, found]) => [victim, { ...found, carried: carriedTo(part, { aggressor, victim }, found.noise) }]));
+  return new Map([...worst].map(([index, found]) => [index, { ...found, carried: carriedTo(part, player, receivers[index], found.noise) }]));
 }
 
 export function isFiniteNoise({ noise }: Pick<Found, 'noise'>): boolean {
-  return [noise.nearEnd, noise.farEnd, noise.atReceiver, noise.inBand ?? 0, noise.errorBar].every(Number.isFinite);
+  return [noise.nearEnd, noise.farEnd, noise.atReceiver, noise.counted ?? 0, noise.errorBar].every(Number.isFinite);
 }
 
-/** A net is no aggressor to itself, however many of its traces lie in the run. */
-export function receiversOf({ read, traces }: Pick<RunPart, 'read' | 'traces'>, aggressor: Trace): readonly number[] {
-  return read.filter((index) => isReceiver(traces[index].net) && traces[index].net !== aggressor.net);
+/** What the found noise is to be multiplied with: volts of the swing, and the sign of the edge, of which a fall is the mirror image. */
+export function scaleOf({ kind, voltage, current }: Edge): number {
+  return (kind === 'fall' ? -1 : 1) * (voltage !== null && current === null ? voltage.amplitude : 1);
 }
 
-/** Only a peak budget is filtered by its band here; an rms budget has its own way to count. */
-function bandOf(net: Net) {
-  return net.band === null || net.toleratesPeak === null ? null : { from: net.band.from.value, to: net.band.to.value };
+function readingOf({ receiver, terms }: PartReceiver, { source: { signal } }: PartSource): Reading {
+  return { terms, leak: receiver.leak, band: receiver.toleratesPeak === null ? null : bandOf(receiver), after: sampledAfter(receiver, signal) };
 }
 
-function counted({ inBand, atReceiver }: ReceivedNoise): number {
-  return Math.abs(inBand ?? atReceiver);
+function countedOf({ counted, atReceiver }: ReceivedNoise): number {
+  return Math.abs(counted ?? atReceiver);
 }
 
-function carriedTo({ matrices }: RunPart, pair: { aggressor: number; victim: number }, noise: ReceivedNoise): number {
-  return carriedError(matrices, { ...pair, peak: noise.atReceiver, capacitive: noise.capacitivePart, inductive: noise.inductivePart });
+function carriedTo({ matrices }: RunPart, { lines }: PartSource, { terms }: PartReceiver, { atReceiver, gross: { capacitive, inductive } }: ReceivedNoise): number {
+  const several = 1 < lines.length + terms.length - 1;
+  const peak = several ? Math.max(Math.abs(atReceiver), capacitive + inductive) : atReceiver;
+  return Math.max(...lines.flatMap(({ index: aggressor }) => terms.map(({ index: victim }) => carriedError(matrices, { aggressor, victim, peak, capacitive, inductive }))));
 }

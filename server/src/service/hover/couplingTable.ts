@@ -10,12 +10,12 @@ export function couplingTable(couplings: readonly Coupling[]): string {
   const sorted = [...couplings].sort((a, b) => sizeOf(b) - sizeOf(a));
   const rows = sorted.slice(0, couplingsShown).map((coupling) => [
     `${escaped(coupling.aggressor.name)} → ${escaped(coupling.victim.name)}`,
-    `**${voltage(coupling.atReceiver)}** ± ${voltage(coupling.errorBar)}${coupling.inBand === null ? '' : `, ${voltage(coupling.inBand)} in its band`}`,
+    `**${voltage(coupling.atReceiver)}** ± ${voltage(coupling.errorBar)}${coupling.counted === null ? '' : `, ${voltage(coupling.counted)} counts`}`,
     voltage(coupling.nearEnd),
     voltage(coupling.farEnd),
     voltage(coupling.capacitivePart),
     voltage(coupling.inductivePart),
-    `${inText(coupling.peakTime, 'time')} after the ${coupling.edge} begins, ${inText(coupling.widthHalf, 'time')} wide`,
+    momentInWords(coupling),
     coupling.model,
   ]);
   const rest = sorted.length - rows.length;
@@ -30,8 +30,13 @@ function partsAddUp({ capacitivePart, inductivePart, atReceiver }: Coupling): bo
   return Math.abs(capacitivePart + inductivePart - atReceiver) <= 0.1 * Math.abs(atReceiver);
 }
 
-function sizeOf({ inBand, atReceiver }: Coupling): number {
-  return Math.abs(inBand ?? atReceiver);
+function sizeOf({ counted, atReceiver }: Coupling): number {
+  return Math.abs(counted ?? atReceiver);
+}
+
+function momentInWords({ edge, frequency, peakTime, widthHalf }: Coupling): string {
+  if (frequency !== null) return `a sine at ${inText(frequency, 'frequency')}`;
+  return peakTime === null || widthHalf === null ? '' : `${inText(peakTime, 'time')} after the ${edge} begins, ${inText(widthHalf, 'time')} wide`;
 }
 
 function voltage(value: number): string {

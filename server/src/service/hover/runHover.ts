@@ -1,5 +1,5 @@
 /** A run, and what of it stands at a point: a trace, a guard or return, a gap, its length. */
-import type { RunConductor } from '../../board/model';
+import type { Net, Pair, RunConductor } from '../../board/model';
 import type { RunResult } from '../../budget/results';
 import { refusalInText } from '../../budget/runs/refusalInText';
 import type { FixContext } from '../../fixes/fix';
@@ -34,8 +34,9 @@ export function runPointHover(result: RunResult, point: RunPoint, context: () =>
 function traceHover(result: RunResult, { place }: RunConductor & { readonly kind: 'trace' }): string {
   const traces = result.traces.filter((trace) => trace.place === place || (trace.place.path === place.path && trace.place.span.start === place.span.start));
   const nets = new Set(traces.map(({ net }) => net));
-  const onto = result.couplings.filter(({ victim }) => nets.has(victim));
-  const from = result.couplings.filter(({ aggressor }) => nets.has(aggressor));
+  const concerns = (signal: Net | Pair) => (signal.kind === 'net' ? nets.has(signal) : [signal.plus, signal.minus].some((net) => net !== null && nets.has(net)));
+  const onto = result.couplings.filter(({ victim }) => concerns(victim));
+  const from = result.couplings.filter(({ aggressor }) => concerns(aggressor));
   const lines = traces.slice(0, 4).map((trace) => {
     const index = result.traces.indexOf(trace);
     const line = result.impedance[index] === undefined ? '' : `, ${inText(result.impedance[index], 'resistance')}, ${inText(result.delay[index] * result.run.length.value, 'time')} from end to end`;

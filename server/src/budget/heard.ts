@@ -1,0 +1,52 @@
+/**
+ * What one source puts on one receiver by one way: the currency between the channels, which compute it, and the budgets, which
+ * add it up. Magnitudes; by its edges as a peak, by each of its sines, and by its repeated edges as a spectrum.
+ */
+import type { Place } from '../board/model';
+import type { Frequency, Voltage } from '../units/quantity';
+import type { Channel, Coupling, Spectrum } from './results';
+import type { Receiver } from './receivers';
+import type { Source } from './sources';
+
+export interface Heard {
+  readonly channel: Channel;
+  readonly source: Source;
+  readonly receiver: Receiver;
+  /** Of the run, link, loop or return, and where in the text. */
+  readonly where: string;
+  readonly place: Place;
+  /** Null where it has no edge. */
+  readonly edge: HeardPeak | null;
+  readonly sines: readonly HeardSine[];
+  /** In the receiver's band; null where it has no rms budget, or nothing repeats. */
+  readonly spectrum: HeardSpectrum | null;
+}
+
+interface HeardPart {
+  readonly errorBar: Voltage;
+  readonly method: string;
+  readonly assumptions: readonly string[];
+  /** Where a run's copper does it. */
+  readonly coupling: Coupling | null;
+}
+
+export interface HeardPeak extends HeardPart {
+  readonly value: Voltage;
+  /** Before what the filter or the moment of sampling takes away; null where they take nothing. */
+  readonly unfiltered: Voltage | null;
+}
+
+export interface HeardSine extends HeardPeak {
+  /** Of the worst in its range. */
+  readonly frequency: Frequency;
+  /** In the receiver's band; 0 outside. */
+  readonly rms: Voltage;
+}
+
+export interface HeardSpectrum extends HeardPart {
+  readonly spectrum: Spectrum;
+}
+
+export function rmsOf({ rms }: Spectrum): number {
+  return rms.reduce((root, value) => Math.hypot(root, value), 0);
+}

@@ -1,0 +1,88 @@
+/**
+ * What the repeated edges of a source in a part of a run put into the bands of those that listen there in rms: the directions
+ * in which it and they are driven, and what is assumed for sources that nobody stated, with the largest rms of each.
+ */
+import type { CoupledLines } from '../../physics/lines/lines';
+import { prepareTransfer, type Drive, type LineTransfer } from '../../physics/lines/transfer';
+import { worstTransfer } from '../../physics/lines/worstTransfer';
+import type { Band } from '../../physics/noise/receiverBand';
+import { volts, type Voltage } from '../../units/quantity';
+import { rmsOf } from '../heard';
+import { bandOf } from '../receivers';
+import { repeatedSpectra, type Complex, type FoundSpectrum } from '../repeatedSpectrum';
+import { edgesOf } from '../sources';
+import { arrangementsFor, type Arrangement } from './arrangements';
+import { slowInductance } from './balancingCurrent';
+import { carriedError } from './carriedError';
+import { listeners, type PartReceiver, type PartSource } from './partPlayers';
+import type { RunPart } from './runParts';
+import { lineKeyOf, sideOf } from './solvedLine';
+import type { NoiseContext } from './worstNoise';
+
+/** By the index of the part's receiver. */
+export type SpectraByReceiver = ReadonlyMap<number, FoundSpectrum>;
+
+export function repeatedNoise(part: RunPart, player: PartSource, receivers: readonly PartReceiver[], { roles, length, cache }: NoiseContext): SpectraByReceiver {
+  const { signal } = player.source;
+  const worst = new Map<number, FoundSpectrum>();
+  if (signal.repeats === null || edgesOf(signal).length === 0) return worst;
+  const moving = player.lines.map(({ index }) => index);
+  for (const index of listeners(receivers, player)) {
+    const receiver = receivers[index];
+    const band = bandOf(receiver.receiver);
+    if (receiver.receiver.toleratesRms === null || band === null) continue;
+    const slowed = slowInductance(part, signal.repeats.frequency.value, cache);
+    for (const arrangement of arrangementsFor(part, roles, moving, length)) {
+      for (const inductance of slowed === null ? [part.matrices.inductance] : [part.matrices.inductance, slowed]) {
+        const key = ['repeated', ...trainKey(player), band.from, band.to, receiver.receiver.leak, ...receiver.terms.flatMap(({ index: line, weight }) => [line, weight]), lineKeyOf({ part, slow: inductance === slowed, length, arrangement, moving: player.lines })].join(' ');
+        const { found } = cache.line(key, () => ({ found: solve(part, inductance, { arrangement, player, receiver, band, length }) }));
+        const known = worst.get(index);
+        if (found !== null && (known === undefined || rmsOf(known.spectrum) < rmsOf(found.spectrum))) worst.set(index, found);
+      }
+    }
+  }
+  return worst;
+}
+
+function trainKey({ source: { signal } }: PartSource): readonly (number | string | undefined)[] {
+  const { repeats } = signal;
+  return [repeats?.frequency.value, repeats?.duty?.value, ...edgesOf(signal).flatMap(({ kind, voltage, current }) => [kind, voltage?.amplitude, voltage?.duration, current?.amplitude, current?.duration])];
+}
+
+interface Asked {
+  readonly arrangement: Arrangement;
+  readonly player: PartSource;
+  readonly receiver: PartReceiver;
+  readonly band: Band;
+  readonly length: NoiseContext['length'];
+}
+
+function solve(part: RunPart, inductance: Float64Array, { arrangement, player, receiver, band, length }: Asked): FoundSpectrum | null {
+  const { order, capacitance } = part.matrices;
+  const { left, right, leftAcross, rightAcross } = arrangement;
+  const lines: CoupledLines = { order, inductance, capacitance, length, left, right, leftAcross, rightAcross };
+  const prepared = prepareTransfer(lines);
+  const drives = (kind: Drive['kind']) => player.lines.map(({ index, sign }): Drive => ({ line: index, end: sideOf(arrangement, index, kind === 'voltage' ? 'source' : 'load'), kind, amplitude: sign }));
+  const [byVoltage, byCurrent] = [drives('voltage'), drives('current')];
+  const { terms, receiver: { leak } } = receiver;
+  const leaks = leak === 0 || terms.length < 2 ? [0] : [leak, -leak];
+  const readings = leaks.map((share) => terms.map(({ index, weight }) => ({ line: index, place: `${sideOf(arrangement, index, 'load')}Termination` as const, factor: weight + share / terms.length })));
+  const read = (transfer: LineTransfer) => readings.map((reading): Complex => reading.reduce((sum, { line, place, factor }) => ({ re: sum.re + factor * transfer[place].real[line], im: sum.im + factor * transfer[place].imaginary[line] }), { re: 0, im: 0 }));
+  const draws = edgesOf(player.source.signal).some(({ current }) => current !== null);
+  const spectra = repeatedSpectra(player.source.signal, band, readings.length, (frequency) => ({
+    voltage: read(prepared.at(byVoltage, frequency)),
+    current: draws ? read(prepared.at(byCurrent, frequency)) : [],
+  }), (range) => {
+    const largest = (all: readonly Drive[]) => worstTransfer(prepared, all, range, readings).readings.map(({ magnitude }) => magnitude);
+    const [ofVoltage, ofCurrent] = [largest(byVoltage), draws ? largest(byCurrent) : []];
+    return readings.map((_, at) => ({ voltage: ofVoltage[at]!, current: ofCurrent[at] ?? 0 }));
+  });
+  if (spectra === null) return null;
+  const found = spectra.reduce((a, b) => (rmsOf(a.spectrum) < rmsOf(b.spectrum) ? b : a));
+  return { ...found, errorBar: volts(found.errorBar + carried(part, player, receiver) * rmsOf(found.spectrum)) };
+}
+
+/** What couples by C or by L has at most the larger relative error of the two. */
+function carried({ matrices }: RunPart, { lines }: PartSource, { terms }: PartReceiver): Voltage {
+  return volts(Math.max(...lines.flatMap(({ index: aggressor }) => terms.map(({ index: victim }) => carriedError(matrices, { aggressor, victim, peak: 1, capacitive: 0, inductive: 0 })))));
+}
