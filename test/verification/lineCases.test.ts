@@ -69,13 +69,13 @@ describe('reference lines through text and JSON', () => {
     it(`${reference.id}: the peak's time, from where the edge begins`, async () => {
       const coupling = await checkedCoupling(boardText(board(reference)));
       // A crest that is flat moves by more than a permille of the edge; a twentieth of the edge is what a flat top costs.
-      near(coupling.peakTime, wantedFar.t_peak_s, 0.05 * reference.inputs.rise_time_0_100_s / wantedFar.t_peak_s, 'time of the peak');
+      near(coupling.peakTime!, wantedFar.t_peak_s, 0.05 * reference.inputs.rise_time_0_100_s / wantedFar.t_peak_s, 'time of the peak');
     });
 
     it(`${reference.id}: the board the other way up`, async () => {
       const upright = await checkedCoupling(boardText(board(reference)));
       const mirrored = await checkedCoupling(mirroredBoardText(board(reference)));
-      for (const key of numbersOf(upright)) near(mirrored[key], upright[key], 1e-9, key);
+      for (const key of numbersOf(upright)) near(mirrored[key]!, upright[key]!, 1e-9, key);
     });
 
     it(`${reference.id}: everything reversed, the same run read from the other side`, async () => {
@@ -83,7 +83,7 @@ describe('reference lines through text and JSON', () => {
       const upright = await checkedCoupling(boardText(board(reference)));
       const turned = row.map((part) => (part.startsWith('trace ') ? `${part} reversed` : part)).reverse();
       const seen = await checkedCoupling(boardText({ ...board(reference), on: new Map([['TOP', turned]]), nets: netsOf(reference, names) }));
-      for (const key of numbersOf(upright)) near(seen[key], upright[key], 1e-7, key);
+      for (const key of numbersOf(upright)) near(seen[key]!, upright[key]!, 1e-7, key);
     });
 
     it(`${reference.id}: a falling edge gives the mirror image`, async () => {

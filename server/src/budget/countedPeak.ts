@@ -5,7 +5,7 @@
 import { peakAfter } from '../physics/lines/combine';
 import type { Waveform } from '../physics/lines/lines';
 import { peakInBand, type Band } from '../physics/noise/receiverBand';
-import { seconds, type Time, type Voltage } from '../units/quantity';
+import type { Time, Voltage } from '../units/quantity';
 
 export interface Counting {
   readonly band: Band | null;
@@ -15,6 +15,6 @@ export interface Counting {
 
 /** Signed; null where all of it counts. */
 export function countedPeak(waveform: Waveform, { band, after }: Counting): Voltage | null {
-  if (band !== null) return peakInBand(waveform, band, after ?? seconds(0)).peak;
+  if (band !== null) return peakInBand(waveform, band, after).peak;
   return after === null ? null : peakAfter(waveform, after).value;
 }

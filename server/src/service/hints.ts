@@ -2,11 +2,12 @@
  * What stands in grey beside the numbers of a run: after a receiver's trace what it gets there, after a gap and after
  * the run's length the value that would just do.
  */
-import type { Place, Run, RunConductor } from '../board/model';
+import type { Net, Place, Run, RunConductor } from '../board/model';
 import type { Budget, Contribution, Evaluation, RunResult } from '../budget/results';
 import { totalOf } from '../budget/totals';
 import type { FixContext } from '../fixes/fix';
 import { sufficientGap, sufficientLength, type Sufficient } from '../fixes/sufficient';
+import { receiverInText, voltageInText } from '../rules/budgetFault';
 import { traceOf } from '../rules/gapsBetween';
 import type { Span } from '../syntax/tree';
 import { inText } from '../units/inText';

@@ -54,8 +54,7 @@ function sourceContent({ signal, moves }: Source) {
   const tone = sine === null ? [] : [sine.amplitude.value, sine.measure, sine.from.value, sine.to?.value];
   return [
     'source', kind, name, ...moves.flatMap(({ net, sign }) => [net.name, sign]), switchesWith,
-    // With a current beside it the swing is no mere factor.
-    swing !== null, current === null ? null : swing?.value, rise?.value, fall?.value, 'sine', ...tone, 'current', ...drawn,
+    swing?.value, rise?.value, fall?.value, 'sine', ...tone, 'current', ...drawn,
     'repeats', repeats?.frequency.value, repeats?.duty?.value, once,
   ];
 }

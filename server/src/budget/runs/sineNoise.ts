@@ -7,11 +7,11 @@ import { currentAsVoltage } from '../../physics/lines/currentAsVoltage';
 import { electricalLength } from '../../physics/lines/electricalLength';
 import { couplingShares } from '../../physics/lines/shares';
 import { prepareTransfer, type Drive, type Place, type PreparedTransfer } from '../../physics/lines/transfer';
+import { bandTransfer } from '../../physics/noise/bandTransfer';
 import { worstTransfer, type FrequencyRange, type Reading, type WorstReading, type WorstTransfer } from '../../physics/lines/worstTransfer';
 import { amperes, hertz, seconds, volts, type Frequency, type Voltage } from '../../units/quantity';
 import { bandOf } from '../receivers';
 import { sinesOf, type Sine } from '../sources';
-import { worstInBand } from '../worstInBand';
 import { arrangementsFor, type Arrangement } from './arrangements';
 import { slowInductance } from './balancingCurrent';
 import { carriedError } from './carriedError';
@@ -118,7 +118,7 @@ function received({ part, arrangement, player }: SineRequest, { receiver, terms 
   const [near, far, ...loads] = whole.readings;
   const at = largest(loads);
   const band = bandOf(receiver);
-  const counted = receiver.toleratesPeak === null || band === null ? null : worstInBand(range, band, (within) => largest(over(within, atLoad).readings));
+  const counted = receiver.toleratesPeak === null || band === null ? null : largest(over({ ...range, weight: (frequency) => bandTransfer(frequency, band) }, atLoad).readings);
   const inside = receiver.toleratesRms === null || band === null ? null : { from: hertz(Math.max(band.from, range.from)), to: hertz(Math.min(band.to, range.to)) };
   const parts = sharesAt(lines, { arrangement, terms, drives }, at.frequency);
   const relative = Math.max(...player.lines.flatMap(({ index: aggressor }) => terms.map(({ index: victim }) => carriedError(part.matrices, { aggressor, victim, peak: 1, capacitive: parts.capacitive / (at.magnitude || 1), inductive: parts.inductive / (at.magnitude || 1) }))));
@@ -137,8 +137,8 @@ function received({ part, arrangement, player }: SineRequest, { receiver, terms 
   };
 }
 
-/** Of the search for the worst frequency and of the filter's: `worstTransfer.ts`, `worstInBand.ts`. */
-const transferError = 1e-3;
+/** Of the search for the worst frequency: `worstTransfer.ts`, with room for the modes' rounding. */
+const transferError = 1e-5;
 
 function largest(readings: readonly WorstReading[]): WorstReading {
   return readings.reduce((a, b) => (a.magnitude < b.magnitude ? b : a));
