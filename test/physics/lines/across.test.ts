@@ -90,6 +90,20 @@ describe('a resistor and a capacitor across two lines', () => {
     }
   });
 
+  it('slow edges as well, whose echoes are over long before', () => {
+    const bridged = pairBesideAggressor(1e4);
+    for (const duration of [1e-6, 1e-3]) {
+      const window = seconds(duration + 3e-8);
+      const exact = lineResponse(bridged, ramp(0, 'left', 1, duration), window);
+      const currents = bridgedLines(bridged, (one) => prepareLines(one)).response(ramp(0, 'left', 1, duration), window);
+      for (const line of [1, 2]) {
+        const peak = Math.abs(peakOf(exact.right[line]).value);
+        near(peakOf(currents.right[line]).value, peakOf(exact.right[line]).value, 5e-3);
+        assert.ok(largestDifference(exact.right[line], currents.right[line]) < 0.02 * peak);
+      }
+    }
+  });
+
   it('open ends as well', () => {
     const bridged: CoupledLines = { ...lines({ ...two, length: 0.1, left: [end(40), end(40)], right: [end(Infinity, 1e-12), end(Infinity, 1e-12)] }), rightAcross: [between(0, 1, 100)] };
     const window = seconds(1e-8);

@@ -18,14 +18,22 @@ import { combinedWaveform } from './combine';
 import { currentAsVoltage, type CurrentRamp } from './currentAsVoltage';
 import type { PreparedLines } from './lineResponse';
 import type { Across, CoupledLines, LineResponse, Ramp, Waveform } from './lines';
-import { modesOf } from './modes';
+import { lineNetwork } from './network';
+import { slowEdgeWaveforms } from './slowEdge';
 import { valueAt } from './waveform';
+import { oneWayDelay } from './window';
 
 export function bridgedLines(lines: CoupledLines, prepare: (lines: CoupledLines) => PreparedLines): PreparedLines {
   const bridges = [...(lines.leftAcross ?? []).map((across): Bridge => ({ ...across, end: 'left' })), ...(lines.rightAcross ?? []).map((across): Bridge => ({ ...across, end: 'right' }))];
   for (const { resistance } of bridges) if (!(0 < resistance)) throw new Error(`${resistance} ohm across two lines`);
   const prepared = prepare(withoutBridges(lines, bridges));
-  return { lines, modes: modesOf(lines, lines.length), response: (ramp, window) => bridgedResponse(prepared, bridges, ramp, window) };
+  const { modes } = lineNetwork(lines);
+  const settled = Math.max(delaysFollowed * oneWayDelay(modes, lines), shortestFollowed);
+  return {
+    lines,
+    modes,
+    response: (ramp, window) => (window <= settled ? bridgedResponse(prepared, bridges, ramp, window) : slowResponse(lines, prepared, bridges, { ramp, window, settled })),
+  };
 }
 
 interface Bridge extends Across {
@@ -34,6 +42,10 @@ interface Bridge extends Across {
 
 const places = ['left', 'right', 'leftTermination', 'rightTermination'] as const;
 const stepsInWindow = 2400;
+
+/** What an even grid resolves: steps of an eighth of the delay. Slower edges are carried on by the circuit. */
+const delaysFollowed = stepsInWindow / 8;
+const shortestFollowed = 1e-15;
 
 /** Open terminations that a bridge draws from get the resistance that stands for it. */
 function withoutBridges({ leftAcross, rightAcross, ...lines }: CoupledLines, bridges: readonly Bridge[]): CoupledLines {
@@ -58,6 +70,29 @@ function bridgedResponse(prepared: PreparedLines, bridges: readonly Bridge[], ra
     return plain[place] === plain[side] ? atEnds : row(place).map((waveform, line) => (prepared.lines[side][line].lead === null ? atEnds[line] : waveform));
   };
   return { ...plain, left, right, leftTermination: beyond('left', left), rightTermination: beyond('right', right), method: 'characteristics', errorBar: errors, work: plain.work + fine.work + coarse.work };
+}
+
+interface SlowRamp {
+  readonly ramp: Ramp;
+  readonly window: Time;
+  readonly settled: number;
+}
+
+/** The echoes of an endless rise while they last, then the circuit: `slowEdge.ts`. */
+function slowResponse(lines: CoupledLines, prepared: PreparedLines, bridges: readonly Bridge[], { ramp, window, settled: longest }: SlowRamp): LineResponse {
+  const settled = Math.min(longest, ramp.duration);
+  const rise: Ramp = { ...ramp, amplitude: volts(ramp.amplitude * ((2 * settled) / ramp.duration)), duration: seconds(2 * settled) };
+  const echoes = bridgedResponse(prepared, bridges, rise, seconds(settled));
+  const errors = echoes.errorBar.slice();
+  const finished = (place: (typeof places)[number]) => {
+    const side = place === 'left' || place === 'leftTermination' ? 0 : 1;
+    const slow = slowEdgeWaveforms({ lines, ramp, window, settled }, echoes[place].map((waveform, line) => ({ side, line, waveform })));
+    slow.forEach(({ error }, line) => (errors[line] = volts(errors[line] + error)));
+    return slow.map(({ waveform }) => waveform);
+  };
+  const [left, right] = [finished('left'), finished('right')];
+  const beyond = (side: 'left' | 'right', atEnds: readonly Waveform[]) => (echoes[`${side}Termination`] === echoes[side] ? atEnds : finished(`${side}Termination`).map((waveform, line) => (lines[side][line].lead === null ? atEnds[line] : waveform)));
+  return { ...echoes, left, right, leftTermination: beyond('left', left), rightTermination: beyond('right', right), window, errorBar: errors };
 }
 
 interface Corrections {
