@@ -100,6 +100,9 @@ describe('rms of repeated edges through a transfer', () => {
     const prepared = prepareTransfer(long);
     const answer = transferAtHarmonics(prepared, driven, { fundamental: hertz(2e3), first: 1, last: 20_000 }, [victim]);
     assert.ok(answer.work < 4000 && !answer.undamped, `${answer.work} solved`);
+    assert.equal(answer.magnitudes[0][77], Math.hypot(answer.phasors[0].real[77], answer.phasors[0].imaginary[77]));
+    const { real, imaginary } = prepared.at(driven, hertz(78 * 2e3)).right;
+    assert.ok(Math.hypot(answer.phasors[0].real[77] - real[1], answer.phasors[0].imaginary[77] - imaginary[1]) < 1e-5 * Math.hypot(real[1], imaginary[1]));
     let largest = 0;
     for (const size of answer.magnitudes[0]) largest = Math.max(largest, size);
     for (let n = 1; n <= 20_000; n += 7) {

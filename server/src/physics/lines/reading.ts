@@ -6,7 +6,7 @@
  */
 import type { ComplexNumbers } from '../../numeric/complexLu';
 import type { Place } from './transfer';
-import type { TransferSystem } from './transferSystem';
+import { complexNumbers, type TransferSystem } from './transferSystem';
 
 /** A difference of two lines is two terms. */
 export type Reading = readonly ReadingTerm[];
@@ -17,38 +17,49 @@ export interface ReadingTerm {
   readonly factor: number;
 }
 
+/** Of the readings, from the voltages of all lines. */
+export function phasorsOf(readings: readonly Reading[], voltages: Readonly<Record<Place, ComplexNumbers>>): ComplexNumbers {
+  const phasors = complexNumbers(readings.length);
+  readings.forEach((reading, at) => {
+    for (const { line, place, factor } of reading) {
+      phasors.real[at] += factor * voltages[place].real[line];
+      phasors.imaginary[at] += factor * voltages[place].imaginary[line];
+    }
+  });
+  return phasors;
+}
+
 export function magnitudeOf(reading: Reading, voltages: Readonly<Record<Place, ComplexNumbers>>): number {
-  let real = 0;
-  let imaginary = 0;
-  for (const { line, place, factor } of reading) {
-    real += factor * voltages[place].real[line];
-    imaginary += factor * voltages[place].imaginary[line];
-  }
+  const { real: [real], imaginary: [imaginary] } = phasorsOf([reading], voltages);
   return Math.hypot(real, imaginary);
 }
 
-/** The same from the unknowns, without the voltages of all lines. */
-export function magnitudesRead({ network: { order, modes, ends } }: TransferSystem, readings: readonly Reading[], { real, imaginary }: ComplexNumbers, omega: number): Float64Array {
+/** The phasor of each reading from the unknowns, without the voltages of all lines. */
+export function phasorsRead({ network: { order, modes, ends } }: TransferSystem, readings: readonly Reading[], { real, imaginary }: ComplexNumbers, omega: number): ComplexNumbers {
   const cosines = modes.delays.map((delay) => Math.cos((omega * delay) / 2));
   const sines = modes.delays.map((delay) => Math.sin((omega * delay) / 2));
-  return Float64Array.from(readings, (reading) => {
-    let re = 0;
-    let im = 0;
+  const phasors = complexNumbers(readings.length);
+  readings.forEach((reading, at) => {
     for (const { line, place, factor } of reading) {
       const side = place === 'left' || place === 'leftTermination' ? 0 : 1;
       const sign = side === 0 ? 1 : -1;
       const angle = place === 'left' || place === 'right' ? 0 : omega * ends[side].leadDelay[line];
-      const along = Math.cos(angle);
-      const transverse = ends[side].leadImpedance[line] * Math.sin(angle);
+      const along = factor * Math.cos(angle);
+      const transverse = factor * ends[side].leadImpedance[line] * Math.sin(angle);
       for (let k = 0; k < order; k += 1) {
         const voltage = along * modes.voltage[line * order + k];
         const current = transverse * modes.current[line * order + k];
         const [c, s, w, wIm] = [cosines[k], sines[k], sign * real[order + k], sign * imaginary[order + k]];
         // u = cos v + j Z sin i
-        re += factor * (voltage * (c * real[k] - s * wIm) - current * (c * wIm + s * real[k]));
-        im += factor * (voltage * (c * imaginary[k] + s * w) + current * (c * w - s * imaginary[k]));
+        phasors.real[at] += voltage * (c * real[k] - s * wIm) - current * (c * wIm + s * real[k]);
+        phasors.imaginary[at] += voltage * (c * imaginary[k] + s * w) + current * (c * w - s * imaginary[k]);
       }
     }
-    return Math.hypot(re, im);
   });
+  return phasors;
+}
+
+export function magnitudesRead(system: TransferSystem, readings: readonly Reading[], unknowns: ComplexNumbers, omega: number): Float64Array {
+  const { real, imaginary } = phasorsRead(system, readings, unknowns, omega);
+  return real.map((value, at) => Math.hypot(value, imaginary[at]));
 }

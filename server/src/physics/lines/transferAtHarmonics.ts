@@ -1,5 +1,5 @@
 /**
- * Magnitudes of readings of coupled lines at the harmonics of what repeats.
+ * Readings of coupled lines at the harmonics of what repeats.
  *
  *   f0 2f0 3f0 ...           Method    where resonances are further away than a few harmonics, unknowns and their slopes are
  *   x...x.......x.....x                computed at some harmonics (x), and those between by the cubic through both
@@ -11,7 +11,7 @@
  */
 import { hertz, type Frequency } from '../../units/quantity';
 import type { ComplexNumbers } from '../../numeric/complexLu';
-import { magnitudeOf, magnitudesRead, type Reading } from './reading';
+import { phasorsOf, phasorsRead, type Reading } from './reading';
 import { checkDrives, solveAt, undampedWithin, type Drive, type PreparedTransfer } from './transfer';
 import { complexNumbers } from './transferSystem';
 
@@ -24,6 +24,7 @@ export interface HarmonicNumbers {
 export interface HarmonicTransfer {
   readonly first: number;
   /** Of each reading, at index n - first. */
+  readonly phasors: readonly ComplexNumbers[];
   readonly magnitudes: readonly Float64Array[];
   /** A harmonic is within a millionth of a resonance that nothing damps. */
   readonly undamped: boolean;
@@ -34,8 +35,11 @@ export function transferAtHarmonics(prepared: PreparedTransfer, drives: readonly
   const { system } = prepared;
   checkDrives(system, drives, Math.max(0, last) * fundamental);
   const unit = 2 * Math.PI * fundamental;
-  const magnitudes = readings.map(() => new Float64Array(Math.max(0, last - first + 1)));
-  const tell = (n: number, read: Float64Array) => read.forEach((magnitude, at) => (magnitudes[at][n - first] = magnitude));
+  const phasors = readings.map(() => complexNumbers(Math.max(0, last - first + 1)));
+  const tell = (n: number, { real, imaginary }: ComplexNumbers) => phasors.forEach((phasor, at) => {
+    phasor.real[n - first] = real[at];
+    phasor.imaginary[n - first] = imaginary[at];
+  });
   let undamped = false;
   let work = 0;
   let before: Node | null = null;
@@ -44,20 +48,20 @@ export function transferAtHarmonics(prepared: PreparedTransfer, drives: readonly
     work += 1;
     if (node === null) {
       undamped = true;
-      const beside = prepared.at(drives, hertz(n * fundamental));
-      tell(n, Float64Array.from(readings, (reading) => magnitudeOf(reading, beside)));
+      tell(n, phasorsOf(readings, prepared.at(drives, hertz(n * fundamental))));
     } else {
-      tell(n, magnitudesRead(system, readings, node.unknowns, node.omega));
+      tell(n, phasorsRead(system, readings, node.unknowns, node.omega));
       if (before !== null) {
         const from = Math.round(before.omega / unit);
-        for (let between = from + 1; between < n; between += 1) tell(between, magnitudesRead(system, readings, hermite(before, node, between * unit), between * unit));
+        for (let between = from + 1; between < n; between += 1) tell(between, phasorsRead(system, readings, hermite(before, node, between * unit), between * unit));
       }
     }
     before = node;
     if (n === last) break;
     n = Math.min(last, n + Math.max(1, Math.floor((joined * (node?.clearance ?? 0)) / unit)));
   }
-  return { first, magnitudes, undamped, work };
+  const magnitudes = phasors.map(({ real, imaginary }) => real.map((value, at) => Math.hypot(value, imaginary[at])));
+  return { first, phasors, magnitudes, undamped, work };
 }
 
 /** Share of the clearance that one cubic bridges. */
