@@ -29,7 +29,13 @@ export function linesOf(text: string): Lines {
   };
   return {
     at,
-    line: (index) => text.slice(starts[index] ?? text.length, starts[index + 1] ?? text.length).replace(/\r?\n$/, ''),
+    // No search for its end: a line may be a megabyte long, and is asked for once a finding.
+    line: (index) => {
+      const start = starts[index] ?? text.length;
+      const next = starts[index + 1];
+      if (next === undefined) return text.slice(start);
+      return text.slice(start, start < next - 1 && text[next - 2] === '\r' ? next - 2 : next - 1);
+    },
     range: ({ start, end }) => {
       const first = at(start);
       const last = at(end);

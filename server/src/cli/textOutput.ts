@@ -5,11 +5,14 @@ import { budgetTable } from './budgetTable';
 import type { CheckedFile } from './checkedFiles';
 import type { Summary } from './checkSchema';
 import type { Paint } from './paint';
-import { linesOf } from './positions';
+import { linesOf, type Lines } from './positions';
 import { printable, printableWord } from './printable';
 
 export function textOutput(checked: readonly CheckedFile[], summary: Summary, paint: Paint): string {
-  const blocks = checked.flatMap((file) => [heading(file, paint), ...file.analysis.findings.map((finding) => findingBlock(finding, file, paint))]);
+  const blocks = checked.flatMap((file) => {
+    const lines = linesOfFiles(file);
+    return [heading(file, paint), ...file.analysis.findings.map((finding) => findingBlock(finding, lines, paint))];
+  });
   return `${[...blocks, summaryLine(summary, checked.length, paint)].join('\n\n')}\n`;
 }
 
@@ -19,24 +22,36 @@ function heading({ path, analysis }: CheckedFile, paint: Paint): string {
   return [paint.strong(`${printableWord(path)}${named}`), ...budgetTable(evaluation.budgets, paint)].join('\n');
 }
 
-function findingBlock(finding: Finding, file: CheckedFile, paint: Paint): string {
+type LinesOf = (path: string) => Lines;
+
+/** Each text is taken apart once, not once a finding: one of 80 000 lines with a mistake in each took minutes. */
+function linesOfFiles({ text }: CheckedFile): LinesOf {
+  const known = new Map<string, Lines>();
+  return (path) => {
+    const lines = known.get(path) ?? linesOf(text(path));
+    known.set(path, lines);
+    return lines;
+  };
+}
+
+function findingBlock(finding: Finding, linesIn: LinesOf, paint: Paint): string {
   const { rule, severity, message, waived, related } = finding;
   const colour = waived !== null || severity === 'hint' ? paint.faint : paint[severity];
-  const { where, shown } = underlined(finding.at, file, colour);
+  const { where, shown } = underlined(finding.at, linesIn, colour);
   return [
     `${where}  ${colour(`${waived === null ? severity : 'waived'}[${rule}]`)}`,
     ...shown,
     `  ${printable(message).split('\n').join('\n  ')}`,
     ...(waived === null ? [] : [`  waived: ${printable(waived)}`]),
-    ...related.map((each) => paint.faint(`  ${underlined(each.place, file, paint.faint).where}  ${printable(each.message)}`)),
+    ...related.map((each) => paint.faint(`  ${underlined(each.place, linesIn, paint.faint).where}  ${printable(each.message)}`)),
   ].join('\n');
 }
 
 /** Longer lines are cut around what is underlined. */
 const widest = 110;
 
-function underlined({ path, span }: Place, file: CheckedFile, colour: (text: string) => string): { readonly where: string; readonly shown: readonly string[] } {
-  const lines = linesOf(file.text(path));
+function underlined({ path, span }: Place, linesIn: LinesOf, colour: (text: string) => string): { readonly where: string; readonly shown: readonly string[] } {
+  const lines = linesIn(path);
   const { start, end } = lines.range(span);
   const line = lines.line(start.line);
   const last = end.line === start.line ? end.character : Math.max(line.length, start.character + 1);

@@ -59,7 +59,9 @@ export function findingsOf(evaluation: Evaluation, options: FindingOptions = {})
   for (const rule of options.rules ?? rules) {
     // A fault of one rule must not take the findings of the others with it, nor pass for a clean board.
     try {
-      found.push(...[...rule.find(evaluation, found)].map((fault) => findingOf(rule, fault, evaluation)));
+      const own = [...rule.find(evaluation, found)].map((fault) => findingOf(rule, fault, evaluation));
+      // One by one: as arguments of a single call, the findings of a megabyte of stray words overflow the stack.
+      for (const finding of own) found.push(finding);
     } catch (error) {
       options.log?.(rule.name, error);
       found.push(uncheckedFinding(rule, error, evaluation));
