@@ -28,11 +28,17 @@ export function bridgedLines(lines: CoupledLines, prepare: (lines: CoupledLines)
   for (const { resistance } of bridges) if (!(0 < resistance)) throw new Error(`${resistance} ohm across two lines`);
   const prepared = prepare(withoutBridges(lines, bridges));
   const { modes } = lineNetwork(lines);
-  const settled = Math.max(delaysFollowed * oneWayDelay(modes, lines), shortestFollowed);
+  const delay = Math.max(oneWayDelay(modes, lines), shortestDelay);
+  const settled = delaysFollowed * delay;
   return {
     lines,
     modes,
-    response: (ramp, window) => (window <= settled ? bridgedResponse(prepared, bridges, ramp, window) : slowResponse(lines, prepared, bridges, { ramp, window, settled })),
+    response: (ramp, window) => {
+      if (settled < ramp.duration && settled < window) return slowResponse(lines, prepared, bridges, { ramp, window, settled });
+      const finest = Math.min(delay / stepsInDelay, Math.max(modes.delays[0], delay / 64) / stepsInMode);
+      const wanted = 2 * Math.ceil(window / finest / 2);
+      return bridgedResponse(prepared, bridges, { ramp, window, steps: Math.min(mostSteps, Math.max(stepsInWindow, wanted)) });
+    },
   };
 }
 
@@ -43,9 +49,14 @@ interface Bridge extends Across {
 const places = ['left', 'right', 'leftTermination', 'rightTermination'] as const;
 const stepsInWindow = 2400;
 
-/** What an even grid resolves: steps of an eighth of the delay. Slower edges are carried on by the circuit. */
-const delaysFollowed = stepsInWindow / 8;
-const shortestFollowed = 1e-15;
+/** What waits long for a fast edge is followed as far as about half a second of work goes. */
+const mostSteps = 9600;
+const stepsInDelay = 8;
+/** Of the fastest mode over the line alone: coarser steps ring between reflections that they do not tell apart. */
+const stepsInMode = 4;
+/** What an even grid resolves. Slower edges are carried on by the circuit. */
+const delaysFollowed = stepsInWindow / stepsInDelay;
+const shortestDelay = 1e-18;
 
 /** Open terminations that a bridge draws from get the resistance that stands for it. */
 function withoutBridges({ leftAcross, rightAcross, ...lines }: CoupledLines, bridges: readonly Bridge[]): CoupledLines {
@@ -58,10 +69,17 @@ function drawn(end: 'left' | 'right', line: number, amplitude: number, duration:
   return { line, end, amplitude: amperes(amplitude), duration: seconds(duration) };
 }
 
-function bridgedResponse(prepared: PreparedLines, bridges: readonly Bridge[], ramp: Ramp, window: Time): LineResponse {
+interface Followed {
+  readonly ramp: Ramp;
+  readonly window: Time;
+  /** Even. */
+  readonly steps: number;
+}
+
+function bridgedResponse(prepared: PreparedLines, bridges: readonly Bridge[], { ramp, window, steps }: Followed): LineResponse {
   const plain = prepared.response(ramp, window);
-  const fine = corrections(prepared, bridges, plain, stepsInWindow);
-  const coarse = corrections(prepared, bridges, plain, stepsInWindow / 2);
+  const fine = corrections(prepared, bridges, plain, steps);
+  const coarse = corrections(prepared, bridges, plain, steps / 2);
   const errors = plain.errorBar.map((bar, line) => volts(bar + Math.max(...places.map((place) => largestDifference(fine.rows[place][line], coarse.rows[place][line])))));
   const row = (place: (typeof places)[number]) => plain[place].map((waveform, line) => combinedWaveform([{ waveform, factor: 1 }, { waveform: { times: fine.times, values: fine.rows[place][line] }, factor: 1 }]));
   const [left, right] = [row('left'), row('right')];
@@ -79,10 +97,9 @@ interface SlowRamp {
 }
 
 /** The echoes of an endless rise while they last, then the circuit: `slowEdge.ts`. */
-function slowResponse(lines: CoupledLines, prepared: PreparedLines, bridges: readonly Bridge[], { ramp, window, settled: longest }: SlowRamp): LineResponse {
-  const settled = Math.min(longest, ramp.duration);
+function slowResponse(lines: CoupledLines, prepared: PreparedLines, bridges: readonly Bridge[], { ramp, window, settled }: SlowRamp): LineResponse {
   const rise: Ramp = { ...ramp, amplitude: volts(ramp.amplitude * ((2 * settled) / ramp.duration)), duration: seconds(2 * settled) };
-  const echoes = bridgedResponse(prepared, bridges, rise, seconds(settled));
+  const echoes = bridgedResponse(prepared, bridges, { ramp: rise, window: seconds(settled), steps: stepsInWindow });
   const errors = echoes.errorBar.slice();
   const finished = (place: (typeof places)[number]) => {
     const side = place === 'left' || place === 'leftTermination' ? 0 : 1;
