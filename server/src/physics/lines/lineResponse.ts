@@ -15,7 +15,7 @@ import type { Modes } from './modes';
 import { lineNetwork, type LineNetwork } from './network';
 import { rampedWaveforms, type RampedWaveforms, type RampShape } from './rampedWaveforms';
 import { slowEdgeWaveforms } from './slowEdge';
-import { unitResponse, type UnitResponse } from './unitResponse';
+import { fewestSteps, unitResponse, type UnitResponse } from './unitResponse';
 
 export interface PreparedLines {
   readonly lines: CoupledLines;
@@ -37,11 +37,11 @@ export function prepareLines(lines: CoupledLines, refinement = 1): PreparedLines
 function prepareUnbridged(lines: CoupledLines, refinement: number): PreparedLines {
   const network = lineNetwork(lines);
   const known = new Map<string, { readonly asked: number; readonly unit: UnitResponse }>();
-  const unitFor = ({ end, line }: Ramp, horizon: number): UnitResponse => {
-    const key = `${end} ${line}`;
+  const unitFor = ({ end, line }: Ramp, horizon: number, stepsInDelay?: number): UnitResponse => {
+    const key = `${end} ${line} ${stepsInDelay ?? ''}`;
     const held = known.get(key);
     if (held !== undefined && horizon <= held.asked) return held.unit;
-    const unit = unitResponse(network, { end, line }, horizon, refinement);
+    const unit = unitResponse(network, { end, line }, horizon, refinement, stepsInDelay);
     known.set(key, { asked: horizon, unit });
     return unit;
   };
@@ -52,7 +52,11 @@ function prepareUnbridged(lines: CoupledLines, refinement: number): PreparedLine
       checkRamp(lines, ramp, window);
       const shortest = shortestDuration * network.modes.delays[0];
       const sloped = { ...ramp, duration: seconds(Math.max(ramp.duration, shortest)) };
-      return rampResponse(lines, network, unitFor(ramp, Math.max(window, network.modes.delays[0])), sloped, window);
+      const wanted = Math.max(window, network.modes.delays[0]);
+      const unit = unitFor(ramp, wanted);
+      // A short run in a long net: its own delay asks for small steps, its leads for many.
+      const hurried = isCutShort(unit, window) && sloped.duration < unit.horizon;
+      return rampResponse(lines, network, hurried ? unitFor(ramp, wanted, fewestSteps) : unit, sloped, window);
     },
   };
 }
@@ -60,9 +64,15 @@ function prepareUnbridged(lines: CoupledLines, refinement: number): PreparedLine
 /** Of the fastest mode's delay: a step, for every purpose, and still a slope that can be divided by. */
 const shortestDuration = 1e-6;
 
-function rampResponse(lines: CoupledLines, network: LineNetwork, unit: UnitResponse, ramp: Ramp, window: Time): LineResponse {
+function isCutShort({ horizon }: UnitResponse, window: number): boolean {
+  return horizon < window * (1 - 1e-9);
+}
+
+/** An edge that ends before the work does is answered for as long as that reaches; a slower one goes on as a circuit. */
+function rampResponse(lines: CoupledLines, network: LineNetwork, unit: UnitResponse, ramp: Ramp, asked: Time): LineResponse {
   const { order, ends: lineEnds } = network;
-  const followed = unit.horizon < window * (1 - 1e-9);
+  const window = isCutShort(unit, asked) && ramp.duration < unit.horizon ? seconds(unit.horizon) : asked;
+  const followed = isCutShort(unit, window);
   const shape = followed ? endlessRise(ramp, Math.min(unit.horizon, ramp.duration)) : { ...ramp, window };
   const ends = unit.ends.map((voltages) => rampedWaveforms(voltages, order, shape));
   const terminations = unit.terminations.map((voltages, side) => (lineEnds[side].leadDelay.some((delay) => delay !== 0) ? rampedWaveforms(voltages, order, shape) : ends[side]));

@@ -63,6 +63,7 @@ export interface LineResponse {
   /** Of line i, at its terminations, beyond the leads; the same objects as above where there is no lead. */
   readonly leftTermination: readonly Waveform[];
   readonly rightTermination: readonly Waveform[];
+  /** As asked for, or as far as the work allowed reaches. */
   readonly window: Time;
   readonly method: 'lattice' | 'characteristics' | 'lumped';
   /**

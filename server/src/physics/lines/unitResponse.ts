@@ -40,7 +40,8 @@ export interface SmoothPart extends Grid {
   readonly coarseSteps: number;
 }
 
-export function unitResponse(network: LineNetwork, source: Pick<Ramp, 'line' | 'end'>, wanted: number, refinement = 1): UnitResponse {
+/** `stepsInDelay`, of the fastest mode: fewer reach further with the same work. */
+export function unitResponse(network: LineNetwork, source: Pick<Ramp, 'line' | 'end'>, wanted: number, refinement = 1, stepsInDelay = usualSteps): UnitResponse {
   const exact = exactLattice(network, source, wanted);
   if (exact !== null) {
     const parts = (kinks: Kinks): UnitVoltages => ({ kinks, smooth: null });
@@ -50,7 +51,7 @@ export function unitResponse(network: LineNetwork, source: Pick<Ramp, 'line' | '
       terminations: [parts(exact.terminations[0]), parts(exact.terminations[1])],
     };
   }
-  const fine = gridFor(network, wanted, refinement);
+  const fine = gridFor(network, wanted, refinement, stepsInDelay);
   const horizon = Math.min(wanted, fine.steps * fine.step);
   const shorted = [shortedAt(network, 0, fine.step), shortedAt(network, 1, fine.step)] as const;
   const lattice = kinkLattice(network, { source, horizon, threshold: kinksFollowed, mostEvents: mostKinks(network.order), shorted });
@@ -91,8 +92,8 @@ const mostKinks = (order: number) => Math.max(400, 3000 / order);
  * The finer grid: a 24th of the fastest mode's delay, finer where an end's time constant or a lead asks for it and
  * the work allows. An even number of steps, for the coarser one.
  */
-function gridFor(network: LineNetwork, wanted: number, refinement: number): Grid {
-  const coarsest = network.modes.delays[0] / 24;
+function gridFor(network: LineNetwork, wanted: number, refinement: number, stepsInDelay: number): Grid {
+  const coarsest = network.modes.delays[0] / stepsInDelay;
   const finest = coarsest / 16;
   // What is finer still is not resolved anyway: many lines then take a middling step, and the error bar says what that costs.
   const unresolved = network.order <= 3 ? finest : coarsest / 8;
@@ -102,6 +103,10 @@ function gridFor(network: LineNetwork, wanted: number, refinement: number): Grid
   step = Math.min(coarsest, Math.max(step, wanted / mostSteps)) / refinement;
   return { step, steps: Math.min(refinement * mostSteps, 2 * Math.ceil(wanted / step / 2)) };
 }
+
+const usualSteps = 24;
+/** The march must not step over half a delay, at twice the step as well. */
+export const fewestSteps = 4;
 
 /** Steps times lines plus two: what one answer may cost, about 20 ms. */
 const mostLineSteps = 120_000;
