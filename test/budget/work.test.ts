@@ -41,7 +41,7 @@ describe('the work of an evaluation', () => {
   });
 
   it('forgets what was not asked for longest, within a bound', () => {
-    const cache = createSolveCache({ sections: 10, lines: 10, runs: 0 });
+    const cache = createSolveCache({ sections: 10, lines: 10, circuits: 10, runs: 0 });
     const gap = (value: number) => `${microstrip}net A { swing 1 V; rise 1 ns; source 50 ohm; load 50 ohm }\nnet V { source 50 ohm; load 50 ohm; tolerates 1 V peak }\nrun r on TOP for 9 mm { trace A 0.2 mm; gap ${value} mm; trace V 0.2 mm }`;
     for (let i = 0; i < 10; i += 1) workOf(gap(0.2 + i / 10), cache);
     assert.equal(workOf(gap(0.2), cache).sectionsSolved, 0);

@@ -41,9 +41,9 @@ function pick(part: Pick<Part, 'errorBar' | 'method' | 'assumptions' | 'coupling
   return { errorBar: part.errorBar, method: part.method, coupling: part.coupling, get assumptions() { return part.assumptions; } };
 }
 
-function contribution({ channel, source, where, place }: Heard, part: Part): Contribution {
+function contribution({ channel, source, origins, place }: Heard, part: Part): Contribution {
   return {
-    channel, from: source.signal.name, cause: part.cause, where, place, group: part.group, value: part.value, unfiltered: part.unfiltered,
+    channel, from: source.signal.name, cause: part.cause, where: origins.join(', '), place, group: part.group, value: part.value, unfiltered: part.unfiltered,
     errorBar: part.errorBar, bounds: null, method: part.method, get assumptions() { return part.assumptions; }, coupling: part.coupling, spectrum: part.spectrum,
   };
 }

@@ -66,6 +66,11 @@ export function assumptionsFor(role: Role): readonly Assumption[] {
   return found;
 }
 
+/** The same as clauses, each net named. */
+export function assumptionsInWords(roles: readonly Role[]): readonly string[] {
+  return roles.flatMap((role) => assumptionsFor(role).map(({ missing, assumed }) => `${role.net.name} states no \`${missing}\`: ${assumed}`));
+}
+
 const itsOwn = 'its own characteristic resistance';
 
 function assumedSource(role: Role, driver: string): string {

@@ -4,6 +4,7 @@
  */
 import type { Project, Run } from '../board/model';
 import { budgetsOf } from './budgets';
+import { heardOverCircuits } from './lumpedPaths';
 import { assumptionsFor } from './ends';
 import { receiversOf } from './receivers';
 import { rolesOf, type Role, type Roles } from './roles';
@@ -21,16 +22,18 @@ export function evaluate(project: Project, cache: SolveCache): Evaluation {
   const keyOf = runKeys(roles, cache);
   const solved = (run: Run) => keepSolution(run, cache.run(keyOf(run), () => solvedRun(run, roles, cache)));
   const outcomes = project.runs.map((run) => guarded(run, roles, solved));
-  const channels = { heard: outcomes.flatMap(({ heard }) => heard), lacking: outcomes.flatMap(({ lacking }) => lacking) };
+  const circuits = heardOverCircuits(project, roles, cache);
+  const channels = { heard: [...outcomes.flatMap(({ heard }) => heard), ...circuits.heard], lacking: [...outcomes.flatMap(({ lacking }) => lacking), ...circuits.lacking] };
   const budgets = budgetsOf(project, roles, receivers, channels);
   const after = cache.work();
   return {
     project,
     runs: outcomes.map(({ result }) => result),
+    heard: channels.heard,
     budgets,
     limits: outcomes.flatMap(({ limits }) => limits),
     assumedEnds: assumedEnds(outcomes),
-    work: { sectionsSolved: after.sectionsSolved - before.sectionsSolved, linesSolved: after.linesSolved - before.linesSolved },
+    work: { sectionsSolved: after.sectionsSolved - before.sectionsSolved, linesSolved: after.linesSolved - before.linesSolved, circuitsSolved: after.circuitsSolved - before.circuitsSolved },
   };
 }
 

@@ -12,8 +12,8 @@ export interface Heard {
   readonly channel: Channel;
   readonly source: Source;
   readonly receiver: Receiver;
-  /** Of the run, link, loop or return, and where in the text. */
-  readonly where: string;
+  /** Names of the run, the links, the loops or the return that it leads through, and where that stands in the text. */
+  readonly origins: readonly string[];
   readonly place: Place;
   /** Null where it has no edge. */
   readonly edge: HeardPeak | null;
@@ -45,6 +45,11 @@ export interface HeardSine extends HeardPeak {
 
 export interface HeardSpectrum extends HeardPart {
   readonly spectrum: Spectrum;
+}
+
+/** Of its edge and of its sines, as it counts. */
+export function largestPeak({ edge, sines }: Heard): number {
+  return Math.max(0, edge?.value ?? 0, ...sines.map(({ value }) => value));
 }
 
 export function rmsOf({ rms }: Spectrum): number {

@@ -14,7 +14,6 @@ export function lackingOutside(project: Project, roles: Roles, receiver: Receive
   const heard = heardBy(receiver);
   const outside = [...loopsInto(project, heard), ...ambientsOnto(project, heard)];
   return [
-    ...linksInto(project, roles, heard),
     ...outside,
     ...returnsInto(project, roles, heard),
     ...(0 < outside.length ? shieldsOver(project, heard) : []),
@@ -31,13 +30,6 @@ function heardBy({ subject, terms }: Receiver): HeardBy {
 
 export function absent(what: string, place: Place | null): Unaccounted {
   return { what: `${what} is not yet counted`, place };
-}
-
-function linksInto(project: Project, roles: Roles, heard: HeardBy): readonly Unaccounted[] {
-  const ofOther = (from: Net, to: Net) => heard.has(to) && !heard.has(from) && roles.get(from)?.drives === true;
-  return project.links
-    .filter(({ from, to }) => ofOther(from, to) || ofOther(to, from))
-    .map((link) => absent(`link ${link.name}`, link.place));
 }
 
 /** Every loop that carries another net's current couples into every loop that senses this one. */

@@ -5,11 +5,14 @@
 import type { Net, Pair, Place, Project, Run, RunConductor } from '../board/model';
 import type { Decibels, DelayPerLength, Frequency, Length, Resistance, Time, Voltage } from '../units/quantity';
 import type { SectionMatrices, SectionRefusal } from '../physics/section/section';
+import type { Heard } from './heard';
 import type { Waveform } from '../physics/lines/lines';
 
 export interface Evaluation {
   readonly project: Project;
   readonly runs: readonly RunResult[];
+  /** What every source puts on every receiver, by every way. */
+  readonly heard: readonly Heard[];
   /** In the order of the text. */
   readonly budgets: readonly Budget[];
   /** Geometry, speed or frequency beyond a model's stated range. */
@@ -23,6 +26,8 @@ export interface Evaluation {
 export interface WorkDone {
   readonly sectionsSolved: number;
   readonly linesSolved: number;
+  /** Small circuits: links, loops and shared returns. */
+  readonly circuitsSolved: number;
 }
 
 export interface RunResult {

@@ -11,6 +11,7 @@ import { characteristicImpedance, type LineAlone } from '../physics/lines/charac
 import type { Section, SectionSolution } from '../physics/section/section';
 import { solveSection } from '../physics/section/solveSection';
 import type { WorkDone } from './results';
+import type { SolvedPath } from './lumped/hearLumped';
 import type { SolvedRun } from './runs/solvedRun';
 
 export interface SolveCache {
@@ -18,6 +19,8 @@ export interface SolveCache {
   section(section: Section): KnownSection;
   /** The same for what is drawn from a line; the caller keeps one type to one kind of key. */
   line<Solution extends object>(key: string, solve: () => Solution): Solution;
+  /** The same for what a small circuit answers. */
+  circuit(key: string, solve: () => SolvedPath): SolvedPath;
   /** All of a run, by every number and name that enters it. */
   run(key: string, solve: () => SolvedRun): SolvedRun;
   /** A short name for a long one, in the keys of runs; never given twice. */
@@ -37,23 +40,26 @@ export interface KnownSection {
 export interface CacheBounds {
   readonly sections: number;
   readonly lines: number;
+  readonly circuits: number;
   readonly runs: number;
 }
 
 /** Room for a board of 3 000 runs and the edits of an afternoon. */
-const roomy: CacheBounds = { sections: 8192, lines: 32768, runs: 8192 };
+const roomy: CacheBounds = { sections: 8192, lines: 32768, circuits: 16384, runs: 8192 };
 
 export function createSolveCache(bounds: CacheBounds = roomy): SolveCache {
   const sections = new Recent<KnownSection>(bounds.sections);
   const lines = new Recent<object>(bounds.lines);
+  const circuits = new Recent<SolvedPath>(bounds.circuits);
   const runs = new Recent<SolvedRun>(bounds.runs);
   const numbers = new Recent<number>(bounds.runs);
   return {
     section: (section) => sections.find(sectionKey(section), () => known(section, sections.misses)),
     line: <Solution extends object>(key: string, solve: () => Solution) => lines.find(key, solve) as Solution,
+    circuit: (key, solve) => circuits.find(key, solve),
     run: (key, solve) => runs.find(key, solve),
     number: (content) => numbers.find(content, () => numbers.misses),
-    work: () => ({ sectionsSolved: sections.misses, linesSolved: lines.misses }),
+    work: () => ({ sectionsSolved: sections.misses, linesSolved: lines.misses, circuitsSolved: circuits.misses }),
   };
 }
 

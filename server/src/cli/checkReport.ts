@@ -1,5 +1,6 @@
 /** What a check found, as the published JSON says it. */
 import type { Place } from '../board/model';
+import { largestPeak, type Heard } from '../budget/heard';
 import type { Budget, Coupling, RunResult } from '../budget/results';
 import type { Finding } from '../rules/rule';
 import type { CheckedFile } from './checkedFiles';
@@ -42,7 +43,7 @@ function fileReport({ path, analysis, text }: CheckedFile): FileReport {
     runs: evaluation.runs.map((result) => runReport(result, named)),
     loops: project.loops.map((loop) => ({ ...named(loop), area: null, perimeter: null, inductance: null, emission: [], mutual: [] })),
     returns: project.returns.map((each) => ({ ...named(each), resistance: null, inductance: null, drops: [] })),
-    links: project.links.map((link) => ({ ...named(link), induced: [] })),
+    links: project.links.map((link) => ({ ...named(link), induced: inducedBy(evaluation.heard, link.name) })),
     shields: project.shields.map((shield) => ({ ...named(shield), frequency: null, effectivenessDb: null })),
     budgets: evaluation.budgets.map((budget) => budgetReport(budget, placed)),
   };
@@ -88,6 +89,10 @@ function budgetReport(budget: Budget, placed: Placed): FileReport['budgets'][num
     unaccounted: unaccounted.map(({ what }) => what),
     contributions: contributions.map(({ channel, from, where, group, value, unfiltered, method, assumptions, ...each }) => ({ channel, from, where, group, value, unfiltered: finite(unfiltered), bounds: pairOf(each.bounds), method, assumptions: [...assumptions] })),
   };
+}
+
+function inducedBy(heard: readonly Heard[], link: string): FileReport['links'][number]['induced'] {
+  return heard.filter(({ channel, origins }) => channel === 'link' && origins.includes(link)).map((each) => ({ aggressor: each.source.signal.name, victim: each.receiver.subject.name, peak: largestPeak(each) }));
 }
 
 /** JSON has no infinity: what has no finite value has none. */

@@ -63,7 +63,7 @@ class Meeting {
     const byEdge = edge === null || !isFiniteNoise(edge) ? null : this.edgeCoupling(edge);
     const place = this.place();
     return {
-      channel: 'coupled', source, receiver, where: run.name, place,
+      channel: 'coupled', source, receiver, origins: [run.name], place,
       edge: byEdge === null ? null : {
         value: volts(Math.abs(byEdge.counted ?? byEdge.atReceiver)),
         unfiltered: byEdge.counted === null ? null : volts(Math.abs(byEdge.atReceiver)),

@@ -1,7 +1,7 @@
 import { kneeFrequency } from '../../physics/lines/knee';
 import { inText } from '../../units/inText';
 import type { Time } from '../../units/quantity';
-import { assumptionsFor } from '../ends';
+import { assumptionsInWords } from '../ends';
 import { leadsOf, roleOf } from './arrangements';
 import type { PartContext } from './coupledRun';
 import type { PartReceiver, PartSource } from './partPlayers';
@@ -18,9 +18,7 @@ export interface FoundInWords {
 export function couplingAssumptions({ run, part, roles, windowed }: PartContext, { source, receiver }: { source: PartSource; receiver: PartReceiver }, { guards: slow, followed }: FoundInWords): readonly string[] {
   const said: string[] = [];
   const traces = [...source.lines, ...receiver.terms].map(({ index }) => part.traces[index]);
-  for (const trace of traces) {
-    for (const { missing, assumed } of assumptionsFor(roleOf(roles, trace))) said.push(`${trace.net.name} states no \`${missing}\`: ${assumed}`);
-  }
+  said.push(...assumptionsInWords(traces.map((trace) => roleOf(roles, trace))));
   const guards = new Set(part.conductors.flatMap((conductor) => (conductor.kind === 'guard' ? [conductor.name] : [])));
   if (0 < guards.size) said.push(`guard ${[...guards].join(', ')} counts as tied to the reference everywhere`);
   if (slow !== null) said.push(slow);

@@ -2,8 +2,10 @@
  * What the repeated edges of a source in a part of a run put into the bands of those that listen there in rms: the directions
  * in which it and they are driven, and what is assumed for sources that nobody stated, with the largest rms of each.
  */
+import type { Signal } from '../../board/model';
 import type { CoupledLines } from '../../physics/lines/lines';
 import { prepareTransfer, type Drive, type LineTransfer } from '../../physics/lines/transfer';
+import type { Reading } from '../../physics/lines/reading';
 import { worstTransfer } from '../../physics/lines/worstTransfer';
 import type { Band } from '../../physics/noise/receiverBand';
 import { volts, type Voltage } from '../../units/quantity';
@@ -62,24 +64,38 @@ function solve(part: RunPart, inductance: Float64Array, { arrangement, player, r
   const { left, right, leftAcross, rightAcross } = arrangement;
   const lines: CoupledLines = { order, inductance, capacitance, length, left, right, leftAcross, rightAcross };
   const prepared = prepareTransfer(lines);
-  const drives = (kind: Drive['kind']) => player.lines.map(({ index, sign }): Drive => ({ line: index, end: sideOf(arrangement, index, kind === 'voltage' ? 'source' : 'load'), kind, amplitude: sign }));
-  const [byVoltage, byCurrent] = [drives('voltage'), drives('current')];
+  const { signal } = player.source;
+  const moved = (['voltage', 'current'] as const).filter((kind) => edgesOf(signal).some((edge) => edge[kind] !== null));
+  const drives = moved.map((kind) => player.lines.map(({ index, sign }): Drive => ({ line: index, end: sideOf(arrangement, index, kind === 'voltage' ? 'source' : 'load'), kind, amplitude: sign })));
   const { terms, receiver: { leak } } = receiver;
   const leaks = leak === 0 || terms.length < 2 ? [0] : [leak, -leak];
+  // The current's sign against the voltage is not known.
+  const signs = moved.length === 1 ? [[1]] : [[1, 1], [1, -1]];
   const readings = leaks.map((share) => terms.map(({ index, weight }) => ({ line: index, place: `${sideOf(arrangement, index, 'load')}Termination` as const, factor: weight + share / terms.length })));
-  const read = (transfer: LineTransfer) => readings.map((reading): Complex => reading.reduce((sum, { line, place, factor }) => ({ re: sum.re + factor * transfer[place].real[line], im: sum.im + factor * transfer[place].imaginary[line] }), { re: 0, im: 0 }));
-  const draws = edgesOf(player.source.signal).some(({ current }) => current !== null);
-  const spectra = repeatedSpectra(player.source.signal, band, readings.length, (frequency) => ({
-    voltage: read(prepared.at(byVoltage, frequency)),
-    current: draws ? read(prepared.at(byCurrent, frequency)) : [],
-  }), (range) => {
-    const largest = (all: readonly Drive[]) => worstTransfer(prepared, all, range, readings).readings.map(({ magnitude }) => magnitude);
-    const [ofVoltage, ofCurrent] = [largest(byVoltage), draws ? largest(byCurrent) : []];
-    return readings.map((_, at) => ({ voltage: ofVoltage[at]!, current: ofCurrent[at] ?? 0 }));
+  const all = signs.flatMap((sign) => readings.map((reading) => ({ sign, reading })));
+  const spectra = repeatedSpectra({ repeats: signal.repeats, trains: moved.map((kind) => trainOf(signal, kind)), signs: all.map(({ sign }) => sign) }, band, {
+    readings: all.length,
+    at: (frequency) => {
+      const transfers = drives.map((of) => prepared.at(of, frequency));
+      return all.map(({ reading }) => transfers.map((transfer) => read(reading, transfer)));
+    },
+    largestIn: (range) => {
+      const largest = drives.map((of) => worstTransfer(prepared, of, range, readings).readings);
+      return all.map(({ reading }) => largest.map((each) => each[readings.indexOf(reading)]!.magnitude));
+    },
   });
   if (spectra === null) return null;
   const found = spectra.reduce((a, b) => (rmsOf(a.spectrum) < rmsOf(b.spectrum) ? b : a));
   return { ...found, errorBar: volts(found.errorBar + carried(part, player, receiver) * rmsOf(found.spectrum)) };
+}
+
+function trainOf(signal: Signal, kind: 'voltage' | 'current') {
+  const edges = edgesOf(signal);
+  return { rise: edges[0]?.[kind] ?? null, fall: edges[edges.length - 1]?.[kind] ?? null };
+}
+
+function read(reading: Reading, transfer: LineTransfer): Complex {
+  return reading.reduce((sum, { line, place, factor }) => ({ re: sum.re + factor * transfer[place].real[line], im: sum.im + factor * transfer[place].imaginary[line] }), { re: 0, im: 0 });
 }
 
 /** What couples by C or by L has at most the larger relative error of the two. */

@@ -30,10 +30,10 @@ export interface CircuitWaveforms {
 /** Followed until nothing moves, at most until `until`. */
 export function circuitWaveforms(circuit: Circuit, ramp: CircuitRamp, until: Time = seconds(Infinity)): CircuitWaveforms {
   const duration = Math.max(ramp.duration, shortest);
-  const driven: DrivenCircuit = { ...regular(circuitMatrices(circuit), circuit.nodes, duration), row: drivenRow(circuit, ramp.drive), amplitude: ramp.amplitude, duration };
-  const first = march(driven, new Float64Array(driven.order).fill(1), until);
+  const driven: DrivenCircuit = { ...regular(circuitMatrices(circuit), duration), row: drivenRow(circuit, ramp.drive), amplitude: ramp.amplitude, duration };
+  const first = march(driven, new Float64Array(driven.order).fill(1), { until, tolerance: 1e-5 });
   const sizes = Float64Array.from({ length: driven.order }, (_, at) => largestOf(first, driven.order, at) || 1);
-  const solution = march(driven, sizes, until);
+  const solution = march(driven, sizes, { until, tolerance: 1e-8 });
   const nodes = Array.from({ length: circuit.nodes }, (_, node) => node);
   return {
     nodes: nodes.map((node) => waveformOf(solution, { order: driven.order, node, volts: sizes[node], seconds: duration })),
@@ -45,8 +45,8 @@ export function circuitWaveforms(circuit: Circuit, ramp: CircuitRamp, until: Tim
 const integrationError = 1e-6;
 /** A step, for every circuit of a board. */
 const shortest = 1e-15;
-/** Of the ramp. */
-const smallestConstant = 1e-20;
+/** Of the ramp, with one ohm or one siemens: nothing, to rounding, for all impedances of a board. */
+const smallestConstant = 1e-22;
 
 interface DrivenCircuit extends CircuitMatrices {
   readonly row: number;
@@ -54,26 +54,15 @@ interface DrivenCircuit extends CircuitMatrices {
   readonly duration: number;
 }
 
-/** With the time constants that nobody stated, so that the mass has an inverse. */
-function regular({ order, mass, stiffness }: CircuitMatrices, nodes: number, duration: number): CircuitMatrices {
+/** With a coil in every branch and a capacitance at every node, so that the mass has an inverse. */
+function regular({ order, mass, stiffness }: CircuitMatrices, duration: number): CircuitMatrices {
   const filled = mass.slice();
-  const conductance = Float64Array.from({ length: nodes }, (_, node) => {
-    let sum = -stiffness[node * (order + 1)];
-    for (let branch = nodes; branch < order; branch += 1) {
-      if (stiffness[node * order + branch] !== 0) sum += 1 / Math.max(smallestImpedance, mass[branch * (order + 1)] / duration - stiffness[branch * (order + 1)]);
-    }
-    return Math.max(sum, 1 / largestImpedance);
-  });
-  for (let node = 0; node < nodes; node += 1) filled[node * (order + 1)] += smallestConstant * duration * conductance[node];
-  for (let branch = nodes; branch < order; branch += 1) filled[branch * (order + 1)] += smallestConstant * duration * Math.max(smallestImpedance, -stiffness[branch * (order + 1)]);
+  for (let i = 0; i < order; i += 1) filled[i * (order + 1)] += smallestConstant * duration;
   return { order, mass: filled, stiffness };
 }
 
-const smallestImpedance = 1e-6;
-const largestImpedance = 1e12;
-
 /** Time in units of the ramp, unknowns in units of their own size, every row in units of its largest entry. */
-function march({ order, mass, stiffness, row, amplitude, duration }: DrivenCircuit, sizes: Float64Array, until: number): StiffSolution {
+function march({ order, mass, stiffness, row, amplitude, duration }: DrivenCircuit, sizes: Float64Array, { until, tolerance }: { readonly until: number; readonly tolerance: number }): StiffSolution {
   const scaled = { order, mass: new Float64Array(order * order), stiffness: new Float64Array(order * order), forcing: new Float64Array(order) };
   for (let i = 0; i < order; i += 1) {
     let scale = 0;
@@ -89,9 +78,9 @@ function march({ order, mass, stiffness, row, amplitude, duration }: DrivenCircu
     kink: 1,
     until: Math.min(until / duration, longestFollowed),
     atLeast: 0,
-    firstStep: 1 / 256,
+    firstStep: 1 / 64,
     leastShare: 1 / 400,
-    tolerance: 1e-9,
+    tolerance,
     mostSteps: 8000,
   });
 }
@@ -105,15 +94,21 @@ function largestOf({ count, states }: StiffSolution, order: number, at: number):
   return largest;
 }
 
+/** After a kink of the ramp: what jumps there has rates of no meaning at first, and small steps instead. */
+const roughSteps = 4;
+
 /** The steps' own points, and the extremes between them by the cubic through values and rates. */
 function waveformOf({ count, times, states, rates }: StiffSolution, unit: { order: number; node: number; volts: number; seconds: number }): Waveform {
   const at: number[] = [];
   const values: number[] = [];
+  let rough = 0;
   for (let n = 0; n < count; n += 1) {
     const here = n * unit.order + unit.node;
     at.push(times[n] * unit.seconds);
     values.push(states[here] * unit.volts);
     if (n + 1 === count) break;
+    if (times[n] === 0 || times[n] === 1) rough = n + roughSteps;
+    if (n < rough) continue;
     const next = here + unit.order;
     if (0 <= rates[here] * rates[next]) continue;
     const step = times[n + 1] - times[n];
