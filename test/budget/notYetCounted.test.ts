@@ -15,11 +15,6 @@ describe('what a budget says is not yet counted', () => {
     assert.deepEqual(lacks(`net A { swing 3 V; rise 1 ns; source 50 ohm; load 50 ohm }\n${beside('A')}`), []);
   });
 
-  it('names links from a source, and no others', () => {
-    const nets = 'net COIL { swing 12 V; rise 1 us; source 1 ohm; load 50 ohm }\nnet QUIET { source 1 ohm }\n';
-    assert.deepEqual(lacks(`${nets}link body { between COIL and V; capacitance 0.8 pF }\nlink other { between V and QUIET; mutual 3 nH }`), ['link body is not yet counted']);
-  });
-
   it('names the loops that carry into those that sense, fields, and the shield that would act on them', () => {
     const loops = `net W { swing 5 V; rise 10 ns; source 5 ohm; load 50 ohm }
       loop out on TOP { carries W 1 A; rectangle 10 mm by 5 mm; strip 1 mm }

@@ -13,7 +13,7 @@ import { luFactor, luSolve } from './lu';
 
 export interface StiffLinear {
   readonly order: number;
-  /** Row-major, nonsingular. */
+  /** Row-major; singular only where the input begins at 0 and every state follows from it. */
   readonly mass: Float64Array;
   readonly stiffness: Float64Array;
   readonly forcing: Float64Array;
@@ -138,8 +138,10 @@ function startMarch(system: StiffLinear, run: StiffRun): March {
     candidate: new Float64Array(order),
     work: new Float64Array(order),
   };
-  const { matrix, exchanged } = factorsFor(march, 0);
   const start = run.input(0);
+  // At rest everything stands still, whether or not the mass has an inverse.
+  if (start === 0) return march;
+  const { matrix, exchanged } = factorsFor(march, 0);
   for (let i = 0; i < order; i += 1) march.work[i] = system.forcing[i] * start;
   luSolve(matrix, exchanged, march.work);
   march.rates.set(march.work);

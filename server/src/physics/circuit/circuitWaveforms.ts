@@ -3,8 +3,7 @@
  *
  * Method    `circuit.ts` marched by an L-stable method (`numeric/stiffLinear.ts`), twice: the first pass finds how large each unknown
  *           gets, the second holds each to the tolerance at its own size. A receiver's millivolts beside a driver's volts lose no digit
- * Range     a node without capacitance and a branch without a coil get one, too small for any step to see. What
- *           still rings after some twenty periods is damped away, as losses do
+ * Range     what still rings after some twenty periods is damped away, as losses do
  * Accuracy  1e-6 of each node's own peak; test/physics/circuit
  */
 import { stiffLinear, type StiffSolution } from '../../numeric/stiffLinear';
@@ -30,7 +29,7 @@ export interface CircuitWaveforms {
 /** Followed until nothing moves, at most until `until`. */
 export function circuitWaveforms(circuit: Circuit, ramp: CircuitRamp, until: Time = seconds(Infinity)): CircuitWaveforms {
   const duration = Math.max(ramp.duration, shortest);
-  const driven: DrivenCircuit = { ...regular(circuitMatrices(circuit), duration), row: drivenRow(circuit, ramp.drive), amplitude: ramp.amplitude, duration };
+  const driven: DrivenCircuit = { ...circuitMatrices(circuit), row: drivenRow(circuit, ramp.drive), amplitude: ramp.amplitude, duration };
   const first = march(driven, new Float64Array(driven.order).fill(1), { until, tolerance: 1e-5 });
   const sizes = Float64Array.from({ length: driven.order }, (_, at) => largestOf(first, driven.order, at) || 1);
   const solution = march(driven, sizes, { until, tolerance: 1e-8 });
@@ -45,20 +44,10 @@ export function circuitWaveforms(circuit: Circuit, ramp: CircuitRamp, until: Tim
 const integrationError = 1e-6;
 /** A step, for every circuit of a board. */
 const shortest = 1e-15;
-/** Of the ramp, with one ohm or one siemens: nothing, to rounding, for all impedances of a board. */
-const smallestConstant = 1e-22;
-
 interface DrivenCircuit extends CircuitMatrices {
   readonly row: number;
   readonly amplitude: number;
   readonly duration: number;
-}
-
-/** With a coil in every branch and a capacitance at every node, so that the mass has an inverse. */
-function regular({ order, mass, stiffness }: CircuitMatrices, duration: number): CircuitMatrices {
-  const filled = mass.slice();
-  for (let i = 0; i < order; i += 1) filled[i * (order + 1)] += smallestConstant * duration;
-  return { order, mass: filled, stiffness };
 }
 
 /** Time in units of the ramp, unknowns in units of their own size, every row in units of its largest entry. */
