@@ -8,7 +8,7 @@
  *
  * Model     a line without thickness along the middle of the conductor; `turns` rotate about the shape's centre, one after the other,
  *           by the right-hand rule about fixed axes. The centre of a path is the middle of the box around it
- * Range     sizes from 1e-13 m to 1e7 m, at most 2000 points
+ * Range     sizes from 1e-13 m to 1e7 m, at most 1000 points
  * Refuses   what is not a closed line: see ContourRefusal; it never throws on numbers
  */
 import { metres, type Angle, type Length } from '../../units/quantity';
@@ -61,7 +61,7 @@ export function loopContour(shape: ContourShape, turns: readonly ContourTurn[] =
 }
 
 /** Of the work that a mutual inductance takes, which grows with the square. */
-export const mostPoints = 2000;
+export const mostPoints = 1000;
 const smallest = 1e-13;
 const largest = 1e7;
 
@@ -90,7 +90,7 @@ function polygon(shape: Exclude<ContourShape, { form: 'circle' }>, turns: readon
   const points = withoutRepeats(placed, 1e-12 * size);
   if (points.length < 3) return { refused: { reason: 'no-size' } };
   const contour: PolygonContour = { form: 'polygon', points: Float64Array.from(points.flat()) };
-  const fault = contourFault(contour, 1e-12 * size);
+  const fault = contourFault(contour, 1e-13 * size);
   return fault === null ? { contour } : { refused: fault };
 }
 
