@@ -36,4 +36,15 @@ describe('a short run in a long net', () => {
       near(long / short, 2, 0.05);
     });
   }
+
+  it('a hundredth of a millimetre among leads of half a metre still has its size, and an error bar as large', () => {
+    const far = { impedance: 60, delay: 2.5e-9 };
+    const tiny = lines({ ...rowOfLines(3, 0.2), length: 1e-5, left: [end(50, 0, far), end(50, 0, far), end(50, 0, far)], right: [end(70, 2e-12, far), end(70, 2e-12, far), end(70, 2e-12, far)] });
+    const { rightTermination, errorBar, method } = prepareLines(tiny).response(ramp(0, 'left', 1, 5e-10), seconds(1e-7));
+    const peak = Math.abs(peakOf(rightTermination[1]).value);
+    assert.equal(method, 'characteristics');
+    // Per length, runs that are followed have 0.73 V/m.
+    assert.ok(0.5 < peak / 1e-5 && peak / 1e-5 < 2, `${peak}`);
+    assert.ok(peak <= errorBar[1]);
+  });
 });

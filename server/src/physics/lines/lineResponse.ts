@@ -10,12 +10,13 @@
  */
 import { seconds, volts, type Time } from '../../units/quantity';
 import { hasAcross, prepareAcross } from './across';
-import type { CoupledLines, LineResponse, Ramp, Waveform } from './lines';
+import type { CoupledLines, LineResponse, Ramp, Termination, Waveform } from './lines';
 import type { Modes } from './modes';
 import { lineNetwork, type LineNetwork } from './network';
 import { rampedWaveforms, type RampedWaveforms, type RampShape } from './rampedWaveforms';
 import { slowEdgeWaveforms } from './slowEdge';
 import { fewestSteps, unitResponse, type UnitResponse } from './unitResponse';
+import { oneWayDelay } from './window';
 
 export interface PreparedLines {
   readonly lines: CoupledLines;
@@ -34,7 +35,7 @@ export function prepareLines(lines: CoupledLines, refinement = 1): PreparedLines
 }
 
 /** Lines of which nothing is across. */
-function prepareUnbridged(lines: CoupledLines, refinement: number): PreparedLines {
+function prepareUnbridged(lines: CoupledLines, refinement: number, shortened = false): PreparedLines {
   const network = lineNetwork(lines);
   const known = new Map<string, { readonly asked: number; readonly unit: UnitResponse }>();
   const unitFor = ({ end, line }: Ramp, horizon: number, stepsInDelay?: number): UnitResponse => {
@@ -54,15 +55,36 @@ function prepareUnbridged(lines: CoupledLines, refinement: number): PreparedLine
       const sloped = { ...ramp, duration: seconds(Math.max(ramp.duration, shortest)) };
       const wanted = Math.max(window, network.modes.delays[0]);
       const unit = unitFor(ramp, wanted);
+      const across = oneWayDelay(network.modes, lines);
+      // Until the edge has come and gone, or, of one that outlasts the work, until echoes are past and the circuit takes over.
+      const reaches = ({ horizon }: UnitResponse) => window * (1 - 1e-9) <= horizon || (sloped.duration < horizon ? sloped.duration + 2 * across : 3 * across) <= horizon;
       // A short run in a long net: its own delay asks for small steps, its leads for many.
-      const hurried = isCutShort(unit, window) && sloped.duration < unit.horizon;
-      return rampResponse(lines, network, hurried ? unitFor(ramp, wanted, fewestSteps) : unit, sloped, window);
+      const hurried = isCutShort(unit, window) && (sloped.duration < unit.horizon || !reaches(unit));
+      const followed = hurried ? unitFor(ramp, wanted, fewestSteps) : unit;
+      if (reaches(followed) || shortened) return rampResponse(lines, network, followed, sloped, window);
+      const share = (0.4 * Math.max(followed.horizon - sloped.duration, 0.5 * followed.horizon)) / across;
+      return ofItsSize(prepareUnbridged(withShorterLeads(lines, share), refinement, true).response(sloped, window));
     },
   };
 }
 
 /** Of the fastest mode's delay: a step, for every purpose, and still a slope that can be divided by. */
 const shortestDuration = 1e-6;
+
+/**
+ * A run a thousand times shorter than its leads, whose waves the work allowed cannot bring to the end: with leads that it can. What
+ * arrives first is the same; when echoes come is not.
+ */
+function withShorterLeads({ left, right, ...lines }: CoupledLines, share: number): CoupledLines {
+  const shorter = (ends: readonly Termination[]) => ends.map((one) => (one.lead === null ? one : { ...one, lead: { ...one.lead, delay: seconds(one.lead.delay * share) } }));
+  return { ...lines, left: shorter(left), right: shorter(right) };
+}
+
+/** Good for its size only. */
+function ofItsSize(answer: LineResponse): LineResponse {
+  const largest = (waveform: Waveform) => waveform.values.reduce((most, value) => Math.max(most, Math.abs(value)), 0);
+  return { ...answer, errorBar: answer.errorBar.map((_, line) => volts(Math.max(largest(answer.leftTermination[line]), largest(answer.rightTermination[line])))) };
+}
 
 function isCutShort({ horizon }: UnitResponse, window: number): boolean {
   return horizon < window * (1 - 1e-9);
