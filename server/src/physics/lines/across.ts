@@ -4,7 +4,7 @@
  * Method    balanced pairs in unknowns in which nothing is across (`balancedPairs.ts`), exact; else by the currents that flow through
  *           what is across (`bridgingCurrents.ts`)
  */
-import { volts } from '../../units/quantity';
+import { seconds, volts } from '../../units/quantity';
 import { balancedPairs, type BalancedPairs } from './balancedPairs';
 import { bridgedLines } from './bridgingCurrents';
 import { combinedWaveform } from './combine';
@@ -40,7 +40,7 @@ export function inOldLines(lines: CoupledLines, { parts }: BalancedPairs, answer
   };
   return {
     left, right, leftTermination: beyond('left', left), rightTermination: beyond('right', right),
-    window: answers[0].window,
+    window: seconds(Math.min(...answers.map(({ window }) => window))),
     method: answers.find(({ method }) => method !== 'lattice')?.method ?? 'lattice',
     errorBar: lines.left.map((_, line) => volts(answers.reduce((sum, answer) => sum + parts(line).reduce((bar, part) => bar + Math.abs(part.factor) * answer.errorBar[part.line], 0), 0))),
     work: answers.reduce((sum, { work }) => sum + work, 0),
