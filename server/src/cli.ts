@@ -1,19 +1,24 @@
 #!/usr/bin/env node
 /** The command `quietrun`. */
+import { fstatSync } from 'node:fs';
 import { createConnection, StreamMessageReader, StreamMessageWriter } from 'vscode-languageserver/node';
 import { version } from '../../package.json';
-import { run } from './cli/run';
+import { run, status } from './cli/run';
 import { diskReader } from './lsp/diskReader';
 import { startServer } from './lsp/startServer';
 
 // A reader that has gone, `quietrun check … | head`, is no fault: the exit status stands, read or not.
 for (const stream of [process.stdout, process.stderr]) {
   stream.on('error', (error: NodeJS.ErrnoException) => {
-    if (error.code !== 'EPIPE') throw error;
+    if (error.code === 'EPIPE') return;
+    if (stream === process.stdout) process.stderr.write(`quietrun: the output cannot be written (${error.code ?? error.message})\n`);
+    process.exit(status.notRun);
   });
 }
 
 async function readStandardInput(): Promise<string> {
+  // Node takes a folder there for nothing at all, and nothing has no findings.
+  if (process.platform !== 'win32' && fstatSync(0).isDirectory()) throw new Error('it is a folder');
   const chunks: Buffer[] = [];
   for await (const chunk of process.stdin) chunks.push(chunk as Buffer);
   return new TextDecoder('utf-8').decode(Buffer.concat(chunks));

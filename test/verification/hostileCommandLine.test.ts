@@ -4,7 +4,7 @@
  */
 import assert from 'node:assert/strict';
 import { spawn, spawnSync } from 'node:child_process';
-import { chmodSync, mkdirSync, mkdtempSync, rmSync, symlinkSync, writeFileSync } from 'node:fs';
+import { chmodSync, closeSync, existsSync, mkdirSync, mkdtempSync, openSync, rmSync, symlinkSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
 import { after, before, describe, it } from 'node:test';
@@ -176,6 +176,21 @@ describe('uses that lead elsewhere', () => {
   });
 });
 
+describe('standard input', () => {
+  it('refuses what is too large or a folder, and a name that is none', () => {
+    const large = quietrun(['check', '-'], '#'.repeat(9 << 20));
+    assert.deepEqual([large.status, large.stdout], [2, '']);
+    assert.match(large.stderr, /standard input is over 8 MiB/);
+    refused(['check', '-', '--stdin-filename', ''], /takes a name/);
+    if (process.platform === 'win32') return;
+    const input = openSync(folder, 'r');
+    const { status, stdout, stderr } = spawnSync(process.execPath, [program, 'check', '-'], { cwd: folder, stdio: [input, 'pipe', 'pipe'], encoding: 'utf8', timeout: patience });
+    closeSync(input);
+    assert.deepEqual([status, stdout], [2, '']);
+    assert.match(stderr, /^quietrun: standard input cannot be read/);
+  });
+});
+
 describe('output that nobody reads to its end', () => {
   it('ends quietly when the reader has gone', async () => {
     // A report much longer than a pipe holds.
@@ -192,5 +207,13 @@ describe('output that nobody reads to its end', () => {
       assert.equal(complaints, '', 'a reader that has gone is no bug to report');
       assert.equal(code, 1, 'the findings are there, read or not');
     }
+  });
+
+  it('says where there is no room for it, and that the command did not run to its end', () => {
+    if (!existsSync('/dev/full')) return;
+    const full = openSync('/dev/full', 'w');
+    const { status, stderr } = spawnSync(process.execPath, [program, 'check', 'clean.quiet'], { cwd: folder, stdio: ['ignore', full, 'pipe'], encoding: 'utf8', timeout: patience });
+    closeSync(full);
+    assert.deepEqual([status, stderr], [2, 'quietrun: the output cannot be written (ENOSPC)\n']);
   });
 });

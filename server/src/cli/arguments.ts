@@ -62,7 +62,7 @@ function readCheck(words: readonly string[]): ReadArguments {
     if (choices === undefined) return { refused: `check has no ${name}` };
     if (given.has(name)) return { refused: `${name} stands twice` };
     const value = attached ?? words[(at += 1)];
-    if (value === undefined) return { refused: `${name} takes ${choices?.join(' or ') ?? 'a name'}` };
+    if (value === undefined || value === '') return { refused: `${name} takes ${choices?.join(' or ') ?? 'a name'}` };
     if (choices !== null && !choices.includes(value)) return { refused: `${name} takes ${choices.join(' or ')}, not ${value}` };
     given.set(name, value);
   }

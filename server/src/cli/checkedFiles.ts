@@ -26,7 +26,7 @@ export async function checkedFiles(options: CheckOptions): Promise<CheckedFiles>
   const roots: string[] = [];
   for (const file of options.files) {
     const key = file === '-' ? keyOf(options.stdinFilename ?? '-', options) : keyOf(file, options);
-    const text = file === '-' ? await options.readStandardInput() : await namedFile(file, options);
+    const text = file === '-' ? await standardInput(options) : await namedFile(file, options);
     if (typeof text !== 'string') return { refused: text.why };
     roots.push(key);
     session.setText(key, text);
@@ -37,6 +37,15 @@ export async function checkedFiles(options: CheckOptions): Promise<CheckedFiles>
 
 function keyOf(file: string, { workingDirectory }: CheckOptions): string {
   return path.relative(workingDirectory, path.resolve(workingDirectory, file)).split(path.sep).join('/');
+}
+
+async function standardInput({ readStandardInput }: CheckOptions): Promise<string | { readonly why: string }> {
+  try {
+    const text = await readStandardInput();
+    return text.length <= largestFile ? text : { why: 'standard input is over 8 MiB' };
+  } catch (error) {
+    return { why: `standard input cannot be read (${error instanceof Error ? error.message : String(error)})` };
+  }
 }
 
 /** A file named on the command line may lie anywhere: whoever named it may read it. */
