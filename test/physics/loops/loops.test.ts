@@ -190,6 +190,33 @@ describe('contours', () => {
   });
 });
 
+describe('hostile numbers', () => {
+  it('never yield NaN, throw or hang', () => {
+    const random = seeded(5);
+    const size = (): number => 10 ** (18 * random() - 12);
+    for (let n = 0; n < 300; n += 1) {
+      const made = [0, 1].map(() => {
+        const at = point(size() - size(), size() - size(), size());
+        const turns = [{ angle: radians(7 * random()), axis: 'y' }] as const;
+        return loopContour(random() < 0.4 ? { form: 'circle', diameter: metres(size()), at } : random() < 0.5 ? { form: 'trace', length: metres(size()), planeZ: metres(0), at } : { form: 'rectangle', width: metres(size()), height: metres(size()), at }, random() < 0.5 ? turns : []);
+      });
+      if ('refused' in made[0] || 'refused' in made[1]) continue;
+      for (const planes of [[], [metres(0)], [metres(-1e-3), metres(1)]]) {
+        const result = mutualInductance(made[0].contour, made[1].contour, { planes });
+        if ('inductance' in result) assert.ok(Number.isFinite(result.inductance) && 0 <= result.errorBar, `${n}: ${JSON.stringify(result)}`);
+        const own = selfInductance({ contour: made[0].contour, conductor: wire(size()), planes });
+        if ('inductance' in own) assert.ok(Number.isFinite(own.inductance) && 0 < own.inductance, `${n}: ${JSON.stringify(own)}`);
+      }
+    }
+  });
+
+  it('keep the work of a thousand points bounded', () => {
+    const ring = (z: number) => path(...Array.from({ length: 1000 }, (_, i) => [0.05 * Math.cos((2 * Math.PI * i) / 1000), 0.05 * Math.sin((2 * Math.PI * i) / 1000), z] as const));
+    const result = mutualInductance(ring(0.01), ring(0.03), { planes: [metres(0), metres(0.1)] });
+    assert.ok('work' in result && result.work < 2e7, JSON.stringify(result));
+  });
+});
+
 describe('induced voltage', () => {
   it('meets the reference cases', () => {
     for (const id of ['E-ind-1', 'E-ind-3']) {

@@ -11,8 +11,8 @@ import { cross, difference, dot, norm, type Vector } from './vector';
 export type ContourFault = { readonly reason: 'folds-back' | 'meets-itself'; readonly first: number; readonly second: number };
 
 /**
- * `clearance`: sides that are no neighbours have to be farther from each other; m. Not those that the contour itself joins within
- * three times as much: a curve of short sides is no fault.
+ * `clearance`: sides that are no neighbours have to be farther from each other; m. Not those whose middles the contour itself joins
+ * within three times as much: a curve of short sides is no fault.
  */
 export function contourFault({ points }: PolygonContour, clearance: number): ContourFault | null {
   const count = points.length / 3;
@@ -36,8 +36,8 @@ export function contourFault({ points }: PolygonContour, clearance: number): Con
   for (let first = 0; first < count; first += 1) {
     for (let second = first + 2; second < count; second += 1) {
       if (first === 0 && second === count - 1) continue;
-      const between = reached[second] - reached[first + 1];
-      if (Math.min(between, reached[count] - reached[second + 1] + reached[first]) < 3 * clearance) continue;
+      const between = (reached[second] + reached[second + 1] - reached[first] - reached[first + 1]) / 2;
+      if (Math.min(between, reached[count] - between) < 3 * clearance) continue;
       const a = 3 * first;
       const b = 3 * second;
       if (high[a] < low[b] || high[b] < low[a] || high[a + 1] < low[b + 1] || high[b + 1] < low[a + 1] || high[a + 2] < low[b + 2] || high[b + 2] < low[a + 2]) continue;

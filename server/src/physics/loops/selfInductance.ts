@@ -18,7 +18,7 @@ import { henries, metres, type Inductance, type InductancePerLength, type Length
 import { coaxialNeumann } from './circlePotential';
 import { conductorGmd, conductorHalfWidth, type LoopConductor } from './conductorGmd';
 import type { Contour } from './contour';
-import { contourFault, type ContourFault } from './contourFault';
+import { contourFault } from './contourFault';
 import { contourMeasures } from './contourMeasures';
 import { imageIn, pathsOf, type CurrentPaths } from './currentPaths';
 import type { NeumannIntegral } from './distantNeumann';
@@ -47,7 +47,7 @@ export type SelfInductance =
     readonly sectionDecides: boolean;
     readonly work: number;
   }
-  | { readonly refused: SlabRefusal | ContourFault | { readonly reason: 'no-conductor' | 'too-wide' | 'touches-plane' } };
+  | { readonly refused: SlabRefusal | { readonly reason: 'no-conductor' | 'too-wide' | 'touches-plane' } };
 
 export function selfInductance({ contour, conductor, planes = [], overSection = null }: InductiveLoop): SelfInductance {
   const half = conductorHalfWidth(conductor);
@@ -67,8 +67,11 @@ export function selfInductance({ contour, conductor, planes = [], overSection = 
   const image = base === null ? null : imageNeumann(clear, clear, slab, base, nearNeumann(imageIn(clear, base), clear));
   const integral = own.value + (image?.value ?? 0);
   const mended = overSection === null ? 0 : mendedBy(level, slab, gmd, overSection);
+  const inductance = perMetre(integral) + mended;
+  // A conductor as large as its loop: the mean distance means nothing there.
+  if (!(0 < inductance)) return { refused: { reason: 'too-wide' } };
   return {
-    inductance: henries(perMetre(integral) + mended),
+    inductance: henries(inductance),
     errorBar: henries(perMetre(own.error + (image?.error ?? 0))),
     internal: henries(conductor.form === 'wire' ? (mu0 / (8 * Math.PI)) * (contour.form === 'circle' ? contourMeasures(contour).perimeter : lengthOf(clear)) : 0),
     current: conductor.form === 'wire' ? 'surface' : 'uniform',
@@ -79,9 +82,12 @@ export function selfInductance({ contour, conductor, planes = [], overSection = 
   };
 }
 
-function tooWide(contour: Contour, half: number): ContourFault | { readonly reason: 'too-wide' } | null {
+function tooWide(contour: Contour, half: number): { readonly reason: 'too-wide' } | null {
   if (contour.form === 'circle') return contour.radius <= half ? { reason: 'too-wide' } : null;
-  return contourFault(contour, 2 * half) === null ? (contour.points.length / 3 === 3 && contourMeasures(contour).area < half * contourMeasures(contour).extent ? { reason: 'too-wide' } : null) : { reason: 'too-wide' };
+  const { area, perimeter } = contourMeasures(contour);
+  // So small a loop that every side is a neighbour: twice its area over its length is what lies between its middle and its sides.
+  if (perimeter < 24 * half && 2 * area <= half * perimeter) return { reason: 'too-wide' };
+  return contourFault(contour, 2 * half) === null ? null : { reason: 'too-wide' };
 }
 
 /** What a conductor keeps a plane from its middle line with: a strip lies flat. */
