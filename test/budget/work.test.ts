@@ -20,28 +20,28 @@ function workOf(text: string, cache: SolveCache) {
 describe('the work of an evaluation', () => {
   it('is a section and its lines for each run at first, and nothing the second time', () => {
     const cache = createSolveCache();
-    assert.deepEqual(workOf(largeBoard(), cache), { sectionsSolved: runs, linesSolved: runs, circuitsSolved: 0 });
-    assert.deepEqual(workOf(largeBoard(), cache), { sectionsSolved: 0, linesSolved: 0, circuitsSolved: 0 });
+    assert.deepEqual(workOf(largeBoard(), cache), { sectionsSolved: runs, linesSolved: runs, circuitsSolved: 0, inductancesSolved: 0 });
+    assert.deepEqual(workOf(largeBoard(), cache), { sectionsSolved: 0, linesSolved: 0, circuitsSolved: 0, inductancesSolved: 0 });
     // One gap: that section, that line.
     const oneGap = largeBoard((line, i) => (i === 150 ? line.replace(/gap .* mm/, 'gap 0.777 mm') : line));
-    assert.deepEqual(workOf(oneGap, cache), { sectionsSolved: 1, linesSolved: 1, circuitsSolved: 0 });
+    assert.deepEqual(workOf(oneGap, cache), { sectionsSolved: 1, linesSolved: 1, circuitsSolved: 0, inductancesSolved: 0 });
     // One length: the section stays.
     const oneLength = largeBoard((line, i) => (i === 150 ? line.replace('for 20 mm', 'for 21 mm') : line));
-    assert.deepEqual(workOf(oneLength, cache), { sectionsSolved: 0, linesSolved: 1, circuitsSolved: 0 });
+    assert.deepEqual(workOf(oneLength, cache), { sectionsSolved: 0, linesSolved: 1, circuitsSolved: 0, inductancesSolved: 0 });
     // What moves nothing in the copper costs nothing: names, limits, swings, comments.
     const limit = largeBoard().replaceAll('tolerates 0.5 V peak', 'tolerates 0.4 V peak').replace('swing 3.3 V', 'swing 5 V');
-    assert.deepEqual(workOf(limit, cache), { sectionsSolved: 0, linesSolved: 0, circuitsSolved: 0 });
+    assert.deepEqual(workOf(limit, cache), { sectionsSolved: 0, linesSolved: 0, circuitsSolved: 0, inductancesSolved: 0 });
     // One driver's edge: the lines of its runs.
-    assert.deepEqual(workOf(largeBoard().replace('rise 2 ns', 'rise 3 ns'), cache), { sectionsSolved: 0, linesSolved: runs / 20, circuitsSolved: 0 });
+    assert.deepEqual(workOf(largeBoard().replace('rise 2 ns', 'rise 3 ns'), cache), { sectionsSolved: 0, linesSolved: runs / 20, circuitsSolved: 0, inductancesSolved: 0 });
   });
 
   it('is shared by runs that are alike', () => {
     const cache = createSolveCache();
-    assert.deepEqual(workOf(largeBoard((line) => line.replace(/gap .* mm/, 'gap 0.3 mm')), cache), { sectionsSolved: 1, linesSolved: 1, circuitsSolved: 0 });
+    assert.deepEqual(workOf(largeBoard((line) => line.replace(/gap .* mm/, 'gap 0.3 mm')), cache), { sectionsSolved: 1, linesSolved: 1, circuitsSolved: 0, inductancesSolved: 0 });
   });
 
   it('forgets what was not asked for longest, within a bound', () => {
-    const cache = createSolveCache({ sections: 10, lines: 10, circuits: 10, runs: 0 });
+    const cache = createSolveCache({ sections: 10, lines: 10, circuits: 10, inductances: 10, runs: 0 });
     const gap = (value: number) => `${microstrip}net A { swing 1 V; rise 1 ns; source 50 ohm; load 50 ohm }\nnet V { source 50 ohm; load 50 ohm; tolerates 1 V peak }\nrun r on TOP for 9 mm { trace A 0.2 mm; gap ${value} mm; trace V 0.2 mm }`;
     for (let i = 0; i < 10; i += 1) workOf(gap(0.2 + i / 10), cache);
     assert.equal(workOf(gap(0.2), cache).sectionsSolved, 0);

@@ -33,7 +33,7 @@ export function evaluate(project: Project, cache: SolveCache): Evaluation {
     budgets,
     limits: outcomes.flatMap(({ limits }) => limits),
     assumedEnds: assumedEnds(outcomes),
-    work: { sectionsSolved: after.sectionsSolved - before.sectionsSolved, linesSolved: after.linesSolved - before.linesSolved, circuitsSolved: after.circuitsSolved - before.circuitsSolved },
+    work: { sectionsSolved: after.sectionsSolved - before.sectionsSolved, linesSolved: after.linesSolved - before.linesSolved, circuitsSolved: after.circuitsSolved - before.circuitsSolved, inductancesSolved: after.inductancesSolved - before.inductancesSolved },
   };
 }
 

@@ -28,6 +28,8 @@ export interface WorkDone {
   readonly linesSolved: number;
   /** Small circuits: links, loops and shared returns. */
   readonly circuitsSolved: number;
+  /** Of loops, their own and mutual ones. */
+  readonly inductancesSolved: number;
 }
 
 export interface RunResult {

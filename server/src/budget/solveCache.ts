@@ -21,6 +21,8 @@ export interface SolveCache {
   line<Solution extends object>(key: string, solve: () => Solution): Solution;
   /** The same for what a small circuit answers. */
   circuit(key: string, solve: () => SolvedPath): SolvedPath;
+  /** The same for inductances in space; the caller keeps one type to one kind of key. */
+  inductance<Solution extends object>(key: string, solve: () => Solution): Solution;
   /** All of a run, by every number and name that enters it. */
   run(key: string, solve: () => SolvedRun): SolvedRun;
   /** A short name for a long one, in the keys of runs; never given twice. */
@@ -41,25 +43,28 @@ export interface CacheBounds {
   readonly sections: number;
   readonly lines: number;
   readonly circuits: number;
+  readonly inductances: number;
   readonly runs: number;
 }
 
 /** Room for a board of 3 000 runs and the edits of an afternoon. */
-const roomy: CacheBounds = { sections: 8192, lines: 32768, circuits: 16384, runs: 8192 };
+const roomy: CacheBounds = { sections: 8192, lines: 32768, circuits: 16384, inductances: 65536, runs: 8192 };
 
 export function createSolveCache(bounds: CacheBounds = roomy): SolveCache {
   const sections = new Recent<KnownSection>(bounds.sections);
   const lines = new Recent<object>(bounds.lines);
   const circuits = new Recent<SolvedPath>(bounds.circuits);
+  const inductances = new Recent<object>(bounds.inductances);
   const runs = new Recent<SolvedRun>(bounds.runs);
   const numbers = new Recent<number>(bounds.runs);
   return {
     section: (section) => sections.find(sectionKey(section), () => known(section, sections.misses)),
     line: <Solution extends object>(key: string, solve: () => Solution) => lines.find(key, solve) as Solution,
     circuit: (key, solve) => circuits.find(key, solve),
+    inductance: <Solution extends object>(key: string, solve: () => Solution) => inductances.find(key, solve) as Solution,
     run: (key, solve) => runs.find(key, solve),
     number: (content) => numbers.find(content, () => numbers.misses),
-    work: () => ({ sectionsSolved: sections.misses, linesSolved: lines.misses, circuitsSolved: circuits.misses }),
+    work: () => ({ sectionsSolved: sections.misses, linesSolved: lines.misses, circuitsSolved: circuits.misses, inductancesSolved: inductances.misses }),
   };
 }
 
