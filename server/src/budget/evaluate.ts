@@ -6,6 +6,9 @@ import type { Project, Run } from '../board/model';
 import { budgetsOf } from './budgets';
 import { heardOverCircuits } from './lumpedPaths';
 import { assumptionsFor } from './ends';
+import { loopInductances } from './loops/loopInductances';
+import { loopLimits } from './loops/loopLimits';
+import { loopResult } from './loops/loopResult';
 import { receiversOf } from './receivers';
 import { rolesOf, type Role, type Roles } from './roles';
 import type { AssumedEnd, Evaluation } from './results';
@@ -22,7 +25,8 @@ export function evaluate(project: Project, cache: SolveCache): Evaluation {
   const keyOf = runKeys(roles, cache);
   const solved = (run: Run) => keepSolution(run, cache.run(keyOf(run), () => solvedRun(run, roles, cache)));
   const outcomes = project.runs.map((run) => guarded(run, roles, solved));
-  const circuits = heardOverCircuits(project, roles, cache);
+  const inductances = loopInductances(project, cache);
+  const circuits = heardOverCircuits(project, roles, receivers, { cache, inductances });
   const channels = { heard: [...outcomes.flatMap(({ heard }) => heard), ...circuits.heard], lacking: [...outcomes.flatMap(({ lacking }) => lacking), ...circuits.lacking] };
   const budgets = budgetsOf(project, roles, receivers, channels);
   const after = cache.work();
@@ -31,7 +35,8 @@ export function evaluate(project: Project, cache: SolveCache): Evaluation {
     runs: outcomes.map(({ result }) => result),
     heard: channels.heard,
     budgets,
-    limits: outcomes.flatMap(({ limits }) => limits),
+    loops: project.loops.map((loop) => loopResult(project, loop, inductances)),
+    limits: [...outcomes.flatMap(({ limits }) => limits), ...project.loops.flatMap((loop) => loopLimits(loop, roles, inductances))],
     assumedEnds: assumedEnds(outcomes),
     work: { sectionsSolved: after.sectionsSolved - before.sectionsSolved, linesSolved: after.linesSolved - before.linesSolved, circuitsSolved: after.circuitsSolved - before.circuitsSolved, inductancesSolved: after.inductancesSolved - before.inductancesSolved },
   };

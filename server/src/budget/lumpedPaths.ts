@@ -6,16 +6,20 @@ import type { Project } from '../board/model';
 import type { Channels } from './budgets';
 import type { Heard } from './heard';
 import { linkPaths } from './links/linkPaths';
+import type { LoopInductances } from './loops/loopInductances';
+import { loopPaths } from './loops/loopPaths';
 import { hearLumped } from './lumped/hearLumped';
 import type { LumpedPath } from './lumped/lumpedPath';
+import type { Receiver } from './receivers';
 import type { Roles } from './roles';
 import type { SolveCache } from './solveCache';
 import { timelessOf } from './sources';
 
-export function heardOverCircuits(project: Project, roles: Roles, cache: SolveCache): Channels {
-  const paths = linkPaths(project, roles);
+export function heardOverCircuits(project: Project, roles: Roles, receivers: readonly Receiver[], { cache, inductances }: { readonly cache: SolveCache; readonly inductances: LoopInductances }): Channels {
+  const loops = loopPaths(project, roles, receivers, inductances);
+  const paths = [...linkPaths(project, roles), ...loops.paths];
   const heard: Heard[] = [];
-  const lacking: Channels['lacking'][number][] = [];
+  const lacking: Channels['lacking'][number][] = [...loops.lacking];
   for (const path of paths) {
     for (const what of [...timeless(path), ...hear(path, cache, heard)]) lacking.push({ receiver: path.receiver, unaccounted: { what, place: path.place } });
   }

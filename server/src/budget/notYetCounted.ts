@@ -12,11 +12,12 @@ import type { Roles } from './roles';
 
 export function lackingOutside(project: Project, roles: Roles, receiver: Receiver): readonly Unaccounted[] {
   const heard = heardBy(receiver);
-  const outside = [...loopsInto(project, heard), ...ambientsOnto(project, heard)];
+  const ambients = ambientsOnto(project, heard);
+  const sensing = project.loops.some((loop) => senses(loop, heard));
   return [
-    ...outside,
+    ...ambients,
     ...returnsInto(project, roles, heard),
-    ...(0 < outside.length ? shieldsOver(project, heard) : []),
+    ...(0 < ambients.length || sensing ? shieldsOver(project, heard) : []),
     ...unread(project, heard),
   ];
 }
@@ -30,12 +31,6 @@ function heardBy({ subject, terms }: Receiver): HeardBy {
 
 export function absent(what: string, place: Place | null): Unaccounted {
   return { what: `${what} is not yet counted`, place };
-}
-
-/** Every loop that carries another net's current couples into every loop that senses this one. */
-function loopsInto(project: Project, heard: HeardBy): readonly Unaccounted[] {
-  if (!project.loops.some((loop) => senses(loop, heard))) return [];
-  return project.loops.filter((loop) => loop.carries.some((carried) => !heard.has(carried.net))).map((loop) => absent(`loop ${loop.name}`, loop.place));
 }
 
 function senses(loop: Loop, heard: HeardBy): boolean {
@@ -58,7 +53,8 @@ function returnsInto(project: Project, roles: Roles, heard: HeardBy): readonly U
 
 /** A shield acts on what loops and fields bring: without those there is nothing that it would change. */
 function shieldsOver(project: Project, heard: HeardBy): readonly Unaccounted[] {
-  return project.shields.filter((shield) => shield.covers.some(({ subject }) => heard.has(subject as Net | Pair))).map((shield) => absent(`shield ${shield.name}`, shield.place));
+  const covers = (subject: Net | Pair | Loop) => ('kind' in subject ? heard.has(subject) : senses(subject, heard));
+  return project.shields.filter((shield) => shield.covers.some(({ subject }) => covers(subject))).map((shield) => absent(`shield ${shield.name}`, shield.place));
 }
 
 function unread(project: Project, heard: HeardBy): readonly Unaccounted[] {

@@ -5,17 +5,14 @@
  *    current  ___/~~~~\__      difference of their durations apart
  */
 import type { Signal } from '../board/model';
+import type { ComplexNumbers } from '../numeric/complexLu';
+import type { HarmonicNumbers } from '../physics/lines/transferAtHarmonics';
 import { harmonicsOf, type Harmonics } from '../physics/noise/harmonics';
 import { harmonicsInBand, rootOfSquares } from '../physics/noise/rmsThroughTransfer';
 import type { Band } from '../physics/noise/receiverBand';
-import { hertz, ratio, volts, type Frequency, type Voltage } from '../units/quantity';
+import { hertz, ratio, volts, type Voltage } from '../units/quantity';
 import type { Spectrum } from './results';
 import type { Swing } from './sources';
-
-export interface Complex {
-  readonly re: number;
-  readonly im: number;
-}
 
 export interface RepeatedFeeds {
   readonly repeats: Signal['repeats'];
@@ -26,10 +23,9 @@ export interface RepeatedFeeds {
 }
 
 export interface FeedTransfers {
-  readonly readings: number;
-  /** Of each reading, of each feed: volts for one unit of it. */
-  readonly at: (frequency: Frequency) => readonly (readonly Complex[])[];
-  /** The same, its largest magnitude in a range: asked for only where there are more harmonics than are followed. */
+  /** Of each feed, of each reading: volts for one unit of it, at every harmonic from `first` to `last`. */
+  readonly at: (harmonics: HarmonicNumbers) => readonly (readonly ComplexNumbers[])[];
+  /** Of each reading, of each feed, its largest magnitude in a range: asked for only where there are more harmonics than are followed. */
   readonly largestIn: (range: Band) => readonly (readonly number[])[];
 }
 
@@ -51,14 +47,15 @@ export function repeatedSpectra({ repeats, trains, signs }: RepeatedFeeds, band:
   const { fundamental } = listed.harmonics;
   const { first, last, complete } = harmonicsInBand(listed.harmonics, band);
   const rms = signs.map(() => new Float64Array(Math.max(0, last - first + 1)));
+  const phasors = last < first ? [] : transfers.at({ fundamental, first, last });
   for (let n = first; n <= last; n += 1) {
-    const transfer = transfers.at(hertz(n * fundamental));
     signs.forEach((sign, reading) => {
       let [re, im] = [0, 0];
       feeds.forEach((feed, at) => {
         if (feed === null) return;
         const turned = turn(feed.harmonics, n, -2 * Math.PI * n * fundamental * (feed.middle - earliest));
-        const through = transfer[reading]![at]!;
+        const { real, imaginary } = phasors[at]![reading]!;
+        const through = { re: real[n - first]!, im: imaginary[n - first]! };
         re += sign[at]! * (turned.re * through.re - turned.im * through.im);
         im += sign[at]! * (turned.re * through.im + turned.im * through.re);
       });
@@ -84,7 +81,7 @@ function feedOf(rise: Swing<number>, fall: Swing<number>, repeats: NonNullable<S
   return { harmonics: harmonicsOf(train, band.to, mostFollowed), middle: rise.duration / 2 };
 }
 
-function turn({ real, imaginary }: Harmonics, n: number, angle: number): Complex {
+function turn({ real, imaginary }: Harmonics, n: number, angle: number): { readonly re: number; readonly im: number } {
   const [re, im] = [real[n - 1]!, imaginary[n - 1]!];
   if (angle === 0) return { re, im };
   const [cosine, sine] = [Math.cos(angle), Math.sin(angle)];

@@ -2,8 +2,8 @@
  * What the physics says of a project: every number the editor or the command line shows comes from
  * here. Values are SI and nominal; `errorBar` is numerical and relative unless said otherwise.
  */
-import type { Net, Pair, Place, Project, Run, RunConductor } from '../board/model';
-import type { Decibels, DelayPerLength, Frequency, Length, Resistance, Time, Voltage } from '../units/quantity';
+import type { Loop, Net, Pair, Place, Project, Run, RunConductor } from '../board/model';
+import type { Area, Decibels, DelayPerLength, Frequency, Inductance, Length, Resistance, Time, Voltage } from '../units/quantity';
 import type { SectionMatrices, SectionRefusal } from '../physics/section/section';
 import type { Heard } from './heard';
 import type { Waveform } from '../physics/lines/lines';
@@ -11,6 +11,8 @@ import type { Waveform } from '../physics/lines/lines';
 export interface Evaluation {
   readonly project: Project;
   readonly runs: readonly RunResult[];
+  /** In the order of the text. */
+  readonly loops: readonly LoopResult[];
   /** What every source puts on every receiver, by every way. */
   readonly heard: readonly Heard[];
   /** In the order of the text. */
@@ -45,6 +47,23 @@ export interface RunResult {
   readonly couplings: readonly Coupling[];
   /** Guards of which the ties are too far apart for the fastest edge of the run. */
   readonly looseGuards: readonly LooseGuard[];
+}
+
+/** Null is what has no value: a contour that is none, a loop without conductor. */
+export interface LoopResult {
+  readonly loop: Loop;
+  readonly area: Area | null;
+  readonly perimeter: Length | null;
+  readonly inductance: Inductance | null;
+  readonly inductanceError: Inductance | null;
+  /** With every other loop, made when it is asked for. */
+  readonly mutual: readonly MutualResult[];
+}
+
+export interface MutualResult {
+  readonly other: Loop;
+  readonly inductance: Inductance;
+  readonly errorBar: Inductance;
 }
 
 export interface LooseGuard {

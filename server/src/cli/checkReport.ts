@@ -1,7 +1,7 @@
 /** What a check found, as the published JSON says it. */
 import type { Place } from '../board/model';
 import { largestPeak, type Heard } from '../budget/heard';
-import type { Budget, Coupling, RunResult } from '../budget/results';
+import type { Budget, Coupling, LoopResult, RunResult } from '../budget/results';
 import type { Finding } from '../rules/rule';
 import type { CheckedFile } from './checkedFiles';
 import type { CheckReport, FileReport, Summary } from './checkSchema';
@@ -41,7 +41,7 @@ function fileReport({ path, analysis, text }: CheckedFile): FileReport {
     complete: project.complete,
     findings: findings.map((finding) => findingReport(finding, placed)),
     runs: evaluation.runs.map((result) => runReport(result, named)),
-    loops: project.loops.map((loop) => ({ ...named(loop), area: null, perimeter: null, inductance: null, emission: [], mutual: [] })),
+    loops: evaluation.loops.map((result) => loopReport(result, evaluation.heard, named)),
     returns: project.returns.map((each) => ({ ...named(each), resistance: null, inductance: null, drops: [] })),
     links: project.links.map((link) => ({ ...named(link), induced: inducedBy(evaluation.heard, link.name) })),
     shields: project.shields.map((shield) => ({ ...named(shield), frequency: null, effectivenessDb: null })),
@@ -59,7 +59,9 @@ function findingReport(finding: Finding, placed: Placed): FileReport['findings']
   };
 }
 
-function runReport(result: RunResult, named: (thing: { readonly name: string; readonly place: Place }) => { name: string; path: string; range: ReturnType<Lines['range']> }): FileReport['runs'][number] {
+type Named = (thing: { readonly name: string; readonly place: Place }) => { name: string; path: string; range: ReturnType<Lines['range']> };
+
+function runReport(result: RunResult, named: Named): FileReport['runs'][number] {
   const { run, traces, matrices } = result;
   const rows = (entries: Float64Array) => traces.map((_, row) => Array.from(entries.subarray(row * traces.length, (row + 1) * traces.length)));
   return {
@@ -89,6 +91,12 @@ function budgetReport(budget: Budget, placed: Placed): FileReport['budgets'][num
     unaccounted: unaccounted.map(({ what }) => what),
     contributions: contributions.map(({ channel, from, where, group, value, unfiltered, method, assumptions, ...each }) => ({ channel, from, where, group, value, unfiltered: finite(unfiltered), bounds: pairOf(each.bounds), method, assumptions: [...assumptions] })),
   };
+}
+
+function loopReport({ loop, area, perimeter, inductance, mutual }: LoopResult, heard: readonly Heard[], named: Named): FileReport['loops'][number] {
+  const induced = (other: string) => Math.max(...heard.filter(({ channel, origins, receiver: { subject, terms } }) => channel === 'loop' && origins.includes(loop.name) && sensedBy(other, subject.name, terms)).map(largestPeak), -Infinity);
+  const sensedBy = (name: string, subject: string, terms: Heard['receiver']['terms']) => mutual.some(({ other: { name: its, senses } }) => its === name && senses.some(({ signal }) => signal.name === subject || terms.some(({ net }) => net === signal)));
+  return { ...named(loop), area: finite(area), perimeter: finite(perimeter), inductance: finite(inductance), emission: [], mutual: mutual.map(({ other, ...each }) => ({ with: other.name, inductance: each.inductance, induced: finite(induced(other.name)) })) };
 }
 
 function inducedBy(heard: readonly Heard[], link: string): FileReport['links'][number]['induced'] {

@@ -2,7 +2,7 @@
  * A loop of the text as the physics sees it: its contour in space, its conductor, and the planes whose images count. A conductor on a
  * layer has its middle at that of the copper; both faces of a plane are planes.
  */
-import type { Loop, LoopPoint, LoopShape, PlaneRow, Project } from '../../board/model';
+import type { Loop, LoopPoint, LoopShape, PlaneRow, Project, StackupRow } from '../../board/model';
 import type { LoopConductor } from '../../physics/loops/conductorGmd';
 import { loopContour, type Contour, type ContourPoint, type ContourRefusal, type ContourShape } from '../../physics/loops/contour';
 import { metres, type Length } from '../../units/quantity';
@@ -25,7 +25,11 @@ export function boardLoops(project: Project): ReadonlyMap<Loop, BoardLoop> {
   return new Map(project.loops.map((loop) => [loop, boardLoop(loop, heights)]));
 }
 
-type Heights = ReadonlyMap<PlaneRow | Loop['layer'] | object, RowHeights>;
+export function contourOf({ contour }: Pick<BoardLoop, 'contour'>): Contour | null {
+  return 'contour' in contour ? contour.contour : null;
+}
+
+type Heights = ReadonlyMap<StackupRow, RowHeights>;
 
 function boardLoop(loop: Loop, heights: Heights): BoardLoop {
   const { layer, shape, over, turns, conductor } = loop;

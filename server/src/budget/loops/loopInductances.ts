@@ -5,13 +5,12 @@
 import type { Loop, Project } from '../../board/model';
 import { conductorHalfWidth } from '../../physics/loops/conductorGmd';
 import { contourMeasures, type ContourMeasures } from '../../physics/loops/contourMeasures';
-import type { Contour } from '../../physics/loops/contour';
 import { mutualInductance, type MutualInductance } from '../../physics/loops/mutualInductance';
 import { selfInductance, type SelfInductance } from '../../physics/loops/selfInductance';
 import { metres } from '../../units/quantity';
 import type { SolveCache } from '../solveCache';
 import { stripInductance } from '../stripInductance';
-import { boardLoops, type BoardLoop } from './boardLoop';
+import { boardLoops, contourOf, type BoardLoop } from './boardLoop';
 
 export interface LoopInductances {
   readonly of: (loop: Loop) => LoopNumbers;
@@ -50,10 +49,6 @@ export function loopInductances(project: Project, cache: SolveCache): LoopInduct
       return cache.inductance(`mutual ${keys.get(first)!} ${keys.get(second)!}`, () => mutualInductance(contour1, contour2, { planes: [...new Set([...one.planes, ...other.planes])], clearance: metres(halfWidth(one) + halfWidth(other)) }));
     },
   };
-}
-
-export function contourOf({ contour }: BoardLoop): Contour | null {
-  return 'contour' in contour ? contour.contour : null;
 }
 
 function halfWidth({ conductor }: BoardLoop): number {

@@ -170,10 +170,15 @@ function heardSpectrum(path: LumpedPath, variant: Variant): SolvedPath['spectrum
   const asked = variant.feeds.map(({ edges }) => edges.rise !== null);
   const trains = variant.feeds.map(({ edges }, at) => (asked[at] ? edges : null));
   const spectra = repeatedSpectra({ repeats: signal.repeats, trains, signs: signs.map(({ feeds }) => feeds) }, band, {
-    readings: signs.length,
-    at: (frequency) => {
-      const readings = readAt(variant, frequency, asked);
-      return signs.map(({ weights }) => readings.map((perTerm) => perTerm.reduce((sum, { re, im }, which) => ({ re: sum.re + weights[which]! * re, im: sum.im + weights[which]! * im }), { re: 0, im: 0 })));
+    at: ({ fundamental, first, last }) => {
+      const phasors = variant.feeds.map(() => signs.map(() => ({ real: new Float64Array(last - first + 1), imaginary: new Float64Array(last - first + 1) })));
+      for (let n = first; n <= last; n += 1) {
+        readAt(variant, hertz(n * fundamental), asked).forEach((perTerm, feed) => signs.forEach(({ weights }, reading) => perTerm.forEach(({ re, im }, which) => {
+          phasors[feed]![reading]!.real[n - first]! += weights[which]! * re;
+          phasors[feed]![reading]!.imaginary[n - first]! += weights[which]! * im;
+        })));
+      }
+      return phasors;
     },
     largestIn: (range) => signs.map(() => variant.feeds.map((_, at) => worstOver(range, (frequency) => magnitudeAt(path, variant, frequency, variant.feeds.map((__, other) => (other === at ? 1 : 0)))).magnitude)),
   });

@@ -4,14 +4,14 @@
  */
 import type { Signal } from '../../board/model';
 import type { CoupledLines } from '../../physics/lines/lines';
-import { prepareTransfer, type Drive, type LineTransfer } from '../../physics/lines/transfer';
-import type { Reading } from '../../physics/lines/reading';
+import { prepareTransfer, type Drive } from '../../physics/lines/transfer';
+import { transferAtHarmonics } from '../../physics/lines/transferAtHarmonics';
 import { worstTransfer } from '../../physics/lines/worstTransfer';
 import type { Band } from '../../physics/noise/receiverBand';
 import { volts, type Voltage } from '../../units/quantity';
 import { rmsOf } from '../heard';
 import { bandOf } from '../receivers';
-import { repeatedSpectra, type Complex, type FoundSpectrum } from '../repeatedSpectrum';
+import { repeatedSpectra, type FoundSpectrum } from '../repeatedSpectrum';
 import { edgesOf } from '../sources';
 import { arrangementsFor, type Arrangement } from './arrangements';
 import { slowInductance } from './balancingCurrent';
@@ -74,11 +74,10 @@ function solve(part: RunPart, inductance: Float64Array, { arrangement, player, r
   const readings = leaks.map((share) => terms.map(({ index, weight }) => ({ line: index, place: `${sideOf(arrangement, index, 'load')}Termination` as const, factor: weight + share / terms.length })));
   const all = signs.flatMap((sign) => readings.map((reading) => ({ sign, reading })));
   const spectra = repeatedSpectra({ repeats: signal.repeats, trains: moved.map((kind) => trainOf(signal, kind)), signs: all.map(({ sign }) => sign) }, band, {
-    readings: all.length,
-    at: (frequency) => {
-      const transfers = drives.map((of) => prepared.at(of, frequency));
-      return all.map(({ reading }) => transfers.map((transfer) => read(reading, transfer)));
-    },
+    at: (harmonics) => drives.map((of) => {
+      const { phasors } = transferAtHarmonics(prepared, of, harmonics, readings);
+      return all.map(({ reading }) => phasors[readings.indexOf(reading)]!);
+    }),
     largestIn: (range) => {
       const largest = drives.map((of) => worstTransfer(prepared, of, range, readings).readings);
       return all.map(({ reading }) => largest.map((each) => each[readings.indexOf(reading)]!.magnitude));
@@ -92,10 +91,6 @@ function solve(part: RunPart, inductance: Float64Array, { arrangement, player, r
 function trainOf(signal: Signal, kind: 'voltage' | 'current') {
   const edges = edgesOf(signal);
   return { rise: edges[0]?.[kind] ?? null, fall: edges[edges.length - 1]?.[kind] ?? null };
-}
-
-function read(reading: Reading, transfer: LineTransfer): Complex {
-  return reading.reduce((sum, { line, place, factor }) => ({ re: sum.re + factor * transfer[place].real[line], im: sum.im + factor * transfer[place].imaginary[line] }), { re: 0, im: 0 });
 }
 
 /** What couples by C or by L has at most the larger relative error of the two. */
