@@ -45,7 +45,7 @@ interface ReceiverChannels {
 }
 
 function receiverBudgets(project: Project, roles: Roles, receiver: Receiver, { heard, lacking }: ReceiverChannels): readonly Budget[] {
-  const outside = lackingOutside(project, roles, receiver);
+  const outside = lackingOutside(project, receiver);
   return (['peak', 'rms'] as const).flatMap((measure) => {
     const tolerates = measure === 'peak' ? receiver.toleratesPeak : receiver.toleratesRms;
     if (tolerates === null) return [];

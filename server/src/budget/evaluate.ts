@@ -10,6 +10,7 @@ import { loopInductances } from './loops/loopInductances';
 import { loopLimits } from './loops/loopLimits';
 import { loopResult } from './loops/loopResult';
 import { receiversOf } from './receivers';
+import { returnResult } from './returns/returnResult';
 import { rolesOf, type Role, type Roles } from './roles';
 import type { AssumedEnd, Evaluation } from './results';
 import { runKeys } from './runs/runKey';
@@ -35,6 +36,7 @@ export function evaluate(project: Project, cache: SolveCache): Evaluation {
     runs: outcomes.map(({ result }) => result),
     heard: channels.heard,
     budgets,
+    returns: project.returns.map((shared) => returnResult(project, shared, cache)),
     loops: project.loops.map((loop) => loopResult(project, loop, inductances)),
     limits: [...outcomes.flatMap(({ limits }) => limits), ...project.loops.flatMap((loop) => loopLimits(loop, roles, inductances))],
     assumedEnds: assumedEnds(outcomes),

@@ -11,13 +11,15 @@ import { loopPaths } from './loops/loopPaths';
 import { hearLumped } from './lumped/hearLumped';
 import type { LumpedPath } from './lumped/lumpedPath';
 import type { Receiver } from './receivers';
+import { returnPaths } from './returns/returnPaths';
+import { runReturnPaths } from './returns/runReturnPaths';
 import type { Roles } from './roles';
 import type { SolveCache } from './solveCache';
 import { timelessOf } from './sources';
 
 export function heardOverCircuits(project: Project, roles: Roles, receivers: readonly Receiver[], { cache, inductances }: { readonly cache: SolveCache; readonly inductances: LoopInductances }): Channels {
   const loops = loopPaths(project, roles, receivers, inductances);
-  const paths = [...linkPaths(project, roles), ...loops.paths];
+  const paths = [...linkPaths(project, roles), ...loops.paths, ...returnPaths(project, roles, receivers, cache), ...runReturnPaths(project, roles, cache)];
   const heard: Heard[] = [];
   const lacking: Channels['lacking'][number][] = [...loops.lacking];
   for (const path of paths) {

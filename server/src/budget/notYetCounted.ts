@@ -8,15 +8,13 @@
 import type { Loop, Net, Pair, Place, Project } from '../board/model';
 import type { Receiver } from './receivers';
 import type { Unaccounted } from './results';
-import type { Roles } from './roles';
 
-export function lackingOutside(project: Project, roles: Roles, receiver: Receiver): readonly Unaccounted[] {
+export function lackingOutside(project: Project, receiver: Receiver): readonly Unaccounted[] {
   const heard = heardBy(receiver);
   const ambients = ambientsOnto(project, heard);
   const sensing = project.loops.some((loop) => senses(loop, heard));
   return [
     ...ambients,
-    ...returnsInto(project, roles, heard),
     ...(0 < ambients.length || sensing ? shieldsOver(project, heard) : []),
     ...unread(project, heard),
   ];
@@ -42,13 +40,6 @@ function ambientsOnto(project: Project, heard: HeardBy): readonly Unaccounted[] 
   const inRun = project.runs.some((run) => run.rows.some((row) => row.conductors.some((conductor) => conductor.kind === 'trace' && heard.has(conductor.net))));
   if (!inRun && !project.loops.some((loop) => senses(loop, heard))) return [];
   return project.ambients.map((ambient) => absent(`ambient ${ambient.name}`, ambient.place));
-}
-
-function returnsInto(project: Project, roles: Roles, heard: HeardBy): readonly Unaccounted[] {
-  const refers = project.returns.filter((part) => part.refers.some(({ signal }) => heard.has(signal)));
-  return refers
-    .filter((part) => part.carries.some((carried) => !heard.has(carried.net) && roles.get(carried.net)?.drives === true))
-    .map((part) => absent(`return ${part.name}`, part.place));
 }
 
 /** A shield acts on what loops and fields bring: without those there is nothing that it would change. */

@@ -4,7 +4,8 @@
  */
 import type { Project } from '../board/model';
 import { gaussianCrest, thermalNoise } from '../physics/noise/thermalNoise';
-import { farads, kelvins, ohms, volts } from '../units/quantity';
+import { farads, ohms, volts } from '../units/quantity';
+import { boardTemperature } from './boardTemperature';
 import type { Counted } from './contributions';
 import { loadEnd, sourceEnd } from './ends';
 import { absent } from './notYetCounted';
@@ -12,8 +13,8 @@ import { bandOf, type Receiver } from './receivers';
 import type { Contribution, Unaccounted } from './results';
 import type { Roles } from './roles';
 
-/** 25 °C, the language's default. */
-const defaultTemperature = kelvins(298.15);
+
+
 
 export function ownNoise(project: Project, roles: Roles, receiver: Receiver, measure: 'peak' | 'rms'): Counted {
   const { subject, kind } = receiver;
@@ -37,7 +38,7 @@ function thermalContribution(project: Project, roles: Roles, receiver: Receiver,
   const rms = thermalNoise({
     resistance: ohms(1 / conductance),
     capacitance: farads(source.capacitance + load.capacitance),
-    temperature: project.board.temperature?.value ?? defaultTemperature,
+    temperature: boardTemperature(project),
     band,
   });
   if (rms === null || !(0 < rms && rms < Infinity)) return null;

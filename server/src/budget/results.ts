@@ -2,7 +2,7 @@
  * What the physics says of a project: every number the editor or the command line shows comes from
  * here. Values are SI and nominal; `errorBar` is numerical and relative unless said otherwise.
  */
-import type { Loop, Net, Pair, Place, Project, Run, RunConductor } from '../board/model';
+import type { Loop, Net, Pair, Place, Project, Run, RunConductor, SharedReturn } from '../board/model';
 import type { Area, Decibels, DelayPerLength, Frequency, Inductance, Length, Resistance, Time, Voltage } from '../units/quantity';
 import type { SectionMatrices, SectionRefusal } from '../physics/section/section';
 import type { Heard } from './heard';
@@ -13,6 +13,7 @@ export interface Evaluation {
   readonly runs: readonly RunResult[];
   /** In the order of the text. */
   readonly loops: readonly LoopResult[];
+  readonly returns: readonly ReturnResult[];
   /** What every source puts on every receiver, by every way. */
   readonly heard: readonly Heard[];
   /** In the order of the text. */
@@ -64,6 +65,16 @@ export interface MutualResult {
   readonly other: Loop;
   readonly inductance: Inductance;
   readonly errorBar: Inductance;
+}
+
+export interface ReturnResult {
+  readonly shared: SharedReturn;
+  /** At dc. */
+  readonly resistance: Resistance;
+  readonly inductance: Inductance;
+  /** Relative. */
+  readonly errorBar: number;
+  readonly assumptions: readonly string[];
 }
 
 export interface LooseGuard {

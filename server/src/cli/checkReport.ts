@@ -42,7 +42,7 @@ function fileReport({ path, analysis, text }: CheckedFile): FileReport {
     findings: findings.map((finding) => findingReport(finding, placed)),
     runs: evaluation.runs.map((result) => runReport(result, named)),
     loops: evaluation.loops.map((result) => loopReport(result, evaluation.heard, named)),
-    returns: project.returns.map((each) => ({ ...named(each), resistance: null, inductance: null, drops: [] })),
+    returns: evaluation.returns.map(({ shared, resistance, inductance }) => ({ ...named(shared), resistance: finite(resistance), inductance: finite(inductance), drops: dropsOver(evaluation.heard, shared.name) })),
     links: project.links.map((link) => ({ ...named(link), induced: inducedBy(evaluation.heard, link.name) })),
     shields: project.shields.map((shield) => ({ ...named(shield), frequency: null, effectivenessDb: null })),
     budgets: evaluation.budgets.map((budget) => budgetReport(budget, placed)),
@@ -97,6 +97,17 @@ function loopReport({ loop, area, perimeter, inductance, mutual }: LoopResult, h
   const induced = (other: string) => Math.max(...heard.filter(({ channel, origins, receiver: { subject, terms } }) => channel === 'loop' && origins.includes(loop.name) && sensedBy(other, subject.name, terms)).map(largestPeak), -Infinity);
   const sensedBy = (name: string, subject: string, terms: Heard['receiver']['terms']) => mutual.some(({ other: { name: its, senses } }) => its === name && senses.some(({ signal }) => signal.name === subject || terms.some(({ net }) => net === signal)));
   return { ...named(loop), area: finite(area), perimeter: finite(perimeter), inductance: finite(inductance), emission: [], mutual: mutual.map(({ other, ...each }) => ({ with: other.name, inductance: each.inductance, induced: finite(induced(other.name)) })) };
+}
+
+/** Of each net, the largest of what it puts on those that refer to the return. */
+function dropsOver(heard: readonly Heard[], name: string): FileReport['returns'][number]['drops'] {
+  const peaks = new Map<string, number>();
+  for (const each of heard) {
+    if (each.channel !== 'shared return' || !each.origins.includes(name)) continue;
+    const { name: net } = each.source.signal;
+    peaks.set(net, Math.max(peaks.get(net) ?? 0, largestPeak(each)));
+  }
+  return [...peaks].map(([net, peak]) => ({ net, peak }));
 }
 
 function inducedBy(heard: readonly Heard[], link: string): FileReport['links'][number]['induced'] {

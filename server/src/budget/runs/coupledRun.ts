@@ -2,7 +2,6 @@
 import type { Place, Run } from '../../board/model';
 import { seconds, volts } from '../../units/quantity';
 import type { Heard } from '../heard';
-import { absent } from '../notYetCounted';
 import type { Receiver } from '../receivers';
 import type { FoundSpectrum } from '../repeatedSpectrum';
 import type { Coupling, Unaccounted } from '../results';
@@ -96,10 +95,8 @@ class Meeting {
   }
 
   lacking(edge: Found | null): readonly Unaccounted[] {
-    const { context: { run, part }, source: { source: { signal } } } = this;
+    const { context: { run }, source: { source: { signal } } } = this;
     const missing: Unaccounted[] = timelessOf(signal).map(({ what, why }) => ({ what: `the ${what} of ${signal.name} in run ${run.name} is not counted: ${why}`, place: this.sourcePlace() }));
-    // Its inductance is in the run's matrices; what its resistance drops is a shared return's.
-    if (!part.section.planeAbove && !part.section.planeBelow) missing.push(absent(`the resistance of the return in run ${run.name}`, run.place));
     if (edge !== null && !isFiniteNoise(edge)) missing.push({ what: `what ${signal.name} puts on it in run ${run.name} is beyond what can be computed`, place: this.sourcePlace() });
     return missing;
   }
