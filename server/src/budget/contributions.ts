@@ -1,6 +1,6 @@
 /** What was heard, as contributions to a peak or an rms budget, and what of it has no rms. */
 import { volts } from '../units/quantity';
-import { rmsOf, type Heard, type HeardSine } from './heard';
+import { rmsOf, type Heard, type HeardPart, type HeardSine } from './heard';
 import type { Contribution, Unaccounted } from './results';
 import { edgesOf } from './sources';
 
@@ -17,15 +17,19 @@ export function contributionsOf(heard: readonly Heard[], measure: 'peak' | 'rms'
 }
 
 function peaksOf(heard: Heard): readonly Contribution[] {
-  const { edge, sines } = heard;
-  const byEdge = edge === null ? [] : [contribution(heard, { ...pick(edge), value: edge.value, unfiltered: edge.unfiltered, cause: edgeCause(heard), group: heard.source.signal.switchesWith, spectrum: null })];
-  return [...byEdge, ...sines.map((sine) => contribution(heard, { ...pick(sine), value: sine.value, unfiltered: sine.unfiltered, cause: sineCause(heard), group: null, spectrum: null }))];
+  const { edge, sines, source: { signal } } = heard;
+  const found: Contribution[] = [];
+  if (edge !== null) found.push(contribution(heard, edge, { value: edge.value, unfiltered: edge.unfiltered, errorBar: edge.errorBar, cause: edgeCause(heard), group: signal.switchesWith, spectrum: null }));
+  for (const sine of sines) found.push(contribution(heard, sine, { value: sine.value, unfiltered: sine.unfiltered, errorBar: sine.errorBar, cause: sineCause(heard), group: null, spectrum: null }));
+  return found;
 }
 
 function rmsPartsOf(heard: Heard): readonly Contribution[] {
-  const { spectrum, sines } = heard;
-  const repeated = spectrum === null ? [] : [contribution(heard, { ...pick(spectrum), value: volts(rmsOf(spectrum.spectrum)), unfiltered: null, cause: edgeCause(heard), group: heard.source.signal.switchesWith, spectrum: spectrum.spectrum })];
-  return [...repeated, ...sines.map((sine) => contribution(heard, { ...pick(sine), value: sine.rms, errorBar: volts(sine.errorBar / Math.SQRT2), unfiltered: outOfBand(sine), cause: sineCause(heard), group: null, spectrum: null }))];
+  const { spectrum, sines, source: { signal } } = heard;
+  const found: Contribution[] = [];
+  if (spectrum !== null) found.push(contribution(heard, spectrum, { value: volts(rmsOf(spectrum.spectrum)), unfiltered: null, errorBar: spectrum.errorBar, cause: edgeCause(heard), group: signal.switchesWith, spectrum: spectrum.spectrum }));
+  for (const sine of sines) found.push(contribution(heard, sine, { value: sine.rms, unfiltered: outOfBand(sine), errorBar: volts(sine.errorBar / Math.SQRT2), cause: sineCause(heard), group: null, spectrum: null }));
+  return found;
 }
 
 /** What the sharp band keeps out is listed with what it would be. */
@@ -34,17 +38,14 @@ function outOfBand({ rms, value, unfiltered }: HeardSine) {
   return rms < whole ? volts(whole) : null;
 }
 
-type Part = Pick<Contribution, 'value' | 'unfiltered' | 'errorBar' | 'method' | 'assumptions' | 'coupling' | 'cause' | 'group' | 'spectrum'>;
+type Counts = Pick<Contribution, 'value' | 'unfiltered' | 'errorBar' | 'cause' | 'group' | 'spectrum'>;
 
-/** Words are made when they are asked for. */
-function pick(part: Pick<Part, 'errorBar' | 'method' | 'assumptions' | 'coupling'>) {
-  return { errorBar: part.errorBar, method: part.method, coupling: part.coupling, get assumptions() { return part.assumptions; } };
-}
-
-function contribution({ channel, source, origins, place }: Heard, part: Part): Contribution {
+function contribution({ channel, source, origins, place }: Heard, part: HeardPart, { value, unfiltered, errorBar, cause, group, spectrum }: Counts): Contribution {
   return {
-    channel, from: source.signal.name, cause: part.cause, where: origins.join(', '), place, group: part.group, value: part.value, unfiltered: part.unfiltered,
-    errorBar: part.errorBar, bounds: null, method: part.method, get assumptions() { return part.assumptions; }, coupling: part.coupling, spectrum: part.spectrum,
+    channel, from: source.signal.name, cause, where: origins.length === 1 ? origins[0]! : origins.join(', '), place, group, value, unfiltered, errorBar, bounds: null, method: part.method,
+    // Words are made when they are asked for: a spread would make them all.
+    get assumptions() { return part.assumptions; },
+    coupling: part.coupling, spectrum,
   };
 }
 

@@ -22,7 +22,7 @@ export interface Heard {
   readonly spectrum: HeardSpectrum | null;
 }
 
-interface HeardPart {
+export interface HeardPart {
   readonly errorBar: Voltage;
   readonly method: string;
   readonly assumptions: readonly string[];
