@@ -73,7 +73,8 @@ export function actions(page, screenshots) {
       }, [`${editor} .squiggly-${severity}`, wanted], { timeout: 20_000 });
     },
 
-    async hover() {
+    /** What is hovered at the caret; with a pattern, once that is there: findings come first, and the rest later. */
+    async hover(pattern = null) {
       const row = page.locator('.monaco-hover .hover-row').filter({ visible: true }).first();
       await page.waitForFunction(() => ![...document.querySelectorAll('.monaco-hover')].some((found) => found.offsetParent !== null && 0 < found.offsetHeight), null, { timeout: 5000 });
       for (let attempt = 1; ; attempt += 1) {
@@ -87,6 +88,9 @@ export function actions(page, screenshots) {
         }
       }
       await page.waitForFunction(() => ![...document.querySelectorAll('.monaco-hover')].some((found) => /Loading\.\.\./.test(found.textContent)), null, { timeout: 10_000 });
+      if (pattern !== null) {
+        await page.waitForFunction((source) => new RegExp(source).test([...document.querySelectorAll('.monaco-hover')].map((found) => found.textContent).join(' ').replace(/\s+/g, ' ')), pattern.source, { timeout: 20_000 });
+      }
       const text = (await page.locator('.monaco-hover').filter({ visible: true }).allTextContents()).join('\n');
       return text.replace(/\s+/g, ' ');
     },
