@@ -130,8 +130,8 @@ class Meeting {
       frequency: null,
       peakTime: noise.peakTime,
       widthHalf: noise.widthHalf,
-      capacitivePart: of(noise.capacitivePart),
-      inductivePart: of(noise.inductivePart),
+      get capacitivePart() { return of(noise.split().capacitive); },
+      get inductivePart() { return of(noise.split().inductive); },
       errorBar: volts(Math.abs(scale) * passed * (noise.errorBar + carried)),
       bounds: null,
       // Pictures and words are made when they are asked for: a board has hundreds of couplings, and shows one.

@@ -11,7 +11,8 @@ import { lumpedRun } from '../../physics/lines/lumpedRun';
 import type { CoupledLines, LineResponse, Ramp, Waveform } from '../../physics/lines/lines';
 import { peakOf } from '../../physics/lines/peak';
 import { thinnedWaveform } from '../../physics/lines/waveform';
-import { couplingShares } from '../../physics/lines/shares';
+import { couplingShares, type Shares } from '../../physics/lines/shares';
+import { shortLineSplit } from '../../physics/lines/shortLineSplit';
 import { observationWindow, oneWayDelay, stillGrowing } from '../../physics/lines/window';
 import { combinedWaveform, type CombinedTerm } from '../../physics/lines/combine';
 import { currentAsVoltage } from '../../physics/lines/currentAsVoltage';
@@ -67,10 +68,9 @@ export interface ReceivedNoise {
   readonly counted: Voltage | null;
   readonly peakTime: Time;
   readonly widthHalf: Time;
-  /** Of the peak at the receiver, by the short-line split. */
-  readonly capacitivePart: Voltage;
-  readonly inductivePart: Voltage;
-  /** Where several lines add up, their parts may cancel, and their errors do not: sums of magnitudes. */
+  /** Of the peak at the receiver, by the short-line split; solved when it is first asked for. */
+  readonly split: () => Shares;
+  /** About how much came by either field, whatever cancels: what errors are carried by. */
   readonly gross: { readonly capacitive: Voltage; readonly inductive: Voltage };
   /** Of the peak at the receiver, by the line's solution alone. */
   readonly errorBar: Voltage;
@@ -186,14 +186,12 @@ function receivedWith({ arrangement, moving }: LineRequest, { terms, band, after
   const peak = peakOf(waveform);
   const window = Math.max(...all.map(({ answer: { response } }) => response.window));
   const followed = window < peak.time;
-  const parts = weighted.flatMap(({ index, weight }) => all.map(({ answer: { lines, ramp }, sign }) => {
+  const parts = weighted.flatMap(({ index, weight }) => all.map(({ answer: { lines, ramp } }) => {
     const shares = couplingShares(lines, ramp, index);
     const { capacitive, inductive } = sideOf(arrangement, index, 'load') === ramp.end ? shares.near : shares.far;
-    return { capacitive: weight * sign * capacitive, inductive: weight * sign * inductive };
+    return { capacitive: Math.abs(weight * capacitive), inductive: Math.abs(weight * inductive) };
   }));
   const sumOf = (values: readonly number[]) => volts(values.reduce((sum, value) => sum + value, 0));
-  const grossOf = (values: readonly number[]) => sumOf(values.map(Math.abs));
-  const [capacitive, inductive] = [parts.map((each) => each.capacitive), parts.map((each) => each.inductive)];
   const errorBar = weighted.reduce((sum, { index, weight }) => sum + all.reduce((inner, { answer: { response, later } }) => inner + Math.abs(weight) * Math.max(response.errorBar[index], followed ? later.errorBar[index] : 0), 0), 0);
   return {
     nearEnd: peakOf(sumAt(() => nearSide, 'whole')).value,
@@ -202,14 +200,37 @@ function receivedWith({ arrangement, moving }: LineRequest, { terms, band, after
     counted: countedPeak(waveform, { band, after }),
     peakTime: peak.time,
     widthHalf: peak.width,
-    capacitivePart: sumOf(capacitive),
-    inductivePart: sumOf(inductive),
-    gross: { capacitive: grossOf(capacitive), inductive: grossOf(inductive) },
+    split: onceAsked(() => splitOf({ arrangement, weighted, all }, seconds(1.05 * Math.max(peak.time, answers.duration)))),
+    gross: { capacitive: sumOf(parts.map((each) => each.capacitive)), inductive: sumOf(parts.map((each) => each.inductive)) },
     errorBar: volts(errorBar),
     growing: !followed && stillGrowing(sumAt(loadOf, 'response'), seconds(window), answers.duration),
     followed,
     waveform: thinnedWaveform(waveform, volts(Math.abs(peak.value) * drawnWithin)),
   };
+}
+
+interface Summed {
+  readonly arrangement: Arrangement;
+  readonly weighted: Reading['terms'];
+  readonly all: readonly { readonly answer: Answer; readonly sign: number }[];
+}
+
+function splitOf({ arrangement, weighted, all }: Summed, until: Time): Shares {
+  let [capacitive, inductive] = [0, 0];
+  for (const { index, weight } of weighted) {
+    for (const { answer: { lines, ramp }, sign } of all) {
+      const { near, far } = shortLineSplit(lines, ramp, index, until);
+      const shares = sideOf(arrangement, index, 'load') === ramp.end ? near : far;
+      capacitive += weight * sign * shares.capacitive;
+      inductive += weight * sign * shares.inductive;
+    }
+  }
+  return { capacitive: volts(capacitive), inductive: volts(inductive) };
+}
+
+function onceAsked<Value extends object>(make: () => Value): () => Value {
+  let made: Value | null = null;
+  return () => (made ??= make());
 }
 
 /** One line, moved by one other, is nothing to add up. */

@@ -24,7 +24,7 @@ export function couplingTable(couplings: readonly Coupling[]): string {
 }
 
 /** An engineer who adds the two parts and gets another number must not think that the number is wrong. */
-const partsNote = 'The capacitive and the inductive part are each that of a short line by itself. Where the current turns later than the voltage they peak at different times, and do not add up to the whole.';
+const partsNote = 'The capacitive and the inductive part are those of a short line at its peak. On a longer one they come at different times, and do not add up to the whole.';
 
 function partsAddUp({ capacitivePart, inductivePart, atReceiver }: Coupling): boolean {
   return Math.abs(capacitivePart + inductivePart - atReceiver) <= 0.1 * Math.abs(atReceiver);
