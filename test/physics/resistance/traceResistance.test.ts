@@ -5,6 +5,7 @@ import { copperAt, skinDepth } from '../../../server/src/physics/resistance/copp
 import { traceResistance, type TraceConductor } from '../../../server/src/physics/resistance/traceResistance';
 import { hertz, kelvins, metres } from '../../../server/src/units/quantity';
 import { near } from '../../support/near';
+import { seeded } from '../../support/seeded';
 import reference from '../../reference/fields-and-noise.json';
 
 const caseOf = (id: string) => reference.cases.find((each) => each.id === id) as unknown as { inputs_SI: Readonly<Record<string, number>>; outputs: Readonly<Record<string, number>> };
@@ -43,6 +44,16 @@ describe('the resistance of a trace', () => {
   it('agrees with cells twice as fine, from 100 kHz to 1 GHz, alone and over a plane', () => {
     for (const frequency of [1e5, 1e6, 1e7, 1e8, 1e9]) {
       for (const overPlane of [null, metres(0.1e-3), metres(1e-3)]) near(at(frequency, { overPlane }), at(frequency, { overPlane }, 2), 0.01, `${frequency} Hz`);
+    }
+  });
+
+  it('does not jump with the last digit of a frequency, over a plane', () => {
+    const next = seeded(5);
+    const between = (low: number, high: number) => low * (high / low) ** next();
+    for (let n = 0; n < 120; n += 1) {
+      const more = { width: metres(between(0.1e-3, 2e-3)), thickness: metres(between(12e-6, 70e-6)), overPlane: metres(between(50e-6, 1e-3)) };
+      const frequency = between(1e5, 3e7);
+      near(at(1.0001 * frequency, more), at(frequency, more), 2e-3, `${JSON.stringify(more)} ${frequency} Hz`);
     }
   });
 

@@ -21,7 +21,8 @@ export function gradedEdges(half: number, finest: number, growth: number): reado
   }
   // Stretched to fit: every cell by the same factor.
   let edge = 0;
-  return [0, ...sizes.map((size) => (edge += (size * half) / sum))];
+  // The last exactly: a cell as thin as a rounding error would cancel every digit of its mean logarithm.
+  return [0, ...sizes.slice(0, -1).map((size) => (edge += (size * half) / sum)), half];
 }
 
 /** Mean of ln r over two rectangles, whose centres are `x` and `y` apart; any may touch or be the same. */
