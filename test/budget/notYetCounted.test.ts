@@ -26,16 +26,6 @@ describe('what a budget says is not yet counted', () => {
     assert.deepEqual(lacks(field), []);
   });
 
-  it('names its own noise', () => {
-    const own = `${microstrip}net V { source 1 kohm; tolerates 1 V peak; noise 5 nV/rtHz; contact -20 dB at 5 V; samples 2 us after G; band 1 Hz to 1 kHz }\nnet C { swing 1 V; rise 1 us; switches with G }`;
-    assert.deepEqual(budgetOf(evaluated(own), 'V').unaccounted.map(({ what }) => what), ['the noise of its input is not yet counted', 'the contact noise of its resistors is not yet counted']);
-  });
-
-  it('says of a pair that its thermal noise is not', () => {
-    const text = `${microstrip}net P { source 50 ohm }\nnet N { source 50 ohm }\npair D { plus P; minus N; tolerates 1 V peak }`;
-    assert.deepEqual(budgetOf(evaluated(text), 'D').unaccounted.map(({ what }) => what), ['the thermal noise of pair D is not yet counted']);
-  });
-
   it('says why a run has no numbers', () => {
     const bare = 'stackup { core 1 mm er 4.4; copper TOP 35 um }\n';
     const text = `${bare}${receiver}net A { swing 3 V; rise 1 ns; source 50 ohm; load 50 ohm }\n${beside('A')}`;

@@ -41,6 +41,8 @@ export const henries = (value: number) => value as Inductance;
 export const kelvins = (value: number) => value as Temperature;
 export const radians = (value: number) => value as Angle;
 export const voltsPerMetre = (value: number) => value as FieldStrength;
+export const voltageNoiseDensity = (value: number) => value as VoltageNoiseDensity;
+export const currentNoiseDensity = (value: number) => value as CurrentNoiseDensity;
 export const decibels = (value: number) => value as Decibels;
 export const ratio = (value: number) => value as Ratio;
 export const faradsPerMetre = (value: number) => value as CapacitancePerLength;

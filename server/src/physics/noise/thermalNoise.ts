@@ -34,6 +34,3 @@ export function thermalNoise({ resistance, capacitance, temperature, band }: War
   const roll = difference === 0 ? 1 / (1 + x1 * x2) : Math.atan2(difference, 1 + x1 * x2) / difference;
   return volts(Math.sqrt(4 * kT * resistance * (band.to - band.from) * roll));
 }
-
-/** Peak of Gaussian noise in terms of its rms value: exceeded 0.1 % of the time, both signs together. */
-export const gaussianCrest = 3.29;

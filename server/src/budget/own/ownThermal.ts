@@ -1,0 +1,18 @@
+/**
+ * Thermal noise of what stands at a receiver's ends. The load's resistance counts as a real, warm resistor, which is on the safe side for an
+ * active input. Without `band` only a capacitance limits it, and where there is none it counts for nothing.
+ */
+import { networkThermalNoise, type Warmth } from '../../physics/noise/networkThermalNoise';
+import type { OwnCircuits } from './ownCircuits';
+import { largestNoise, type OwnNoise } from './ownContribution';
+
+export function ownThermal({ readings, assumptions }: OwnCircuits, warmth: Warmth): readonly OwnNoise[] {
+  const noise = largestNoise(readings.flatMap((reading) => networkThermalNoise(reading, warmth) ?? []));
+  if (noise === null || !(0 < noise.rms && noise.rms < Infinity)) return [];
+  return [{
+    channel: 'thermal',
+    noise,
+    method: warmth.band === null ? 'thermal noise, kT/C' : 'thermal noise of source and load over the band',
+    assumptions,
+  }];
+}
