@@ -42,9 +42,12 @@ function contributionLines({ contributions, total, unaccounted, errorBar }: Budg
   const lines = shown.map((each) => line(inText(each.value, 'voltage'), sourceOf(each)));
   if (rest.length === 1) lines.push(line(inText(rest[0].value, 'voltage'), sourceOf(rest[0])));
   if (1 < rest.length) lines.push(line(`≤ ${inText(Math.max(...rest.map(({ value }) => value)), 'voltage')}`, `each of ${rest.length} more`));
-  if (total !== null && errorBar !== null && 0 < errorBar) lines.push(line(`± ${inText(errorBar, 'voltage')}`, 'numerical error'));
+  if (total !== null && errorBar !== null && shownError * total < errorBar) lines.push(line(`± ${inText(errorBar, 'voltage')}`, 'numerical error'));
   return [...lines, ...unaccounted.map(({ what }) => line('?', what))];
 }
+
+/** Relative. Less is rounding, which nobody wants to read. */
+const shownError = 1e-9;
 
 const line = (amount: string, what: string) => `${amount.padStart(10)}  ${printable(what)}`;
 

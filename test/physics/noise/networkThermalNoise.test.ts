@@ -110,6 +110,24 @@ describe('thermal noise of a network', () => {
     assert.equal(noise([1, -1], band(0, 1e9), [...pair, shunt(1, 2, 0)])!.rms, 0);
   });
 
+  it('of three nodes that hang together is the integral of the circuit’s own answer, too, and k T over all frequencies', () => {
+    const shunts = [...pair, shunt(2, 3, 700), shunt(3, 0, Infinity, 2e-12)];
+    const transfer = circuitTransfer({ nodes: 3, shunts, branches: [], mutuals: [] });
+    const weights = [1, -1, 0.3];
+    const sum = densityOverBand(band(1e4, 1e10), (f) => weights.reduce((all, weight, at) => {
+      const answer = transfer({ kind: 'current', node: at + 1 }, f)!;
+      return all + 4 * boltzmann * room * weight * weights.reduce((inner, other, node) => inner + other * answer[node]!.re, 0);
+    }, 0));
+    const found = (limits: ReturnType<typeof band> | null) => networkThermalNoise({ nodes: 3, shunts, weights }, { temperature: room, band: limits })!.rms;
+    near(found(band(1e4, 1e10)), Math.sqrt(sum.value), 1e-8);
+    near(found(null), found(band(0, 1e18)), 1e-5);
+  });
+
+  it('keeps its digits behind a strong connection: a difference across 1 mΩ between nets of 1 GΩ', () => {
+    const strong = [shunt(1, 0, 1e9, 1e-12), shunt(2, 0, 2e9, 3e-12), shunt(1, 2, 1e-3)];
+    near(noise([1, -1], band(1e3, 2e3), strong)!.rms, Math.sqrt(4 * boltzmann * room * 1e-3 * 1e3), 1e-9);
+  });
+
   it('is what the answer of the circuit gives, and of one with a coil the same integral', () => {
     const circuit = { nodes: 2, shunts: pair, branches: [], mutuals: [] };
     const transfer = circuitTransfer(circuit);

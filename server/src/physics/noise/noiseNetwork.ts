@@ -22,8 +22,10 @@ export interface NetworkReading {
   readonly weights: readonly number[];
 }
 
-/** Transfer impedances, ohm: from a current into node 1, 2, … to the reading. Null where nothing holds a node. */
-export function readingResponse({ nodes, shunts, weights }: NetworkReading): (frequency: Frequency) => ComplexNumbers | null {
+/** Transfer impedances, ohm, from a current into node 1, 2, … to the reading; they hold until the next call. Null where nothing holds a node. */
+export function readingResponse(reading: NetworkReading): (frequency: Frequency) => ComplexNumbers | null {
+  const { nodes, shunts, weights } = reading;
+  if (nodes === 2) return twoNodeResponse(reading);
   const conductance = nodalMatrix(nodes, shunts, ({ resistance }) => 1 / resistance);
   const capacitance = nodalMatrix(nodes, shunts, (shunt) => shunt.capacitance);
   return (frequency) => {
@@ -33,6 +35,34 @@ export function readingResponse({ nodes, shunts, weights }: NetworkReading): (fr
     if (exchanged === null) return null;
     const answer = { real: Float64Array.from(weights), imaginary: new Float64Array(nodes) };
     complexLuSolve(matrix, exchanged, answer);
+    return answer;
+  };
+}
+
+/**
+ * The case of a pair, ten times as fast: u1 = (w1 y2 + (w1 + w2) yx) / D, u2 = (w2 y1 + (w1 + w2) yx) / D, D = y1 y2 + yx (y1 + y2), y1 and y2 to
+ * ground and yx between. Written in these, a strong yx takes no digits from a difference.
+ */
+function twoNodeResponse({ shunts, weights }: NetworkReading): (frequency: Frequency) => ComplexNumbers | null {
+  const between = (a: number, b: number) => shunts.filter(({ node, to }) => Math.min(node, to) === a && Math.max(node, to) === b)
+    .reduce((sum, { resistance, capacitance }) => ({ g: sum.g + 1 / resistance, c: sum.c + capacitance }), { g: 0, c: 0 });
+  const [one, two, across] = [between(0, 1), between(0, 2), between(1, 2)];
+  const [w1, w2] = [weights[0]!, weights[1]!];
+  const both = w1 + w2;
+  const answer = { real: new Float64Array(2), imaginary: new Float64Array(2) };
+  return (frequency) => {
+    const w = 2 * Math.PI * frequency;
+    const [b1, b2, bx] = [w * one.c, w * two.c, w * across.c];
+    const dr = one.g * two.g - b1 * b2 + across.g * (one.g + two.g) - bx * (b1 + b2);
+    const di = one.g * b2 + b1 * two.g + across.g * (b1 + b2) + bx * (one.g + two.g);
+    const square = dr * dr + di * di;
+    if (!(0 < square && square < Infinity)) return null;
+    const [r1, i1] = [w1 * two.g + both * across.g, w1 * b2 + both * bx];
+    const [r2, i2] = [w2 * one.g + both * across.g, w2 * b1 + both * bx];
+    answer.real[0] = (r1 * dr + i1 * di) / square;
+    answer.imaginary[0] = (i1 * dr - r1 * di) / square;
+    answer.real[1] = (r2 * dr + i2 * di) / square;
+    answer.imaginary[1] = (i2 * dr - r2 * di) / square;
     return answer;
   };
 }

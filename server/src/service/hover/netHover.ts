@@ -67,9 +67,12 @@ function verdictInWords({ board }: Project, { verdict, marginDb, total, tolerate
   }
 }
 
-function errorInText({ errorBar }: Budget): string {
-  return errorBar === null || errorBar === 0 ? '' : ` ± ${inText(errorBar, 'voltage')}`;
+function errorInText({ errorBar, total }: Budget): string {
+  return errorBar === null || errorBar <= shownError * (total ?? 0) ? '' : ` ± ${inText(errorBar, 'voltage')}`;
 }
+
+/** Relative. Less is rounding, which nobody wants to read. */
+const shownError = 1e-9;
 
 const rowsShown = 12;
 
