@@ -96,10 +96,10 @@ const remedies: Readonly<Record<Channel, string>> = {
   loop: 'Make the loops smaller, or part them',
   'shared return': 'Give it a return of its own',
   radiated: 'Make its loop smaller, or shield it',
-  thermal: 'Lower its source resistance, or narrow its band',
-  amplifier: 'Take a quieter input stage, or narrow its band',
+  thermal: 'Lower its source resistance, narrow its band, or give it more capacitance',
+  amplifier: 'Take a quieter input stage, lower its source resistance, or narrow its band',
   flicker: 'Take a quieter input stage, or begin its band higher',
-  contact: 'Take quieter resistors, or less dc voltage across them',
+  contact: 'Take quieter resistors, put less dc voltage across them, or begin its band higher',
 };
 
 /** What is tolerated, and both sides of the largest couplings. */

@@ -46,11 +46,29 @@ describe('noise of an input at a single node', () => {
     assert.equal(inputNoise(node(0, c), [input(1, 0, 1e-12, 0)], band(0, to)).white.rms, 0);
   });
 
-  it('of a 2 kΩ source at an input of 5 nV/√Hz and 2 pA/√Hz is 8.6 nV/√Hz in all (textbook sum of three, from memory: 5, 4 and 5.75 nV)', () => {
+  it('of a 2 kΩ source at an input of 5 nV/√Hz and 2 pA/√Hz is 8.6 nV/√Hz in all (by hand: the root of the squares of 5, 4 and 5.755)', () => {
     const source = node(2e3);
     const thermal = networkThermalNoise(source, { temperature: kelvins(300), band: band(1000, 1001) })!.rms;
     near(thermal, 5.755e-9, 1e-3);
     near(Math.hypot(thermal, inputNoise(source, [input(1, 5e-9, 2e-12, 0)], band(1000, 1001)).white.rms), 8.61e-9, 1e-3);
+  });
+});
+
+describe('published relations', () => {
+  it('white and 1/f in one: en sqrt((f2 - f1) + fc ln(f2/f1)) (Motchenbacher & Connelly, Low-Noise Electronic System Design, 1993; from memory)', () => {
+    const { white, flicker } = inputNoise(node(1), [input(1, 3.2e-9, 0, 2.7)], band(0.1, 10));
+    near(Math.hypot(white.rms, flicker.rms), 3.2e-9 * Math.sqrt(9.9 + 2.7 * Math.log(100)), 1e-13);
+  });
+
+  it('an input is least noisy behind en/in, where both add alike (the same; optimum source resistance)', () => {
+    const factor = (resistance: number) => {
+      const warm = networkThermalNoise(node(resistance), { temperature: kelvins(290), band: band(1e3, 2e3) })!.rms;
+      return (inputNoise(node(resistance), [input(1, 4e-9, 1e-12, 0)], band(1e3, 2e3)).white.rms / warm) ** 2;
+    };
+    const best = 4e-9 / 1e-12;
+    // F - 1 there is en in / (2 k T).
+    near(factor(best), (4e-9 * 1e-12) / (2 * 1.380649e-23 * 290), 1e-12);
+    for (const other of [0.5, 0.99, 1.01, 2]) assert.ok(factor(best) < factor(other * best));
   });
 });
 

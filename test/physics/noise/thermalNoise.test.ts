@@ -12,6 +12,11 @@ describe('thermal noise of a node', () => {
     assert.ok(Math.abs(value! / 4.07e-9 - 1) < 1e-3);
   });
 
+  it('is 1.3 µV rms for 10 kΩ in 10 kHz at room temperature (Horowitz & Hill, The Art of Electronics, from memory)', () => {
+    const value = thermalNoise({ resistance: ohms(1e4), capacitance: farads(0), temperature: kelvins(293), band: band(0, 1e4) });
+    assert.ok(Math.abs(value! / 1.3e-6 - 1) < 0.03);
+  });
+
   it('is 64 µV rms for 1 pF at 300 K, whatever the resistance (kT/C, textbook value)', () => {
     for (const resistance of [1, 1e3, 1e9]) {
       const value = thermalNoise({ resistance: ohms(resistance), capacitance: farads(1e-12), temperature: room, band: null });
