@@ -150,3 +150,39 @@ describe('the own noise of a pair', () => {
     near(of('', ''), Math.max(...each), 1e-12);
   });
 });
+
+describe('own noise of whatever can be stated', () => {
+  /** Seeded: the same boards every time (Park & Miller, CACM 1988). */
+  function generator(seed: number): () => number {
+    let state = seed;
+    return () => (state = (state * 48271) % 2147483647) / 2147483647;
+  }
+
+  it('is finite with an error bar that is small, or said to be missing; an rms budget of two bands side by side makes that of both', () => {
+    const random = generator(20260101);
+    const pick = <Each>(all: readonly Each[]): Each => all[Math.floor(random() * all.length)]!;
+    const size = (low: number, high: number) => (low * (high / low) ** random()).toPrecision(6);
+    const end = () => pick([() => `${size(1e-6, 1e15)} ohm`, () => `${size(1e-18, 1e-3)} F`, () => `${size(1e-3, 1e12)} ohm, ${size(1e-15, 1e-6)} F`, () => '0 ohm'])();
+    for (let n = 0; n < 200; n += 1) {
+      // What nobody stated, a source or the sign of what is not rejected, can be worst one way in one band and another in the next.
+      const known = random() < 0.5;
+      const ends = () => `${pick([known ? `source ${end()};` : '', `source ${end()};`])} ${pick(['', `load ${end()};`])}`;
+      const from = pick(['0', size(1e-6, 1e6)]);
+      const [middle, to] = [1e6 * Number(size(1, 1e3)), 1e9 * Number(size(1.01, 1e4))];
+      const noise = from === '0' ? 'noise 5 nV/rtHz, 1 pA/rtHz;' : 'noise 5 nV/rtHz, 1 pA/rtHz corner 1 kHz; contact -20 dB at 5 V;';
+      const nets = `net P { ${ends()} }\nnet N { ${ends()} }\n`;
+      const across = pick(['', `across ${end()};`]);
+      const text = (one: string, other: string) => `${nets}pair D { plus P; minus N; ${across} ${known ? '' : 'rejects 40 dB;'} band ${one} Hz to ${other} Hz; ${noise} tolerates 1 mV rms; common tolerates 1 V peak }`;
+      const texts = [text(from, `${to}`)].flatMap((whole) => [whole, whole.replace(/to [^ ]+ Hz/, `to ${middle} Hz`), whole.replace(/band [^ ]+ Hz/, `band ${middle} Hz`)]);
+      const [whole, low, high] = texts.map((each) => budgetsOf(each, 'D'));
+      for (const each of [...whole!, ...low!, ...high!]) {
+        for (const { channel, value, errorBar } of each.contributions) {
+          assert.ok(0 < value && value < Infinity && 0 < errorBar && errorBar < 1e-6 * value, `${channel} ${value} ± ${errorBar} of\n${texts[0]}`);
+        }
+      }
+      if (known) whole!.forEach((each, at) => {
+        for (const { channel, value } of each.contributions) near(value, Math.hypot(valueOf(low![at]!, channel), valueOf(high![at]!, channel)), 1e-6, `${channel} of ${each.kind} of\n${texts[0]}\n`);
+      });
+    }
+  });
+});

@@ -19,5 +19,8 @@ export function ownNoise(project: Project, roles: Roles, receiver: Receiver, mea
   const input = ownInput(receiver, circuits, band);
   const contact = ownContact(receiver, circuits, band);
   const noises = [...ownThermal(circuits, { temperature: boardTemperature(project), band }), ...input.noises, ...contact.noises];
-  return { contributions: noises.map((noise) => ownContribution(noise, measure)), lacking: [...input.lacking, ...contact.lacking] };
+  const finite = noises.filter(({ noise: { rms, errorBar } }) => rms < Infinity && errorBar < Infinity);
+  // Numbers beyond what doubles hold are no numbers, and never silently nothing.
+  const beyond = noises.filter((noise) => !finite.includes(noise)).map(({ channel }) => ({ what: `its own ${channel} noise is not counted: it has no finite value`, place: receiver.subject.place }));
+  return { contributions: finite.map((noise) => ownContribution(noise, measure)), lacking: [...input.lacking, ...contact.lacking, ...beyond] };
 }

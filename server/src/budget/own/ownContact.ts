@@ -22,7 +22,7 @@ export function ownContact({ subject, kind, terms }: Receiver, { readings }: Own
   if (band.from === 0 && stating.some(({ contact }) => contact.across.value !== 0)) return lacking(`it has no end towards 0 Hz, where the band of ${subject.name} begins`);
   const squares = stating.map(({ contact, term }) => ({ term, square: contactNoise({ index: contact.index.value, across: contact.across.value }, band) ** 2 }));
   const noise = largestNoise(readings.map(({ weights }) => noiseVoltage(squares.map(({ term, square }) => closedForm(weights[term]! ** 2 * square)))));
-  if (noise === null || !(0 < noise.rms && noise.rms < Infinity)) return { noises: [], lacking: [] };
+  if (noise === null || noise.rms === 0) return { noises: [], lacking: [] };
   const assumptions = ['nothing beside its resistors lessens it', ...(kind === 'net' || stating.length < 2 ? [] : ['its two nets have such resistors each, and their noises are unrelated'])];
   return { noises: [{ channel: 'contact', noise, method: 'noise index over the decades of the band', assumptions }], lacking: [] };
 }

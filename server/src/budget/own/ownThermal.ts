@@ -8,7 +8,7 @@ import { largestNoise, type OwnNoise } from './ownContribution';
 
 export function ownThermal({ readings, assumptions }: OwnCircuits, warmth: Warmth): readonly OwnNoise[] {
   const noise = largestNoise(readings.flatMap((reading) => networkThermalNoise(reading, warmth) ?? []));
-  if (noise === null || !(0 < noise.rms && noise.rms < Infinity)) return [];
+  if (noise === null || noise.rms === 0) return [];
   return [{
     channel: 'thermal',
     noise,
