@@ -84,6 +84,7 @@ function budgetOf(project: Project, { subject, kind }: Receiver, { measure, tole
     total: known ? total : null,
     bounds: null,
     errorBar: known ? errorBar : null,
+    movedBy: [],
     marginDb,
     verdict: verdictOf({ complete, total, tolerates: tolerates.value, marginDb, headroom: project.board.headroom?.value ?? decibels(0) }),
     complete,

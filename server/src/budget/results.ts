@@ -162,6 +162,8 @@ export interface Budget {
   readonly total: Voltage | null;
   readonly bounds: readonly [Voltage, Voltage] | null;
   readonly errorBar: Voltage | null;
+  /** What of the stated tolerances moves the total, and by how much either way; the most first. Empty until they are carried through. */
+  readonly movedBy: readonly { readonly what: string; readonly place: Place; readonly share: number; readonly moves: Voltage }[];
   /** Null where incomplete or where the total is zero. */
   readonly marginDb: Decibels | null;
   readonly verdict: Verdict;

@@ -1,0 +1,140 @@
+/**
+ * Budgets over the stated tolerances: the largest and the smallest total in the box of all of them, and which quantity moves it most.
+ *
+ * Method    every quantity at both its ends by itself; the signs of what that does choose each budget's two worst corners, which
+ *           are then evaluated. Where both ends of a quantity do the same, its effect turns inside the box: both stand in the
+ *           bounds, and the corners have the worse one
+ * Range     exact where totals are monotone in every quantity; test/budget/tolerances.test.ts holds it against every corner of the box
+ */
+import type { Place, Project } from '../../board/model';
+import { volts, type Voltage } from '../../units/quantity';
+import { evaluate } from '../evaluate';
+import type { Budget, Contribution, Coupling, Evaluation } from '../results';
+import type { SolveCache } from '../solveCache';
+import { tolerancedQuantities, type Toleranced } from './tolerances';
+import { variedProject, type Shifts } from './variedProject';
+
+/** One step at a time, so that what an editor asks for meanwhile is answered; the last one is the evaluation with its bounds. */
+export function* overTolerances(project: Project, nominal: Evaluation, cache: SolveCache): Generator<null, Evaluation> {
+  const quantities = tolerancedQuantities(project);
+  const looked = new Looked(nominal);
+  const ends: { readonly quantity: Toleranced; readonly up: Evaluation; readonly down: Evaluation }[] = [];
+  for (const quantity of quantities) {
+    const up = evaluate(variedProject(project, new Map([[quantity.key, 1]])), cache);
+    yield null;
+    const down = evaluate(variedProject(project, new Map([[quantity.key, -1]])), cache);
+    yield null;
+    looked.at(up);
+    looked.at(down);
+    ends.push({ quantity, up, down });
+  }
+  if (1 < quantities.length) {
+    for (const shifts of cornersOf(nominal, ends)) {
+      looked.at(evaluate(variedProject(project, shifts), cache));
+      yield null;
+    }
+  }
+  return looked.bounded(nominal, ends);
+}
+
+/** Each budget's worst and best corner, every one once. */
+function cornersOf({ budgets }: Evaluation, ends: readonly { readonly quantity: Toleranced; readonly up: Evaluation; readonly down: Evaluation }[]): readonly Shifts[] {
+  const corners = new Map<string, Shifts>();
+  budgets.forEach((_, at) => {
+    for (const direction of [1, -1] as const) {
+      const shifts = new Map<string, 1 | -1>();
+      for (const { quantity, up, down } of ends) {
+        const [above, below] = [up.budgets[at]?.total ?? null, down.budgets[at]?.total ?? null];
+        if (above !== null && below !== null && above !== below) shifts.set(quantity.key, (below < above ? 1 : -1) * direction === 1 ? 1 : -1);
+      }
+      corners.set(JSON.stringify([...shifts]), shifts);
+    }
+  });
+  return [...corners.values()].filter(({ size }) => 1 < size);
+}
+
+type Range = [number, number];
+
+/** The extremes of everything that was seen, in the order of the nominal evaluation. */
+class Looked {
+  private readonly totals: (Range | null)[];
+  private readonly contributions: Map<string, Range>[];
+  private readonly couplings = new Map<string, Range>();
+
+  constructor(nominal: Evaluation) {
+    this.totals = nominal.budgets.map(({ total }) => (total === null ? null : [total, total]));
+    this.contributions = nominal.budgets.map(({ contributions }) => new Map(contributions.map((each) => [keyOf(each), [each.value, each.value] as Range])));
+    this.at(nominal);
+  }
+
+  at({ budgets, runs }: Evaluation): void {
+    budgets.forEach(({ total, contributions }, at) => {
+      const range = this.totals[at];
+      if (range != null && total !== null) widen(range, total);
+      for (const each of contributions) {
+        const own = this.contributions[at]?.get(keyOf(each));
+        if (own !== undefined) widen(own, each.value);
+      }
+    });
+    for (const { couplings } of runs) {
+      for (const coupling of couplings) {
+        const value = Math.abs(coupling.atReceiver);
+        const known = this.couplings.get(couplingKey(coupling));
+        if (known === undefined) this.couplings.set(couplingKey(coupling), [value, value]);
+        else widen(known, value);
+      }
+    }
+  }
+
+  bounded(nominal: Evaluation, ends: readonly { readonly quantity: Toleranced; readonly up: Evaluation; readonly down: Evaluation }[]): Evaluation {
+    const budgets = nominal.budgets.map((budget, at): Budget => {
+      const range = this.totals[at];
+      if (range == null) return budget;
+      const contributions = budget.contributions.map((each) => withBounds(each, this.contributions[at]!.get(keyOf(each))!));
+      const bounds: readonly [Voltage, Voltage] = [volts(range[0]), volts(range[1])];
+      return { ...budget, contributions, bounds, movedBy: movedBy(at, ends), verdict: verdictOver(budget, bounds[1]) };
+    });
+    const runs = nominal.runs.map((run) => ({ ...run, couplings: run.couplings.map((coupling) => signed(coupling, this.couplings.get(couplingKey(coupling)))) }));
+    return { ...nominal, budgets, runs };
+  }
+}
+
+function widen(range: Range, value: number): void {
+  range[0] = Math.min(range[0], value);
+  range[1] = Math.max(range[1], value);
+}
+
+function keyOf({ channel, from, where, cause }: Contribution): string {
+  return JSON.stringify([channel, from, where, cause]);
+}
+
+function couplingKey({ run, aggressor, victim, kind, edge }: Coupling): string {
+  return JSON.stringify([run.name, aggressor.name, victim.name, kind, edge === 'sine']);
+}
+
+function withBounds(contribution: Contribution, [low, high]: Range): Contribution {
+  return bounded(contribution, [volts(low), volts(high)]);
+}
+
+/** Of a peak as it is signed. */
+function signed(coupling: Coupling, range: Range | undefined): Coupling {
+  if (range === undefined) return coupling;
+  return bounded(coupling, coupling.atReceiver < 0 ? [volts(-range[1]), volts(-range[0])] : [volts(range[0]), volts(range[1])]);
+}
+
+/** A copy that still makes its words and pictures when they are asked for. */
+function bounded<Whole extends { readonly bounds: unknown }>(whole: Whole, bounds: readonly [Voltage, Voltage]): Whole {
+  return Object.defineProperties({}, { ...Object.getOwnPropertyDescriptors(whole), bounds: { value: bounds, enumerable: true } }) as Whole;
+}
+
+function movedBy(at: number, ends: readonly { readonly quantity: Toleranced; readonly up: Evaluation; readonly down: Evaluation }[]): Budget['movedBy'] {
+  return ends
+    .map(({ quantity: { what, place, share }, up, down }) => ({ what, place: place as Place, share, moves: volts(Math.abs((up.budgets[at]?.total ?? 0) - (down.budgets[at]?.total ?? 0)) / 2) }))
+    .filter(({ moves }) => 0 < moves)
+    .sort((a, b) => b.moves - a.moves);
+}
+
+/** Within budget as drawn, over it at a corner: little margin, whatever the headroom. */
+function verdictOver({ verdict, tolerates }: Budget, worst: Voltage): Budget['verdict'] {
+  return verdict === 'pass' && tolerates < worst ? 'low' : verdict;
+}

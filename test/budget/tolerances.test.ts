@@ -1,0 +1,102 @@
+/** Bounds over tolerances: against every corner of the box, tried one by one, and what each kind of quantity does. */
+import { describe, it } from 'node:test';
+import assert from 'node:assert/strict';
+import { evaluate } from '../../server/src/budget/evaluate';
+import type { Evaluation } from '../../server/src/budget/results';
+import { createSolveCache } from '../../server/src/budget/solveCache';
+import { overTolerances } from '../../server/src/budget/tolerances/overTolerances';
+import { tolerancedQuantities } from '../../server/src/budget/tolerances/tolerances';
+import { variedProject } from '../../server/src/budget/tolerances/variedProject';
+import { near } from '../support/near';
+import { seeded } from '../support/generatedBoard';
+import { budgetOf, microstrip } from './board';
+import { projectOf } from './project';
+
+const cache = createSolveCache();
+
+function bounded(text: string): Evaluation {
+  const project = projectOf(text);
+  assert.deepEqual(project.errors.map(({ message }) => message), []);
+  const steps = overTolerances(project, evaluate(project, cache), cache);
+  for (;;) {
+    const step = steps.next();
+    if (step.done) return step.value;
+  }
+}
+
+/** All of them: 2 to the power of the quantities. */
+function everyCorner(text: string, name: string): readonly [number, number] {
+  const project = projectOf(text);
+  const quantities = tolerancedQuantities(project);
+  let [low, high] = [Infinity, -Infinity];
+  for (let corner = 0; corner < 2 ** quantities.length; corner += 1) {
+    const shifts = new Map(quantities.map(({ key }, at) => [key, (corner >> at) & 1 ? 1 : -1] as const));
+    const { total } = budgetOf(evaluate(variedProject(project, shifts), cache), name);
+    low = Math.min(low, total!);
+    high = Math.max(high, total!);
+  }
+  return [low, high];
+}
+
+const nets = 'net A { swing 3 V ± 5 %; rise 2 ns; source 30 ohm ± 10 %; load 1 Mohm, 5 pF }\nnet V { source 100 ohm; load 10 kohm, 8 pF; tolerates 100 mV peak }\n';
+const run = (gap: string, width = '0.2 mm') => `run r on TOP for 30 mm { trace A ${width}; gap ${gap}; trace V 0.15 mm }\n`;
+
+describe('bounds over tolerances', () => {
+  it('are the worst and the best of all corners, on seeded boards', () => {
+    const random = seeded(11);
+    for (let n = 0; n < 12; n += 1) {
+      const text = `stackup { copper TOP 35 um; prepreg 0.2 mm ± ${random.pick(['5 %', '10 %', '20 um'])} er 4.2 ± 0.2; plane GND 18 um }\n${nets}${run(`${random.pick(['0.25', '0.5', '1.0'])} mm ± ${random.pick(['8 %', '30 um'])}`, random.pick(['0.2 mm', '0.2 mm ± 15 um']))}`;
+      const { bounds, total } = budgetOf(bounded(text), 'V');
+      const [low, high] = everyCorner(text, 'V');
+      assert.ok(bounds![0] < total! && total! < bounds![1], text);
+      near(bounds![0], low, 1e-9, text);
+      near(bounds![1], high, 1e-9, text);
+    }
+  });
+
+  it('hold also where the effect of a quantity turns inside its band', () => {
+    // A source matched to its line is the quietest of the three.
+    const text = `${microstrip}${nets.replace('source 30 ohm ± 10 %', 'source 60 ohm ± 50 %')}${run('0.3 mm')}`;
+    const { bounds } = budgetOf(bounded(text), 'V');
+    const [low, high] = everyCorner(text, 'V');
+    assert.ok(bounds![0] <= low && high <= bounds![1]);
+  });
+
+  it('say which quantity matters most', () => {
+    const text = `stackup { copper TOP 35 um; prepreg 0.2 mm ± 10 % er 4.2 ± 1 %; plane GND 18 um }\n${nets}${run('0.3 mm')}`;
+    const { movedBy, total } = budgetOf(bounded(text), 'V');
+    assert.equal(movedBy[0].what, 'thickness of prepreg');
+    near(movedBy[0].share, 0.1, 1e-12);
+    assert.ok(0.05 * total! < movedBy[0].moves && movedBy.at(-1)!.moves < movedBy[0].moves);
+  });
+
+  it('take what a wider trace gains from its gaps, and keep its centre', () => {
+    const project = projectOf(`${microstrip}${nets}${run('0.30 mm', '0.2 mm ± 20 um')}`);
+    const [{ key }] = tolerancedQuantities(project).filter(({ what }) => what.startsWith('width'));
+    const [{ rows: [{ conductors, gaps }] }] = variedProject(project, new Map([[key, 1]])).runs;
+    near(conductors[0].width.value, 0.22e-3, 1e-12);
+    near(gaps[0].value, 0.29e-3, 1e-12);
+  });
+
+  it('move one row of the stackup for all runs, and a family’s value for all its nets', () => {
+    const text = `stackup { copper TOP 35 um; prepreg 0.2 mm ± 10 % er 4.2; plane GND 18 um }\nfamily pin { swing 3 V; rise 2 ns; source 30 ohm ± 10 %; load 1 Mohm, 5 pF }\nnet A is pin\nnet B is pin\nnet V { source 100 ohm; load 10 kohm; tolerates 1 V peak }\n${run('0.3 mm')}run s on TOP for 20 mm { trace B 0.2 mm; gap 0.3 mm; trace V 0.15 mm }\n`;
+    const project = projectOf(text);
+    assert.deepEqual(tolerancedQuantities(project).map(({ what }) => what), ['thickness of prepreg', 'resistance of the source of A']);
+    const { contributions } = budgetOf(bounded(text), 'V');
+    for (const { bounds, value } of contributions.filter(({ channel }) => channel === 'coupled')) assert.ok(bounds![0] < value && value < bounds![1]);
+  });
+
+  it('make a budget low that is over at a corner, whatever the headroom', () => {
+    const text = `${microstrip}${nets}${run('0.3 mm ± 30 %')}`;
+    const { total, bounds } = budgetOf(bounded(text), 'V');
+    const between = ((total! + bounds![1]) / 2) * 1e3;
+    const low = budgetOf(bounded(text.replace('tolerates 100 mV', `tolerates ${between} mV`)), 'V');
+    assert.equal(low.verdict, 'low');
+    assert.equal(budgetOf(bounded(text.replace('tolerates 100 mV', `tolerates ${bounds![1] * 1.01} V`)), 'V').verdict, 'pass');
+  });
+
+  it('are the total itself where nothing has a tolerance', () => {
+    const { bounds, total, movedBy } = budgetOf(bounded(`${microstrip}net A { swing 3 V; rise 2 ns; source 30 ohm }\nnet V { source 100 ohm; load 10 kohm; tolerates 1 V peak }\n${run('0.3 mm')}`), 'V');
+    assert.deepEqual([bounds, movedBy], [[total, total], []]);
+  });
+});
