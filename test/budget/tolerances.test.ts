@@ -81,7 +81,7 @@ describe('bounds over tolerances', () => {
   it('move one row of the stackup for all runs, and a family’s value for all its nets', () => {
     const text = `stackup { copper TOP 35 um; prepreg 0.2 mm ± 10 % er 4.2; plane GND 18 um }\nfamily pin { swing 3 V; rise 2 ns; source 30 ohm ± 10 %; load 1 Mohm, 5 pF }\nnet A is pin\nnet B is pin\nnet V { source 100 ohm; load 10 kohm; tolerates 1 V peak }\n${run('0.3 mm')}run s on TOP for 20 mm { trace B 0.2 mm; gap 0.3 mm; trace V 0.15 mm }\n`;
     const project = projectOf(text);
-    assert.deepEqual(tolerancedQuantities(project).map(({ what }) => what), ['thickness of prepreg', 'resistance of the source of A']);
+    assert.deepEqual(tolerancedQuantities(project).map(({ what }) => what), ['thickness of prepreg', 'resistance of the source of family pin']);
     const { contributions } = budgetOf(bounded(text), 'V');
     for (const { bounds, value } of contributions.filter(({ channel }) => channel === 'coupled')) assert.ok(bounds![0] < value && value < bounds![1]);
   });

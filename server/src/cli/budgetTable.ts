@@ -25,24 +25,26 @@ function nameOf({ subject, kind }: Budget): string {
   return printable(kind === 'common' ? `${subject.name} (mean)` : subject.name);
 }
 
-function verdictInWords({ verdict, total, tolerates, marginDb }: Budget, paint: Paint): string {
+function verdictInWords({ verdict, total, tolerates, marginDb, bounds }: Budget, paint: Paint): string {
   // Of an incomplete budget what was counted can already be too much; that margin is one that no more counting can mend.
   const excess = total === null ? 0 : 20 * Math.log10(total / tolerates);
   switch (verdict) {
     case 'over': return paint.error(`over by ${inText(excess, 'level')}`);
-    case 'low': return paint.warning(`low: ${inText(marginDb ?? 0, 'level')} to spare, less than the headroom`);
+    case 'low': return paint.warning(bounds !== null && tolerates < bounds[1] ? `low: ${inText(marginDb ?? 0, 'level')} to spare as drawn, over at a corner of the tolerances` : `low: ${inText(marginDb ?? 0, 'level')} to spare, less than the headroom`);
     case 'unknown': return paint.warning('incomplete: no margin');
     case 'pass': return marginDb === null ? 'within' : `within: ${inText(marginDb, 'level')} to spare`;
   }
 }
 
-function contributionLines({ contributions, total, unaccounted, errorBar }: Budget): readonly string[] {
+function contributionLines({ contributions, total, unaccounted, errorBar, bounds, movedBy }: Budget): readonly string[] {
   const shown = contributions.filter(({ value }) => total === null || smallShare * total <= value);
   const rest = contributions.slice(shown.length);
   const lines = shown.map((each) => line(inText(each.value, 'voltage'), sourceOf(each)));
   if (rest.length === 1) lines.push(line(inText(rest[0].value, 'voltage'), sourceOf(rest[0])));
   if (1 < rest.length) lines.push(line(`≤ ${inText(Math.max(...rest.map(({ value }) => value)), 'voltage')}`, `each of ${rest.length} more`));
   if (total !== null && errorBar !== null && shownError * total < errorBar) lines.push(line(`± ${inText(errorBar, 'voltage')}`, 'numerical error'));
+  const [most] = movedBy;
+  if (bounds !== null && most !== undefined) lines.push(line(`≤ ${inText(bounds[1], 'voltage')}`, `over the tolerances, from ${inText(bounds[0], 'voltage')}; ${most.what} ± ${inText(most.share, 'fraction')} moves it most, by ± ${inText(most.moves, 'voltage')}`));
   return [...lines, ...unaccounted.map(({ what }) => line('?', what))];
 }
 
@@ -54,7 +56,8 @@ const line = (amount: string, what: string) => `${amount.padStart(10)}  ${printa
 const edges = { rise: 'rising', fall: 'falling', sine: 'sine' } as const;
 
 function sourceOf({ channel, from, where, group, coupling }: Contribution): string {
-  if (channel !== 'coupled') return `${channel} noise`;
+  if (from === null) return `${channel} noise`;
+  if (channel !== 'coupled') return `${from} by ${channel === 'radiated' ? 'field' : channel} ${where ?? ''}${group === null ? '' : `, group ${group}`}`;
   const edge = coupling === null ? '' : `, ${edges[coupling.edge]}`;
   return `${from} in ${where}${edge}${group === null ? '' : `, group ${group}`}`;
 }

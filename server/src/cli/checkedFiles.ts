@@ -32,7 +32,7 @@ export async function checkedFiles(options: CheckOptions): Promise<CheckedFiles>
     session.setText(key, text);
   }
   await readUsed(session, roots, options);
-  return { checked: roots.map((root) => ({ path: root, analysis: session.analyse(root), text: (other) => session.text(other) ?? '' })) };
+  return { checked: roots.map((root) => ({ path: root, analysis: session.analyseFully(root), text: (other) => session.text(other) ?? '' })) };
 }
 
 function keyOf(file: string, { workingDirectory }: CheckOptions): string {

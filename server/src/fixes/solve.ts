@@ -41,16 +41,20 @@ export interface Goal {
 
 /** Down to what the budgets tolerate, less the headroom. */
 export function withinBudget(context: FixContext, budgets: readonly Budget[]): Goal {
+  // What tolerances add is found for the text as it is, and grows a little with what is changed: judged in the end.
+  const corners = budgets.map(({ total, bounds }) => (total === null || total === 0 || bounds === null ? 1 : 1 + cornerGrowth * (bounds[1] / total - 1)));
   return {
     budgets,
-    excess: ({ budgets: after }) => excessOf(after, context.project),
+    excess: ({ budgets: after }) => excessOf(after, context.project, corners),
     // Magnitudes only add: what comes from elsewhere is the least that a receiver will have.
-    missedWithout: (runs) => budgets.some((budget) => {
+    missedWithout: (runs) => budgets.some((budget, at) => {
       const elsewhere = budget.contributions.filter(({ coupling }) => coupling === null || !runs.has(coupling.run));
-      return 0 < excessOf([{ ...budget, total: totalOf(elsewhere, budget.combine).total }], context.project);
+      return 0 < excessOf([{ ...budget, total: totalOf(elsewhere, budget.combine).total }], context.project, [corners[at]!]);
     }),
   };
 }
+
+const cornerGrowth = 1.05;
 
 /** Null where it cannot be computed. */
 export function solve(context: FixContext, adjustables: readonly [Adjustable, ...Adjustable[]], goal: Goal): Solved | null {

@@ -26,10 +26,13 @@ export function sameBudget({ budgets }: Evaluation, { subject, kind, measure }: 
   return budgets.find((other) => other.subject.name === subject.name && other.kind === kind && other.measure === measure) ?? null;
 }
 
-/** Logarithm of the total over what is wanted of it: the worst of the receivers; NaN where one has no total. */
-export function excessOf(budgets: readonly (Budget | null)[], { board }: Project): number {
+/**
+ * Logarithm of the total over what is wanted of it: the worst of the receivers; NaN where one has no total. `corners`: of each receiver,
+ * how much more than the total stands at its worst corner of the tolerances; with that it has to be within budget as well.
+ */
+export function excessOf(budgets: readonly (Budget | null)[], { board }: Project, corners: readonly number[] = []): number {
   const headroom = 10 ** ((board.headroom?.value ?? 0) / 20);
-  return Math.max(...budgets.map((budget) => (budget === null || budget.total === null ? NaN : Math.log((budget.total * headroom) / budget.tolerates))));
+  return Math.max(...budgets.map((budget, at) => (budget === null || budget.total === null ? NaN : Math.log((budget.total * Math.max(headroom, corners[at] ?? 1)) / budget.tolerates))));
 }
 
 /** What one aggressor puts on a receiver in one run, V; 0 where it does not. */

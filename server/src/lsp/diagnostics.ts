@@ -5,6 +5,7 @@
 import { DocumentDiagnosticReportKind, LSPErrorCodes, ResponseError, type CancellationToken, type Connection, type Diagnostic, type DocumentDiagnosticReport, type WorkspaceDiagnosticParams, type WorkspaceDiagnosticReport } from 'vscode-languageserver';
 import { diagnosticOf, type FindingsToShow } from './findings';
 import { guarded, Superseded } from './guard';
+import type { Refresher } from './refresh';
 import { textHash } from './textHash';
 
 export interface DiagnosticsOptions extends FindingsToShow {
@@ -41,7 +42,7 @@ export function answerPulls(options: DiagnosticsOptions): void {
 }
 
 /** Sends the findings of every open file a moment after the last change. */
-export function pushFindings(options: DiagnosticsOptions): void {
+export function pushFindings(options: DiagnosticsOptions, refresher: Pick<Refresher, 'onNow'>): void {
   const { connection, documents, computed } = options;
   const shown = new Set<string>();
   let due: ReturnType<typeof setTimeout> | undefined;
@@ -61,10 +62,12 @@ export function pushFindings(options: DiagnosticsOptions): void {
       computed(path);
     }
   };
-  documents.onChange(() => {
+  const soon = () => {
     clearTimeout(due);
     due = setTimeout(() => void send().catch((error) => connection.console.error(`diagnostics: ${String(error)}`)), 60);
-  });
+  };
+  documents.onChange(soon);
+  refresher.onNow(soon);
 }
 
 function diagnosticsOf(path: string, options: FindingsToShow): Diagnostic[] {

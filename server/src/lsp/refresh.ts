@@ -8,6 +8,8 @@ import type { Documents } from './documents';
 export interface Refresher {
   /** At once. */
   readonly now: () => void;
+  /** For findings that are sent, not asked for. */
+  readonly onNow: (listener: () => void) => void;
 }
 
 /** Long enough to wait for the end of a word that is being typed. */
@@ -15,7 +17,9 @@ const pause = 150;
 
 export function createRefresher(connection: Connection, documents: Documents, capabilities: () => ClientCapabilities): Refresher {
   let due: ReturnType<typeof setTimeout> | undefined;
+  const listeners: (() => void)[] = [];
   const now = () => {
+    for (const listener of listeners) listener();
     clearTimeout(due);
     due = undefined;
     const { workspace } = capabilities();
@@ -28,7 +32,7 @@ export function createRefresher(connection: Connection, documents: Documents, ca
     clearTimeout(due);
     due = setTimeout(() => { if (isSeenElsewhere(documents, path)) now(); }, pause);
   });
-  return { now };
+  return { now, onNow: (listener) => listeners.push(listener) };
 }
 
 /** Another file that is open belongs to a project of this one. */

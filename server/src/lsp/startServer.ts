@@ -22,6 +22,7 @@ import { createRefresher, type Refresher } from './refresh';
 import type { Server } from './server';
 import { createSettings } from './settings';
 import { sendStatus } from './status';
+import { tolerancesBehind } from './tolerancesBehind';
 
 /** `ownReader` reads for a client that does not offer to read for the server. */
 export function startServer(connection: Connection, ownReader: FileReader): void {
@@ -37,15 +38,19 @@ export function startServer(connection: Connection, ownReader: FileReader): void
   };
 
   const refresher = createRefresher(connection, documents, () => capabilities);
+  const tolerances = tolerancesBehind(documents, (error) => connection.console.error(`tolerances: ${String(error)}`), () => refresher.now());
 
   connection.onInitialize((params) => {
     capabilities = params.capabilities;
     clientOptions = (params.initializationOptions ?? {}) as ClientOptions;
     documents.reader = clientOptions.readsFiles === true ? clientReader(connection) : ownReader;
     documents.paths.setFolders(foldersOf(params));
-    const findings = { connection, documents, rulePages: clientOptions.rulePages ?? null, computed: (path: string) => clientOptions.showsStatus === true && sendStatus(server, path) };
+    const findings = { connection, documents, rulePages: clientOptions.rulePages ?? null, computed: (path: string) => {
+      if (clientOptions.showsStatus === true) sendStatus(server, path);
+      tolerances.wanted(path);
+    } };
     if (pulls(capabilities)) answerPulls(findings);
-    else pushFindings(findings);
+    else pushFindings(findings, refresher);
     return abilities(capabilities);
   });
 

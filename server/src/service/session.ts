@@ -13,6 +13,8 @@ import { usePath } from '../board/usePath';
 import { evaluate } from '../budget/evaluate';
 import type { Evaluation } from '../budget/results';
 import { createSolveCache } from '../budget/solveCache';
+import { boundedAtOnce, overTolerances } from '../budget/tolerances/overTolerances';
+import { tolerancedQuantities } from '../budget/tolerances/tolerances';
 import type { FixContext } from '../fixes/fix';
 import { findingsOf } from '../rules/index';
 import type { Finding } from '../rules/rule';
@@ -25,6 +27,8 @@ export interface Analysis {
   readonly project: Project;
   readonly evaluation: Evaluation;
   readonly findings: readonly Finding[];
+  /** Its bounds over the tolerances are known. */
+  readonly bounded: boolean;
 }
 
 /** What is known of one key: a text and, once asked for, its tree; or why there is none. */
@@ -123,6 +127,33 @@ export class Session {
     return (resolved.analysis ??= this.analysisOf(resolved.project));
   }
 
+  /**
+   * Carries the tolerances through an analysis, one step at a time, and answers whether anything came of it: not where that was
+   * done before, or where a text that it rests on has changed meanwhile.
+   */
+  *carryTolerances(root: string): Generator<null, boolean> {
+    const resolved = this.resolve(root);
+    const { bounded, evaluation } = this.analyse(root);
+    if (bounded) return false;
+    const steps = overTolerances(resolved.project, evaluation, this.cache);
+    for (;;) {
+      const step = steps.next();
+      if (this.resolve(root) !== resolved) return false;
+      if (step.done === true) {
+        resolved.analysis = { project: resolved.project, evaluation: step.value, findings: findingsOf(step.value, this.options), bounded: true };
+        return true;
+      }
+      yield null;
+    }
+  }
+
+  /** With the tolerances, however long it takes. */
+  analyseFully(root: string): Analysis {
+    const steps = this.carryTolerances(root);
+    while (steps.next().done !== true);
+    return this.analyse(root);
+  }
+
   /** Of every project that the file belongs to; what two projects say alike is said once. */
   findings(path: string): readonly Finding[] {
     const found = new Map<string, Finding>();
@@ -161,12 +192,17 @@ export class Session {
         return tree === undefined ? this.answer(path) : { tree };
       },
     });
-    return evaluate(project, this.cache);
+    const nominal = evaluate(project, this.cache);
+    // Compared with what is known now: with its bounds where those are.
+    return this.analyse(root).bounded ? boundedAtOnce(project, nominal, this.cache) : nominal;
   }
 
   private analysisOf(project: Project): Analysis {
-    const evaluation = evaluate(project, this.cache);
-    return { project, evaluation, findings: findingsOf(evaluation, this.options) };
+    const nominal = evaluate(project, this.cache);
+    // Without tolerances the bounds cost nothing.
+    const bounded = tolerancedQuantities(project).length === 0;
+    const evaluation = bounded ? boundedAtOnce(project, nominal, this.cache) : nominal;
+    return { project, evaluation, findings: findingsOf(evaluation, this.options), bounded };
   }
 
   private resolve(root: string): Resolved {

@@ -37,6 +37,14 @@ export function* overTolerances(project: Project, nominal: Evaluation, cache: So
   return looked.bounded(nominal, ends);
 }
 
+export function boundedAtOnce(project: Project, nominal: Evaluation, cache: SolveCache): Evaluation {
+  const steps = overTolerances(project, nominal, cache);
+  for (;;) {
+    const step = steps.next();
+    if (step.done === true) return step.value;
+  }
+}
+
 /** Each budget's worst and best corner, every one once. */
 function cornersOf({ budgets }: Evaluation, ends: readonly { readonly quantity: Toleranced; readonly up: Evaluation; readonly down: Evaluation }[]): readonly Shifts[] {
   const corners = new Map<string, Shifts>();

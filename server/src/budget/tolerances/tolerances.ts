@@ -19,17 +19,24 @@ export function placeKey({ path, span }: Place): string {
 
 export function tolerancedQuantities(project: Project): readonly Toleranced[] {
   const found = new Map<string, Toleranced>();
-  const visit = (value: unknown, what: string) => {
+  const visit = (value: unknown, what: Named) => {
     if (typeof value !== 'object' || value === null) return;
     if (isGiven(value)) {
       const key = placeKey(value.place);
-      if (0 < value.tolerance && !found.has(key)) found.set(key, { key, what, place: value.place, share: value.value === 0 ? 0 : Math.abs(value.tolerance / value.value) });
+      if (0 < value.tolerance && !found.has(key)) found.set(key, { key, what: typeof what === 'string' ? what : what(value.place), place: value.place, share: value.value === 0 ? 0 : Math.abs(value.tolerance / value.value) });
       return;
     }
     for (const [property, each] of Object.entries(value)) if (!skipped.has(property)) visit(each, named(property, what));
   };
-  for (const stackup of project.stackups) for (const row of stackup.rows) for (const [property, each] of Object.entries(row)) visit(each, `${words[property] ?? property} of ${rowName(row)}`);
-  for (const signal of [...project.nets.values(), ...project.pairs.values()]) for (const [property, each] of Object.entries(signal)) if (property !== 'plus' && property !== 'minus') visit(each, `${words[property] ?? property} of ${signal.name}`);
+  for (const stackup of project.stackups) for (const row of stackup.rows) for (const [property, each] of Object.entries(row)) visit(each, `${property} of ${rowName(row)}`);
+  for (const signal of [...project.nets.values(), ...project.pairs.values()]) {
+    const { path, span } = signal.whole;
+    const isOwn = (place: Place) => place.path === path && span.start <= place.span.start && place.span.end <= span.end;
+    for (const [property, each] of Object.entries(signal)) {
+      if (property === 'plus' || property === 'minus') continue;
+      visit(each, (place) => `${property} of ${isOwn(place) || signal.family === null ? signal.name : `family ${signal.family}`}`);
+    }
+  }
   for (const run of project.runs) {
     visit(run.length, `length of run ${run.name}`);
     for (const { conductors, gaps, shift } of run.rows) {
@@ -54,10 +61,11 @@ export function tolerancedQuantities(project: Project): readonly Toleranced[] {
 /** What is demanded, and what only says when or where, has no corner. */
 const skipped = new Set(['place', 'whole', 'toleratesPeak', 'toleratesRms', 'commonTolerates', 'samples', 'documentation', 'working']);
 
-const words: Readonly<Record<string, string>> = { er: 'er', resistance: 'resistance', capacitance: 'capacitance', source: 'source', load: 'load', amplitude: 'amplitude' };
+type Named = string | ((place: Place) => string);
 
-function named(property: string, what: string): string {
-  return property === 'resistance' || property === 'capacitance' ? `${property} of the ${what}` : what;
+function named(property: string, what: Named): Named {
+  if (property !== 'resistance' && property !== 'capacitance') return what;
+  return typeof what === 'string' ? `${property} of the ${what}` : (place) => `${property} of the ${what(place)}`;
 }
 
 function rowName(row: StackupRow): string {

@@ -4,6 +4,7 @@ import type { Budget, Contribution } from '../../budget/results';
 import { causeInText, budgetFault, excessInText, receiverInText, remedyInText, shareOf, voltageInText } from '../../rules/budgetFault';
 import { inText } from '../../units/inText';
 import type { Analysis } from '../session';
+import { tolerancesInWords } from './tolerancesInWords';
 import { bar, escaped, escapedLines, paragraphs, percent, table } from './markdown';
 
 export function signalHover({ project, evaluation }: Analysis, signal: Net | Pair): string {
@@ -43,6 +44,7 @@ export function endInText({ resistance, capacitance }: End): string {
 function budgetInWords(project: Project, budget: Budget): string {
   return paragraphs(
     totalInWords(project, budget),
+    tolerancesInWords(budget),
     budget.contributions.length === 0 ? null : contributionsTable(budget),
     budget.unaccounted.length === 0 ? null : `Not in it: ${budget.unaccounted.map(({ what }) => escaped(what)).join('; ')}`,
     wayOut(project, budget),
