@@ -1,7 +1,10 @@
 import { describe, it } from 'node:test';
 import assert from 'node:assert/strict';
+import { evaluate } from '../../server/src/budget/evaluate';
 import type { Budget, Channel } from '../../server/src/budget/results';
+import { createSolveCache } from '../../server/src/budget/solveCache';
 import { near } from '../support/near';
+import { projectOf } from './project';
 import { evaluated, microstrip } from './board';
 
 const kT = 1.380649e-23 * 298.15;
@@ -53,6 +56,14 @@ describe('the own noise of a net', () => {
     assert.deepEqual([found.verdict, found.marginDb], ['unknown', null]);
     const bare = budget(net('tolerates 1 mV peak'));
     assert.deepEqual([bare.total, bare.complete], [0, true]);
+  });
+
+  it('says of a band that could not be read nothing else', () => {
+    for (const band of ['0 Hz to 1 MHz', '1 Hz to 1 M']) {
+      const { budgets } = evaluate(projectOf(`${microstrip}${net(`noise 5 nV/rtHz corner 1 kHz; contact -20 dB at 5 V; band ${band}; tolerates 1 mV peak`)}`), createSolveCache());
+      assert.equal(budgets[0]!.unaccounted.length, 1);
+      assert.match(budgets[0]!.unaccounted[0]!.what, /band of net V could not be read$/);
+    }
   });
 
   it('has no flicker of a noise that states no corner, and may then begin at 0 Hz', () => {

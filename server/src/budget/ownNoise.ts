@@ -22,5 +22,11 @@ export function ownNoise(project: Project, roles: Roles, receiver: Receiver, mea
   const finite = noises.filter(({ noise: { rms, errorBar } }) => rms < Infinity && errorBar < Infinity);
   // Numbers beyond what doubles hold are no numbers, and never silently nothing.
   const beyond = noises.filter((noise) => !finite.includes(noise)).map(({ channel }) => ({ what: `its own ${channel} noise is not counted: it has no finite value`, place: receiver.subject.place }));
-  return { contributions: finite.map((noise) => ownContribution(noise, measure)), lacking: [...input.lacking, ...contact.lacking, ...beyond] };
+  const lacking = [...(seemsBandless(project, receiver) ? [] : [...input.lacking, ...contact.lacking]), ...beyond];
+  return { contributions: finite.map((noise) => ownContribution(noise, measure)), lacking };
+}
+
+/** Something of it could not be read, which its budget says anyhow: that it has no band is no second mistake. */
+function seemsBandless({ gaps }: Project, receiver: Receiver): boolean {
+  return bandOf(receiver) === null && gaps.some(({ affects }) => affects !== null && affects.includes(receiver.subject.name));
 }
