@@ -11,6 +11,7 @@ import { guardUnstitched } from './guardUnstitched';
 import { include } from './include';
 import { incompleteBudget } from './incompleteBudget';
 import { insulationCaution } from './insulationCaution';
+import { loopTooLarge } from './loopTooLarge';
 import { lowMargin } from './lowMargin';
 import { missingTermination } from './missingTermination';
 import { missingValue } from './missingValue';
@@ -33,6 +34,7 @@ export const rules: readonly Rule[] = [
   incompleteBudget,
   gapBelowClearance,
   insulationCaution,
+  loopTooLarge,
   noReturnPath,
   guardUnstitched,
   missingTermination,

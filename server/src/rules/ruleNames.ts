@@ -20,7 +20,7 @@ const entries = {
   'incomplete-budget': physical,
   'gap-below-clearance': physical,
   'insulation-caution': physical,
-  'loop-too-large': planned,
+  'loop-too-large': physical,
   'emission-over-limit': planned,
   'no-return-path': physical,
   'guard-unstitched': physical,
