@@ -12,6 +12,7 @@ import { ownNoise } from './ownNoise';
 import type { Receiver } from './receivers';
 import type { Budget, Contribution, Unaccounted, Verdict } from './results';
 import type { Roles } from './roles';
+import type { SolveCache } from './solveCache';
 import { totalOf } from './totals';
 
 export interface Channels {
@@ -19,11 +20,15 @@ export interface Channels {
   readonly lacking: readonly { readonly receiver: Receiver; readonly unaccounted: Unaccounted }[];
 }
 
+interface Cached {
+  readonly cache: SolveCache;
+}
+
 /** In the order of the text: files as they are used, then places. */
-export function budgetsOf(project: Project, roles: Roles, receivers: readonly Receiver[], channels: Channels): readonly Budget[] {
+export function budgetsOf(project: Project, roles: Roles, receivers: readonly Receiver[], channels: Channels & Cached): readonly Budget[] {
   const heard = byReceiver(channels.heard, (each) => each);
   const lacking = byReceiver(channels.lacking, ({ unaccounted }) => unaccounted);
-  const budgets = receivers.flatMap((receiver) => receiverBudgets(project, roles, receiver, { heard: heard.get(receiver) ?? [], lacking: lacking.get(receiver) ?? [] }));
+  const budgets = receivers.flatMap((receiver) => receiverBudgets(project, roles, receiver, { cache: channels.cache, heard: heard.get(receiver) ?? [], lacking: lacking.get(receiver) ?? [] }));
   const files = new Map(project.files.map((path, index) => [path, index]));
   const rank = ({ subject: { place } }: Budget) => files.get(place.path) ?? files.size;
   return budgets.sort((a, b) => rank(a) - rank(b) || a.subject.place.span.start - b.subject.place.span.start);
@@ -39,18 +44,18 @@ function byReceiver<Each extends { readonly receiver: Receiver }, Value>(all: re
   return found;
 }
 
-interface ReceiverChannels {
+interface ReceiverChannels extends Cached {
   readonly heard: readonly Heard[];
   readonly lacking: readonly Unaccounted[];
 }
 
-function receiverBudgets(project: Project, roles: Roles, receiver: Receiver, { heard, lacking }: ReceiverChannels): readonly Budget[] {
+function receiverBudgets(project: Project, roles: Roles, receiver: Receiver, { cache, heard, lacking }: ReceiverChannels): readonly Budget[] {
   const outside = lackingOutside(project, receiver);
   return (['peak', 'rms'] as const).flatMap((measure) => {
     const tolerates = measure === 'peak' ? receiver.toleratesPeak : receiver.toleratesRms;
     if (tolerates === null) return [];
     const counted = contributionsOf(heard, measure);
-    const own = ownNoise(project, roles, receiver, measure);
+    const own = ownNoise({ project, roles, cache }, receiver, measure);
     return [budgetOf(project, receiver, {
       measure,
       tolerates,

@@ -29,7 +29,7 @@ export function evaluate(project: Project, cache: SolveCache): Evaluation {
   const inductances = loopInductances(project, cache);
   const circuits = heardOverCircuits(project, roles, receivers, { cache, inductances });
   const channels = { heard: [...outcomes.flatMap(({ heard }) => heard), ...circuits.heard], lacking: [...outcomes.flatMap(({ lacking }) => lacking), ...circuits.lacking] };
-  const budgets = budgetsOf(project, roles, receivers, channels);
+  const budgets = budgetsOf(project, roles, receivers, { ...channels, cache });
   const after = cache.work();
   return {
     project,

@@ -12,13 +12,20 @@ import { ownInput } from './own/ownInput';
 import { ownThermal } from './own/ownThermal';
 import { bandOf, type Receiver } from './receivers';
 import type { Roles } from './roles';
+import type { SolveCache } from './solveCache';
 
-export function ownNoise(project: Project, roles: Roles, receiver: Receiver, measure: 'peak' | 'rms'): Counted {
+export interface OwnNoiseOf {
+  readonly project: Project;
+  readonly roles: Roles;
+  readonly cache: SolveCache;
+}
+
+export function ownNoise({ project, roles, cache }: OwnNoiseOf, receiver: Receiver, measure: 'peak' | 'rms'): Counted {
   const band = bandOf(receiver);
   const circuits = ownCircuits(receiver, roles);
-  const input = ownInput(receiver, circuits, band);
+  const input = ownInput(receiver, circuits, { band, cache });
   const contact = ownContact(receiver, circuits, band);
-  const noises = [...ownThermal(circuits, { temperature: boardTemperature(project), band }), ...input.noises, ...contact.noises];
+  const noises = [...ownThermal(circuits, { temperature: boardTemperature(project), band }, cache), ...input.noises, ...contact.noises];
   const finite = noises.filter(({ noise: { rms, errorBar } }) => rms < Infinity && errorBar < Infinity);
   // Numbers beyond what doubles hold are no numbers, and never silently nothing.
   const beyond = noises.filter((noise) => !finite.includes(noise)).map(({ channel }) => ({ what: `its own ${channel} noise is not counted: it has no finite value`, place: receiver.subject.place }));

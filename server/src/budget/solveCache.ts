@@ -23,6 +23,8 @@ export interface SolveCache {
   circuit(key: string, solve: () => SolvedPath): SolvedPath;
   /** The same for inductances in space; the caller keeps one type to one kind of key. */
   inductance<Solution extends object>(key: string, solve: () => Solution): Solution;
+  /** The same for own noise that no closed form yields; the caller keeps one type to one kind of key. */
+  noise<Solution extends object>(key: string, solve: () => Solution): Solution;
   /** All of a run, by every number and name that enters it. */
   run(key: string, solve: () => SolvedRun): SolvedRun;
   /** A short name for a long one, in the keys of runs; never given twice. */
@@ -55,6 +57,7 @@ export function createSolveCache(bounds: CacheBounds = roomy): SolveCache {
   const lines = new Recent<object>(bounds.lines);
   const circuits = new Recent<SolvedPath>(bounds.circuits);
   const inductances = new Recent<object>(bounds.inductances);
+  const noises = new Recent<object>(bounds.circuits);
   const runs = new Recent<SolvedRun>(bounds.runs);
   const numbers = new Recent<number>(bounds.runs);
   return {
@@ -62,6 +65,7 @@ export function createSolveCache(bounds: CacheBounds = roomy): SolveCache {
     line: <Solution extends object>(key: string, solve: () => Solution) => lines.find(key, solve) as Solution,
     circuit: (key, solve) => circuits.find(key, solve),
     inductance: <Solution extends object>(key: string, solve: () => Solution) => inductances.find(key, solve) as Solution,
+    noise: <Solution extends object>(key: string, solve: () => Solution) => noises.find(key, solve) as Solution,
     run: (key, solve) => runs.find(key, solve),
     number: (content) => numbers.find(content, () => numbers.misses),
     work: () => ({ sectionsSolved: sections.misses, linesSolved: lines.misses, circuitsSolved: circuits.misses, inductancesSolved: inductances.misses }),

@@ -11,6 +11,8 @@ import { inText } from '../../units/inText';
 import { currentNoiseDensity, hertz, voltageNoiseDensity } from '../../units/quantity';
 import type { Receiver } from '../receivers';
 import type { Unaccounted } from '../results';
+import type { SolveCache } from '../solveCache';
+import { keptNoise } from './keptNoise';
 import type { OwnCircuits } from './ownCircuits';
 import { largestNoise, type OwnChannel, type OwnNoise } from './ownContribution';
 
@@ -19,16 +21,19 @@ export interface OwnCounted {
   readonly lacking: readonly Unaccounted[];
 }
 
-export function ownInput(receiver: Receiver, { readings, assumptions }: OwnCircuits, band: Band | null): OwnCounted {
+export function ownInput(receiver: Receiver, circuits: OwnCircuits, { band, cache }: { readonly band: Band | null; readonly cache: SolveCache }): OwnCounted {
   const stating = statingNoise(receiver);
   if (stating.length === 0) return { noises: [], lacking: [] };
   if (band === null) return { noises: [], lacking: [{ what: `the noise of its input is not counted: ${receiver.subject.name} has no \`band\``, place: stating[0]!.noise.place }] };
-  const inputs = noisyInputs(receiver, stating);
   const endless = band.from === 0 ? stating.filter(({ noise: { corner } }) => corner !== null && 0 < corner.value) : [];
-  const found = readings.map((reading) => inputNoise(reading, 0 < endless.length ? inputs.map((input) => ({ ...input, corner: hertz(0) })) : inputs, band));
-  const words = [...assumptions, ...assumedOf(receiver, stating)];
-  const white = counted(receiver, { channel: 'amplifier', noise: largestNoise(found.map((each) => each.white)), words, band });
-  const flicker = counted(receiver, { channel: 'flicker', noise: largestNoise(found.map((each) => each.flicker)), words, band });
+  const inputs = noisyInputs(receiver, stating).map((input) => (0 < endless.length ? { ...input, corner: hertz(0) } : input));
+  const largest = keptNoise(circuits, ['input', inputs, band], cache, () => {
+    const found = circuits.readings.map((reading) => inputNoise(reading, inputs, band));
+    return { white: largestNoise(found.map(({ white }) => white)), flicker: largestNoise(found.map(({ flicker }) => flicker)) };
+  });
+  const words = [...circuits.assumptions, ...assumedOf(receiver, stating)];
+  const white = counted(receiver, { channel: 'amplifier', noise: largest.white, words, band });
+  const flicker = counted(receiver, { channel: 'flicker', noise: largest.flicker, words, band });
   return {
     noises: [...white.noises, ...flicker.noises],
     lacking: [
