@@ -91,3 +91,33 @@ describe('hover', () => {
     assert.match(markdown, /In one\\\.quiet:[^]*---[^]*In two\\\.quiet:/);
   });
 });
+
+describe('hover on a way', () => {
+  const ways = `${layers}net A { swing 24 V; rise 40 ns; source 5 ohm; load 10 kohm, 470 pF }
+net V { source 1 kohm; load 1 Mohm; tolerates 5 mV peak }
+## Out and back.
+loop out on TOP { carries A; rectangle 20 mm by 9 mm; strip 1 mm; area at most 120 mm2 }
+loop in on TOP { senses V; rectangle 10 mm by 3 mm at (24 mm, 0 mm); wire 0.3 mm }
+return ground { strip 30 mm by 1.5 mm on TOP; carries A; refers V }
+link body { between A and V; capacitance 0.2 pF }
+`;
+  const checkWay = (title: string, [from, to]: readonly [string, string], ...phrases: readonly (string | RegExp)[]) => {
+    assert.ok(ways.includes(from), from);
+    atCursor(title, { 'board.quiet': ways.replace(from, to) }, ({ session, path, offset }) => {
+      const answer = hover(session, path, offset);
+      assert.ok(answer, 'no hover');
+      let at = 0;
+      for (const phrase of phrases) {
+        const rest = answer.markdown.slice(at);
+        const found = typeof phrase === 'string' ? rest.indexOf(phrase) : rest.search(phrase);
+        assert.ok(0 <= found, `${phrase} is not in, or not in this order:\n${answer.markdown}`);
+        at += found;
+      }
+    });
+  };
+  checkWay('a loop that carries', ['loop out', 'loop o<|>ut'], 'Out and back.', '**loop out**: 180 mm², 58 mm around, ', 'nH', 'Its limits: 120 mm² at most.', /Mutual inductance: -?[\d.]+ [pn]H with in\./, '| A → V | **', 'It rests on');
+  checkWay('a loop that senses', ['loop in', 'loop i<|>n'], '**loop in**: 30 mm²', 'A → V');
+  checkWay('a shared return', ['return ground', 'return gro<|>und'], '**return ground**: 10.', 'mΩ at dc, ', 'nH', 'upper bound', 'A → V');
+  checkWay('a link', ['link body', 'link bo<|>dy'], '**link body**: 200 fF between the load ends of A and V', 'A → V');
+  checkWay('a net: all of it, and where', ['net V', 'net V<|>'], '**V**: a receiver', '| loop | A | loop out |');
+});

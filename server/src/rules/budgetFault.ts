@@ -86,7 +86,7 @@ function originInText({ channel, from, where }: Contribution): string {
   return from === null ? `its own ${channel} noise` : `${from}${place}`;
 }
 
-const placeWords: Readonly<Record<Channel, string>> = {
+export const placeWords: Readonly<Record<Channel, string>> = {
   coupled: 'run', link: 'link', loop: 'loop', 'shared return': 'return', radiated: 'field', thermal: 'net', amplifier: 'net', flicker: 'net', contact: 'net',
 };
 

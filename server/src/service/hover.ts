@@ -12,6 +12,7 @@ import { escaped, escapedLines, paragraphs } from './hover/markdown';
 import { signalHover } from './hover/netHover';
 import { runHover, runPointHover } from './hover/runHover';
 import { runPointAt } from './hover/runPoint';
+import { wayHover } from './hover/wayHover';
 import { keywordDocumentation } from './keywordDocumentation';
 import { namesAt } from './namesAt';
 import type { Analysis, Session } from './session';
@@ -66,7 +67,7 @@ const namesShown = 4;
 function nameHover(analysis: Analysis, record: NameRecord): string | null {
   const signal = signalOf(analysis.project, record);
   if (signal !== null) return signalHover(analysis, signal);
-  if (record.kind !== 'run') return declarationHover(analysis.project, record);
+  if (record.kind !== 'run') return wayHover(analysis.evaluation, record) ?? declarationHover(analysis.project, record);
   const result = analysis.evaluation.runs.find(({ run }) => run.name === record.name);
   return result === undefined ? null : runHover(result);
 }

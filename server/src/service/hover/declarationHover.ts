@@ -13,9 +13,6 @@ export function declarationHover(project: Project, { kind, name }: NameRecord): 
     case 'conductor': return paragraphs(`**${escaped(name)}**`, 'A guard or a return in a row: part of the reference.');
     case 'board': return boardHover(project, name);
     case 'stackup': return stackupHover(project.stackups.find((stackup) => stackup.name === name));
-    case 'loop': return declared(kind, project.loops.find((each) => each.name === name));
-    case 'return': return declared(kind, project.returns.find((each) => each.name === name));
-    case 'link': return declared(kind, project.links.find((each) => each.name === name));
     case 'shield': return declared(kind, project.shields.find((each) => each.name === name));
     case 'ambient': return declared(kind, project.ambients.find((each) => each.name === name));
     default: return null;

@@ -1,7 +1,7 @@
 /** A net or pair: what it does, its budget with what makes it up, and what it does to others. */
 import type { End, Net, Pair, Project, Signal } from '../../board/model';
 import type { Budget, Contribution } from '../../budget/results';
-import { causeInText, budgetFault, excessInText, receiverInText, remedyInText, shareOf, voltageInText } from '../../rules/budgetFault';
+import { causeInText, budgetFault, excessInText, placeWords, receiverInText, remedyInText, shareOf, voltageInText } from '../../rules/budgetFault';
 import { inText } from '../../units/inText';
 import type { Analysis } from '../session';
 import { tolerancesInWords } from './tolerancesInWords';
@@ -96,8 +96,8 @@ function channelInWords({ channel, coupling }: Contribution): string {
   return `${channel}, ${capacitive < inductive ? 'mostly inductive' : 'mostly capacitive'}`;
 }
 
-function whereInWords({ where, group }: Contribution): string {
-  return [...(where === null ? [] : [`run ${escaped(where)}`]), ...(group === null ? [] : [`switches with ${escaped(group)}`])].join(', ');
+function whereInWords({ channel, where, group }: Contribution): string {
+  return [...(where === null ? [] : [`${placeWords[channel]} ${escaped(where)}`]), ...(group === null ? [] : [`switches with ${escaped(group)}`])].join(', ');
 }
 
 function valueInWords({ value, unfiltered }: Contribution, budget: Budget): string {
