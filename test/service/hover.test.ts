@@ -115,7 +115,7 @@ link body { between A and V; capacitance 0.2 pF }
       }
     });
   };
-  checkWay('a loop that carries', ['loop out', 'loop o<|>ut'], 'Out and back.', '**loop out**: 180 mm², 58 mm around, ', 'nH', 'Its limits: 120 mm² at most.', /Mutual inductance: -?[\d.]+ [pn]H with in\./, '| A → V | **', 'It rests on');
+  checkWay('a loop that carries', ['loop out', 'loop o<|>ut'], '**loop out**: 180 mm², 58 mm around, ', 'nH', 'Its limits: 120 mm² at most.', /Mutual inductance: -?[\d.]+ [pn]H with in\./, '| A → V | **', 'It rests on');
   checkWay('a loop that senses', ['loop in', 'loop i<|>n'], '**loop in**: 30 mm²', 'A → V');
   checkWay('a shared return', ['return ground', 'return gro<|>und'], '**return ground**: 10.', 'mΩ at dc, ', 'nH', 'upper bound', 'A → V');
   checkWay('a link', ['link body', 'link bo<|>dy'], '**link body**: 200 fF between the load ends of A and V', 'A → V');
