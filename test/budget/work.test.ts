@@ -35,6 +35,20 @@ describe('the work of an evaluation', () => {
     assert.deepEqual(workOf(largeBoard().replace('rise 2 ns', 'rise 3 ns'), cache), { sectionsSolved: 0, linesSolved: runs / 20, circuitsSolved: 0, inductancesSolved: 0 });
   });
 
+  it('of one loop among sixty is its own inductance, its mutual ones and the circuits of its receiver', () => {
+    const [carrying, sensing] = [30, 30];
+    const board = (width: (index: number) => number) => [
+      ...Array.from({ length: carrying }, (_, i) => `net A${i} { swing 3.3 V; rise 5 ns; source 33 ohm; load 1 kohm }\nloop out${i} { carries A${i}; rectangle 8 mm by 4 mm at (${12 * i + 0.01 * i * i} mm, 0 mm); wire 0.4 mm }`),
+      ...Array.from({ length: sensing }, (_, i) => `net V${i} { source 1 kohm; load 1 Mohm; tolerates 1 V peak }\nloop in${i} { senses V${i}; rectangle ${width(i)} mm by 3 mm at (${12 * i + 0.013 * i * i} mm, 10 mm); wire 0.4 mm }`),
+    ].join('\n');
+    const cache = createSolveCache();
+    const first = workOf(board(() => 8), cache);
+    assert.equal(first.circuitsSolved, carrying * sensing);
+    assert.equal(first.inductancesSolved, carrying + sensing + carrying * sensing);
+    assert.deepEqual(workOf(board(() => 8), cache), { sectionsSolved: 0, linesSolved: 0, circuitsSolved: 0, inductancesSolved: 0 });
+    assert.deepEqual(workOf(board((i) => (i === 7 ? 7.5 : 8)), cache), { sectionsSolved: 0, linesSolved: 0, circuitsSolved: carrying, inductancesSolved: 1 + carrying });
+  });
+
   it('is shared by runs that are alike', () => {
     const cache = createSolveCache();
     assert.deepEqual(workOf(largeBoard((line) => line.replace(/gap .* mm/, 'gap 0.3 mm')), cache), { sectionsSolved: 1, linesSolved: 1, circuitsSolved: 0, inductancesSolved: 0 });

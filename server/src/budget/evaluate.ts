@@ -6,6 +6,7 @@ import type { Project, Run } from '../board/model';
 import { budgetsOf } from './budgets';
 import { heardOverCircuits } from './lumpedPaths';
 import { assumptionsFor } from './ends';
+import type { Heard } from './heard';
 import { loopInductances } from './loops/loopInductances';
 import { loopLimits } from './loops/loopLimits';
 import { loopResult } from './loops/loopResult';
@@ -39,7 +40,7 @@ export function evaluate(project: Project, cache: SolveCache): Evaluation {
     returns: project.returns.map((shared) => returnResult(project, shared, cache)),
     loops: project.loops.map((loop) => loopResult(project, loop, inductances)),
     limits: [...outcomes.flatMap(({ limits }) => limits), ...project.loops.flatMap((loop) => loopLimits(loop, roles, inductances))],
-    assumedEnds: assumedEnds(outcomes),
+    assumedEnds: assumedEnds([...outcomes.flatMap(({ coupled }) => coupled), ...circuits.heard.flatMap((heard) => rolesIn(heard, roles))]),
     work: { sectionsSolved: after.sectionsSolved - before.sectionsSolved, linesSolved: after.linesSolved - before.linesSolved, circuitsSolved: after.circuitsSolved - before.circuitsSolved, inductancesSolved: after.inductancesSolved - before.inductancesSolved },
   };
 }
@@ -62,7 +63,12 @@ function guarded(run: Run, roles: Roles, solved: (run: Run) => SolvedRun): RunOu
   }
 }
 
-function assumedEnds(outcomes: readonly RunOutcome[]): readonly AssumedEnd[] {
-  const roles = new Set<Role>(outcomes.flatMap(({ coupled }) => coupled));
-  return [...roles].flatMap((role) => assumptionsFor(role).map((assumption) => ({ net: role.net, ...assumption })));
+/** Nets whose ends took part: a current that is stated is that current, whatever its net ends in. */
+function rolesIn({ channel, source, receiver }: Heard, roles: Roles): readonly Role[] {
+  const moving = channel !== 'link' && source.signal.current !== null ? [] : source.moves;
+  return [...moving, ...receiver.terms].map(({ net }) => roles.get(net)!);
+}
+
+function assumedEnds(coupled: readonly Role[]): readonly AssumedEnd[] {
+  return [...new Set(coupled)].flatMap((role) => assumptionsFor(role).map((assumption) => ({ net: role.net, ...assumption })));
 }
