@@ -39,7 +39,7 @@ describe('the work of an evaluation', () => {
     const [carrying, sensing] = [30, 30];
     const board = (width: (index: number) => number) => [
       ...Array.from({ length: carrying }, (_, i) => `net A${i} { swing 3.3 V; rise 5 ns; source 33 ohm; load 1 kohm }\nloop out${i} { carries A${i}; rectangle 8 mm by 4 mm at (${12 * i + 0.01 * i * i} mm, 0 mm); wire 0.4 mm }`),
-      ...Array.from({ length: sensing }, (_, i) => `net V${i} { source 1 kohm; load 1 Mohm; tolerates 1 V peak }\nloop in${i} { senses V${i}; rectangle ${width(i)} mm by 3 mm at (${12 * i + 0.013 * i * i} mm, 10 mm); wire 0.4 mm }`),
+      ...Array.from({ length: sensing }, (_, i) => `net V${i} { source 1 kohm; load 1 Mohm; tolerates 1 V peak }\nloop in${i} { senses V${i}; rectangle ${width(i)} mm by ${3 + 0.0137 * i} mm at (${12 * i + 0.013 * i * i + 0.37} mm, 10 mm); wire 0.4 mm }`),
     ].join('\n');
     const cache = createSolveCache();
     const first = workOf(board(() => 8), cache);
