@@ -2,7 +2,7 @@
  * What a changed run would put on given receivers: the model's own evaluation, of the runs that matter
  * to them only, so that a search costs what it changes.
  */
-import type { Net, Project, Run } from '../board/model';
+import type { Net, Pair, Project, Run } from '../board/model';
 import type { Budget, Contribution, Evaluation } from '../budget/results';
 import type { FixContext } from './fix';
 
@@ -18,7 +18,12 @@ export interface Trial {
 }
 
 export function trial(context: FixContext, changes: readonly Change[], budgets: readonly Budget[]): Trial {
-  const evaluation = context.evaluateProject(changed(context.project, changes, budgets));
+  return trialOfProject(context, withRuns(context.project, changes), budgets);
+}
+
+/** The same of a board that is changed in any other way: its loops, its nets. */
+export function trialOfProject(context: FixContext, project: Project, budgets: readonly Budget[]): Trial {
+  const evaluation = context.evaluateProject(concerning(project, budgets));
   return { evaluation, budgets: budgets.map((budget) => sameBudget(evaluation, budget)) };
 }
 
@@ -40,18 +45,33 @@ export function partOf(budget: Budget | null, { from, where }: Contribution): nu
   return budget?.contributions.find((other) => other.from === from && other.where === where)?.value ?? 0;
 }
 
-/** The runs that the receivers lie in, and the nets in those: nothing else puts anything on them. */
-function changed(project: Project, changes: readonly Change[], budgets: readonly Budget[]): Project {
+/** The runs that the receivers lie in, the nets in those, and those of every other way: nothing else puts anything on them. */
+function concerning(project: Project, budgets: readonly Budget[]): Project {
   const receivers = new Set(budgets.flatMap(({ subject }) => (subject.kind === 'net' ? [subject.name] : [subject.plus?.name, subject.minus?.name])));
   const runs = project.runs.filter((run) => netsOf(run).some(({ name }) => receivers.has(name)));
-  const concerned = new Set(runs.flatMap(netsOf));
+  const concerned = new Set([...runs.flatMap(netsOf), ...netsOutsideRuns(project)]);
   return {
     ...project,
-    runs: runs.map((run) => changes.find(({ before }) => before === run)?.after ?? run),
+    runs,
     nets: new Map([...project.nets].filter(([name, net]) => concerned.has(net) || receivers.has(name))),
   };
 }
 
+function withRuns(project: Project, changes: readonly Change[]): Project {
+  return { ...project, runs: project.runs.map((run) => changes.find(({ before }) => before === run)?.after ?? run) };
+}
+
 function netsOf(run: Run): readonly Net[] {
   return run.rows.flatMap(({ conductors }) => conductors.flatMap((conductor) => (conductor.kind === 'trace' ? [conductor.net] : [])));
+}
+
+function netsOutsideRuns({ pairs, loops, returns, links }: Project): readonly Net[] {
+  const ofPair = ({ plus, minus }: Pair) => [plus, minus].filter((net) => net !== null);
+  const of = (signal: Net | Pair) => (signal.kind === 'net' ? [signal] : ofPair(signal));
+  return [
+    ...[...pairs.values()].flatMap(ofPair),
+    ...loops.flatMap(({ carries, senses }) => [...carries.map(({ net }) => net), ...senses.flatMap(({ signal }) => of(signal))]),
+    ...returns.flatMap(({ carries, refers }) => [...carries.map(({ net }) => net), ...refers.flatMap(({ signal }) => of(signal))]),
+    ...links.flatMap(({ from, to }) => [from, to]),
+  ];
 }
