@@ -9,6 +9,8 @@ import { contributionsOf } from './contributions';
 import type { Heard } from './heard';
 import { lackingOutside } from './notYetCounted';
 import { ownNoise } from './ownNoise';
+import type { Pickup } from './radiated/pickups';
+import { radiatedNoise } from './radiated/radiatedNoise';
 import type { Receiver } from './receivers';
 import type { Budget, Contribution, Unaccounted, Verdict } from './results';
 import type { Roles } from './roles';
@@ -20,15 +22,18 @@ export interface Channels {
   readonly lacking: readonly { readonly receiver: Receiver; readonly unaccounted: Unaccounted }[];
 }
 
-interface Cached {
+interface Solving {
   readonly cache: SolveCache;
+  /** Where fields from outside reach the receivers. */
+  readonly pickups: readonly Pickup[];
 }
 
 /** In the order of the text: files as they are used, then places. */
-export function budgetsOf(project: Project, roles: Roles, receivers: readonly Receiver[], channels: Channels & Cached): readonly Budget[] {
+export function budgetsOf(project: Project, roles: Roles, receivers: readonly Receiver[], channels: Channels & Solving): readonly Budget[] {
   const heard = byReceiver(channels.heard, (each) => each);
   const lacking = byReceiver(channels.lacking, ({ unaccounted }) => unaccounted);
-  const budgets = receivers.flatMap((receiver) => receiverBudgets(project, roles, receiver, { cache: channels.cache, heard: heard.get(receiver) ?? [], lacking: lacking.get(receiver) ?? [] }));
+  const pickups = byReceiver(channels.pickups, (each) => each);
+  const budgets = receivers.flatMap((receiver) => receiverBudgets(project, roles, receiver, { cache: channels.cache, pickups: pickups.get(receiver) ?? [], heard: heard.get(receiver) ?? [], lacking: lacking.get(receiver) ?? [] }));
   const files = new Map(project.files.map((path, index) => [path, index]));
   const rank = ({ subject: { place } }: Budget) => files.get(place.path) ?? files.size;
   return budgets.sort((a, b) => rank(a) - rank(b) || a.subject.place.span.start - b.subject.place.span.start);
@@ -44,23 +49,24 @@ function byReceiver<Each extends { readonly receiver: Receiver }, Value>(all: re
   return found;
 }
 
-interface ReceiverChannels extends Cached {
+interface ReceiverChannels extends Solving {
   readonly heard: readonly Heard[];
   readonly lacking: readonly Unaccounted[];
 }
 
-function receiverBudgets(project: Project, roles: Roles, receiver: Receiver, { cache, heard, lacking }: ReceiverChannels): readonly Budget[] {
+function receiverBudgets(project: Project, roles: Roles, receiver: Receiver, { cache, pickups, heard, lacking }: ReceiverChannels): readonly Budget[] {
   const outside = lackingOutside(project, receiver);
   return (['peak', 'rms'] as const).flatMap((measure) => {
     const tolerates = measure === 'peak' ? receiver.toleratesPeak : receiver.toleratesRms;
     if (tolerates === null) return [];
     const counted = contributionsOf(heard, measure);
     const own = ownNoise({ project, roles, cache }, receiver, measure);
+    const fields = radiatedNoise(project.ambients, pickups, receiver, measure, cache);
     return [budgetOf(project, receiver, {
       measure,
       tolerates,
-      contributions: [...counted.contributions, ...own.contributions],
-      unaccounted: once([...lacking, ...outside, ...counted.lacking, ...own.lacking]),
+      contributions: [...counted.contributions, ...fields.contributions, ...own.contributions],
+      unaccounted: once([...lacking, ...outside, ...counted.lacking, ...fields.lacking, ...own.lacking]),
     })];
   });
 }

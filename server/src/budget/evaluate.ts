@@ -10,6 +10,8 @@ import type { Heard } from './heard';
 import { loopInductances } from './loops/loopInductances';
 import { loopLimits } from './loops/loopLimits';
 import { loopResult } from './loops/loopResult';
+import { fieldLimits } from './radiated/fieldLimits';
+import { pickupsOf } from './radiated/pickups';
 import { receiversOf } from './receivers';
 import { returnResult } from './returns/returnResult';
 import { rolesOf, type Role, type Roles } from './roles';
@@ -30,7 +32,8 @@ export function evaluate(project: Project, cache: SolveCache): Evaluation {
   const inductances = loopInductances(project, cache);
   const circuits = heardOverCircuits(project, roles, receivers, { cache, inductances });
   const channels = { heard: [...outcomes.flatMap(({ heard }) => heard), ...circuits.heard], lacking: [...outcomes.flatMap(({ lacking }) => lacking), ...circuits.lacking] };
-  const budgets = budgetsOf(project, roles, receivers, { ...channels, cache });
+  const pickups = project.ambients.length === 0 ? [] : pickupsOf(receivers, { project, roles, inductances, cache });
+  const budgets = budgetsOf(project, roles, receivers, { ...channels, cache, pickups });
   const after = cache.work();
   return {
     project,
@@ -39,7 +42,7 @@ export function evaluate(project: Project, cache: SolveCache): Evaluation {
     budgets,
     returns: project.returns.map((shared) => returnResult(project, shared, cache)),
     loops: project.loops.map((loop) => loopResult(project, loop, inductances)),
-    limits: [...outcomes.flatMap(({ limits }) => limits), ...project.loops.flatMap((loop) => loopLimits(loop, roles, inductances))],
+    limits: [...outcomes.flatMap(({ limits }) => limits), ...project.loops.flatMap((loop) => loopLimits(loop, roles, inductances)), ...fieldLimits(project.ambients, pickups)],
     assumedEnds: assumedEnds([...outcomes.flatMap(({ coupled }) => coupled), ...circuits.heard.flatMap((heard) => rolesIn(heard, roles))]),
     work: { sectionsSolved: after.sectionsSolved - before.sectionsSolved, linesSolved: after.linesSolved - before.linesSolved, circuitsSolved: after.circuitsSolved - before.circuitsSolved, inductancesSolved: after.inductancesSolved - before.inductancesSolved },
   };

@@ -11,11 +11,9 @@ import type { Unaccounted } from './results';
 
 export function lackingOutside(project: Project, receiver: Receiver): readonly Unaccounted[] {
   const heard = heardBy(receiver);
-  const ambients = ambientsOnto(project, heard);
-  const sensing = project.loops.some((loop) => senses(loop, heard));
   return [
-    ...ambients,
-    ...(0 < ambients.length || sensing ? shieldsOver(project, heard) : []),
+    // A shield acts on what loops and fields bring: without those there is nothing that it would change.
+    ...(reachedByFields(project, heard) || project.loops.some((loop) => senses(loop, heard)) ? shieldsOver(project, heard) : []),
     ...unread(project, heard),
   ];
 }
@@ -36,13 +34,11 @@ function senses(loop: Loop, heard: HeardBy): boolean {
 }
 
 /** An ambient field acts on each loop that senses the net and on each of its traces in a run. */
-function ambientsOnto(project: Project, heard: HeardBy): readonly Unaccounted[] {
-  const inRun = project.runs.some((run) => run.rows.some((row) => row.conductors.some((conductor) => conductor.kind === 'trace' && heard.has(conductor.net))));
-  if (!inRun && !project.loops.some((loop) => senses(loop, heard))) return [];
-  return project.ambients.map((ambient) => absent(`ambient ${ambient.name}`, ambient.place));
+function reachedByFields({ ambients, runs, loops }: Project, heard: HeardBy): boolean {
+  const inRun = () => runs.some((run) => run.rows.some((row) => row.conductors.some((conductor) => conductor.kind === 'trace' && heard.has(conductor.net))));
+  return 0 < ambients.length && (inRun() || loops.some((loop) => senses(loop, heard)));
 }
 
-/** A shield acts on what loops and fields bring: without those there is nothing that it would change. */
 function shieldsOver(project: Project, heard: HeardBy): readonly Unaccounted[] {
   const covers = (subject: Net | Pair | Loop) => ('kind' in subject ? heard.has(subject) : senses(subject, heard));
   return project.shields.filter((shield) => shield.covers.some(({ subject }) => covers(subject))).map((shield) => absent(`shield ${shield.name}`, shield.place));

@@ -57,7 +57,7 @@ const edges = { rise: 'rising', fall: 'falling', sine: 'sine' } as const;
 
 function sourceOf({ channel, from, where, group, coupling }: Contribution): string {
   if (from === null) return `${channel} noise`;
-  if (channel !== 'coupled') return `${from} by ${channel === 'radiated' ? 'field' : channel} ${where ?? ''}${group === null ? '' : `, group ${group}`}`;
+  if (channel !== 'coupled') return `${channel === 'radiated' ? `field ${from} around` : `${from} by ${channel}`} ${where ?? ''}${group === null ? '' : `, group ${group}`}`;
   const edge = coupling === null ? '' : `, ${edges[coupling.edge]}`;
   return `${from} in ${where}${edge}${group === null ? '' : `, group ${group}`}`;
 }

@@ -87,7 +87,7 @@ function originInText({ channel, from, where }: Contribution): string {
 }
 
 export const placeWords: Readonly<Record<Channel, string>> = {
-  coupled: 'run', link: 'link', loop: 'loop', 'shared return': 'return', radiated: 'field', thermal: 'net', amplifier: 'net', flicker: 'net', contact: 'net',
+  coupled: 'run', link: 'link', loop: 'loop', 'shared return': 'return', radiated: 'the contour of', thermal: 'net', amplifier: 'net', flicker: 'net', contact: 'net',
 };
 
 const remedies: Readonly<Record<Channel, string>> = {

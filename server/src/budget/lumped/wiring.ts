@@ -20,6 +20,8 @@ export interface WiredNet {
   readonly sourceBranch: number | null;
   /** In the order of the series parts. */
   readonly series: readonly number[];
+  /** Nodes. */
+  readonly source: number;
   readonly load: number;
 }
 
@@ -61,7 +63,8 @@ export class Wiring {
     // A net of a source or a receiver never ends in its characteristic resistance.
     const condition = { moves, unstated, characteristic: ohms(NaN) };
     const [source, load] = [sourceEnd(role, condition), loadEnd(role, condition)];
-    let node = this.node();
+    const first = this.node();
+    let node = first;
     const sourceBranch = source.resistance === Infinity ? null : this.branch(sourceReference, node, { resistance: source.resistance, inductance: henries(0) });
     this.shunt(node, sourceReference, { resistance: ohms(Infinity), capacitance: source.capacitance });
     const wired = series.map((part) => {
@@ -71,7 +74,7 @@ export class Wiring {
       return branch;
     });
     this.shunt(node, loadReference, load);
-    return { sourceBranch, series: wired, load: node };
+    return { sourceBranch, series: wired, source: first, load: node };
   }
 
   /** What lies across the loads of pairs of which both nets are wired. */

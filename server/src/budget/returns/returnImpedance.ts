@@ -10,7 +10,7 @@ import { boardTemperature } from '../boardTemperature';
 import { stackupHeights } from '../loops/stackupHeights';
 import type { SolveCache } from '../solveCache';
 import { stripInductance } from '../stripInductance';
-import { onGrid } from './onGrid';
+import { onGrid, skinGrid } from '../onGrid';
 
 export interface ReturnImpedance {
   readonly resistance: (frequency: Frequency) => Resistance;
@@ -46,7 +46,7 @@ function stripImpedance({ length, width, layer, stackup }: Extract<ReturnPiece, 
   const perLength = onGrid((frequency) => {
     const key = `resistance ${width.value} ${layer.thickness.value} ${overPlane ?? '-'} ${temperature} ${frequency}`;
     return cache.inductance(key, () => traceResistance({ width: width.value, thickness: layer.thickness.value, overPlane, temperature }, frequency)).perLength;
-  });
+  }, skinGrid);
   const resistance = (frequency: Frequency) => ohms(length.value * perLength(frequency));
   const section = over === null ? null : stripInductance({ layer, stackup, width: width.value, over: [over] }, cache);
   if (section !== null) return { resistance, inductance: henries(section.inductance * length.value), errorBar: section.errorBar + resistanceError, assumptions: ['the plane under the return has no resistance'] };

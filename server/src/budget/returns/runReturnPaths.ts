@@ -9,7 +9,7 @@ import { boardTemperature } from '../boardTemperature';
 import type { LumpedPath } from '../lumped/lumpedPath';
 import { hears, type Roles } from '../roles';
 import type { SolveCache } from '../solveCache';
-import { onGrid } from './onGrid';
+import { onGrid, skinGrid } from '../onGrid';
 import { returnPath, type Shared } from './returnPaths';
 
 export function runReturnPaths(project: Project, roles: Roles, cache: SolveCache): readonly LumpedPath[] {
@@ -36,7 +36,7 @@ function returnOf(run: Run, project: Project, cache: SolveCache): Shared | null 
   const temperature = boardTemperature(project);
   const conductors = run.rows.flatMap(({ layer, conductors: all }) => all.filter(({ kind }) => kind !== 'trace').map(({ width }) => ({ width: width.value, thickness: layer.thickness.value })));
   if (conductors.length === 0) return null;
-  const perLength = conductors.map(({ width, thickness }) => onGrid((frequency) => cache.inductance(`resistance ${width} ${thickness} - ${temperature} ${frequency}`, () => traceResistance({ width, thickness, overPlane: null, temperature }, frequency)).perLength));
+  const perLength = conductors.map(({ width, thickness }) => onGrid((frequency) => cache.inductance(`resistance ${width} ${thickness} - ${temperature} ${frequency}`, () => traceResistance({ width, thickness, overPlane: null, temperature }, frequency)).perLength, skinGrid));
   return {
     name: run.name,
     place: run.place,
