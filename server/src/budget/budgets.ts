@@ -7,7 +7,6 @@ import type { Given, Project } from '../board/model';
 import { decibels, type Decibels, type Voltage } from '../units/quantity';
 import { contributionsOf } from './contributions';
 import type { Heard } from './heard';
-import { lackingOutside } from './notYetCounted';
 import { ownNoise } from './ownNoise';
 import type { Pickup } from './radiated/pickups';
 import { radiatedNoise } from './radiated/radiatedNoise';
@@ -16,6 +15,7 @@ import type { Budget, Contribution, Unaccounted, Verdict } from './results';
 import type { Roles } from './roles';
 import type { SolveCache } from './solveCache';
 import { totalOf } from './totals';
+import { unreadFor } from './unread';
 
 export interface Channels {
   readonly heard: readonly Heard[];
@@ -55,7 +55,7 @@ interface ReceiverChannels extends Solving {
 }
 
 function receiverBudgets(project: Project, roles: Roles, receiver: Receiver, { cache, pickups, heard, lacking }: ReceiverChannels): readonly Budget[] {
-  const outside = lackingOutside(project, receiver);
+  const unread = unreadFor(project, receiver);
   return (['peak', 'rms'] as const).flatMap((measure) => {
     const tolerates = measure === 'peak' ? receiver.toleratesPeak : receiver.toleratesRms;
     if (tolerates === null) return [];
@@ -66,7 +66,7 @@ function receiverBudgets(project: Project, roles: Roles, receiver: Receiver, { c
       measure,
       tolerates,
       contributions: [...counted.contributions, ...fields.contributions, ...own.contributions],
-      unaccounted: once([...lacking, ...outside, ...counted.lacking, ...fields.lacking, ...own.lacking]),
+      unaccounted: once([...lacking, ...unread, ...counted.lacking, ...fields.lacking, ...own.lacking]),
     })];
   });
 }

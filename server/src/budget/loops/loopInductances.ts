@@ -4,10 +4,11 @@
  */
 import type { Loop, Project } from '../../board/model';
 import { conductorHalfWidth } from '../../physics/loops/conductorGmd';
+import { contourDistance } from '../../physics/loops/contourDistance';
 import { contourMeasures, type ContourMeasures } from '../../physics/loops/contourMeasures';
 import { mutualInductance, type MutualInductance } from '../../physics/loops/mutualInductance';
 import { selfInductance, type SelfInductance } from '../../physics/loops/selfInductance';
-import { metres } from '../../units/quantity';
+import { metres, type Length } from '../../units/quantity';
 import type { SolveCache } from '../solveCache';
 import { stripInductance } from '../stripInductance';
 import { boardLoops, contourOf, type BoardLoop } from './boardLoop';
@@ -16,6 +17,8 @@ export interface LoopInductances {
   readonly of: (loop: Loop) => LoopNumbers;
   /** Null where either has no contour. */
   readonly mutual: (first: Loop, second: Loop) => MutualInductance | null;
+  /** Between the middles of their conductors; 0 where either has no contour. */
+  readonly distance: (first: Loop, second: Loop) => Length;
 }
 
 export interface LoopNumbers extends BoardLoop {
@@ -42,6 +45,11 @@ export function loopInductances(project: Project, cache: SolveCache): LoopInduct
   }
   return {
     of: (loop) => numbers.get(loop)!,
+    distance: (first, second) => {
+      const [one, other] = [contourOf(numbers.get(first)!), contourOf(numbers.get(second)!)];
+      if (one === null || other === null) return metres(0);
+      return metres(cache.inductance(`distance ${keys.get(first)!} ${keys.get(second)!}`, () => ({ between: contourDistance(one, other) })).between);
+    },
     mutual: (first, second) => {
       const [one, other] = [numbers.get(first)!, numbers.get(second)!];
       const [contour1, contour2] = [contourOf(one), contourOf(other)];

@@ -5,7 +5,7 @@
  *   source --R--+--( e )--[ L ]--+-- load        C of a trace half at each end
  *              C/2              C/2
  */
-import type { Loop, Net, Place, Project, Run } from '../../board/model';
+import type { Loop, Net, Place, Project, Run, Shield } from '../../board/model';
 import type { Circuit, Drive } from '../../physics/circuit/circuit';
 import { loopContour, type Contour, type ContourPoint } from '../../physics/loops/contour';
 import { farads, henries, metres, ohms, type Length } from '../../units/quantity';
@@ -17,6 +17,7 @@ import { Wiring, type WiredNet } from '../lumped/wiring';
 import type { Receiver } from '../receivers';
 import type { Roles } from '../roles';
 import { runParts, type RunPart } from '../runs/runParts';
+import { shieldsOver, underLoop } from '../shields/shielding';
 import type { SolveCache } from '../solveCache';
 
 export interface Pickup {
@@ -28,6 +29,8 @@ export interface Pickup {
   /** Of the plane that reflects; null without. */
   readonly plane: Length | null;
   readonly variants: readonly PickupCircuit[];
+  /** Over the receiver or its loop. */
+  readonly shields: readonly Shield[];
   readonly assumptions: readonly string[];
 }
 
@@ -61,7 +64,7 @@ interface InSeries {
   readonly capacitance: number;
 }
 
-function inLoop(receiver: Receiver, loop: Loop, { roles, inductances }: PickupContext): readonly Pickup[] {
+function inLoop(receiver: Receiver, loop: Loop, { project, roles, inductances }: PickupContext): readonly Pickup[] {
   const numbers = inductances.of(loop);
   const contour = contourOf(numbers);
   if (contour === null || receiver.kind === 'common') return [];
@@ -75,10 +78,10 @@ function inLoop(receiver: Receiver, loop: Loop, { roles, inductances }: PickupCo
   if (sensed.length === 0) return [];
   const level = contour.form === 'circle' ? contour.centre[2] : contour.points[2];
   const below = numbers.planes.filter((plane) => plane <= level);
-  return [{ receiver, kind: 'loop', name: loop.name, place: loop.place, contour, plane: below.length === 0 ? null : metres(Math.max(...below)), ...circuitsOf(receiver, new Map(sensed), roles) }];
+  return [{ receiver, kind: 'loop', name: loop.name, place: loop.place, contour, plane: below.length === 0 ? null : metres(Math.max(...below)), shields: shieldsOver(project, [...underLoop(loop), receiver.subject, ...receiver.terms.map(({ net }) => net)]), ...circuitsOf(receiver, new Map(sensed), roles) }];
 }
 
-function inRun(receiver: Receiver, run: Run, part: RunPart, { roles }: PickupContext): readonly Pickup[] {
+function inRun(receiver: Receiver, run: Run, part: RunPart, { project, roles }: PickupContext): readonly Pickup[] {
   const { section: { planeAbove, planeBelow } } = part;
   // Between two planes no field gets in.
   if (planeAbove && planeBelow) return [];
@@ -100,7 +103,7 @@ function inRun(receiver: Receiver, run: Run, part: RunPart, { roles }: PickupCon
     inductance: inductance[at * (order + 1)] * length,
     capacitance: capacitance[at * (order + 1)] * length,
   }]));
-  return [{ receiver, kind: 'run', name: run.name, place: part.traces[first.at].whole, contour: made.contour, plane: planeAbove || planeBelow ? metres(0) : null, ...circuitsOf(receiver, inSeries, roles) }];
+  return [{ receiver, kind: 'run', name: run.name, place: part.traces[first.at].whole, contour: made.contour, plane: planeAbove || planeBelow ? metres(0) : null, shields: shieldsOver(project, [receiver.subject, ...receiver.terms.map(({ net }) => net)]), ...circuitsOf(receiver, inSeries, roles) }];
 }
 
 interface Across {

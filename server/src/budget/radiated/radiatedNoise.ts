@@ -14,6 +14,7 @@ import type { Counted } from '../contributions';
 import { onGrid } from '../onGrid';
 import { bandOf, type Receiver } from '../receivers';
 import type { Contribution } from '../results';
+import { shieldsInWords, throughShields } from '../shields/shielding';
 import type { SolveCache } from '../solveCache';
 import { worstOver } from '../worstOver';
 import type { Pickup, PickupCircuit } from './pickups';
@@ -50,7 +51,7 @@ function contributionOf(ambient: Ambient, pickup: Pickup, { receiver, measure, c
     channel: 'radiated', from: name, cause: `field ${name}`, where: pickup.name, place: pickup.place, group: null,
     value: volts(value), unfiltered: band === null ? null : volts(field.value * crest * whole), errorBar: volts(pickupError * value), bounds: null,
     method: `line integral of the field around the ${pickup.kind === 'loop' ? 'loop' : 'trace and its return'}, worst incidence, polarisation and frequency`,
-    assumptions: [...pickup.assumptions, 'a plane wave; its voltage acts on the receiver’s ends as on a short circuit', ...(pickup.plane === null ? [] : ['its plane is endless, and reflects the field'])],
+    assumptions: [...pickup.assumptions, ...shieldsInWords(pickup.shields), 'a plane wave; its voltage acts on the receiver’s ends as on a short circuit', ...(pickup.plane === null ? [] : ['its plane is endless, and reflects the field'])],
     coupling: null, spectrum: null,
   };
 }
@@ -58,17 +59,17 @@ function contributionOf(ambient: Ambient, pickup: Pickup, { receiver, measure, c
 /** Of reading the field's voltage between the frequencies that it is solved for, and of the search for the worst. */
 const pickupError = 0.02;
 
-function keyOf({ contour, plane, variants }: Pickup) {
-  return [contour.form === 'circle' ? contour : [...contour.points], plane, variants.map(({ circuit, drives, terms }) => [circuit.nodes, circuit.shunts.map((shunt) => ({ ...shunt, resistance: String(shunt.resistance) })), circuit.branches, drives, terms])];
+function keyOf({ contour, plane, variants, shields }: Pickup) {
+  return [shields.map(({ sheet, slot, grounded }) => [sheet?.material, sheet?.thickness.value, slot?.value, grounded]), contour.form === 'circle' ? contour : [...contour.points], plane, variants.map(({ circuit, drives, terms }) => [circuit.nodes, circuit.shunts.map((shunt) => ({ ...shunt, resistance: String(shunt.resistance) })), circuit.branches, drives, terms])];
 }
 
 /** Volts for one volt per metre. */
 function receivedFrom(pickup: Pickup, { leak }: Receiver, cache: SolveCache): (frequency: Frequency) => number {
-  const { contour, plane, variants } = pickup;
+  const { contour, plane, variants, shields } = pickup;
   const geometry = JSON.stringify([contour.form === 'circle' ? contour : [...contour.points], plane]);
   const around = onGrid((frequency) => cache.inductance(`pickup ${frequency} ${geometry}`, () => worstPickup(contour, { field: voltsPerMetre(1), frequency }, { plane })).voltage, { perDecade: 16, lowest: 0 });
   const transfers = variants.map((variant) => through(variant, leak));
-  return (frequency) => around(frequency) * Math.max(...transfers.map((transfer) => transfer(frequency)));
+  return (frequency) => around(frequency) * throughShields(shields, { kind: 'plane' }, frequency) * Math.max(...transfers.map((transfer) => transfer(frequency)));
 }
 
 function through({ circuit, drives, terms }: PickupCircuit, leak: number): (frequency: Frequency) => number {
