@@ -100,9 +100,10 @@ interface Noise {
   readonly share: number;
 }
 
+/** Both parts point at a name: an editor that follows one asks what is declared there, and a keyword declares nothing. */
 function noiseHint(run: Run, { whole }: RunConductor & { readonly kind: 'trace' }, { budget, here, total, share }: Noise): Placed {
   const largest = here[0].coupling;
-  const from = largest === null ? null : traceOf(run, largest.aggressor)?.whole ?? null;
+  const from = largest === null ? null : traceOf(run, largest.aggressor)?.place ?? null;
   const tooltip = paragraphs(
     `${voltageInText(total, budget)} on **${escaped(receiverInText(budget))}** in run ${escaped(run.name)}, ${percent(share)} of the ${voltageInText(budget.tolerates, budget)} that it tolerates.`,
     here.slice(0, 6).map(({ from: source, value }) => `- ${inText(value, 'voltage')} from ${escaped(source ?? '')}`).join('\n'),
@@ -110,7 +111,7 @@ function noiseHint(run: Run, { whole }: RunConductor & { readonly kind: 'trace' 
   );
   return {
     place: whole,
-    hint: { kind: 'noise', offset: whole.span.end, parts: [{ text: `≈ ${inText(total, 'voltage')}`, target: from }, { text: ` · ${percent(share)}`, target: budget.toleratesPlace }], tooltip },
+    hint: { kind: 'noise', offset: whole.span.end, parts: [{ text: `≈ ${inText(total, 'voltage')}`, target: from }, { text: ` · ${percent(share)}`, target: budget.subject.place }], tooltip },
   };
 }
 

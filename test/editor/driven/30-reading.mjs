@@ -46,6 +46,50 @@ export const scenes = [
     },
   },
   {
+    title: 'follow a hint: to the source of the noise, and to who hears it',
+    async run({ ui, page, at }) {
+      await ui.open(valve);
+      await ui.waitForText(/≈ [\d.]+ mV · \d+ %/);
+      await ui.followHint(/^≈\s[\d.]+\smV$/);
+      await ui.waitForCaret(...at(valve, 'GATE is gate-drive'));
+      await ui.followHint(/^\s·\s\d+\s%$/);
+      await ui.waitForCaret(...at(valve, 'SENSE {'));
+      assert.equal(await page.locator('.tab.active').filter({ hasText: 'valve.quiet' }).count(), 1);
+    },
+  },
+  {
+    title: 'rest on a hint: what it says in full',
+    async run({ page, ui, shot }) {
+      await ui.open(valve);
+      await ui.waitForText(/≥ [\d.]+ mm/);
+      await ui.hint(/^≈\s[\d.]+\smV$/).hover();
+      assert.match(await ui.hovered(/that it tolerates/), /mV on SENSE in run past-the-sensor, \d+ % of the 2\.00 mV that it tolerates/);
+      await shot('hint-noise');
+      await page.mouse.move(5, 5);
+      await ui.hint(/^no\slength\sis\senough$/).hover();
+      assert.match(await ui.hovered(/No length down to/), /is enough for SENSE: a wider gap, a guard or another layer is/);
+      await shot('hint-length');
+      await page.mouse.move(5, 5);
+      await ui.hint(/^≥\s[\d.]+\smm$/).hover();
+      assert.match(await ui.hovered(/would just do/), /[\d.]+ mm would just do for SENSE/);
+      await shot('hint-gap');
+    },
+  },
+  {
+    title: 'read the hover of a keyword and of a unit',
+    async run({ ui, shot, at }) {
+      await ui.open(valve);
+      await ui.waitForSquiggles('error', 1);
+      await ui.caret(...at(valve, 'tolerates 2 mV', 3));
+      const word = await ui.hover(/noise/);
+      await shot('hover-keyword');
+      assert.match(word, /tolerates \(VOLTAGE peak\|rms \| none\)/);
+      await ui.caret(...at(valve, '8 pF', 3));
+      assert.match(await ui.hover(/measures/), /pF measures a capacitance: 1 pF is 1e-12 F\./);
+      await shot('hover-unit');
+    },
+  },
+  {
     title: 'follow a finding to the page of its rule',
     async run({ page, ui, shot, at }) {
       await ui.open(valve);
@@ -53,7 +97,10 @@ export const scenes = [
       await ui.caret(...at(valve, 'net SENSE', 6));
       await ui.hover();
       await page.locator('.monaco-hover a').filter({ hasText: 'over-budget' }).first().click();
-      await page.locator('.tab.active').filter({ hasText: 'over-budget.md' }).waitFor({ timeout: 10_000 });
+      await page.locator('.tab.active').filter({ hasText: 'over-budget' }).waitFor();
+      const text = page.frameLocator('iframe.webview.ready').frameLocator('#active-frame').locator('body');
+      await text.filter({ hasText: 'Why it matters.' }).waitFor();
+      assert.match(await text.innerText(), /^over-budget\s+A receiver on which the noise/);
       await shot('rule-page');
     },
   },
@@ -64,7 +111,7 @@ export const scenes = [
       await ui.waitForSquiggles('error', 1);
       await page.locator('[id="status.languageStatus"]').first().hover();
       const card = page.locator('.hover-language-status').first();
-      await card.waitFor({ timeout: 10_000 });
+      await card.waitFor();
       await shot('status');
       assert.match((await card.textContent()).replace(/\s/g, ' '), /SENSE: [\d.]+ dB over/);
     },

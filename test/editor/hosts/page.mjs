@@ -4,10 +4,16 @@ export function actions(page, screenshots) {
   const input = page.locator('.quick-input-widget input').first();
   const widget = page.locator('.quick-input-widget');
 
+  const exactly = (text) => new RegExp(`^\\s*${text.replace(/\W/g, '\\$&')}\\s*$`);
+  const suggestion = (label) => page.locator('.suggest-widget.visible .monaco-list-row').filter({ has: page.locator('.label-name', { hasText: exactly(label) }) }).first();
+
+  // Generous: other work may keep the machine busy. A wait that is met takes no longer for it.
+  page.setDefaultTimeout(60_000);
+
   const ui = {
     async ready() {
-      await page.waitForSelector('.monaco-workbench', { timeout: 60_000 });
-      await page.locator('[id="workbench.parts.statusbar"]').waitFor({ timeout: 60_000 });
+      await page.waitForSelector('.monaco-workbench');
+      await page.locator('[id="workbench.parts.statusbar"]').waitFor();
     },
 
     async command(title) {
@@ -15,7 +21,7 @@ export function actions(page, screenshots) {
       await input.waitFor({ state: 'visible' });
       await input.fill(`>${title}`);
       const row = page.locator('.quick-input-list .monaco-list-row').filter({ hasText: title }).first();
-      await row.waitFor({ timeout: 15_000 });
+      await row.waitFor();
       await row.click();
       await widget.waitFor({ state: 'hidden' });
     },
@@ -25,13 +31,13 @@ export function actions(page, screenshots) {
       const parts = file.split('/');
       for (const [at, part] of parts.entries()) {
         const row = page.locator(`.explorer-folders-view .monaco-list-row[aria-level="${at + 1}"]`).filter({ has: page.locator('.label-name', { hasText: new RegExp(`^${part.replace(/\W/g, '\\$&')}$`) }) }).first();
-        await row.waitFor({ timeout: 30_000 });
+        await row.waitFor();
         if (at === parts.length - 1) await row.dblclick();
         else if ((await row.getAttribute('aria-expanded')) === 'false') await row.click();
       }
       const name = parts[parts.length - 1];
       await page.locator('.tab.active').filter({ hasText: name }).waitFor();
-      await page.locator(`${editor} .view-line`).first().waitFor({ timeout: 30_000 });
+      await page.locator(`${editor} .view-line`).first().waitFor();
       await page.mouse.move(5, 5);
     },
 
@@ -52,7 +58,34 @@ export function actions(page, screenshots) {
       await input.fill(`:${line}:${column}`);
       await page.keyboard.press('Enter');
       await widget.waitFor({ state: 'hidden' });
-      await page.locator('[id="status.editor.selection"]').filter({ hasText: `Ln ${line}, Col ${column}` }).waitFor({ timeout: 5000 });
+      await ui.waitForCaret(line, column);
+    },
+
+    async waitForCaret(line, column) {
+      await page.locator('[id="status.editor.selection"]').filter({ hasText: new RegExp(`^Ln ${line}, Col ${column}( |$)`) }).waitFor();
+    },
+
+    /** A part of a hint, by all of its text. */
+    hint: (pattern) => page.locator(`${editor} .view-line span span`).filter({ hasText: pattern }).first(),
+
+    /** The editor underlines what can be followed once the mouse is there: only then does a click with the key down count. */
+    async followHint(pattern) {
+      const isLink = (source) => [...document.querySelectorAll('.editor-instance .view-line span')].some((found) => found.childElementCount === 0 && new RegExp(source).test(found.textContent) && getComputedStyle(found).textDecorationLine.includes('underline'));
+      await ui.hint(pattern).hover();
+      await page.waitForFunction(isLink, pattern.source);
+      await page.keyboard.down('Control');
+      try {
+        await ui.hint(pattern).click();
+      } finally {
+        await page.keyboard.up('Control');
+      }
+      await page.mouse.move(5, 5);
+    },
+
+    /** Selects this much of the line from the caret on, so that what is typed takes its place. */
+    async select(characters) {
+      for (let i = 0; i < characters; i += 1) await page.keyboard.press('Shift+ArrowRight');
+      await page.locator('[id="status.editor.selection"]').filter({ hasText: `(${characters} selected)` }).waitFor();
     },
 
     async type(text) {
@@ -70,27 +103,30 @@ export function actions(page, screenshots) {
       await page.waitForFunction(([selector, count]) => {
         const n = document.querySelectorAll(selector).length;
         return count === 'some' ? 0 < n : n === count;
-      }, [`${editor} .squiggly-${severity}`, wanted], { timeout: 20_000 });
+      }, [`${editor} .squiggly-${severity}`, wanted]);
     },
 
     /** What is hovered at the caret; with a pattern, once that is there: findings come first, and the rest later. */
     async hover(pattern = null) {
       const row = page.locator('.monaco-hover .hover-row').filter({ visible: true }).first();
-      await page.waitForFunction(() => ![...document.querySelectorAll('.monaco-hover')].some((found) => found.offsetParent !== null && 0 < found.offsetHeight), null, { timeout: 5000 });
+      await page.waitForFunction(() => ![...document.querySelectorAll('.monaco-hover')].some((found) => found.offsetParent !== null && 0 < found.offsetHeight), null);
       for (let attempt = 1; ; attempt += 1) {
         await page.keyboard.press('Control+k');
         await page.keyboard.press('Control+i');
         try {
-          await row.waitFor({ timeout: 3000 });
+          await row.waitFor({ timeout: 5000 });
           break;
         } catch (error) {
-          if (attempt === 3) throw error;
+          if (attempt === 6) throw error;
         }
       }
-      await page.waitForFunction(() => ![...document.querySelectorAll('.monaco-hover')].some((found) => /Loading\.\.\./.test(found.textContent)), null, { timeout: 10_000 });
-      if (pattern !== null) {
-        await page.waitForFunction((source) => new RegExp(source).test([...document.querySelectorAll('.monaco-hover')].map((found) => found.textContent).join(' ').replace(/\s+/g, ' ')), pattern.source, { timeout: 20_000 });
-      }
+      await page.waitForFunction(() => ![...document.querySelectorAll('.monaco-hover')].some((found) => /Loading\.\.\./.test(found.textContent)), null);
+      return ui.hovered(pattern ?? /./);
+    },
+
+    /** What the hovers on the screen say, once it has come: findings are there first, and the rest later. */
+    async hovered(pattern) {
+      await page.waitForFunction((source) => new RegExp(source).test([...document.querySelectorAll('.monaco-hover')].map((found) => found.textContent).join(' ').replace(/\s+/g, ' ')), pattern.source);
       const text = (await page.locator('.monaco-hover').filter({ visible: true }).allTextContents()).join('\n');
       return text.replace(/\s+/g, ' ');
     },
@@ -104,7 +140,7 @@ export function actions(page, screenshots) {
           await rows.first().waitFor({ timeout: 4000 });
           break;
         } catch (error) {
-          if (attempt === 3) throw error;
+          if (attempt === 6) throw error;
         }
       }
       return (await rows.allTextContents()).map((text) => text.replace(/\s+/g, ' ').trim());
@@ -121,16 +157,34 @@ export function actions(page, screenshots) {
       await page.locator('.action-widget .monaco-list-row.action').first().waitFor({ state: 'hidden' });
     },
 
-    async suggestions() {
-      await page.keyboard.press('Control+Space');
-      await page.locator('.suggest-widget.visible .monaco-list-row').first().waitFor({ timeout: 10_000 });
+    /** Labels of the list of suggestions, once this one is among them; typing asks for some lists, this for any. */
+    async suggestions(wanted) {
+      const row = suggestion(wanted);
+      for (let attempt = 1; !(await row.isVisible()); attempt += 1) {
+        await page.keyboard.press('Control+Space');
+        try {
+          await row.waitFor({ timeout: 5000 });
+        } catch (error) {
+          if (attempt === 6) throw error;
+          await page.keyboard.press('Escape');
+        }
+      }
       return (await page.locator('.suggest-widget.visible .monaco-list-row .label-name').allTextContents()).map((text) => text.trim());
+    },
+
+    /** Moves to a suggestion that is shown, and takes it as a person does, with Enter. */
+    async accept(wanted) {
+      const focused = page.locator('.suggest-widget.visible .monaco-list-row.focused').filter({ has: page.locator('.label-name', { hasText: exactly(wanted) }) });
+      for (let i = 0; i < 30 && !(await focused.isVisible()); i += 1) await page.keyboard.press('ArrowDown');
+      await focused.waitFor();
+      await page.keyboard.press('Enter');
+      await page.locator('.suggest-widget.visible').waitFor({ state: 'hidden' });
     },
 
     async problems() {
       await page.keyboard.press('Control+Shift+m');
       const rows = page.locator('.markers-panel .monaco-list-row');
-      await rows.first().waitFor({ timeout: 10_000 });
+      await rows.first().waitFor();
       const texts = (await rows.allTextContents()).map((text) => text.replace(/\s+/g, ' ').trim());
       await page.keyboard.press('Control+Shift+m');
       return texts;
@@ -144,7 +198,7 @@ export function actions(page, screenshots) {
     },
 
     async waitForText(pattern) {
-      await page.waitForFunction(([selector, source]) => new RegExp(source).test([...document.querySelectorAll(selector)].map((line) => line.textContent.replace(/\s/g, ' ')).join('\n')), [`${editor} .view-line`, pattern.source], { timeout: 20_000 });
+      await page.waitForFunction(([selector, source, flags]) => new RegExp(source, flags).test([...document.querySelectorAll(selector)].map((line) => line.textContent.replace(/\s/g, ' ')).join('\n')), [`${editor} .view-line`, pattern.source, pattern.flags]);
     },
 
     async hints() {
