@@ -3,7 +3,7 @@ import assert from 'node:assert/strict';
 import { existsSync, readFileSync, writeFileSync } from 'node:fs';
 import { describe, it } from 'node:test';
 import { rules } from '../../server/src/rules/index';
-import { isChecked, ruleNames } from '../../server/src/rules/ruleNames';
+import { ruleNames } from '../../server/src/rules/ruleNames';
 import { ruleReference } from '../../server/src/rules/rulePage';
 
 const page = 'syntaxes/rules.md';
@@ -15,8 +15,8 @@ describe('the rule pages', () => {
     else assert.equal(existsSync(page) ? readFileSync(page, 'utf8') : '', wanted, `${page} is stale: run the tests with UPDATE=1`);
   });
 
-  it('cover every rule name that is said to be checked', () => {
-    assert.deepEqual(rules.map(({ name }) => name).sort(), ruleNames.filter(isChecked).sort());
+  it('cover every rule name', () => {
+    assert.deepEqual(rules.map(({ name }) => name).sort(), [...ruleNames].sort());
   });
 
   it('name models that exist', () => {

@@ -14,6 +14,7 @@ import { fieldLimits } from './radiated/fieldLimits';
 import { pickupsOf } from './radiated/pickups';
 import { receiversOf } from './receivers';
 import { returnResult } from './returns/returnResult';
+import { shieldResult } from './shields/shieldResult';
 import { rolesOf, type Role, type Roles } from './roles';
 import type { AssumedEnd, Evaluation } from './results';
 import { runKeys } from './runs/runKey';
@@ -40,8 +41,9 @@ export function evaluate(project: Project, cache: SolveCache): Evaluation {
     runs: outcomes.map(({ result }) => result),
     heard: channels.heard,
     budgets,
+    shields: project.shields.map((shield) => shieldResult(project, shield)),
     returns: project.returns.map((shared) => returnResult(project, shared, cache)),
-    loops: project.loops.map((loop) => loopResult(project, loop, inductances)),
+    loops: project.loops.map((loop) => loopResult(project, loop, roles, inductances)),
     limits: [...outcomes.flatMap(({ limits }) => limits), ...project.loops.flatMap((loop) => loopLimits(loop, roles, inductances)), ...fieldLimits(project.ambients, pickups)],
     assumedEnds: assumedEnds([...outcomes.flatMap(({ coupled }) => coupled), ...circuits.heard.flatMap((heard) => rolesIn(heard, roles))]),
     work: { sectionsSolved: after.sectionsSolved - before.sectionsSolved, linesSolved: after.linesSolved - before.linesSolved, circuitsSolved: after.circuitsSolved - before.circuitsSolved, inductancesSolved: after.inductancesSolved - before.inductancesSolved },

@@ -2,8 +2,8 @@
  * What the physics says of a project: every number the editor or the command line shows comes from
  * here. Values are SI and nominal; `errorBar` is numerical and relative unless said otherwise.
  */
-import type { Loop, Net, Pair, Place, Project, Run, RunConductor, SharedReturn } from '../board/model';
-import type { Area, Decibels, DelayPerLength, Frequency, Inductance, Length, Resistance, Time, Voltage } from '../units/quantity';
+import type { EmissionLimit, Loop, Net, Pair, Place, Project, Run, RunConductor, SharedReturn, Shield } from '../board/model';
+import type { Area, Decibels, DelayPerLength, FieldStrength, Frequency, Inductance, Length, Resistance, Time, Voltage } from '../units/quantity';
 import type { SectionMatrices, SectionRefusal } from '../physics/section/section';
 import type { Heard } from './heard';
 import type { Waveform } from '../physics/lines/lines';
@@ -14,6 +14,7 @@ export interface Evaluation {
   /** In the order of the text. */
   readonly loops: readonly LoopResult[];
   readonly returns: readonly ReturnResult[];
+  readonly shields: readonly ShieldResult[];
   /** What every source puts on every receiver, by every way. */
   readonly heard: readonly Heard[];
   /** In the order of the text. */
@@ -57,8 +58,25 @@ export interface LoopResult {
   readonly perimeter: Length | null;
   readonly inductance: Inductance | null;
   readonly inductanceError: Inductance | null;
+  /** For every limit that the board states and that something repeated or a sine in the loop falls into: the worst. */
+  readonly emission: readonly EmissionResult[];
   /** With every other loop, made when it is asked for. */
   readonly mutual: readonly MutualResult[];
+}
+
+export interface EmissionResult {
+  readonly limit: EmissionLimit;
+  readonly frequency: Frequency;
+  readonly field: FieldStrength;
+  readonly marginDb: Decibels | null;
+}
+
+export interface ShieldResult {
+  readonly shield: Shield;
+  /** The highest of the fields from outside and of what moves under it or beside it; null where nothing does. */
+  readonly frequency: Frequency | null;
+  /** Against a plane wave, at that frequency. */
+  readonly effectivenessDb: Decibels | null;
 }
 
 export interface MutualResult {

@@ -44,7 +44,7 @@ function fileReport({ path, analysis, text }: CheckedFile): FileReport {
     loops: evaluation.loops.map((result) => loopReport(result, evaluation.heard, named)),
     returns: evaluation.returns.map(({ shared, resistance, inductance }) => ({ ...named(shared), resistance: finite(resistance), inductance: finite(inductance), drops: dropsOver(evaluation.heard, shared.name) })),
     links: project.links.map((link) => ({ ...named(link), induced: inducedBy(evaluation.heard, link.name) })),
-    shields: project.shields.map((shield) => ({ ...named(shield), frequency: null, effectivenessDb: null })),
+    shields: evaluation.shields.map(({ shield, frequency, effectivenessDb }) => ({ ...named(shield), frequency: finite(frequency), effectivenessDb: finite(effectivenessDb) })),
     budgets: evaluation.budgets.map((budget) => budgetReport(budget, placed)),
   };
 }
@@ -93,10 +93,10 @@ function budgetReport(budget: Budget, placed: Placed): FileReport['budgets'][num
   };
 }
 
-function loopReport({ loop, area, perimeter, inductance, mutual }: LoopResult, heard: readonly Heard[], named: Named): FileReport['loops'][number] {
+function loopReport({ loop, area, perimeter, inductance, emission, mutual }: LoopResult, heard: readonly Heard[], named: Named): FileReport['loops'][number] {
   const induced = (other: string) => Math.max(...heard.filter(({ channel, origins, receiver: { subject, terms } }) => channel === 'loop' && origins.includes(loop.name) && sensedBy(other, subject.name, terms)).map(largestPeak), -Infinity);
   const sensedBy = (name: string, subject: string, terms: Heard['receiver']['terms']) => mutual.some(({ other: { name: its, senses } }) => its === name && senses.some(({ signal }) => signal.name === subject || terms.some(({ net }) => net === signal)));
-  return { ...named(loop), area: finite(area), perimeter: finite(perimeter), inductance: finite(inductance), emission: [], mutual: mutual.map(({ other, ...each }) => ({ with: other.name, inductance: each.inductance, induced: finite(induced(other.name)) })) };
+  return { ...named(loop), area: finite(area), perimeter: finite(perimeter), inductance: finite(inductance), emission: emission.map(({ limit, frequency, field, marginDb }) => ({ frequency, distance: limit.distance.value, field, limit: limit.field.value, marginDb: finite(marginDb) })), mutual: mutual.map(({ other, ...each }) => ({ with: other.name, inductance: each.inductance, induced: finite(induced(other.name)) })) };
 }
 
 /** Of each net, the largest of what it puts on those that refer to the return. */

@@ -6,6 +6,8 @@ import type { Evaluation } from '../budget/results';
 import { badValue } from './badValue';
 import { dominantCoupling } from './dominantCoupling';
 import { duplicateName } from './duplicateName';
+import { emissionOverLimit } from './emissionOverLimit';
+import { floatingShield } from './floatingShield';
 import { gapBelowClearance } from './gapBelowClearance';
 import { guardUnstitched } from './guardUnstitched';
 import { include } from './include';
@@ -35,8 +37,10 @@ export const rules: readonly Rule[] = [
   gapBelowClearance,
   insulationCaution,
   loopTooLarge,
+  emissionOverLimit,
   noReturnPath,
   guardUnstitched,
+  floatingShield,
   missingTermination,
   outsideModel,
   unusedDeclaration,

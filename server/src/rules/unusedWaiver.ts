@@ -1,7 +1,7 @@
 import type { Waiver } from '../board/model';
 import type { Budget, Evaluation } from '../budget/results';
 import { defineRule, type Fault } from './rule';
-import { isChecked, isRuleName, isWaivable } from './ruleNames';
+import { isRuleName, isWaivable } from './ruleNames';
 import { keyOf, waivedBy, waiverOf } from './waivers';
 
 export interface UnusedWaiver extends Fault {
@@ -39,7 +39,7 @@ waive dominant-coupling on beside because "B is read 10 us after A has settled"
     for (const waiver of waivers) {
       if (used.has(waiver) || !isRuleName(waiver.rule)) continue;
       const because = matched(waiver) ? 'hidden-already' : isWaivable(waiver.rule) ? 'nothing' : 'not-waivable';
-      if (because === 'nothing' && !(isChecked(waiver.rule) && isDecided(waiver, evaluation))) continue;
+      if (because === 'nothing' && !isDecided(waiver, evaluation)) continue;
       yield { at: waiver.place, subject: null, names: [waiver.rule, ...waiver.subjects], waiver, because };
     }
   },

@@ -1,0 +1,56 @@
+/** Emission of loops: an independent case, a limit of a published rule as a user's number, harmonics, bandwidth, distance, shields. */
+import { describe, it } from 'node:test';
+import assert from 'node:assert/strict';
+import { near } from '../support/near';
+import reference from '../reference/fields-and-noise.json';
+import { evaluated } from './board';
+
+const emitted = (text: string) => evaluated(text).loops[0].emission;
+const caseOf = (id: string) => reference.cases.find((each) => each.id === id) as unknown as { inputs_SI: Readonly<Record<string, number>>; outputs: Readonly<Record<string, number>> };
+/** FCC part 15, class B, 30 to 88 MHz at 3 m: 100 µV/m; from memory. */
+const limit = 'board b { emits at most 40 dBuV/m at 3 m from 30 MHz to 88 MHz }\n';
+const loop = (side: number, more = '') => `loop out { carries A; rectangle ${side} mm by ${side} mm; wire 0.2 mm; ${more} }\n`;
+
+describe('the emission of a loop', () => {
+  it('D-loop-emission-1: near terms kept, doubled by the ground', () => {
+    const { inputs_SI: { f, I, a, r }, outputs } = caseOf('D-loop-emission-1');
+    const [found] = emitted(`board b { emits at most 40 dBuV/m at ${r} m from 88 MHz to 216 MHz }\nnet A { current ${I} A rms at ${f} Hz }\n${loop(a * 1e3)}`);
+    near(found.field, 2 * outputs.E_V_per_m, 1e-4);
+    near(found.marginDb!, 40 - outputs.E_dBuV_per_m - 20 * Math.log10(2), 1e-3);
+  });
+
+  it('of repeated edges is the worst harmonic in the limit’s range', () => {
+    const clock = (more: string) => `${limit}net A { current 10 mA rise 1 ns; ${more} }\n${loop(10)}`;
+    const [found] = emitted(clock('repeats 20 MHz'));
+    // Odd harmonics of a half duty: 60 MHz is the only one from 30 to 88. rms = sqrt(2) A/(n pi) |sin(n pi d)| |sinc(n T/P)|.
+    near(found.frequency, 60e6, 1e-12);
+    const x = Math.PI * 60e6 * 1.25e-9;
+    const rms = ((Math.SQRT2 * 10e-3) / (3 * Math.PI)) * (Math.sin(x) / x);
+    const k = (2 * Math.PI * 60e6) / 299792458;
+    near(found.field, (2 * 376.73 * k * rms * 1e-4 * Math.hypot(3 * k, 1)) / (4 * Math.PI * 9), 1e-3);
+    assert.deepEqual(emitted(clock('once')), []);
+  });
+
+  it('adds in step what falls into the receiver’s bandwidth together (CISPR 16-1-1)', () => {
+    const field = (repeats: string) => emitted(`${limit}net A { current 10 mA rise 1 ns; repeats ${repeats} }\n${loop(10)}`)[0].field;
+    // Twelve lines of 10 kHz in 120 kHz: a line has a tenth of the amplitude of one of 100 kHz, and twelve add.
+    near(field('10 kHz') / field('100 kHz'), 12 * 0.1 / 1.2, 2e-2);
+  });
+
+  it('grows with the area, and of a net without current is that of its ends', () => {
+    const by = (net: string, side: number) => emitted(`${limit}${net}\n${loop(side)}`)[0].field;
+    const stated = 'net A { current 10 mA peak at 50 MHz }';
+    near(by(stated, 20) / by(stated, 10), 4, 1e-9);
+    near(by('net A { sine 1 V peak at 50 MHz; source 50 ohm; load 50 ohm }', 2), by(stated, 2), 1e-3);
+  });
+
+  it('is less under a shield', () => {
+    const text = `${limit}net A { current 10 mA peak at 50 MHz }\n${loop(10)}`;
+    const [open, under] = [text, `${text}shield lid { covers out; sheet copper 35 um; slot 6 mm; grounded }\n`].map((each) => emitted(each)[0].field);
+    near(under / open, (2 * 6e-3 * 50e6) / 299792458, 1e-2);
+  });
+
+  it('is nothing where no limit asks', () => {
+    assert.deepEqual(emitted(`net A { current 10 mA peak at 50 MHz }\n${loop(10)}`), []);
+  });
+});
