@@ -14,7 +14,7 @@ export const incompleteBudget = defineRule<IncompleteBudget>({
   name: 'incomplete-budget',
   severity: 'warning',
   documentation: {
-    finds: 'A receiver whose budget lacks something that belongs in it, and what: a value that could not be read, or a way of coupling that is not yet counted.',
+    finds: 'A receiver whose budget lacks something that belongs in it, and what: a value that could not be read, or something that could not be computed.',
     matters: 'A sum with a part missing looks better than the board is. Such a budget has no margin and is never reported as within budget.',
     bad: `stackup { copper TOP 35 um; prepreg 0.2 mm er 4.2; plane GND 18 um }
 net A { swing 3.3 V; source 33 ohm; load 1 Mohm, 5 pF }
