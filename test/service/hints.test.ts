@@ -39,6 +39,15 @@ describe('inlay hints', () => {
     assert.match(said, /^run r on TOP for 10 mm«≤ 12.8 mm» \{\n {2}trace A 0\.2 mm\n {2}gap 0\.2 mm«≥ 0\.1\d mm»\n {2}trace B 0\.2 mm«≈ 7\.78 mV · 78 %»\n\}\n$/);
   });
 
+  it('say no length where none in reach is too long, and of the gap that it is the clearance', () => {
+    const text = board + run.replace('trace B', 'trace C');
+    assert.match(shown(text), /^run r on TOP for 10 mm \{\n {2}trace A 0\.2 mm\n {2}gap 0\.2 mm«≥ 0\.12 mm»\n {2}trace C 0\.2 mm«≈ 7\.78 mV · < 1 %»\n\}\n$/);
+    const session = new Session();
+    session.setText('b', text);
+    const gap = hints(session, 'b', { start: 0, end: text.length }).find(({ kind }) => kind === 'gap')!;
+    assert.equal(gap.tooltip, 'Even 0.12 mm, the least clearance, would do for C, with the headroom wanted.');
+  });
+
   it('move with the numbers: a wider gap is quieter', () => {
     const share = (gap: string) => Number(/· ([\d.]+) %/.exec(shown(board + run.replace('0.2 mm\n  trace B', `${gap} mm\n  trace B`)))![1]);
     assert.ok(share('0.6') < share('0.3') && share('0.3') < 78);

@@ -20,6 +20,8 @@ export interface Sufficient {
   readonly written: string;
   /** False where no value in reach does: `value` is then the best in reach. */
   readonly enough: boolean;
+  /** True where even the largest length or the smallest gap in reach is enough: how much further it could go was not asked. */
+  readonly atReach: boolean;
   readonly receivers: readonly string[];
   /** Evaluations that it took: the work done. */
   readonly evaluations: number;
@@ -74,7 +76,9 @@ function solved(context: FixContext, adjustable: Adjustable, budgets: readonly B
   const result = solve(context, [adjustable], withinBudget(context, budgets));
   if (result === null) return null;
   const [value] = result.values;
-  return { value: value!, written: adjustable.written.inUnit(value!), enough: result.enough, receivers: budgets.map(({ subject }) => subject.name), evaluations: result.evaluations };
+  const { written, outward, smallest, largest } = adjustable;
+  const atReach = result.enough && (outward === 'up' ? value! - smallest : largest - value!) < 1.5 * written.grid;
+  return { value: value!, written: written.inUnit(value!), enough: result.enough, atReach, receivers: budgets.map(({ subject }) => subject.name), evaluations: result.evaluations };
 }
 
 /** Complete budgets to which something couples across this gap, or anywhere in the run. */

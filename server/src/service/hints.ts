@@ -13,6 +13,7 @@ import type { Span } from '../syntax/tree';
 import { inText } from '../units/inText';
 import type { Hint, HintKind } from './answers';
 import { escaped, paragraphs, percent } from './hover/markdown';
+import { sufficientInWords } from './hover/sufficientInWords';
 import type { Session } from './session';
 
 /** In the order of the text. */
@@ -126,18 +127,18 @@ function* gapHints(context: FixContext, run: Run, wants: WantedAt): Generator<Pl
   }
 }
 
+/** None where the length does not matter: the end of the search is no limit of the board. */
 function lengthHint(context: FixContext, run: Run): Placed | null {
   const sufficient = sufficientLength(context, run);
-  return sufficient === null ? null : { place: run.length.place, hint: sufficientHint('length', run.length.place, sufficient) };
+  return sufficient === null || sufficient.atReach ? null : { place: run.length.place, hint: sufficientHint('length', run.length.place, sufficient) };
 }
 
-function sufficientHint(kind: 'gap' | 'length', place: Place, { written, enough, receivers }: Sufficient): Hint {
-  const whom = receivers.map(escaped).join(', ');
-  const [sign, bound, other] = kind === 'gap' ? ['≥', 'up to', 'a shorter run, a guard or another layer is'] : ['≤', 'down to', 'a wider gap, a guard or another layer is'];
+function sufficientHint(kind: 'gap' | 'length', place: Place, sufficient: Sufficient): Hint {
+  const sign = kind === 'gap' ? '≥' : '≤';
   return {
     kind,
     offset: place.span.end,
-    parts: [{ text: enough ? `${sign} ${written}` : `no ${kind} is enough`, target: null }],
-    tooltip: enough ? `${written} would just do for ${whom}, with the headroom wanted.` : `No ${kind} ${bound} ${written} is enough for ${whom}: ${other}.`,
+    parts: [{ text: sufficient.enough ? `${sign} ${sufficient.written}` : `no ${kind} is enough`, target: null }],
+    tooltip: sufficientInWords(kind, sufficient),
   };
 }

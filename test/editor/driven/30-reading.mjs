@@ -67,7 +67,7 @@ export const scenes = [
       await shot('hint-noise');
       await page.mouse.move(5, 5);
       await ui.hint(/^no\slength\sis\senough$/).hover();
-      assert.match(await ui.hovered(/No length down to/), /is enough for SENSE: a wider gap, a guard or another layer is/);
+      assert.match(await ui.hovered(/No length down to/), /is enough for SENSE: a wider gap, a guard or another layer may be/);
       await shot('hint-length');
       await page.mouse.move(5, 5);
       await ui.hint(/^≥\s[\d.]+\smm$/).hover();

@@ -8,6 +8,7 @@ import { gapsBetween } from '../../rules/gapsBetween';
 import { inText } from '../../units/inText';
 import { assumptionsOf, couplingTable } from './couplingTable';
 import { escaped, escapedLines, paragraphs, table } from './markdown';
+import { sufficientInWords } from './sufficientInWords';
 import type { RunPoint } from './runPoint';
 
 /** `context` is asked for only where a search answers. */
@@ -24,10 +25,14 @@ export function runHover(result: RunResult): string {
 
 export function runPointHover(result: RunResult, point: RunPoint, context: () => FixContext): string {
   switch (point.on) {
-    case 'length': return paragraphs(lengthInWords(sufficientLength(context(), result.run)), runHover(result));
+    case 'length': return lengthHover(result, sufficientLength(context(), result.run));
     case 'gap': return gapHover(result, point, context());
     case 'conductor': return point.conductor.kind === 'trace' ? traceHover(result, point.conductor) : guardHover(result, point.conductor);
   }
+}
+
+function lengthHover(result: RunResult, sufficient: Sufficient | null): string {
+  return paragraphs(sufficient === null ? null : sufficientInWords('length', sufficient), runHover(result));
 }
 
 /** All traces of one row where it names a range. */
@@ -68,7 +73,7 @@ function gapHover(result: RunResult, { gap, index }: RunPoint & { readonly on: '
   const sufficient = sufficientGap(context, run, index);
   return paragraphs(
     `**${inText(gap.value, 'length')}**${neighboursOf(result, index)}`,
-    sufficient === null ? null : gapInWords(sufficient),
+    sufficient === null ? null : sufficientInWords('gap', sufficient),
     across.length === 0 ? 'Nothing that is computed couples across it.' : couplingTable(across),
   );
 }
@@ -85,18 +90,6 @@ function neighboursOf({ run }: RunResult, index: number): string {
     first += gaps.length;
   }
   return '';
-}
-
-function gapInWords({ written, enough, receivers }: Sufficient): string {
-  const whom = receivers.map(escaped).join(', ');
-  return enough ? `${written} would just do for ${whom}, with the headroom wanted.` : `No gap up to ${written} is enough for ${whom}: a shorter run, a guard or another layer is.`;
-}
-
-function lengthInWords(sufficient: Sufficient | null): string | null {
-  if (sufficient === null) return null;
-  const { written, enough, receivers } = sufficient;
-  const whom = receivers.map(escaped).join(', ');
-  return enough ? `${written} would just do for ${whom}, with the headroom wanted.` : `No length down to ${written} is enough for ${whom}: a wider gap, a guard or another layer is.`;
 }
 
 function nothingCouples({ refusal, run, matrices }: RunResult): string {
