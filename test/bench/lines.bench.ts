@@ -26,6 +26,18 @@ function answered(given: CoupledLines): number {
   return peakOf(lineResponse(given, drive, window).right[given.order - 1]).value;
 }
 
+/** An edge of so many delays, and capacitors of so many delays against the line. */
+function lasting(order: number, edges: number, constants: number, leadTime = 0): number {
+  const along = leadTime === 0 ? null : lead(leadTime);
+  const capacitance = (constants * delay) / 62;
+  const given = lines({ ...rowOfLines(order), length: 0.1, left: Array.from({ length: order }, (_, i) => end(10 + 5 * i, 0, along)), right: Array.from({ length: order }, () => end(1e6, capacitance, along)) });
+  const duration = edges * delay;
+  return peakOf(lineResponse(given, ramp(0, 'left', 1, duration), seconds(duration + 20 * (delay + 2 * leadTime))).right[order - 1]).value;
+}
+
+const ratios = [2, 4, 16].flatMap((order) => [0.03, 0.3, 5].flatMap((constants) => [0.01, 3, 50, 200, 1e3, 1e4].map((edges) => ({ name: `${order} lines, RC of ${constants} and an edge of ${edges} delays`, run: () => lasting(order, edges, constants) }))));
+const led = [0.01, 3, 50, 200, 1e3, 1e4].map((edges) => ({ name: `two lines with leads of 180 ps, RC of 5 and an edge of ${edges} delays`, run: () => lasting(2, edges, 5, 0.18e-9) }));
+
 const held = prepareLines(loaded(2));
 export const cases = [
   { name: 'two lines, resistors: lattice', run: () => answered(resistive(2)) },
@@ -39,4 +51,6 @@ export const cases = [
   { name: 'modes of sixteen lines', run: () => modesOf(loaded(16), metres(0.1)).delays[0] },
   { name: 'lumped run of a slow node, two lines', run: () => lumpedRun(lines({ ...rowOfLines(2), length: 0.05, left: [end(1e4), end(Infinity)], right: [end(Infinity, 2e-11), end(1e6, 1e-11)] }), drive, window).work },
   { name: 'lumped run of a slow node, sixteen lines', run: () => lumpedRun(lines({ ...rowOfLines(16), length: 0.05, left: Array.from({ length: 16 }, () => end(1e4)), right: Array.from({ length: 16 }, () => end(1e6, 1e-11)) }), drive, window).work },
+  ...ratios,
+  ...led,
 ];

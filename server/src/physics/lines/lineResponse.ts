@@ -14,6 +14,8 @@ import type { CoupledLines, LineResponse, Ramp, Termination, Waveform } from './
 import type { Modes } from './modes';
 import { lineNetwork, type LineNetwork } from './network';
 import { rampedWaveforms, type RampedWaveforms, type RampShape } from './rampedWaveforms';
+import { settledRise, type SettledRise } from './settledRise';
+import { settledWaveforms } from './settledWaveforms';
 import { slowEdgeWaveforms } from './slowEdge';
 import { fewestSteps, unitResponse, type UnitResponse } from './unitResponse';
 import { oneWayDelay } from './window';
@@ -38,11 +40,12 @@ export function prepareLines(lines: CoupledLines, refinement = 1): PreparedLines
 function prepareUnbridged(lines: CoupledLines, refinement: number, shortened = false): PreparedLines {
   const network = lineNetwork(lines);
   const known = new Map<string, { readonly asked: number; readonly unit: UnitResponse }>();
-  const unitFor = ({ end, line }: Ramp, horizon: number, stepsInDelay?: number): UnitResponse => {
-    const key = `${end} ${line} ${stepsInDelay ?? ''}`;
+  const unitFor = ({ end, line, duration }: Ramp, horizon: number, stepsInDelay?: number, shownOnly = false): UnitResponse => {
+    const finest = shownOnly ? usefulStep(duration) : 0;
+    const key = `${end} ${line} ${stepsInDelay ?? ''} ${finest}`;
     const held = known.get(key);
     if (held !== undefined && horizon <= held.asked) return held.unit;
-    const unit = unitResponse(network, { end, line }, horizon, refinement, stepsInDelay);
+    const unit = unitResponse(network, { end, line }, horizon, { refinement, stepsInDelay, finest });
     known.set(key, { asked: horizon, unit });
     return unit;
   };
@@ -54,8 +57,10 @@ function prepareUnbridged(lines: CoupledLines, refinement: number, shortened = f
       const shortest = shortestDuration * network.modes.delays[0];
       const sloped = { ...ramp, duration: seconds(Math.max(ramp.duration, shortest)) };
       const wanted = Math.max(window, network.modes.delays[0]);
-      const unit = unitFor(ramp, wanted);
       const across = oneWayDelay(network.modes, lines);
+      const settled = settledResponse({ network, ramp: sloped, window, across, unitFor });
+      if (settled !== null) return settled;
+      const unit = unitFor(ramp, wanted);
       // Until the edge has come and gone, or, of one that outlasts the work, until echoes are past and the circuit takes over.
       const reaches = ({ horizon }: UnitResponse) => window * (1 - 1e-9) <= horizon || (sloped.duration < horizon ? sloped.duration + 2 * across : 3 * across) <= horizon;
       // A short run in a long net: its own delay asks for small steps, its leads for many.
@@ -66,6 +71,85 @@ function prepareUnbridged(lines: CoupledLines, refinement: number, shortened = f
       return ofItsSize(prepareUnbridged(withShorterLeads(lines, share), refinement, true).response(sloped, window));
     },
   };
+}
+
+interface SettledRequest {
+  readonly network: LineNetwork;
+  readonly ramp: Ramp;
+  readonly window: Time;
+  readonly across: number;
+  readonly unitFor: (ramp: Ramp, horizon: number, stepsInDelay: number | undefined, shownOnly: boolean) => UnitResponse;
+}
+
+/** Marched for a part of the window, where what is left of the echoes by then is too little to matter; null where it is not. */
+function settledResponse(request: SettledRequest): LineResponse | null {
+  const { network, ramp, window, across, unitFor } = request;
+  let horizon = firstMarch * across;
+  for (let march = 0; march < mostMarches && worthwhile * horizon < Math.min(window, ramp.duration); march += 1) {
+    const unit = unitFor(ramp, horizon, hasLeads(network) ? undefined : stepsOfSlow, true);
+    if (unit.horizon < horizon * (1 - 1e-9)) return null;
+    const rise = settledRise(network, ramp, horizon / 2, window);
+    if (rise === null) return null;
+    const { response, missing, fading } = settledAt(request, { ...unit, horizon }, rise);
+    if (missing <= 1) return response;
+    // What rings dies as an exponential: marched until it has, and a little longer.
+    const further = fading < 1 ? Math.log(2 * missing) / -Math.log(fading) : Infinity;
+    horizon *= Math.max(1.5, Math.min(1 + further / 2, 8));
+  }
+  return null;
+}
+
+interface Settled {
+  readonly response: LineResponse;
+  /** What is left of the echoes over what may be: one or less is enough. */
+  readonly missing: number;
+  /** Of the worst line, by what factor it fell over the second half of the march. */
+  readonly fading: number;
+}
+
+function settledAt({ network, ramp, window }: SettledRequest, unit: UnitResponse, rise: SettledRise): Settled {
+  const { order } = network;
+  const leads = hasLeads(network);
+  const edge = { order, ramp, window, unit, rise };
+  const ends = unit.ends.map((voltages, side) => settledWaveforms(edge, voltages, side * order));
+  const terminations = leads ? unit.terminations.map((voltages, side) => settledWaveforms(edge, voltages, (2 + side) * order)) : ends;
+  const placesOf = (line: number) => [...ends, ...terminations.filter((_, side) => leads && network.ends[side].leadDelay[line] !== 0)];
+  const allowed = Array.from({ length: order }, (_, line) => diedTo * Math.max(...placesOf(line).map(({ waveforms }) => largestOf(waveforms[line]))) + negligible * Math.abs(ramp.amplitude));
+  let [missing, fading] = [0, 0];
+  const errorBar = allowed.map((died, line) => {
+    const marched = Math.max(...placesOf(line).map((place) => place.marched[line]));
+    // Steps that err more than that say so themselves.
+    const enough = Math.max(died, marched);
+    const left = Math.max(...placesOf(line).map((place) => place.left[line]));
+    if (missing < left / enough) [missing, fading] = [left / enough, left / Math.max(...placesOf(line).map((place) => place.before[line]))];
+    return volts(Math.abs(ramp.amplitude) * (unit.dropped + rounding) + left + marched + slowPartError * (died / diedTo));
+  });
+  const behind = (side: 0 | 1) => ends[side].waveforms.map((waveform, line) => (network.ends[side].leadDelay[line] === 0 ? waveform : terminations[side].waveforms[line]));
+  const response: LineResponse = { left: ends[0].waveforms, right: ends[1].waveforms, leftTermination: behind(0), rightTermination: behind(1), window, method: unit.method, errorBar, work: unit.work + rise.work };
+  return { response, missing: Number.isFinite(missing) ? missing : Infinity, fading };
+}
+
+function hasLeads({ ends }: LineNetwork): boolean {
+  return ends.some(({ leadDelay }) => leadDelay.some((delay) => delay !== 0));
+}
+
+/** In the fastest mode's delay: an edge that outlasts ten ways is steady where the line rings, and shows little of it. */
+const stepsOfSlow = 16;
+/** Of one way: how far the first march goes. */
+const firstMarch = 12;
+const mostMarches = 4;
+/** A march of most of the window might as well go on. */
+const worthwhile = 1.5;
+/** Of a line's peak, and of the source's volts: what may be left of echoes when the march ends. */
+const diedTo = 5e-4;
+const negligible = 1e-12;
+/** Of a line's peak: contours and the cubics between their times. */
+const slowPartError = 1e-7;
+
+function largestOf({ values }: Waveform): number {
+  let most = 0;
+  for (const value of values) most = Math.max(most, Math.abs(value));
+  return most;
 }
 
 /** Of the fastest mode's delay: a step, for every purpose, and still a slope that can be divided by. */
@@ -80,10 +164,16 @@ function withShorterLeads({ left, right, ...lines }: CoupledLines, share: number
   return { ...lines, left: shorter(left), right: shorter(right) };
 }
 
+/** An edge shows nothing of what is much quicker; a power of two, so that edges of about the same duration share an answer. */
+function usefulStep(duration: number): number {
+  return 2 ** Math.floor(Math.log2(duration / stepsInEdge));
+}
+
+const stepsInEdge = 48;
+
 /** Good for its size only. */
 function ofItsSize(answer: LineResponse): LineResponse {
-  const largest = (waveform: Waveform) => waveform.values.reduce((most, value) => Math.max(most, Math.abs(value)), 0);
-  return { ...answer, errorBar: answer.errorBar.map((_, line) => volts(Math.max(largest(answer.leftTermination[line]), largest(answer.rightTermination[line])))) };
+  return { ...answer, errorBar: answer.errorBar.map((_, line) => volts(Math.max(largestOf(answer.leftTermination[line]), largestOf(answer.rightTermination[line])))) };
 }
 
 function isCutShort({ horizon }: UnitResponse, window: number): boolean {

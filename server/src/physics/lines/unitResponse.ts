@@ -40,8 +40,16 @@ export interface SmoothPart extends Grid {
   readonly coarseSteps: number;
 }
 
-/** `stepsInDelay`, of the fastest mode: fewer reach further with the same work. */
-export function unitResponse(network: LineNetwork, source: Pick<Ramp, 'line' | 'end'>, wanted: number, refinement = 1, stepsInDelay = usualSteps): UnitResponse {
+export interface Stepping {
+  /** Divides every step: to measure with. */
+  readonly refinement?: number;
+  /** Of the fastest mode: fewer reach further with the same work. */
+  readonly stepsInDelay?: number | undefined;
+  /** A step no smaller than this is small enough for what lasts longer than a few of them. */
+  readonly finest?: number;
+}
+
+export function unitResponse(network: LineNetwork, source: Pick<Ramp, 'line' | 'end'>, wanted: number, stepping: Stepping = {}): UnitResponse {
   const exact = exactLattice(network, source, wanted);
   if (exact !== null) {
     const parts = (kinks: Kinks): UnitVoltages => ({ kinks, smooth: null });
@@ -51,7 +59,7 @@ export function unitResponse(network: LineNetwork, source: Pick<Ramp, 'line' | '
       terminations: [parts(exact.terminations[0]), parts(exact.terminations[1])],
     };
   }
-  const fine = gridFor(network, wanted, refinement, stepsInDelay);
+  const fine = gridFor(network, wanted, stepping);
   const horizon = Math.min(wanted, fine.steps * fine.step);
   const shorted = [shortedAt(network, 0, fine.step), shortedAt(network, 1, fine.step)] as const;
   const lattice = kinkLattice(network, { source, horizon, threshold: kinksFollowed, mostEvents: mostKinks(network.order), shorted });
@@ -92,13 +100,12 @@ const mostKinks = (order: number) => Math.max(400, 3000 / order);
  * The finer grid: a 24th of the fastest mode's delay, finer where an end's time constant or a lead asks for it and
  * the work allows. An even number of steps, for the coarser one.
  */
-function gridFor(network: LineNetwork, wanted: number, refinement: number, stepsInDelay: number): Grid {
+function gridFor(network: LineNetwork, wanted: number, { refinement = 1, stepsInDelay = usualSteps, finest: useful = 0 }: Stepping): Grid {
   const coarsest = network.modes.delays[0] / stepsInDelay;
-  const finest = coarsest / 16;
   // What is finer still is not resolved anyway: many lines then take a middling step, and the error bar says what that costs.
-  const unresolved = network.order <= 3 ? finest : coarsest / 8;
+  const finest = network.modes.delays[0] / usualSteps / (network.order <= 3 ? 16 : 8);
   let step = coarsest;
-  for (const wish of stepWishes(network)) step = Math.min(step, wish < finest ? unresolved : wish);
+  for (const wish of stepWishes(network, useful)) step = Math.min(step, Math.max(wish, finest));
   const mostSteps = 2 * Math.ceil(mostLineSteps / (network.order + 2) / 2);
   step = Math.min(coarsest, Math.max(step, wanted / mostSteps)) / refinement;
   return { step, steps: Math.min(refinement * mostSteps, 2 * Math.ceil(wanted / step / 2)) };
@@ -112,14 +119,16 @@ export const fewestSteps = 4;
 const mostLineSteps = 120_000;
 /** The trapezoidal rule is then off by a few ten-thousandths before it is corrected. */
 const stepsPerConstant = 24;
+/** For edges that are slow against it, of which the bends are all that it rounds. */
+const fewPerConstant = 12;
 const stepsPerLead = 2;
 
-function stepWishes({ order, ends }: LineNetwork): number[] {
+function stepWishes({ order, ends }: LineNetwork, useful: number): number[] {
   const wishes: number[] = [];
   for (const { resistance, capacitance, seen, leadDelay } of ends) {
     for (let i = 0; i < order; i += 1) {
       const constant = timeConstant(resistance[i], capacitance[i], seen[i]);
-      if (0 < constant) wishes.push(constant / stepsPerConstant);
+      if (0 < constant) wishes.push(Math.max(constant / stepsPerConstant, Math.min(useful, constant / fewPerConstant)));
       if (0 < leadDelay[i]) wishes.push(leadDelay[i] / stepsPerLead);
     }
   }
