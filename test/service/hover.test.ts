@@ -121,3 +121,24 @@ link body { between A and V; capacitance 0.2 pF }
   checkWay('a link', ['link body', 'link bo<|>dy'], '**link body**: 200 fF between the load ends of A and V', 'A → V');
   checkWay('a net: all of it, and where', ['net V', 'net V<|>'], '**V**: a receiver', '| loop | A | loop out |');
 });
+
+describe('hover on fields', () => {
+  const fields = `board b { emits at most 40 dBuV/m at 3 m from 30 MHz to 88 MHz }
+net CLOCK { swing 3.3 V; rise 1 ns; source 20 ohm; load 50 ohm; repeats 20 MHz }
+net V { source 1 kohm; load 1 Mohm; tolerates 5 mV peak }
+loop out { carries CLOCK; rectangle 20 mm by 9 mm; wire 0.3 mm }
+loop in { senses V; rectangle 10 mm by 3 mm at (60 mm, 0 mm); wire 0.3 mm }
+ambient radio { field 10 V/m from 80 MHz to 1 GHz modulated 80 % }
+shield lid { covers V; sheet tin 0.2 mm; slot 6 mm; grounded }
+`;
+  const checkField = (title: string, [from, to]: readonly [string, string], ...phrases: readonly (string | RegExp)[]) => {
+    atCursor(title, { 'board.quiet': fields.replace(from, to) }, ({ session, path, offset }) => {
+      const answer = hover(session, path, offset);
+      assert.ok(answer, 'no hover');
+      for (const phrase of phrases) assert.ok(typeof phrase === 'string' ? answer.markdown.includes(phrase) : phrase.test(answer.markdown), `${phrase} is not in:\n${answer.markdown}`);
+    });
+  };
+  checkField('what a loop emits, with its caution', ['loop out', 'loop o<|>ut'], /\*\*[\d.]+ dBµV\/m\*\* at 60\.0 MHz/, '40.0 dBµV/m', 'cables are not included and often dominate');
+  checkField('a shield', ['shield lid', 'shield l<|>id'], /\*\*shield lid\*\*: [\d.]+ dB against a plane wave/, 'its longest opening 6 mm, grounded. Over V.');
+  checkField('a field', ['ambient radio', 'ambient rad<|>io'], '**ambient radio**: 10.0 V/m from 80.0 MHz to 1.00 GHz, rms', 'in → V');
+});

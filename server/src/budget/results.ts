@@ -186,7 +186,7 @@ export interface Budget {
   readonly marginDb: Decibels | null;
   readonly verdict: Verdict;
   readonly complete: boolean;
-  /** What belongs in the budget and is not counted: `loop coil is not yet counted`. */
+  /** What belongs in the budget and is not counted: `the width of TX in run alley could not be read`. */
   readonly unaccounted: readonly Unaccounted[];
   /** Largest first, then by name. */
   readonly contributions: readonly Contribution[];

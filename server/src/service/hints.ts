@@ -108,7 +108,7 @@ function noiseHint(run: Run, { whole }: RunConductor & { readonly kind: 'trace' 
   const tooltip = paragraphs(
     `${voltageInText(total, budget)} on **${escaped(receiverInText(budget))}** in run ${escaped(run.name)}, ${percent(share)} of the ${voltageInText(budget.tolerates, budget)} that it tolerates.`,
     here.slice(0, 6).map(({ from: source, value }) => `- ${inText(value, 'voltage')} from ${escaped(source ?? '')}`).join('\n'),
-    budget.total !== null && `${inText(budget.total, 'voltage')} over all its runs and channels${budget.complete ? '' : ', and something is not yet counted'}.`,
+    budget.total !== null && `${inText(budget.total, 'voltage')} over all its runs and channels${budget.complete ? '' : ', and something of it could not be counted'}.`,
   );
   return {
     place: whole,

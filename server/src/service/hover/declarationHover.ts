@@ -1,6 +1,6 @@
-/** What else has a name: layers, families, groups, conductors that nothing declares, and what is not computed yet. */
+/** What else has a name: layers, families, groups, conductors that nothing declares, what a board states as a whole. */
 import { builtInFamilies } from '../../board/builtInFamilies';
-import type { CopperRow, Declared, NameRecord, PlaneRow, Project, Stackup } from '../../board/model';
+import type { CopperRow, NameRecord, PlaneRow, Project, Stackup } from '../../board/model';
 import { inText } from '../../units/inText';
 import { escaped, escapedLines, paragraphs } from './markdown';
 
@@ -13,8 +13,6 @@ export function declarationHover(project: Project, { kind, name }: NameRecord): 
     case 'conductor': return paragraphs(`**${escaped(name)}**`, 'A guard or a return in a row: part of the reference.');
     case 'board': return boardHover(project, name);
     case 'stackup': return stackupHover(project.stackups.find((stackup) => stackup.name === name));
-    case 'shield': return declared(kind, project.shields.find((each) => each.name === name));
-    case 'ambient': return declared(kind, project.ambients.find((each) => each.name === name));
     default: return null;
   }
 }
@@ -70,9 +68,4 @@ function boardHover({ board }: Project, name: string): string | null {
   if (board.name !== name) return null;
   const sums = board.combine === 'worst' ? 'peaks of unrelated sources add' : 'squares of unrelated peaks add';
   return `**board ${escaped(name)}**: ${inText(board.headroom?.value ?? 0, 'level')} of headroom wanted, ${inText(board.temperature?.value ?? 298.15, 'temperature')}, ${sums}`;
-}
-
-function declared(kind: string, found: Declared | undefined): string | null {
-  if (found === undefined) return null;
-  return paragraphs(found.documentation === null ? null : escapedLines(found.documentation), `**${kind} ${escaped(found.name)}**`, 'It is read and checked, and not yet counted in any budget.');
 }

@@ -1,6 +1,6 @@
-/** A loop, a shared return or a link: its own numbers, and what it brings to whom. */
-import type { Loop, NameRecord, SharedReturn, Link } from '../../board/model';
-import type { Evaluation, LoopResult, ReturnResult } from '../../budget/results';
+/** A loop, a shared return, a link, a shield or a field: its own numbers, and what it brings to whom. */
+import type { Ambient, Loop, NameRecord, SharedReturn, Link } from '../../board/model';
+import type { Evaluation, LoopResult, ReturnResult, ShieldResult } from '../../budget/results';
 import type { Heard } from '../../budget/heard';
 import { budgetOfHeard } from '../../rules/budgetOfHeard';
 import { receiverInText, voltageInText } from '../../rules/budgetFault';
@@ -20,6 +20,14 @@ export function wayHover(evaluation: Evaluation, { kind, name }: NameRecord): st
     case 'link': {
       const found = evaluation.project.links.find((link) => link.name === name);
       return found === undefined ? null : wayInWords(evaluation, found, 'link', linkInWords(found));
+    }
+    case 'shield': {
+      const found = evaluation.shields.find(({ shield }) => shield.name === name);
+      return found === undefined ? null : shieldHover(found);
+    }
+    case 'ambient': {
+      const found = evaluation.project.ambients.find((ambient) => ambient.name === name);
+      return found === undefined ? null : fieldHover(evaluation, found);
     }
     default: return null;
   }
@@ -54,12 +62,43 @@ function assumptionsInWords(heard: readonly Heard[]): string | null {
   return said.length === 0 ? null : `It rests on:\n\n${said.slice(0, 6).map((words) => `- ${escaped(words)}`).join('\n')}`;
 }
 
-function loopInWords({ loop, area, perimeter, inductance, inductanceError, mutual }: LoopResult): readonly (string | null)[] {
+function loopInWords({ loop, area, perimeter, inductance, inductanceError, emission, mutual }: LoopResult): readonly (string | null)[] {
   const size = area === null || perimeter === null ? 'its path is none that a current can take' : `${inText(area, 'area')}, ${inText(perimeter, 'length')} around`;
   const own = inductance === null ? 'no inductance without `strip` or `wire`' : `${inText(inductance, 'inductance')}${inductanceError === null || inductanceError < 5e-4 * inductance ? '' : ` ± ${inText(inductanceError, 'inductance')}`}`;
   const limits = [...(loop.areaLimit === null ? [] : [`${inText(loop.areaLimit.value, 'area')} at most`]), ...(loop.inductanceLimit === null ? [] : [`${inText(loop.inductanceLimit.value, 'inductance')} at most`])];
   const near = [...mutual].sort((a, b) => Math.abs(b.inductance) - Math.abs(a.inductance)).slice(0, 3).map(({ other, inductance: with_ }) => `${inText(with_, 'inductance')} with ${escaped(other.name)}`);
-  return [`${size}, ${own}`, limits.length === 0 ? null : `Its limits: ${limits.join(', ')}.`, near.length === 0 ? null : `Mutual inductance: ${near.join(', ')}.`];
+  return [`${size}, ${own}`, limits.length === 0 ? null : `Its limits: ${limits.join(', ')}.`, near.length === 0 ? null : `Mutual inductance: ${near.join(', ')}.`, emission.length === 0 ? null : emissionInWords(emission)];
+}
+
+function emissionInWords(emission: LoopResult['emission']): string {
+  const rows = emission.map(({ limit, frequency, field, marginDb }) => [`${inText(limit.distance.value, 'length')}, ${inText(limit.from.value, 'frequency')} to ${inText(limit.to.value, 'frequency')}`, `**${levelInText(field)}** at ${inText(frequency, 'frequency')}`, levelInText(limit.field.value), marginDb === null ? '' : inText(marginDb, 'level')]);
+  return `${table(['it emits at', 'at worst', 'limit', 'margin'], rows)}\n\nCurrents on attached cables are not included and often dominate; this does not predict a test result.`;
+}
+
+/** As limits are stated. */
+function levelInText(field: number): string {
+  return `${(20 * Math.log10(field / 1e-6)).toFixed(1)} dBµV/m`;
+}
+
+function shieldHover({ shield, frequency, effectivenessDb }: ShieldResult): string {
+  const does = frequency === null || effectivenessDb === null ? 'nothing on the board moves, so there is no frequency to judge it at' : `${inText(effectivenessDb, 'level')} against a plane wave at ${inText(frequency, 'frequency')}, the highest of its board`;
+  const of = [...(shield.sheet === null ? ['no sheet stated'] : [`${inText(shield.sheet.thickness.value, 'length')} of ${shield.sheet.material}`]), ...(shield.slot === null ? [] : [`its longest opening ${inText(shield.slot.value, 'length')}`]), shield.grounded === true ? 'grounded' : 'floating'];
+  return paragraphs(
+    shield.documentation === null ? null : escapedLines(shield.documentation),
+    `**shield ${escaped(shield.name)}**: ${does}`,
+    `${of.join(', ')}. Over ${shield.covers.map(({ subject }) => escaped(subject.name)).join(', ')}.`,
+    'It acts on fields from outside, on what loops under it emit, and between a loop under it and one that is not; never on runs, links or returns.',
+  );
+}
+
+function fieldHover(evaluation: Evaluation, ambient: Ambient): string {
+  const rows = evaluation.budgets.flatMap((budget) => budget.contributions.filter(({ channel, from }) => channel === 'radiated' && from === ambient.name).map((contribution) => ({ budget, contribution, share: contribution.value / budget.tolerates }))).sort((a, b) => b.share - a.share);
+  const crest = ambient.modulated === null ? '' : `, modulated to ${inText(1 + ambient.modulated.value, 'fraction')} of it`;
+  return paragraphs(
+    ambient.documentation === null ? null : escapedLines(ambient.documentation),
+    `**ambient ${escaped(ambient.name)}**: ${inText(ambient.field.value, 'field')} from ${inText(ambient.from.value, 'frequency')} to ${inText(ambient.to.value, 'frequency')}, rms${crest}`,
+    rows.length === 0 ? 'It reaches no receiver: none has a loop, or a trace beside one plane.' : table(['around → to', 'noise', 'of what it tolerates'], rows.slice(0, rowsShown).map(({ budget, contribution, share }) => [`${escaped(contribution.where ?? '')} → ${escaped(receiverInText(budget))}`, `**${voltageInText(contribution.value, budget)}**`, percent(share)])),
+  );
 }
 
 function returnInWords({ resistance, inductance, errorBar, assumptions }: ReturnResult): readonly (string | null)[] {
