@@ -44,5 +44,6 @@ describe('a removal', () => {
   it('takes several lines', () => check('net A {\n  rise 1 ns\n}\nnet B { }\n', 'net A {\n  rise 1 ns\n}', 'net B { }\n'));
   it('leaves a comment where it is', () => check('waive x  # since April\nnet B { }\n', 'waive x', '  # since April\nnet B { }\n'));
   it('takes its semicolon', () => check('net A { rise 1 ns; waive x; load 1 kohm }\n', 'waive x', 'net A { rise 1 ns; load 1 kohm }\n'));
+  it('takes the semicolon before it where none follows', () => check('net A { rise 1 ns; waive x }\n', 'waive x', 'net A { rise 1 ns }\n'));
   it('takes the last line of a file', () => check('net A { }\nwaive x', 'waive x', 'net A { }\n'));
 });

@@ -8,17 +8,21 @@ import { corrections } from './corrections';
 import { declaredNet } from './declareNet';
 import type { Fix, FixContext, Proposal } from './fix';
 import { judgedByBudget } from './judged';
+import { laidOverPlane, laidOverPlaneForLimit } from './loopOverPlane';
 import { unusedRemoved } from './removeUnused';
+import { separatedReturns } from './separateReturn';
 import { shortenedRun } from './shortenRun';
+import { shrunkLoops, shrunkToLimit } from './shrinkLoop';
+import { slowedEdges } from './slowEdge';
 import { stitchedMoreOften } from './stitchGuard';
 import { waived } from './waive';
 import { widenedGaps, widenedToClearance } from './widenGap';
 
 /** For a receiver that has too much; each solves for its number. */
-const proposers: readonly ((finding: Finding, context: FixContext) => readonly Proposal[])[] = [widenedGaps, shortenedRun, stitchedGuard];
+const proposers: readonly ((finding: Finding, context: FixContext) => readonly Proposal[])[] = [widenedGaps, shortenedRun, stitchedGuard, shrunkLoops, laidOverPlane, separatedReturns, slowedEdges];
 
 /** For everything else. */
-const makers: readonly ((finding: Finding, context: FixContext) => readonly Fix[])[] = [widenedToClearance, stitchedMoreOften, corrections, declaredNet, unusedRemoved, waived];
+const makers: readonly ((finding: Finding, context: FixContext) => readonly Fix[])[] = [widenedToClearance, stitchedMoreOften, shrunkToLimit, laidOverPlaneForLimit, corrections, declaredNet, unusedRemoved, waived];
 
 export function fixesFor(finding: Finding, context: FixContext): readonly Fix[] {
   if (finding.waived !== null) return [];

@@ -12,5 +12,7 @@ export function removal(text: string, { path, span }: Place): Edit {
   if (alone) return { path, span: { start: lineStart, end: span.end + rest[0].length }, newText: '' };
   // Between two others on one line, one of the two semicolons goes with it.
   const semicolon = /^[^\S\r\n]*;[^\S\r\n]*/u.exec(text.slice(span.end));
-  return { path, span: { start: span.start, end: span.end + (semicolon?.[0].length ?? 0) }, newText: '' };
+  if (semicolon !== null) return { path, span: { start: span.start, end: span.end + semicolon[0].length }, newText: '' };
+  const before = /[^\S\r\n]*;[^\S\r\n]*$/u.exec(text.slice(lineStart, span.start));
+  return { path, span: { start: span.start - (before?.[0].length ?? 0), end: span.end }, newText: '' };
 }

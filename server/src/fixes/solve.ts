@@ -3,12 +3,12 @@
  * unit can say, and seen to be enough after rounding.
  */
 import type { Given, Run } from '../board/model';
-import type { Budget } from '../budget/results';
+import type { Budget, Contribution } from '../budget/results';
 import { totalOf } from '../budget/totals';
 import type { Length } from '../units/quantity';
 import type { FixContext } from './fix';
 import { search, type SearchResult } from './search';
-import { excessOf, trial, type Change, type Trial } from './trial';
+import { excessOf, partOf, trial, type Change, type Trial } from './trial';
 import type { WrittenLength } from './writtenLength';
 
 export interface Adjustable {
@@ -55,6 +55,25 @@ export function withinBudget(context: FixContext, budgets: readonly Budget[]): G
 }
 
 const cornerGrowth = 1.05;
+
+/** A contribution that is a tenth of what is tolerated is worth a thought. */
+export const matters = 0.1;
+
+/**
+ * What a change of one source's doing is to reach: the budget, where all else leaves room for it; else that what it does
+ * here no longer matters.
+ */
+export function goalFor(context: FixContext, budget: Budget, largest: Contribution, isTouched: (contribution: Contribution) => boolean): Goal {
+  const elsewhere = budget.contributions.filter((contribution) => !isTouched(contribution));
+  const rest = { ...budget, total: totalOf(elsewhere, budget.combine).total };
+  return excessOf([rest], context.project) < 0 ? withinBudget(context, [budget]) : partGone(context, budget, largest);
+}
+
+/** Until what one aggressor does here no longer matters. */
+export function partGone(context: FixContext, budget: Budget, largest: Contribution): Goal {
+  const headroom = 10 ** ((context.project.board.headroom?.value ?? 0) / 20);
+  return { budgets: [budget], excess: ({ budgets: [after] }) => Math.log((partOf(after ?? null, largest) * headroom) / (matters * budget.tolerates)) };
+}
 
 /** Null where it cannot be computed. */
 export function solve(context: FixContext, adjustables: readonly [Adjustable, ...Adjustable[]], goal: Goal): Solved | null {

@@ -2,7 +2,7 @@
  * Widens gaps between a receiver and what disturbs it, to what would just do: the one beside the receiver,
  * the one beside the aggressor, or, where one alone is not enough, all that the noise comes across.
  */
-import type { Budget, Contribution } from '../budget/results';
+import type { Contribution } from '../budget/results';
 import { gapBelowClearance, type GapBelowClearance } from '../rules/gapBelowClearance';
 import type { BudgetFault } from '../rules/budgetFault';
 import { gapsBetween } from '../rules/gapsBetween';
@@ -12,8 +12,7 @@ import { isSame } from './changedRun';
 import type { Fix, FixContext, Proposal } from './fix';
 import { gapAdjustable, gapInText, lengthEdit } from './gapAdjustable';
 import { judgedByFinding } from './judged';
-import { solve, withinBudget, type Adjustable, type Goal, type Solved } from './solve';
-import { partOf } from './trial';
+import { matters, partGone, solve, withinBudget, type Adjustable, type Goal, type Solved } from './solve';
 
 export function widenedGaps({ fault }: Finding, context: FixContext): readonly Proposal[] {
   const { budget, largest } = fault as BudgetFault;
@@ -45,9 +44,6 @@ interface Target {
   readonly words: string;
 }
 
-/** A contribution that is a tenth of what is tolerated is worth a thought. */
-const matters = 0.1;
-
 /** Beside the receiver, and beside the aggressor where that is another gap. */
 function crossedGaps(context: FixContext, { coupling }: Contribution): readonly Target[] {
   if (coupling === null) return [];
@@ -77,12 +73,6 @@ function proposal(targets: readonly Target[], { values }: Solved): Proposal {
   const words = targets.length === 1 ? `Widen ${targets[0]!.words} to ${widths[0]}` : `Widen ${targets.length} gaps${1 < runs ? ` in ${runs} runs` : ''} to ${widths.slice(0, -1).join(', ')} and ${widths.at(-1)}`;
   const moves = targets.reduce((sum, { adjustable }, index) => sum + values[index]! - adjustable.given.value, 0);
   return { words, edits: targets.map(({ adjustable }, index) => lengthEdit(adjustable, values[index]!)), moves };
-}
-
-/** Until what one aggressor does here no longer matters. */
-function partGone(context: FixContext, budget: Budget, largest: Contribution): Goal {
-  const headroom = 10 ** ((context.project.board.headroom?.value ?? 0) / 20);
-  return { budgets: [budget], excess: ({ budgets: [after] }) => Math.log((partOf(after ?? null, largest) * headroom) / (matters * budget.tolerates)) };
 }
 
 function distinct(targets: readonly Target[]): readonly Target[] {

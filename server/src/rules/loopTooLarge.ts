@@ -2,7 +2,7 @@ import type { Loop } from '../board/model';
 import { inText } from '../units/inText';
 import { defineRule, type Fault } from './rule';
 
-interface LoopTooLarge extends Fault {
+export interface LoopTooLarge extends Fault {
   readonly loop: Loop;
   readonly what: 'area' | 'inductance';
   readonly value: number;
@@ -47,10 +47,18 @@ loop valve-switch {
 
   message: ({ loop, what, value, limit }) => {
     const share = `${Math.round((value / limit - 1) * 100)} % too much`;
-    const way = what === 'area' ? 'Bring its sides together' : 'Bring its sides together, widen its conductor, or lay it over a plane';
+    const way = what === 'area' ? smaller(loop) : `${smaller(loop)}, widen its conductor, or lay it over a plane`;
     return `${inText(value, what)} of ${inText(limit, what)} in loop ${loop.name}, ${share}. ${way}`;
   },
 });
+
+function smaller({ shape }: Loop): string {
+  switch (shape?.form) {
+    case 'circle': return 'Make it narrower';
+    case 'trace': return 'Shorten it';
+    default: return 'Bring its sides together';
+  }
+}
 
 function shapeOf({ shape }: Loop) {
   return shape === null ? [] : [{ place: shape.place, message: 'its shape' }];
