@@ -7,6 +7,7 @@ import { stitchedGuard } from './addStitchedGuard';
 import { corrections } from './corrections';
 import { declaredNet } from './declareNet';
 import type { Fix, FixContext, Proposal } from './fix';
+import { groundedShield, shieldGrounded } from './groundShield';
 import { judgedByBudget } from './judged';
 import { laidOverPlane, laidOverPlaneForLimit } from './loopOverPlane';
 import { unusedRemoved } from './removeUnused';
@@ -19,10 +20,10 @@ import { waived } from './waive';
 import { widenedGaps, widenedToClearance } from './widenGap';
 
 /** For a receiver that has too much; each solves for its number. */
-const proposers: readonly ((finding: Finding, context: FixContext) => readonly Proposal[])[] = [widenedGaps, shortenedRun, stitchedGuard, shrunkLoops, laidOverPlane, separatedReturns, slowedEdges];
+const proposers: readonly ((finding: Finding, context: FixContext) => readonly Proposal[])[] = [widenedGaps, shortenedRun, stitchedGuard, shrunkLoops, laidOverPlane, separatedReturns, shieldGrounded, slowedEdges];
 
 /** For everything else. */
-const makers: readonly ((finding: Finding, context: FixContext) => readonly Fix[])[] = [widenedToClearance, stitchedMoreOften, shrunkToLimit, laidOverPlaneForLimit, corrections, declaredNet, unusedRemoved, waived];
+const makers: readonly ((finding: Finding, context: FixContext) => readonly Fix[])[] = [widenedToClearance, stitchedMoreOften, groundedShield, shrunkToLimit, laidOverPlaneForLimit, corrections, declaredNet, unusedRemoved, waived];
 
 export function fixesFor(finding: Finding, context: FixContext): readonly Fix[] {
   if (finding.waived !== null) return [];
