@@ -14,7 +14,7 @@ export function createSettings(connection: Connection, capabilities: () => Clien
   });
   const ask = async (uri: string) => {
     const answer = capabilities().workspace?.configuration === true ? ((await connection.workspace.getConfiguration({ scopeUri: uri, section: 'quietrun.inlayHints' })) as Partial<Record<HintKind, unknown>> | null) : null;
-    return { noise: answer?.noise !== false, gap: answer?.gap !== false, length: answer?.length !== false };
+    return { noise: answer?.noise !== false, gap: answer?.gap !== false, length: answer?.length !== false, size: answer?.size !== false };
   };
   return {
     inlayHints(uri) {

@@ -12,7 +12,7 @@ export interface HoverAnswer {
   readonly markdown: string;
 }
 
-export type HintKind = 'noise' | 'gap' | 'length';
+export type HintKind = 'noise' | 'gap' | 'length' | 'size';
 
 export interface Hint {
   readonly kind: HintKind;

@@ -1,6 +1,6 @@
 /**
  * What stands in grey beside the numbers of a run: after a receiver's trace what it gets there, after a gap and after
- * the run's length the value that would just do.
+ * the run's length the value that would just do; and what `wayHints.ts` says of loops, returns and links.
  */
 import type { Net, Place, Run, RunConductor } from '../board/model';
 import type { Budget, Contribution, Evaluation, RunResult } from '../budget/results';
@@ -15,6 +15,7 @@ import type { Hint, HintKind } from './answers';
 import { escaped, paragraphs, percent } from './hover/markdown';
 import { sufficientInWords } from './hover/sufficientInWords';
 import type { Session } from './session';
+import { wayHints, type Placed } from './wayHints';
 
 /** In the order of the text. */
 export function hints(session: Session, path: string, span: Span): readonly Hint[] {
@@ -30,8 +31,12 @@ export function* hintsOf(session: Session, path: string, span: Span, wants: Want
   for (const root of session.projectsOf(path)) {
     const project = session.project(root);
     const inSight = new Set(project.runs.filter(({ whole }) => isIn(whole, path, span)));
-    if (inSight.size === 0) continue;
+    const waysInSight = [...project.loops, ...project.returns, ...project.links].some(({ whole }) => isIn(whole, path, span));
+    if (inSight.size === 0 && !waysInSight) continue;
     const { evaluation } = session.analyse(root);
+    for (const { place, hint } of waysInSight ? wayHints(evaluation, (whole) => isIn(whole, path, span), (of) => session.tree(of)) : []) {
+      if (wants(hint.kind) && isIn(place, path, span)) yield once(said, hint);
+    }
     const context = session.fixContext(root);
     for (const result of evaluation.runs) {
       if (!inSight.has(result.run)) continue;
@@ -60,11 +65,6 @@ function* hintsOfRun(context: FixContext, result: RunResult, wants: WantedAt): G
   for (const noise of noiseHints(context.evaluation, result)) if (wants('noise', noise.place)) yield noise;
   yield* gapHints(context, run, wants);
   if (wants('length', run.length.place)) yield lengthHint(context, run);
-}
-
-interface Placed {
-  readonly place: Place;
-  readonly hint: Hint;
 }
 
 function isIn(place: Place, path: string, span: Span): boolean {
