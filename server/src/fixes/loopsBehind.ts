@@ -1,10 +1,11 @@
-/** The loops behind what a receiver hears by loops: those that carry the current, then those in which it induces. */
+/** The loops behind what a receiver hears by loops: those that carry the current, then those in which it induces; or the one around which a field does. */
 import type { Loop } from '../board/model';
 import type { Budget, Contribution } from '../budget/results';
 import { hazardousVoltage, signalsOf } from '../rules/touchLimits';
 import type { FixContext } from './fix';
 
-export function loopsBehind({ project, evaluation }: FixContext, { subject, kind }: Budget, { channel, from }: Contribution): readonly Loop[] {
+export function loopsBehind({ project, evaluation }: FixContext, { subject, kind }: Budget, { channel, from, place }: Contribution): readonly Loop[] {
+  if (channel === 'radiated') return project.loops.filter((loop) => loop.place === place);
   if (channel !== 'loop') return [];
   const heard = evaluation.heard.find((each) => each.channel === 'loop' && each.source.signal.name === from && each.receiver.subject === subject && each.receiver.kind === kind);
   if (heard === undefined) return [];

@@ -6,6 +6,7 @@ import type { Given, Loop, LoopShape } from '../board/model';
 import type { Evaluation } from '../budget/results';
 import type { BudgetFault } from '../rules/budgetFault';
 import { loopTooLarge, type LoopTooLarge } from '../rules/loopTooLarge';
+import { emissionOverLimit, levelInText, type EmissionOverLimit } from '../rules/emissionOverLimit';
 import type { Finding } from '../rules/rule';
 import { inText } from '../units/inText';
 import { metres, type Length } from '../units/quantity';
@@ -19,22 +20,41 @@ import { replacement, writtenLength, type WrittenLength } from './writtenLength'
 
 export function shrunkLoops({ fault }: Finding, context: FixContext): readonly Proposal[] {
   const { budget, largest } = fault as BudgetFault;
-  if (largest === null || largest.channel !== 'loop') return [];
-  const goal = goalFor(context, budget, largest, ({ channel }) => channel === 'loop');
+  if (largest === null) return [];
+  const goal = goalFor(context, budget, largest, ({ channel }) => channel === 'loop' || channel === 'radiated');
   return loopsBehind(context, budget, largest).flatMap((loop) => shrunk(context, loop, goal));
 }
 
-/** Down to the loop's own limit. */
+/** Down to a limit of the loop's own, or to that of what boards may emit. */
 export function shrunkToLimit(finding: Finding, context: FixContext): readonly Fix[] {
-  if (finding.rule !== loopTooLarge.name) return [];
-  const { loop, what, limit } = finding.fault as LoopTooLarge;
-  const valueIn = ({ loops }: Evaluation) => loops.find((each) => each.loop.name === loop.name)?.[what] ?? NaN;
+  const bound = boundOf(finding, context.evaluation);
+  if (bound === null) return [];
+  const { loop, limit, valueIn, inWords } = bound;
   const goal: Goal = { budgets: [], excess: ({ evaluation }) => Math.log(valueIn(evaluation) / limit) };
   return shrunk(context, loop, goal).flatMap(({ words, edits }) => {
-    const after = valueIn(context.evaluateWith(edits));
-    const fix = judgedByFinding(finding, context, `${words}: ${inText(after, what)} of ${inText(limit, what)}`, edits);
+    const fix = judgedByFinding(finding, context, `${words}: ${inWords(valueIn(context.evaluateWith(edits)))} of ${inWords(limit)}`, edits);
     return fix === null ? [] : [{ ...fix, preferred: true }];
   });
+}
+
+interface Bound {
+  readonly loop: Loop;
+  readonly limit: number;
+  valueIn(evaluation: Evaluation): number;
+  inWords(value: number): string;
+}
+
+function boundOf({ rule, fault }: Finding, { loops: before }: Evaluation): Bound | null {
+  const resultIn = ({ loops }: Evaluation, { name }: Loop) => loops.find(({ loop }) => loop.name === name);
+  if (rule === loopTooLarge.name) {
+    const { loop, what, limit } = fault as LoopTooLarge;
+    return { loop, limit, valueIn: (evaluation) => resultIn(evaluation, loop)?.[what] ?? NaN, inWords: (value) => inText(value, what) };
+  }
+  if (rule !== emissionOverLimit.name) return null;
+  const { loop, worst } = fault as EmissionOverLimit;
+  // In the order of the board's lines, which no edit of a loop changes.
+  const line = before.find((each) => each.loop === loop)?.emission.indexOf(worst) ?? -1;
+  return { loop, limit: worst.limit.field.value, valueIn: (evaluation) => resultIn(evaluation, loop)?.emission[line]?.field ?? NaN, inWords: levelInText };
 }
 
 interface Side {

@@ -1,5 +1,5 @@
 import type { Place, Project } from '../board/model';
-import type { Budget, Channel, Contribution } from '../budget/results';
+import type { Budget, Contribution } from '../budget/results';
 import { budgetFault, placesInFiles, receiverInText, remedyInText, shareOf, voltageInText, type BudgetFault } from './budgetFault';
 import { gapsBetween, traceOf } from './gapsBetween';
 import { defineRule, type Subject } from './rule';
@@ -42,7 +42,7 @@ run valve-past-rx on TOP for 8 mm {
       const [largest] = budget.contributions;
       if (budget.verdict !== 'over' || largest === undefined) continue;
       const share = shareOf(largest, budget);
-      const subject = whereItArises(largest);
+      const subject = whereItArises(project, largest);
       const crossed = crossedGap(largest);
       const at = crossed ?? traceOrPlace(largest);
       if (share < clearlyHalf || subject === null || at === null) continue;
@@ -61,13 +61,18 @@ run valve-past-rx on TOP for 8 mm {
 /** Where two causes are alike, their last digits do not make one of them dominate. */
 const clearlyHalf = 0.505;
 
-/** Null for the receiver's own noise: it arises nowhere else. */
-function whereItArises({ channel, where }: Contribution): Subject | null {
-  const kind = kinds[channel];
-  return kind === undefined || where === null ? null : { kind, name: where };
+/** Null for the receiver's own noise: it arises nowhere else. A field acts in a loop or a run, and so may what a return drops. */
+function whereItArises(project: Project, { channel, where, place }: Contribution): Subject | null {
+  if (where === null || place === null) return null;
+  if (channel === 'coupled') return { kind: 'run', name: where };
+  const ways = [['loop', project.loops], ['return', project.returns], ['link', project.links], ['run', project.runs]] as const;
+  for (const [kind, all] of ways) {
+    const declared = all.find((each) => each.place === place);
+    if (declared !== undefined) return { kind, name: declared.name };
+  }
+  const run = channel === 'radiated' ? project.runs.find(({ name }) => name === where) : undefined;
+  return run === undefined ? null : { kind: 'run', name: run.name };
 }
-
-const kinds: Partial<Record<Channel, Subject['kind']>> = { coupled: 'run', loop: 'loop', 'shared return': 'return', link: 'link' };
 
 /** The gap beside the victim that the coupling crosses; null between layers. */
 function crossedGap({ coupling }: Contribution): Place | null {
@@ -89,13 +94,26 @@ function splitInText({ coupling }: Contribution): string {
   return Number.isFinite(larger) ? `, ${0.995 <= larger ? 'nearly all' : `${Math.round(larger * 100)} %`} of that ${kind}` : '';
 }
 
-function relatedPlaces(project: Project, budget: Budget, { coupling }: Contribution) {
+function relatedPlaces(project: Project, budget: Budget, largest: Contribution) {
   const tolerated = { place: budget.toleratesPlace, message: `${receiverInText(budget)} tolerates ${voltageInText(budget.tolerates, budget)}` };
-  if (coupling === null) return placesInFiles(project, [tolerated]);
+  const { coupling } = largest;
+  if (coupling === null) return placesInFiles(project, [tolerated, ...bothSides(project, budget, largest)]);
   const { run, aggressor, victim } = coupling;
   return placesInFiles(project, [
     tolerated,
     { place: traceOf(run, aggressor)?.whole ?? null, message: `${aggressor.name}, the source` },
     { place: traceOf(run, victim)?.whole ?? null, message: `${victim.name}, the receiver` },
   ]);
+}
+
+/** Where a loop or a return names the source, and where one names the receiver. */
+function bothSides({ loops, returns }: Project, { subject }: Budget, { channel, from, place }: Contribution) {
+  const receivers: readonly unknown[] = subject.kind === 'net' ? [subject] : [subject, subject.plus, subject.minus];
+  const shared = returns.find((each) => each.place === place);
+  const senses = channel === 'loop' ? loops.flatMap((loop) => loop.senses) : (shared?.refers ?? []);
+  const carries = channel === 'loop' ? loops.filter((loop) => loop.place === place).flatMap((loop) => loop.carries) : (shared?.carries ?? []);
+  return [
+    ...carries.filter(({ net }) => net.name === from).map((each) => ({ place: each.place, message: `${each.net.name}, the source` })),
+    ...senses.filter(({ signal }) => receivers.includes(signal)).map((each) => ({ place: each.place, message: `${each.signal.name}, the receiver` })),
+  ];
 }

@@ -3,7 +3,7 @@ import type { EmissionResult } from '../budget/results';
 import { inText } from '../units/inText';
 import { defineRule, type Fault } from './rule';
 
-interface EmissionOverLimit extends Fault {
+export interface EmissionOverLimit extends Fault {
   readonly loop: Loop;
   readonly worst: EmissionResult;
 }
@@ -41,6 +41,6 @@ loop clock-loop { carries CLOCK; rectangle 10 mm by 2 mm; wire 0.3 mm }
 });
 
 /** As limits are stated. */
-function levelInText(field: number): string {
+export function levelInText(field: number): string {
   return `${(20 * Math.log10(field / 1e-6)).toFixed(1)} dBµV/m`;
 }
