@@ -47,7 +47,8 @@ export function solveSection(section: Section, { effort = 0, mostEffort = 4 }: S
   let best: Attempt | null = null;
   for (let level = effort; level <= Math.max(effort, mostEffort); level += 1) {
     const attempt = attemptAt(section, placement, level);
-    if (attempt === null) continue;
+    // A number that is none would pass for the best, and every other be measured against it.
+    if (attempt === null || !Number.isFinite(attempt.change)) continue;
     if (best === null || attempt.change < best.change) best = attempt;
     if (attempt.change <= wantedChange) break;
   }

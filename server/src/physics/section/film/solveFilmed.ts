@@ -42,6 +42,8 @@ export function solveFilmed(section: Section, { bare, effort, mostEffort }: Film
     const solution = filmedCharge(upright, signals, level);
     if (solution === null) continue;
     const attempt = { ...inAir.solved, ...withBars(solution, (i, j) => screened(section, signals[i], signals[j])), unknowns: Math.max(inAir.solved.unknowns, solution.unknowns) };
+    // A number that is none would pass for the best, and every other be measured against it.
+    if (!Number.isFinite(excess(attempt))) continue;
     if (best === null || excess(attempt) < excess(best)) best = attempt;
     if (excess(best) <= 1) break;
   }
