@@ -13,7 +13,8 @@ import { circuitTransfer } from '../../physics/circuit/circuitTransfer';
 import { smallLoopEmission } from '../../physics/fields/smallLoopEmission';
 import { harmonicRms, harmonicsOf } from '../../physics/noise/harmonics';
 import { harmonicsInBand } from '../../physics/noise/rmsThroughTransfer';
-import { amperes, decibels, henries, hertz, ohms, ratio, volts, voltsPerMetre, type Frequency } from '../../units/quantity';
+import type { FieldSource } from '../../physics/shields/sheet';
+import { amperes, decibels, henries, hertz, metres, ohms, ratio, volts, voltsPerMetre, type Frequency } from '../../units/quantity';
 import { loadEnd, sourceEnd } from '../ends';
 import { currentFeed, voltageFeed } from '../lumped/feeds';
 import type { Feed } from '../lumped/lumpedPath';
@@ -29,10 +30,12 @@ export function emissionOf(project: Project, loop: Loop, roles: Roles, inductanc
   const currents = loop.carries.flatMap((carried) => currentsOf(roles, carried, own !== null && 'inductance' in own ? own.inductance : 0));
   if (currents.length === 0) return [];
   const shields = shieldsOver(project, underLoop(loop));
+  // Nobody states how far off the sheet is. Its loop's radius is the least that this can well be: a sheet further off reflects more.
+  const near: FieldSource = { kind: 'magnetic', distance: metres(Math.sqrt(measures.area / Math.PI)) };
   return project.board.emissionLimits.flatMap((limit) => {
     const fields = currents.flatMap((current) => current.within(limit)).map(({ frequency, rms, repeats }) => {
       const { electric } = smallLoopEmission({ current: amperes(rms), area: measures.area, frequency, distance: limit.distance.value });
-      const through = throughShields(shields, { kind: 'magnetic', distance: limit.distance.value }, frequency);
+      const through = throughShields(shields, near, frequency);
       return { frequency, field: voltsPerMetre(electric * through * reflection(frequency) * inStep(frequency, repeats)) };
     });
     if (fields.length === 0) return [];
@@ -108,6 +111,6 @@ const reflectedUpTo = 1e9;
 /** Lines that fall into the receiver's bandwidth together add in step. */
 function inStep(frequency: Frequency, repeats: Frequency | null): number {
   if (repeats === null) return 1;
-  const bandwidth = frequency < 30e6 ? 9e3 : frequency < 1e9 ? 120e3 : 1e6;
+  const bandwidth = frequency < 30e6 ? 9e3 : frequency <= 1e9 ? 120e3 : 1e6;
   return Math.max(1, bandwidth / repeats);
 }
