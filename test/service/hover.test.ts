@@ -92,18 +92,11 @@ describe('hover', () => {
   });
 });
 
-describe('hover on a way', () => {
-  const ways = `${layers}net A { swing 24 V; rise 40 ns; source 5 ohm; load 10 kohm, 470 pF }
-net V { source 1 kohm; load 1 Mohm; tolerates 5 mV peak }
-## Out and back.
-loop out on TOP { carries A; rectangle 20 mm by 9 mm; strip 1 mm; area at most 120 mm2 }
-loop in on TOP { senses V; rectangle 10 mm by 3 mm at (24 mm, 0 mm); wire 0.3 mm }
-return ground { strip 30 mm by 1.5 mm on TOP; carries A; refers V }
-link body { between A and V; capacitance 0.2 pF }
-`;
-  const checkWay = (title: string, [from, to]: readonly [string, string], ...phrases: readonly (string | RegExp)[]) => {
-    assert.ok(ways.includes(from), from);
-    atCursor(title, { 'board.quiet': ways.replace(from, to) }, ({ session, path, offset }) => {
+/** Tests that hovering at the mark, which stands in the second of two texts, says the phrases one after the other. */
+function inOrder(text: string) {
+  return (title: string, [from, to]: readonly [string, string], ...phrases: readonly (string | RegExp)[]) => {
+    assert.ok(text.includes(from), from);
+    atCursor(title, { 'board.quiet': text.replace(from, to) }, ({ session, path, offset }) => {
       const answer = hover(session, path, offset);
       assert.ok(answer, 'no hover');
       let at = 0;
@@ -115,11 +108,47 @@ link body { between A and V; capacitance 0.2 pF }
       }
     });
   };
-  checkWay('a loop that carries', ['loop out', 'loop o<|>ut'], '**loop out**: 180 mm², 58 mm around, ', 'nH', 'Its limits: 120 mm² at most.', /Mutual inductance: -?[\d.]+ [pn]H with in\./, '| A → V | **', 'It rests on');
-  checkWay('a loop that senses', ['loop in', 'loop i<|>n'], '**loop in**: 30 mm²', 'A → V');
-  checkWay('a shared return', ['return ground', 'return gro<|>und'], '**return ground**: 10.', 'mΩ at dc, ', 'nH', 'upper bound', 'A → V');
+}
+
+describe('hover on a way', () => {
+  const ways = `${layers}net A { swing 24 V; rise 40 ns; source 5 ohm; load 10 kohm, 470 pF }
+net V { source 1 kohm; load 1 Mohm; tolerates 5 mV peak }
+## Out and back.
+loop out on TOP { carries A; rectangle 20 mm by 9 mm; strip 1 mm; area at most 120 mm2 }
+loop in on TOP { senses V; rectangle 10 mm by 3 mm at (24 mm, 0 mm); wire 0.3 mm }
+return ground { strip 30 mm by 1.5 mm on TOP; carries A; refers V }
+link body { between A and V; capacitance 0.2 pF }
+`;
+  const checkWay = inOrder(ways);
+  checkWay('a loop that carries', ['loop out', 'loop o<|>ut'], '**loop out**: 180 mm², 58 mm around, ', 'nH', 'It carries the current of A (what its circuit draws).', 'Its limits: 120 mm² at most.', /Mutual inductance: -?[\d.]+ [pn]H with in\./, '| A → V | **', 'It rests on');
+  checkWay('a loop that senses', ['loop in', 'loop i<|>n'], '**loop in**: 30 mm²', 'It lies in the way of V.', 'A → V');
+  checkWay('a shared return', ['return ground', 'return gro<|>und'], '**return ground**: 10.', 'mΩ at dc, ', 'nH', 'It carries A, and is what V measures against.', 'upper bound', 'A → V');
   checkWay('a link', ['link body', 'link bo<|>dy'], '**link body**: 200 fF between the load ends of A and V', 'A → V');
+  checkWay('a name that a loop carries', ['carries A; rectangle', 'carries A<|>; rectangle'], '**A**: a source, 24.0 V in 40.0 ns', 'It puts ', ' V on V (');
+  checkWay('a name that a loop senses', ['senses V', 'senses V<|>'], '**V**: a receiver', '| loop | A | loop out |');
+  checkWay('a name that refers to a return', ['refers V', 'refers V<|>'], '**V**: a receiver', '| shared return | A | return ground |');
   checkWay('a net: all of it, and where', ['net V', 'net V<|>'], '**V**: a receiver', '| loop | A | loop out |');
+});
+
+describe('hover on pairs, sines and repeated edges', () => {
+  const signals = `${layers}net MAINS { sine 230 V rms at 50 Hz; source 0.5 ohm; load 100 ohm }
+net HEATER { swing 24 V; rise 40 ns; fall 60 ns; source 5 ohm; load 100 ohm; repeats 20 kHz }
+net MOTOR { current 1.8 A rise 60 ns; load 5 ohm }
+net P { source 50 ohm; load 1 kohm }
+net M { source 50 ohm; load 1 kohm }
+pair AIN { plus P; minus M; across 100 ohm, 2 pF; tolerates 2 mV rms; tolerates 5 mV peak; band 10 Hz to 4 MHz; rejects 60 dB; common tolerates 0.5 V peak }
+loop out on TOP { carries HEATER; carries MOTOR; rectangle 20 mm by 9 mm; strip 1 mm }
+loop in on TOP { senses AIN; rectangle 10 mm by 3 mm at (24 mm, 0 mm); wire 0.3 mm }
+return ground { strip 30 mm by 1.5 mm on TOP; carries HEATER; refers P }
+link body { between MAINS and M; capacitance 20 pF }
+`;
+  const checkSignal = inOrder(signals);
+  checkSignal('a pair: its difference by peak and rms, its mean, every way', ['pair AIN', 'pair AI<|>N'], '**AIN**: a receiver, plus P, minus M, 100 Ω ‖ 2.00 pF across', 'of 5.00 mV tolerated of the difference', '| shared return | HEATER | return ground |', '| loop | HEATER | loop out |', '| link | MAINS, sine | link body |', 'of 2.00 mV rms tolerated of the difference', '| shared return | HEATER, repeated edges |', 'of 500 mV tolerated of the mean');
+  checkSignal('a net of a pair', ['net P', 'net P<|>'], '**P**: a net of a pair, the plus of AIN, source 50.0 Ω');
+  checkSignal('a sine', ['net MAINS', 'net MA<|>INS'], 'a source, a sine of 230 V rms at 50.0 Hz');
+  checkSignal('an edge that repeats', ['net HEATER', 'net HEA<|>TER'], '24.0 V in 40.0 ns, falling in 60.0 ns, repeated at 20.0 kHz');
+  checkSignal('a current', ['net MOTOR', 'net MOT<|>OR'], '1.80 A in 60.0 ns drawn at its load');
+  checkSignal('a loop of two currents', ['loop out', 'loop o<|>ut'], 'It carries the current of HEATER (what its circuit draws), MOTOR (1.80 A in 60.0 ns).');
 });
 
 describe('hover on fields', () => {

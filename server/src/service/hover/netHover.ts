@@ -1,5 +1,5 @@
 /** A net or pair: what it does, its budget with what makes it up, and what it does to others. */
-import type { End, Net, Pair, Project, Signal } from '../../board/model';
+import type { End, Net, Pair, Project, Signal, SignalCurrent } from '../../board/model';
 import type { Budget, Contribution } from '../../budget/results';
 import { causeInText, budgetFault, excessInText, placeWords, receiverInText, remedyInText, shareOf, voltageInText } from '../../rules/budgetFault';
 import { inText } from '../../units/inText';
@@ -11,29 +11,54 @@ export function signalHover({ project, evaluation }: Analysis, signal: Net | Pai
   const budgets = evaluation.budgets.filter(({ subject }) => subject === signal);
   return paragraphs(
     signal.documentation === null ? null : escapedLines(signal.documentation),
-    `**${escaped(signal.name)}**: ${roleInWords(signal)}`,
+    `**${escaped(signal.name)}**: ${roleInWords(signal, project)}`,
     ...budgets.map((budget) => budgetInWords(project, budget)),
     signal.kind === 'net' ? disturbedBy(evaluation.budgets, signal) : null,
   );
 }
 
-function roleInWords(signal: Net | Pair): string {
+function roleInWords(signal: Net | Pair, { pairs }: Project): string {
   const drives = sourceInWords(signal);
-  const listens = signal.toleratesPeak !== null || signal.toleratesRms !== null;
-  const role = drives === '' ? (listens ? 'a receiver' : `a ${signal.kind} that neither drives nor listens`) : listens ? `a source, ${drives}, and a receiver` : `a source, ${drives}`;
-  const ends = [['source', signal.source], ['load', signal.load]] as const;
-  const stated = ends.map(([name, end]) => (end === null ? `no ${name} stated` : `${name} ${endInText(end)}`));
-  const nets = signal.kind === 'pair' ? [`plus ${escaped(signal.plus?.name ?? '?')}`, `minus ${escaped(signal.minus?.name ?? '?')}`] : [];
+  const listens = signal.toleratesPeak !== null || signal.toleratesRms !== null || (signal.kind === 'pair' && signal.commonTolerates !== null);
+  const pair = signal.kind === 'pair' ? undefined : [...pairs.values()].find(({ plus, minus }) => plus === signal || minus === signal);
+  const alone = pair === undefined ? `a ${signal.kind} that neither drives nor listens` : 'a net of a pair';
+  const role = drives === '' ? (listens ? 'a receiver' : alone) : listens ? `a source, ${drives}, and a receiver` : `a source, ${drives}`;
   const family = signal.family === null ? [] : [`of family ${escaped(signal.family)}`];
-  return [role, ...family, ...nets, ...stated].join(', ');
+  return [role, ...family, ...netsInWords(signal), ...(pair === undefined ? [] : [`the ${pair.plus === signal ? 'plus' : 'minus'} of ${escaped(pair.name)}`]), ...endsInWords(signal, pair)].join(', ');
 }
 
-function sourceInWords({ swing, rise, sine, current }: Signal): string {
+function netsInWords(signal: Net | Pair): readonly string[] {
+  return signal.kind === 'pair' ? [`plus ${escaped(signal.plus?.name ?? '?')}`, `minus ${escaped(signal.minus?.name ?? '?')}`, ...(signal.across === null ? [] : [`${endInText(signal.across)} across`])] : [];
+}
+
+/** What a pair leaves to its nets, or a net to its pair, is not missing. */
+function endsInWords(signal: Net | Pair, pair: Pair | undefined): readonly string[] {
+  return (['source', 'load'] as const).flatMap((name) => {
+    const end = signal[name];
+    if (end !== null) return [`${name} ${endInText(end)}`];
+    if (signal.kind === 'pair') return [];
+    return [pair?.[name] == null ? `no ${name} stated` : `${name} of its pair`];
+  });
+}
+
+function sourceInWords({ swing, rise, fall, sine, current, repeats, once }: Signal): string {
   const parts: string[] = [];
-  if (swing !== null) parts.push(`${inText(swing.value, 'voltage')}${rise === null ? '' : ` in ${inText(rise.value, 'time')}`}`);
-  if (sine !== null) parts.push(`a sine of ${inText(sine.amplitude.value, 'voltage')} ${sine.measure}`);
-  if (current !== null) parts.push(`${inText(current.amplitude.value, 'current')} drawn at its load`);
+  const often = repeats === null ? (once ? ', once' : '') : `, repeated at ${inText(repeats.frequency.value, 'frequency')}`;
+  const falls = fall === null || fall.value === rise?.value ? '' : `, falling in ${inText(fall.value, 'time')}`;
+  if (swing !== null) parts.push(`${inText(swing.value, 'voltage')}${rise === null ? '' : ` in ${inText(rise.value, 'time')}`}${falls}${often}`);
+  if (sine !== null) parts.push(`a sine of ${inText(sine.amplitude.value, 'voltage')} ${sine.measure}${frequencyInWords(sine)}`);
+  if (current !== null) parts.push(`${currentInWords(current)} drawn at its load`);
   return parts.join(' and ');
+}
+
+export function currentInWords(current: SignalCurrent): string {
+  const amount = inText(current.amplitude.value, 'current');
+  if (current.form === 'sine') return `${amount} ${current.measure}${frequencyInWords(current)}`;
+  return `${amount}${current.rise === null ? '' : ` in ${inText(current.rise.value, 'time')}`}`;
+}
+
+function frequencyInWords({ from, to }: Pick<NonNullable<Signal['sine']>, 'from' | 'to'>): string {
+  return to === null ? ` at ${inText(from.value, 'frequency')}` : ` from ${inText(from.value, 'frequency')} to ${inText(to.value, 'frequency')}`;
 }
 
 export function endInText({ resistance, capacitance }: End): string {
@@ -52,11 +77,13 @@ function budgetInWords(project: Project, budget: Budget): string {
 }
 
 function totalInWords(project: Project, budget: Budget): string {
-  const tolerated = `${voltageInText(budget.tolerates, budget)} tolerated${budget.kind === 'common' ? ' of the mean' : ''}`;
+  const tolerated = `${voltageInText(budget.tolerates, budget)} tolerated${ofWhat[budget.kind]}`;
   if (budget.total === null) return `No total of ${tolerated}`;
   const amount = `**${voltageInText(budget.total, budget)}**${errorInText(budget)} of ${tolerated}`;
   return `${amount}: ${verdictInWords(project, budget)}`;
 }
+
+const ofWhat = { net: '', pair: ' of the difference', common: ' of the mean' } as const;
 
 function verdictInWords({ board }: Project, { verdict, marginDb, total, tolerates }: Budget): string {
   const margin = marginDb ?? (total === null || total === 0 ? Infinity : 20 * Math.log10(tolerates / total));
@@ -82,11 +109,17 @@ function contributionsTable(budget: Budget): string {
   const shown = budget.contributions.slice(0, rowsShown);
   const rows = shown.map((contribution) => {
     const share = shareOf(contribution, budget);
-    return [channelInWords(contribution), escaped(contribution.from ?? 'itself'), whereInWords(contribution), valueInWords(contribution, budget), `${bar(share)} ${percent(share)}`];
+    return [channelInWords(contribution), sourceOf(contribution), whereInWords(contribution), valueInWords(contribution, budget), `${bar(share)} ${percent(share)}`];
   });
   const rest = budget.contributions.length - shown.length;
   const sum = budget.measure === 'rms' || budget.combine === 'rss' ? 'Unrelated sources add as squares' : 'All peaks add';
   return paragraphs(table(['channel', 'from', 'where', 'value', 'share'], rows), `${rest === 0 ? '' : `and ${rest} more. `}${sum}.`);
+}
+
+/** An edge needs no word; what repeats or swings by itself adds in another way. */
+function sourceOf({ from, cause, spectrum }: Contribution): string {
+  if (from === null) return 'itself';
+  return `${escaped(from)}${spectrum !== null ? ', repeated edges' : cause.startsWith('sine of ') ? ', sine' : ''}`;
 }
 
 function channelInWords({ channel, coupling }: Contribution): string {
@@ -101,7 +134,7 @@ function whereInWords({ channel, where, group }: Contribution): string {
 }
 
 function valueInWords({ value, unfiltered }: Contribution, budget: Budget): string {
-  return `${voltageInText(value, budget)}${unfiltered === null ? '' : ` in its band, ${inText(unfiltered, 'voltage')} before it`}`;
+  return `${voltageInText(value, budget)}${unfiltered === null || unfiltered === value ? '' : ` in its band, ${inText(unfiltered, 'voltage')} before it`}`;
 }
 
 function wayOut(project: Project, budget: Budget): string | null {

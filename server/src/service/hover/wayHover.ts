@@ -4,7 +4,9 @@ import type { Evaluation, LoopResult, ReturnResult, ShieldResult } from '../../b
 import type { Heard } from '../../budget/heard';
 import { budgetOfHeard } from '../../rules/budgetOfHeard';
 import { receiverInText, voltageInText } from '../../rules/budgetFault';
+import { levelInText } from '../../rules/emissionOverLimit';
 import { inText } from '../../units/inText';
+import { currentInWords } from './netHover';
 import { escaped, escapedLines, paragraphs, percent, table } from './markdown';
 
 export function wayHover(evaluation: Evaluation, { kind, name }: NameRecord): string | null {
@@ -67,17 +69,22 @@ function loopInWords({ loop, area, perimeter, inductance, inductanceError, emiss
   const own = inductance === null ? 'no inductance without `strip` or `wire`' : `${inText(inductance, 'inductance')}${inductanceError === null || inductanceError < 5e-4 * inductance ? '' : ` ± ${inText(inductanceError, 'inductance')}`}`;
   const limits = [...(loop.areaLimit === null ? [] : [`${inText(loop.areaLimit.value, 'area')} at most`]), ...(loop.inductanceLimit === null ? [] : [`${inText(loop.inductanceLimit.value, 'inductance')} at most`])];
   const near = [...mutual].sort((a, b) => Math.abs(b.inductance) - Math.abs(a.inductance)).slice(0, 3).map(({ other, inductance: with_ }) => `${inText(with_, 'inductance')} with ${escaped(other.name)}`);
-  return [`${size}, ${own}`, limits.length === 0 ? null : `Its limits: ${limits.join(', ')}.`, near.length === 0 ? null : `Mutual inductance: ${near.join(', ')}.`, emission.length === 0 ? null : emissionInWords(emission)];
+  return [`${size}, ${own}`, loopUseInWords(loop), limits.length === 0 ? null : `Its limits: ${limits.join(', ')}.`, near.length === 0 ? null : `Mutual inductance: ${near.join(', ')}.`, emission.length === 0 ? null : emissionInWords(emission)];
+}
+
+/** Whose current it is, and how large where somebody states it. */
+function loopUseInWords({ carries, senses }: Loop): string | null {
+  const carried = carries.map(({ net, current }) => {
+    const stated = current ?? net.current;
+    return `${escaped(net.name)} (${stated === null ? 'what its circuit draws' : currentInWords(stated)})`;
+  });
+  const uses = [...(carried.length === 0 ? [] : [`carries the current of ${carried.join(', ')}`]), ...(senses.length === 0 ? [] : [`lies in the way of ${senses.map(({ signal }) => escaped(signal.name)).join(', ')}`])];
+  return uses.length === 0 ? null : `It ${uses.join(', and ')}.`;
 }
 
 function emissionInWords(emission: LoopResult['emission']): string {
   const rows = emission.map(({ limit, frequency, field, marginDb }) => [`${inText(limit.distance.value, 'length')}, ${inText(limit.from.value, 'frequency')} to ${inText(limit.to.value, 'frequency')}`, `**${levelInText(field)}** at ${inText(frequency, 'frequency')}`, levelInText(limit.field.value), marginDb === null ? '' : inText(marginDb, 'level')]);
   return `${table(['it emits at', 'at worst', 'limit', 'margin'], rows)}\n\nCurrents on attached cables are not included and often dominate; this does not predict a test result.`;
-}
-
-/** As limits are stated. */
-function levelInText(field: number): string {
-  return `${(20 * Math.log10(field / 1e-6)).toFixed(1)} dBµV/m`;
 }
 
 function shieldHover({ shield, frequency, effectivenessDb }: ShieldResult): string {
@@ -101,8 +108,10 @@ function fieldHover(evaluation: Evaluation, ambient: Ambient): string {
   );
 }
 
-function returnInWords({ resistance, inductance, errorBar, assumptions }: ReturnResult): readonly (string | null)[] {
-  return [`${inText(resistance, 'resistance')} at dc, ${inText(inductance, 'inductance')}${errorBar < 5e-4 ? '' : `, known to ${inText(errorBar, 'fraction')}`}`, assumptions.length === 0 ? null : assumptions.map((words) => `- ${escaped(words)}`).join('\n')];
+function returnInWords({ shared: { carries, refers }, resistance, inductance, errorBar, assumptions }: ReturnResult): readonly (string | null)[] {
+  const names = (all: readonly string[]) => all.map(escaped).join(', ');
+  const uses = [...(carries.length === 0 ? [] : [`carries ${names(carries.map(({ net }) => net.name))}`]), ...(refers.length === 0 ? [] : [`is what ${names(refers.map(({ signal }) => signal.name))} measures against`])];
+  return [`${inText(resistance, 'resistance')} at dc, ${inText(inductance, 'inductance')}${errorBar < 5e-4 ? '' : `, known to ${inText(errorBar, 'fraction')}`}`, uses.length === 0 ? null : `It ${uses.join(', and ')}.`, assumptions.length === 0 ? null : assumptions.map((words) => `- ${escaped(words)}`).join('\n')];
 }
 
 function linkInWords({ from, to, capacitance, mutual }: Link): readonly string[] {
