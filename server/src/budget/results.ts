@@ -101,6 +101,15 @@ export interface LooseGuard {
   readonly spacing: Length;
   /** A twentieth of the wavelength at the knee frequency of the fastest edge in the run. */
   readonly largest: Length;
+  /** The largest noise that passes its run's loose guards; null where it was not computed with guards as lines. */
+  readonly past: PastGuard | null;
+}
+
+/** Peaks of one source at one receiver: with guards as they are tied, and as if their ties held. */
+export interface PastGuard {
+  readonly receiver: string;
+  readonly asTied: Voltage;
+  readonly stitched: Voltage;
 }
 
 /** What one aggressor puts on one victim of a run: the worst of its edges and directions. */

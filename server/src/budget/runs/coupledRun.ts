@@ -67,7 +67,7 @@ class Meeting {
         value: volts(Math.abs(byEdge.counted ?? byEdge.atReceiver)),
         unfiltered: byEdge.counted === null ? null : volts(Math.abs(byEdge.atReceiver)),
         errorBar: byEdge.errorBar,
-        method: byEdge.model === 'lumped' ? 'coupled lines, short enough to act as a lumped circuit' : 'coupled lines',
+        method: edge?.tied != null ? 'coupled lines, guards among them' : byEdge.model === 'lumped' ? 'coupled lines, short enough to act as a lumped circuit' : 'coupled lines',
         get assumptions() { return byEdge.assumptions; },
         coupling: byEdge,
       },
@@ -136,7 +136,7 @@ class Meeting {
       bounds: null,
       // Pictures and words are made when they are asked for: a board has hundreds of couplings, and shows one.
       get waveform() { return { times: noise.waveform.times, values: noise.waveform.values.map((value) => scale * value) }; },
-      get assumptions() { return couplingAssumptions(context, { source, receiver }, { ...guardsInWords(found.guards, edge.rise), followed: noise.followed }); },
+      get assumptions() { return couplingAssumptions(context, { source, receiver }, { ...guardsInWords(found.guards, edge.rise), tied: found.tied, followed: noise.followed }); },
     };
   }
 
@@ -163,7 +163,7 @@ class Meeting {
       errorBar: volts(amplitude * found.errorBar * (found.counted ?? found.atReceiver)),
       bounds: null,
       waveform: null,
-      get assumptions() { return couplingAssumptions(context, { source, receiver }, { ...guardsInWords(found.guards, seconds(0.35 / found.frequency)), followed: false }); },
+      get assumptions() { return couplingAssumptions(context, { source, receiver }, { ...guardsInWords(found.guards, seconds(0.35 / found.frequency)), tied: null, followed: false }); },
     };
   }
 }

@@ -2,6 +2,7 @@ import { kneeFrequency } from '../../physics/lines/knee';
 import { inText } from '../../units/inText';
 import type { Time } from '../../units/quantity';
 import { assumptionsInWords } from '../ends';
+import { assumedDrill } from './guardLines';
 import { leadsOf, roleOf } from './arrangements';
 import type { PartContext } from './coupledRun';
 import type { PartReceiver, PartSource } from './partPlayers';
@@ -11,16 +12,19 @@ import type { Found } from './worstNoise';
 export interface FoundInWords {
   /** What had to be said of guards and returns; null where they carry their balancing current. */
   readonly guards: string | null;
+  readonly tied: Found['tied'];
   readonly followed: boolean;
 }
 
 /** What a coupling's numbers rest on beyond the text: a clause each. */
-export function couplingAssumptions({ run, part, roles, windowed }: PartContext, { source, receiver }: { source: PartSource; receiver: PartReceiver }, { guards: slow, followed }: FoundInWords): readonly string[] {
+export function couplingAssumptions({ run, part, roles, windowed }: PartContext, { source, receiver }: { source: PartSource; receiver: PartReceiver }, { guards: slow, tied, followed }: FoundInWords): readonly string[] {
   const said: string[] = [];
   const traces = [...source.lines, ...receiver.terms].map(({ index }) => part.traces[index]);
   said.push(...assumptionsInWords(traces.map((trace) => roleOf(roles, trace))));
   const guards = new Set(part.conductors.flatMap((conductor) => (conductor.kind === 'guard' ? [conductor.name] : [])));
-  if (0 < guards.size) said.push(`guard ${[...guards].join(', ')} counts as tied to the reference everywhere`);
+  const ideal = [...guards].filter((name) => tied?.names.includes(name) !== true);
+  if (0 < ideal.length) said.push(`guard ${ideal.join(', ')} counts as tied to the reference everywhere`);
+  if (tied !== null) said.push(`guard ${tied.names.join(', ')} is solved as one more line, tied through vias of ${inText(tied.via, 'inductance')} (drill of ${inText(assumedDrill, 'length')}, evenly spread); the parts by either field are those with an ideal guard`);
   if (slow !== null) said.push(slow);
   if (followed) said.push('slower than the echoes on the line: followed to its peak as a lumped circuit');
   for (const trace of traces) {

@@ -11,7 +11,7 @@ import type { LooseGuard } from '../results';
 import type { RunPart } from './runParts';
 
 /** `fastest`: the shortest 10–90 % time of what moves in the part; null where nothing does. */
-export function looseGuards(run: Run, part: RunPart, fastest: Time | null): readonly LooseGuard[] {
+export function looseGuards(run: Run, part: RunPart, fastest: Time | null): readonly Omit<LooseGuard, 'past'>[] {
   // Without planes a guard is a return, which has no ties to be judged by.
   if (fastest === null || !(part.section.planeAbove || part.section.planeBelow)) return [];
   const slowest = Math.max(...part.alone.map(({ delay }) => delay));

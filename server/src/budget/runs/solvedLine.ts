@@ -21,6 +21,7 @@ import { seconds, volts, type Current, type Frequency, type Length, type Time, t
 import { countedPeak } from '../countedPeak';
 import type { Swing } from '../sources';
 import type { Arrangement } from './arrangements';
+import { preparedWithGuards, type GuardLines } from './guardLines';
 import type { RunPart } from './runParts';
 import type { SolveCache } from '../solveCache';
 
@@ -29,6 +30,8 @@ export interface LineRequest {
   /** The part's own inductance, or that of edges too slow for its guards. */
   readonly inductance: Float64Array;
   readonly slow: boolean;
+  /** The part's loose guards as lines; null where all count as at zero potential. */
+  readonly tied: GuardLines | null;
   readonly length: Length;
   readonly arrangement: Arrangement;
   /** Which lines move, and with which sign. */
@@ -96,7 +99,7 @@ function lineKey({ voltage, current, repeats, readings, ...request }: LineReques
 }
 
 /** Of the lines with their ends, and what of them moves. */
-export function lineKeyOf({ part, slow, length, arrangement, moving }: Pick<LineRequest, 'part' | 'slow' | 'length' | 'arrangement' | 'moving'>): string {
+export function lineKeyOf({ part, slow, length, arrangement, moving, tied = null }: Pick<LineRequest, 'part' | 'slow' | 'length' | 'arrangement' | 'moving'> & Partial<Pick<LineRequest, 'tied'>>): string {
   const numbers: (string | number)[] = [part.id, slow ? 'slow' : 'fast', length];
   for (const { index, sign } of moving) numbers.push(index, sign);
   for (const side of [arrangement.left, arrangement.right]) {
@@ -107,6 +110,10 @@ export function lineKeyOf({ part, slow, length, arrangement, moving }: Pick<Line
     for (const { first, second, resistance, capacitance } of across) numbers.push(first, second, resistance, capacitance);
   }
   for (const from of arrangement.sourceAtLeft) numbers.push(from ? 'l' : 'r');
+  if (tied !== null) {
+    numbers.push('tied', tied.id);
+    for (const { line, at, inductance } of tied.ties) numbers.push(line, at, inductance);
+  }
   return numbers.join(' ');
 }
 
@@ -115,7 +122,8 @@ function solve(request: LineRequest): SolvedLine {
   const { order, capacitance } = part.matrices;
   const { left, right, leftAcross, rightAcross } = arrangement;
   const lines: CoupledLines = { order, inductance, capacitance, length, left, right, leftAcross, rightAcross };
-  const prepared = prepareLines(lines);
+  const prepare = (given: CoupledLines) => (request.tied === null ? prepareLines(given) : preparedWithGuards(given, request.tied));
+  const prepared = prepare(lines);
   const duration = seconds(Math.max(voltage?.duration ?? 0, current?.duration ?? 0));
   const window = observationWindow({ duration, delay: oneWayDelay(prepared.modes, lines), repeats });
   const answersTo = (driven: PreparedLines, ramp: Ramp, sign: 1 | -1): Answer => {
@@ -125,7 +133,7 @@ function solve(request: LineRequest): SolvedLine {
   const byVoltage = voltage === null ? [] : request.moving.map(({ index, sign }) => answersTo(prepared, { line: index, end: sideOf(arrangement, index, 'source'), ...voltage }, sign));
   const byCurrent = current === null ? [] : request.moving.map(({ index, sign }) => {
     const driven = currentAsVoltage(lines, { line: index, end: sideOf(arrangement, index, 'load'), ...current });
-    return answersTo(driven.lines === lines ? prepared : prepareLines(driven.lines), driven.ramp, sign);
+    return answersTo(driven.lines === lines ? prepared : prepare(driven.lines), driven.ramp, sign);
   });
   const readings = request.readings.map((reading) => received(request, reading, { duration, byVoltage, byCurrent }));
   return { delay: seconds(prepared.modes.delays[order - 1]), readings };

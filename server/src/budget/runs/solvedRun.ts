@@ -5,10 +5,10 @@
  */
 import type { Run, RunConductor } from '../../board/model';
 import type { SectionRefusal } from '../../physics/section/section';
-import type { Length } from '../../units/quantity';
 import { looseGuards } from './looseGuards';
 import { partLimits, refusalLimits, runLimits } from './modelLimits';
-import type { RunResult } from '../results';
+import { pastGuards } from './pastGuards';
+import type { LooseGuard, RunResult } from '../results';
 import { fastestEdge, partReceivers, partSources } from './partPlayers';
 import type { Roles } from '../roles';
 import { runMatrices, runTraces } from './runMatrices';
@@ -23,7 +23,7 @@ export interface SolvedRun {
   readonly parts: readonly SolvedPart[];
   readonly refused: readonly { readonly at: readonly number[]; readonly refusal: SectionRefusal }[];
   readonly windowed: boolean;
-  readonly loose: readonly { readonly at: number; readonly spacing: Length; readonly largest: Length }[];
+  readonly loose: readonly (Omit<LooseGuard, 'guard'> & { readonly at: number })[];
   /** Each a sentence with its range. */
   readonly limits: readonly string[];
 }
@@ -48,18 +48,22 @@ export function solvedRun(run: Run, roles: Roles, cache: SolveCache): SolvedRun 
   const solved = runParts(run, cache);
   const parts = solved.parts.map((part): HeardPart => {
     const receivers = partReceivers(part, roles);
-    const context = { roles, length: run.length.value, cache };
+    const context = { roles, length: run.length.value, cache, guardsOf: run };
     return { ...part, noise: partSources(part, roles).map((source) => ({ edges: worstNoise(part, source, receivers, context), sines: sineNoise(part, source, receivers, context), spectra: repeatedNoise(part, source, receivers, context) })) };
   });
   const indices = new Map(conductorsOf(run).map((conductor, index) => [conductor, index]));
   const at = (conductor: RunConductor) => indices.get(conductor) as number;
-  const loose = new Map(parts.flatMap((part) => looseGuards(run, part, fastestEdge(part, roles))).map((each) => [each.guard, each]));
+  const loose = new Map(parts.flatMap((part) => {
+    const found = looseGuards(run, part, fastestEdge(part, roles));
+    const past = found.length === 0 ? null : pastGuards(part, roles, { roles, length: run.length.value, cache, guardsOf: null });
+    return found.map((each) => [each.guard, { ...each, past }] as const);
+  }));
   return {
     whole: wholeOf(run, parts, solved.refused),
     parts: parts.map(({ section, id, conductors, matrices, alone, read, noise }) => ({ section, id, matrices, alone, read, noise, at: conductors.map(at) })),
     refused: solved.refused.map(({ conductors, refusal }) => ({ at: conductors.map(at), refusal })),
     windowed: solved.windowed,
-    loose: [...loose.values()].map(({ guard, spacing, largest }) => ({ at: at(guard), spacing, largest })),
+    loose: [...loose.values()].map(({ guard, ...rest }) => ({ at: at(guard), ...rest })),
     limits: [...new Set([...runLimits(run, solved), ...parts.flatMap((part) => partLimits(run, part, roles)), ...solved.refused.flatMap((part) => refusalLimits(run, part))])],
   };
 }
@@ -92,9 +96,9 @@ export function boundTo(run: Run, { parts, refused, loose }: SolvedRun): BoundRu
       return { ...part, conductors, traces: conductors.filter((conductor) => conductor.kind === 'trace') };
     }),
     refused: refused.map(({ at, refusal }) => ({ conductors: bound(at), refusal })),
-    loose: loose.flatMap(({ at, spacing, largest }) => {
+    loose: loose.flatMap(({ at, ...rest }) => {
       const guard = all[at];
-      return guard.kind === 'guard' ? [{ guard, spacing, largest }] : [];
+      return guard.kind === 'guard' ? [{ guard, ...rest }] : [];
     }),
   };
 }

@@ -2,6 +2,7 @@
  * What one source in a part of a run puts on those that listen there: the worst of its edges, of the directions in
  * which it and they are driven, and of what is assumed for sources that nobody stated.
  */
+import type { Run } from '../../board/model';
 import { electricalLength } from '../../physics/lines/electricalLength';
 import { kneeFrequency } from '../../physics/lines/knee';
 import { volts, type Length } from '../../units/quantity';
@@ -14,6 +15,7 @@ import { slowInductance } from './balancingCurrent';
 import { carriedError } from './carriedError';
 import { listeners, type PartReceiver, type PartSource } from './partPlayers';
 import type { RunPart } from './runParts';
+import { guardLines, type GuardLines } from './guardLines';
 import { solvedLine, type Reading, type ReceivedNoise } from './solvedLine';
 
 /** One way to compute a coupling, and what came of it. */
@@ -23,6 +25,8 @@ export interface Found {
   /** Where the edge is too slow for them: whether they carry their balancing current all the same. */
   readonly guards: 'ideal' | 'balance' | 'idle';
   readonly model: ReturnType<typeof electricalLength>;
+  /** Guards that were solved as lines, because their ties do not hold at this edge. */
+  readonly tied: Pick<GuardLines, 'names' | 'via'> | null;
   /** For a rising edge; for one volt of it where the voltage alone moves. */
   readonly noise: ReceivedNoise;
   /** Of the peak at the receiver, by the cross-section's error bars. */
@@ -36,9 +40,11 @@ export interface NoiseContext {
   readonly roles: Roles;
   readonly length: Length;
   readonly cache: SolveCache;
+  /** Guards whose ties do not hold are solved as lines of this run; null: all count as if they held. */
+  readonly guardsOf: Run | null;
 }
 
-export function worstNoise(part: RunPart, player: PartSource, receivers: readonly PartReceiver[], { roles, length, cache }: NoiseContext): FoundByReceiver {
+export function worstNoise(part: RunPart, player: PartSource, receivers: readonly PartReceiver[], { roles, length, cache, guardsOf }: NoiseContext): FoundByReceiver {
   const { signal } = player.source;
   const heard = listeners(receivers, player);
   const worst = new Map<number, Omit<Found, 'carried'>>();
@@ -47,21 +53,28 @@ export function worstNoise(part: RunPart, player: PartSource, receivers: readonl
   const moving = player.lines.map(({ index }) => index);
   for (const edge of edgesOf(signal)) {
     const slowed = slowInductance(part, kneeFrequency(edge.rise), cache);
+    const asLines = guardsOf === null ? null : guardLines(guardsOf, part, edge.rise, cache);
     // The voltage alone is solved for one volt, so that another swing finds it again.
     const voltage = edge.voltage !== null && edge.current === null ? { ...edge.voltage, amplitude: volts(1) } : edge.voltage;
     for (const arrangement of arrangementsFor(part, roles, moving, length)) {
       for (const inductance of slowed === null ? [part.matrices.inductance] : [part.matrices.inductance, slowed]) {
         const guards = inductance === slowed ? 'idle' : slowed === null ? 'ideal' : 'balance';
-        const request = { part, inductance, slow: inductance === slowed, length, arrangement, moving: player.lines, voltage, current: edge.current, repeats: signal.repeats?.frequency.value ?? null, readings };
+        const tied = inductance === slowed || !canBeTied(arrangement) ? null : asLines;
+        const request = { part, tied, inductance, slow: inductance === slowed, length, arrangement, moving: player.lines, voltage, current: edge.current, repeats: signal.repeats?.frequency.value ?? null, readings };
         const { delay, readings: noises } = solvedLine(request, cache);
         noises.forEach((noise, at) => {
           const known = worst.get(heard[at]);
-          if (known === undefined || countedOf(known.noise) < countedOf(noise)) worst.set(heard[at], { edge, arrangement, guards, model: electricalLength(delay, edge.rise), noise });
+          if (known === undefined || countedOf(known.noise) < countedOf(noise)) worst.set(heard[at], { edge, arrangement, guards, tied: tied === null ? null : { names: tied.names, via: tied.via }, model: electricalLength(delay, edge.rise), noise });
         });
       }
     }
   }
   return new Map([...worst].map(([index, found]) => [index, { ...found, carried: carriedTo(part, player, receivers[index], found.noise) }]));
+}
+
+/** What joins two ends is not among what lines with ties are solved with. */
+function canBeTied({ leftAcross, rightAcross }: Arrangement): boolean {
+  return leftAcross.length + rightAcross.length === 0;
 }
 
 export function isFiniteNoise({ noise }: Pick<Found, 'noise'>): boolean {

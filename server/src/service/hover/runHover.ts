@@ -61,7 +61,7 @@ function guardHover({ run, looseGuards }: RunResult, conductor: Exclude<RunCondu
   if (conductor.kind === 'return') return paragraphs(head, 'It carries the current back; several are joined at both ends of the run.');
   const loose = looseGuards.find(({ guard }) => guard === conductor);
   const tied = conductor.stitched === null ? `tied at its two ends, ${inText(run.length.value, 'length')} apart` : `tied every ${inText(conductor.stitched.value, 'length')}`;
-  return paragraphs(head, loose === undefined ? `It is ${tied}, and counts as tied everywhere.` : `It is ${tied}; at most ${inText(loose.largest, 'length')} hold at the fastest edge here. Its noise is computed as if they held, and is not to be trusted until they do.`);
+  return paragraphs(head, loose === undefined ? `It is ${tied}, and counts as tied everywhere.` : `It is ${tied}; at most ${inText(loose.largest, 'length')} hold at the fastest edge here. ${loose.past === null ? 'Its noise is computed as if they held, and is not to be trusted until they do.' : `It is computed as one more line, shorted through its vias at each tie: ${inText(loose.past.asTied, 'voltage')} on ${escaped(loose.past.receiver)}, and ${inText(loose.past.stitched, 'voltage')} with ties that hold.`}`);
 }
 
 function gapHover(result: RunResult, { gap, index }: RunPoint & { readonly on: 'gap' }, context: FixContext): string {
