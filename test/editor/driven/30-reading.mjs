@@ -63,15 +63,15 @@ export const scenes = [
       await ui.open(valve);
       await ui.waitForText(/≥ [\d.]+ mm/);
       await ui.hint(/^≈\s[\d.]+\smV$/).hover();
-      assert.match(await ui.hovered(/that it tolerates/), /mV on SENSE in run past-the-sensor, \d+ % of the 2\.00 mV that it tolerates/);
+      assert.match(await ui.hovered(/on SENSE in run .* that it tolerates/), /mV on SENSE in run past-the-sensor, \d+ % of the 2\.00 mV that it tolerates/);
       await shot('hint-noise');
       await page.mouse.move(5, 5);
       await ui.hint(/^no\slength\sis\senough$/).hover();
-      assert.match(await ui.hovered(/No length down to/), /is enough for SENSE: a wider gap, a guard or another layer may be/);
+      assert.match(await ui.hovered(/No length down to .* may be/), /is enough for SENSE: a wider gap, a guard or another layer may be/);
       await shot('hint-length');
       await page.mouse.move(5, 5);
       await ui.hint(/^≥\s[\d.]+\smm$/).hover();
-      assert.match(await ui.hovered(/would just do/), /[\d.]+ mm would just do for SENSE/);
+      assert.match(await ui.hovered(/would just do for/), /[\d.]+ mm would just do for SENSE/);
       await shot('hint-gap');
     },
   },
@@ -81,7 +81,7 @@ export const scenes = [
       await ui.open(valve);
       await ui.waitForSquiggles('error', 1);
       await ui.caret(...at(valve, 'tolerates 2 mV', 3));
-      const word = await ui.hover(/noise/);
+      const word = await ui.hover(/tolerates \(VOLTAGE/);
       await shot('hover-keyword');
       assert.match(word, /tolerates \(VOLTAGE peak\|rms \| none\)/);
       await ui.caret(...at(valve, '8 pF', 3));

@@ -31,6 +31,7 @@ export const scenes = [
       await ui.waitForText(/^ {2}band 10 Hz to 1 kHz$/m);
       // What a receiver does not hear below 1 kHz of a 30 ns edge leaves it in peace.
       await ui.waitForSquiggles('error', 0);
+      await ui.waitForText(/≈ [\d.]+ µV · < 1 %/);
       await shot('completed');
     },
   },

@@ -124,11 +124,14 @@ export function actions(page, screenshots) {
       return ui.hovered(pattern ?? /./);
     },
 
-    /** What the hovers on the screen say, once it has come: findings are there first, and the rest later. */
+    /** What the hovers on the screen say, read in the moment in which it is there: they are drawn in parts, and anew. */
     async hovered(pattern) {
-      await page.waitForFunction((source) => new RegExp(source).test([...document.querySelectorAll('.monaco-hover')].map((found) => found.textContent).join(' ').replace(/\s+/g, ' ')), pattern.source);
-      const text = (await page.locator('.monaco-hover').filter({ visible: true }).allTextContents()).join('\n');
-      return text.replace(/\s+/g, ' ');
+      const said = await page.waitForFunction((source) => {
+        const visible = [...document.querySelectorAll('.monaco-hover')].filter((found) => 0 < found.offsetHeight && getComputedStyle(found).visibility !== 'hidden');
+        const text = visible.map((found) => found.textContent).join(' ').replace(/\s+/g, ' ');
+        return new RegExp(source).test(text) && text;
+      }, pattern.source);
+      return said.jsonValue();
     },
 
     /** Titles that the light bulb offers at the caret; the list stays open. */
