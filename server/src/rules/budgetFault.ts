@@ -82,6 +82,7 @@ export function placesInFiles(project: Project, related: readonly { readonly pla
 }
 
 function originInText({ channel, from, where }: Contribution): string {
+  if (channel === 'radiated') return `field ${from} around ${where}`;
   const place = where === null ? '' : ` in ${placeWords[channel]} ${where}`;
   return from === null ? `its own ${channel} noise` : `${from}${place}`;
 }
@@ -92,8 +93,8 @@ export const placeWords: Readonly<Record<Channel, string>> = {
 
 const remedies: Readonly<Record<Channel, string>> = {
   coupled: 'Widen the gap, shorten the run, or put a stitched guard between',
-  link: 'Lower the capacitance or the mutual inductance there',
-  loop: 'Make the loops smaller, or part them',
+  link: 'Lower its capacitance or its mutual inductance, or slow the edge',
+  loop: 'Make the loops smaller, part them, or lay them over a plane',
   'shared return': 'Give it a return of its own',
   radiated: 'Make its loop smaller, or shield it',
   thermal: 'Lower its source resistance, narrow its band, or give it more capacitance',

@@ -46,7 +46,8 @@ loop valve-switch {
   },
 
   message: ({ loop, what, value, limit }) => {
-    const share = `${Math.round((value / limit - 1) * 100)} % too much`;
+    const ratio = value / limit;
+    const share = ratio < 10 ? `${Math.round((ratio - 1) * 100)} % too much` : `${Math.round(ratio)} times as much`;
     const way = what === 'area' ? smaller(loop) : `${smaller(loop)}, widen its conductor, or lay it over a plane`;
     return `${inText(value, what)} of ${inText(limit, what)} in loop ${loop.name}, ${share}. ${way}`;
   },
