@@ -1,4 +1,4 @@
-import type { Declared, NameSet, Project } from '../board/model';
+import type { Declared, Net, NameSet, Project } from '../board/model';
 import { defineRule, type Fault } from './rule';
 
 export interface UnusedDeclaration extends Fault {
@@ -31,7 +31,7 @@ run beside on TOP for 20 mm { trace A 0.15 mm; gap 0.5 mm; trace B 0.15 mm }
 
   *find({ project }) {
     if (mayBeUsedUnread(project)) return;
-    yield* unusedOf(project, 'net', 'signal', [...project.nets.values()]);
+    yield* unusedOf(project, 'net', 'signal', [...project.nets.values()].filter((net) => !isForItself(net)));
     yield* unusedOf(project, 'family', 'family', [...project.families.values()].filter(({ builtIn }) => !builtIn));
   },
 
@@ -46,6 +46,11 @@ run beside on TOP for 20 mm { trace A 0.15 mm; gap 0.5 mm; trace B 0.15 mm }
 function mayBeUsedUnread({ includes, files, errors }: Project): boolean {
   const read = new Set(files);
   return includes.some(({ path }) => path === null || !read.has(path)) || errors.some(({ rule }) => couldBeName.has(rule));
+}
+
+/** It says what it listens through: there is a budget even where no copper comes near. */
+function isForItself({ noise, contact, toleratesPeak, toleratesRms }: Net): boolean {
+  return (toleratesPeak !== null || toleratesRms !== null) && (noise !== null || contact !== null);
 }
 
 const couldBeName: ReadonlySet<string> = new Set(['syntax', 'missing-value', 'unknown-name', 'include']);
