@@ -67,7 +67,9 @@ export function causeInText({ budget, largest }: BudgetFault): string {
 
 /** `Widen the gap, shorten the run, or put a stitched guard between`. */
 export function remedyInText(largest: Contribution | null): string {
-  return largest === null ? 'Quieten its sources' : remedies[largest.channel];
+  if (largest === null) return 'Quieten its sources';
+  // A sine has no edge to slow.
+  return largest.channel === 'link' && !largest.cause.startsWith('sine of ') ? `${remedies.link}, or slow the edge` : remedies[largest.channel];
 }
 
 /** `34.2 dB too much`; with a headroom, both what is over and what it takes to have that as well. */
@@ -93,7 +95,7 @@ export const placeWords: Readonly<Record<Channel, string>> = {
 
 const remedies: Readonly<Record<Channel, string>> = {
   coupled: 'Widen the gap, shorten the run, or put a stitched guard between',
-  link: 'Lower its capacitance or its mutual inductance, or slow the edge',
+  link: 'Lower its capacitance or its mutual inductance',
   loop: 'Make the loops smaller, part them, or lay them over a plane',
   'shared return': 'Give it a return of its own',
   radiated: 'Make its loop smaller, or shield it',
