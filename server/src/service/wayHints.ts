@@ -4,7 +4,7 @@
  */
 import type { Loop, Link, Net, Pair, Place, SharedReturn } from '../board/model';
 import type { Heard } from '../budget/heard';
-import type { Budget, Contribution, Evaluation, LoopResult, ReturnResult } from '../budget/results';
+import type { Evaluation, LoopResult, ReturnResult } from '../budget/results';
 import { totalOf } from '../budget/totals';
 import { receiverInText, voltageInText } from '../rules/budgetFault';
 import type { SourceTree } from '../syntax/tree';
@@ -89,8 +89,11 @@ interface Brought {
 
 /** On the receiver that it takes the largest share of; `named`: which one is not plain from where it stands. */
 function noiseAt({ budgets }: Evaluation, place: Place, brought: Brought, way: string, named?: 'named'): readonly Placed[] {
+  const known = keysOf(brought.heard);
   const all = budgets.flatMap((budget) => {
-    const here = budget.contributions.filter((contribution) => isBrought(budget, contribution, brought));
+    const keys = known.get(budget.subject);
+    if (keys === undefined && brought.field === undefined) return [];
+    const here = budget.contributions.filter(({ channel, from, where }) => (channel === 'radiated' ? where === brought.field : keys?.has(keyOf(budget.kind, channel, from, where))));
     if (here.length === 0) return [];
     const { total } = totalOf(here, budget.combine);
     return [{ budget, here, total, share: total / budget.tolerates }];
@@ -108,9 +111,18 @@ function noiseAt({ budgets }: Evaluation, place: Place, brought: Brought, way: s
   return [{ place, hint: { kind: 'noise', offset: place.span.end, parts: [{ text: amount, target: budget.subject.place }, { text: ` · ${percent(share)}`, target: budget.toleratesPlace }], tooltip } }];
 }
 
-function isBrought({ subject, kind }: Budget, { channel, from, where }: Contribution, { heard, field }: Brought): boolean {
-  if (channel === 'radiated') return field !== undefined && where === field;
-  return heard.some((each) => each.channel === channel && each.source.signal.name === from && each.receiver.subject === subject && each.receiver.kind === kind && each.origins.join(', ') === where);
+/** A budget holds many contributions, and a board many ways: each is found by what it says, not by comparing all with all. */
+function keysOf(heard: readonly Heard[]): ReadonlyMap<Net | Pair, ReadonlySet<string>> {
+  const keys = new Map<Net | Pair, Set<string>>();
+  for (const { channel, source, origins, receiver: { subject, kind } } of heard) {
+    const known = keys.get(subject) ?? new Set<string>();
+    keys.set(subject, known.add(keyOf(kind, channel, source.signal.name, origins.join(', '))));
+  }
+  return keys;
+}
+
+function keyOf(...parts: readonly (string | null)[]): string {
+  return JSON.stringify(parts);
 }
 
 /** Of the names of one range, the first: they stand at one place. */
