@@ -57,4 +57,19 @@ describe('the emission of a loop', () => {
   it('is nothing where no limit asks', () => {
     assert.deepEqual(emitted(`net A { current 10 mA peak at 50 MHz }\n${loop(10)}`), []);
   });
+
+  it('of a sine over a range is that of its resonance, where the circuit has one', () => {
+    const within = (range: string) => emitted(`${limit}net A { sine 1 V peak ${range}; source 5 ohm; load 1 Mohm, 100 pF }\n${loop(40)}`)[0];
+    const [all, ends] = [within('at 30 MHz to 88 MHz'), ['at 30 MHz', 'at 88 MHz'].map(within)];
+    assert.ok(30e6 < all.frequency && all.frequency < 88e6);
+    assert.ok(ends.every(({ field }) => 1.5 * field < all.field), `${all.field}: ${ends.map(({ field }) => field)}`);
+  });
+
+  it('says where a small loop is no model: near to it, and where it is long', () => {
+    const said = (text: string) => evaluated(text).limits.map(({ message }) => message).filter((message) => message.includes('emi'));
+    const net = 'net A { current 10 mA peak at 50 MHz }\n';
+    assert.deepEqual(said(`${limit}${net}${loop(100)}`), []);
+    assert.match(said(`${limit}${net}${loop(400)}`).join(), /^loop out is 566 mm large, more than a tenth of the 3 m at which the board limits emission/);
+    assert.match(said(`board b { emits at most 40 dBuV/m at 30 m from 30 MHz to 1 GHz }\nnet A { current 10 mA peak at 800 MHz }\n${loop(100)}`).join(), /^loop out emits most at 800 MHz, where it is 37\.\d %/);
+  });
 });

@@ -8,6 +8,7 @@ import { heardOverCircuits } from './lumpedPaths';
 import { assumptionsFor } from './ends';
 import type { Heard } from './heard';
 import { loopInductances } from './loops/loopInductances';
+import { emissionLimits } from './loops/emissionLimits';
 import { loopLimits } from './loops/loopLimits';
 import { loopResult } from './loops/loopResult';
 import { fieldLimits } from './radiated/fieldLimits';
@@ -35,6 +36,7 @@ export function evaluate(project: Project, cache: SolveCache): Evaluation {
   const channels = { heard: [...outcomes.flatMap(({ heard }) => heard), ...circuits.heard], lacking: [...outcomes.flatMap(({ lacking }) => lacking), ...circuits.lacking] };
   const pickups = project.ambients.length === 0 ? [] : pickupsOf(receivers, { project, roles, inductances, cache });
   const budgets = budgetsOf(project, roles, receivers, { ...channels, cache, pickups });
+  const loops = project.loops.map((loop) => loopResult(project, loop, roles, inductances));
   const after = cache.work();
   return {
     project,
@@ -43,8 +45,8 @@ export function evaluate(project: Project, cache: SolveCache): Evaluation {
     budgets,
     shields: project.shields.map((shield) => shieldResult(project, shield)),
     returns: project.returns.map((shared) => returnResult(project, shared, cache)),
-    loops: project.loops.map((loop) => loopResult(project, loop, roles, inductances)),
-    limits: [...outcomes.flatMap(({ limits }) => limits), ...project.loops.flatMap((loop) => loopLimits(loop, roles, inductances)), ...fieldLimits(project.ambients, pickups)],
+    loops,
+    limits: [...outcomes.flatMap(({ limits }) => limits), ...project.loops.flatMap((loop) => loopLimits(loop, roles, inductances)), ...loops.flatMap((each) => emissionLimits(each, inductances)), ...fieldLimits(project.ambients, pickups)],
     assumedEnds: assumedEnds([...outcomes.flatMap(({ coupled }) => coupled), ...circuits.heard.flatMap((heard) => rolesIn(heard, roles))]),
     work: { sectionsSolved: after.sectionsSolved - before.sectionsSolved, linesSolved: after.linesSolved - before.linesSolved, circuitsSolved: after.circuitsSolved - before.circuitsSolved, inductancesSolved: after.inductancesSolved - before.inductancesSolved },
   };

@@ -33,7 +33,7 @@ export function emissionOf(project: Project, loop: Loop, roles: Roles, inductanc
   // Nobody states how far off the sheet is. Its loop's radius is the least that this can well be: a sheet further off reflects more.
   const near: FieldSource = { kind: 'magnetic', distance: metres(Math.sqrt(measures.area / Math.PI)) };
   return project.board.emissionLimits.flatMap((limit) => {
-    const fields = currents.flatMap((current) => current.within(limit)).map(({ frequency, rms, repeats }) => {
+    const fields = currents.flatMap((current) => current.linesIn(limit)).map(({ frequency, rms, repeats }) => {
       const { electric } = smallLoopEmission({ current: amperes(rms), area: measures.area, frequency, distance: limit.distance.value });
       const through = throughShields(shields, near, frequency);
       return { frequency, field: voltsPerMetre(electric * through * reflection(frequency) * inStep(frequency, repeats)) };
@@ -54,7 +54,7 @@ interface Line {
 }
 
 interface LoopCurrent {
-  readonly within: (limit: EmissionLimit) => readonly Line[];
+  readonly linesIn: (limit: EmissionLimit) => readonly Line[];
 }
 
 /** What a net drives through the loop: stated, or that of the series circuit of its ends and the loop. */
@@ -66,7 +66,7 @@ function currentsOf(roles: Roles, { net, current }: Loop['carries'][number], ind
     // A feed is only asked what moves, not where.
     const feed = stated === null ? voltageFeed(signal, noDrive, 1) : currentFeed(signal, noDrive, 1, { current: stated });
     const through = stated === null ? seriesCurrent(role, inductance) : () => 1;
-    return { within: ({ from, to }) => linesOf(feed, signal.repeats, { from: from.value, to: to.value }).map((line) => ({ ...line, rms: line.rms * through(line.frequency) })) };
+    return { linesIn: ({ from, to }) => linesOf(feed, signal.repeats, { from: from.value, to: to.value }).map((line) => ({ ...line, rms: line.rms * through(line.frequency) })) };
   });
 }
 
@@ -94,13 +94,21 @@ function seriesCurrent(role: Role, inductance: number): (frequency: Frequency) =
 const shortest = 1e-6;
 
 function linesOf({ edges: { rise, fall }, sines }: Feed, repeats: Loop['carries'][number]['net']['repeats'], range: { readonly from: Frequency; readonly to: Frequency }): readonly Line[] {
-  const tones = sines.filter(({ from, to }) => from <= range.to && range.from <= to).flatMap(({ amplitude, from, to }) => [Math.max(from, range.from), Math.min(to, range.to)].map((frequency): Line => ({ frequency: hertz(frequency), rms: amplitude / Math.SQRT2, repeats: null })));
+  const tones = sines.filter(({ from, to }) => from <= range.to && range.from <= to).flatMap(({ amplitude, from, to }) => within(Math.max(from, range.from), Math.min(to, range.to)).map((frequency): Line => ({ frequency: hertz(frequency), rms: amplitude / Math.SQRT2, repeats: null })));
   if (rise === null || fall === null || repeats === null) return tones;
   const harmonics = harmonicsOf({ swing: volts(rise.amplitude), rise: rise.duration, fall: fall.duration, repeats: repeats.frequency.value, duty: repeats.duty?.value ?? ratio(0.5) }, range.to);
   const { first, last } = harmonicsInBand(harmonics, range);
   const rms = harmonicRms(harmonics);
   return [...tones, ...Array.from({ length: Math.max(0, last - first + 1) }, (_, at): Line => ({ frequency: hertz((first + at) * harmonics.fundamental), rms: rms[first + at - 1]!, repeats: repeats.frequency.value }))];
 }
+
+/** Where the circuit resonates within the range, its current is largest between the ends. */
+function within(from: number, to: number): readonly number[] {
+  const steps = from < to ? Math.ceil(perDecade * Math.log10(to / from)) : 0;
+  return [...Array.from({ length: steps }, (_, step) => from * (to / from) ** (step / steps)), to];
+}
+
+const perDecade = 48;
 
 function reflection(frequency: Frequency): number {
   return frequency <= reflectedUpTo ? 2 : 1;

@@ -26,7 +26,7 @@ export function couplingAssumptions({ run, part, roles, windowed }: PartContext,
   if (0 < ideal.length) said.push(`guard ${ideal.join(', ')} counts as tied to the reference everywhere`);
   if (tied !== null) said.push(`guard ${tied.names.join(', ')} is solved as one more line, tied through vias of ${inText(tied.via, 'inductance')} (drill of ${inText(assumedDrill, 'length')}, evenly spread); the parts by either field are those with an ideal guard`);
   if (slow !== null) said.push(slow);
-  if (followed) said.push('slower than the echoes on the line: followed to its peak as a lumped circuit');
+  if (followed) said.push('peaks long after the echoes on the line have died: computed as a lumped circuit from there');
   for (const trace of traces) {
     const { before, after } = leadsOf(trace, roleOf(roles, trace), run.length.value);
     if (0 < before + after) said.push(`${inText(before, 'length')} of ${trace.net.name} before the run and ${inText(after, 'length')} after it count as uncoupled line`);
