@@ -38,19 +38,45 @@ function everyCorner(text: string, name: string): readonly [number, number] {
   return [low, high];
 }
 
+function checkCorners(text: string): void {
+  const { bounds, total } = budgetOf(bounded(text), 'V');
+  const [low, high] = everyCorner(text, 'V');
+  assert.ok(bounds![0] <= total! && total! <= bounds![1], text);
+  near(bounds![0], low, 1e-9, text);
+  near(bounds![1], high, 1e-9, text);
+}
+
+/** A thousand of either kind by BOARDS=1000; so many stay quick. */
+const boards = Number(process.env['BOARDS'] ?? 12);
+
 const nets = 'net A { swing 3 V ± 5 %; rise 2 ns; source 30 ohm ± 10 %; load 1 Mohm, 5 pF }\nnet V { source 100 ohm; load 10 kohm, 8 pF; tolerates 100 mV peak }\n';
 const run = (gap: string, width = '0.2 mm') => `run r on TOP for 30 mm { trace A ${width}; gap ${gap}; trace V 0.15 mm }\n`;
 
 describe('bounds over tolerances', () => {
   it('are the worst and the best of all corners, on seeded boards', () => {
     const random = seeded(11);
-    for (let n = 0; n < 12; n += 1) {
+    for (let n = 0; n < boards; n += 1) {
       const text = `stackup { copper TOP 35 um; prepreg 0.2 mm ± ${random.pick(['5 %', '10 %', '20 um'])} er 4.2 ± 0.2; plane GND 18 um }\n${nets}${run(`${random.pick(['0.25', '0.5', '1.0'])} mm ± ${random.pick(['8 %', '30 um'])}`, random.pick(['0.2 mm', '0.2 mm ± 15 um']))}`;
-      const { bounds, total } = budgetOf(bounded(text), 'V');
-      const [low, high] = everyCorner(text, 'V');
-      assert.ok(bounds![0] < total! && total! < bounds![1], text);
-      near(bounds![0], low, 1e-9, text);
-      near(bounds![1], high, 1e-9, text);
+      checkCorners(text);
+    }
+  });
+
+  it('are so for loops, returns, links and fields as well', () => {
+    const random = seeded(12);
+    const toleranced = (value: number, unit: string) => `${Number((value * (0.5 + random.next())).toPrecision(3))} ${unit} ± ${random.pick(['3 %', '8 %', '15 %'])}`;
+    for (let n = 0; n < boards; n += 1) {
+      const ways = [
+        `loop out { carries A; rectangle ${toleranced(12, 'mm')} by 8 mm; wire 0.3 mm }\nloop in { senses V; rectangle 10 mm by 4 mm at (20 mm, 0 mm); wire 0.3 mm }`,
+        `return ground { strip ${toleranced(20, 'mm')} by 1 mm on TOP; carries A; refers V }`,
+        `link body { between A and V; capacitance ${toleranced(0.1, 'pF')} }`,
+        `ambient radio { field ${toleranced(3, 'V/m')} from 80 MHz to 1 GHz }\nloop around { senses V; rectangle 10 mm by 3 mm; wire 0.3 mm }`,
+      ].filter(() => random.next() < 0.6);
+      const text = `stackup { copper TOP 35 um; prepreg 0.2 mm er 4.2; plane GND 18 um }
+net A { swing ${toleranced(3, 'V')}; rise ${toleranced(5, 'ns')}; source 30 ohm; load ${toleranced(200, 'ohm')}, 5 pF }
+net V { source ${toleranced(100, 'ohm')}; load 10 kohm, 8 pF; tolerates 100 mV peak }
+${ways.join('\n')}
+`;
+      checkCorners(text);
     }
   });
 

@@ -2,8 +2,9 @@
  * Budgets over the stated tolerances: the largest and the smallest total in the box of all of them, and which quantity moves it most.
  *
  * Method    every quantity at both its ends by itself; the signs of what that does choose each budget's two worst corners, which
- *           are then evaluated. Where both ends of a quantity do the same, its effect turns inside the box: both stand in the
- *           bounds, and the corners have the worse one
+ *           are then evaluated. Of what does little, others may have turned the sign there: each is tried at its other end once, and
+ *           left there where that is worse. Where both ends of a quantity do the same, its effect turns inside the box: both stand in
+ *           the bounds, and the corners have the worse one
  * Range     exact where totals are monotone in every quantity; test/budget/tolerances.test.ts holds it against every corner of the box
  */
 import type { Place, Project } from '../../board/model';
@@ -28,10 +29,32 @@ export function* overTolerances(project: Project, nominal: Evaluation, cache: So
     looked.at(down);
     ends.push({ quantity, up, down });
   }
-  if (1 < quantities.length) {
-    for (const shifts of cornersOf(nominal, ends)) {
-      looked.at(evaluate(variedProject(project, shifts), cache));
+  const tried = new Map<string, readonly (number | null)[]>();
+  const totalsAt = (shifts: Shifts) => {
+    const key = quantities.map(({ key: each }) => shifts.get(each) ?? 0).join();
+    const known = tried.get(key);
+    if (known !== undefined) return known;
+    const evaluation = evaluate(variedProject(project, shifts), cache);
+    looked.at(evaluation);
+    const totals = evaluation.budgets.map(({ total }) => total);
+    tried.set(key, totals);
+    return totals;
+  };
+  for (const { budget, direction, shifts, doubtful } of cornersOf(nominal, ends)) {
+    const worth = (at: Shifts) => {
+      const total = totalsAt(at)[budget] ?? null;
+      return total === null ? -Infinity : direction * total;
+    };
+    let best = worth(shifts);
+    yield null;
+    for (const key of doubtful) {
+      const flipped = new Map(shifts).set(key, shifts.get(key) === 1 ? -1 : 1);
+      const found = worth(flipped);
       yield null;
+      if (best < found) {
+        best = found;
+        shifts.set(key, flipped.get(key)!);
+      }
     }
   }
   return looked.bounded(nominal, ends);
@@ -45,21 +68,30 @@ export function boundedAtOnce(project: Project, nominal: Evaluation, cache: Solv
   }
 }
 
-/** Each budget's worst and best corner, every one once. */
-function cornersOf({ budgets }: Evaluation, ends: readonly { readonly quantity: Toleranced; readonly up: Evaluation; readonly down: Evaluation }[]): readonly Shifts[] {
-  const corners = new Map<string, Shifts>();
-  budgets.forEach((_, at) => {
-    for (const direction of [1, -1] as const) {
-      const shifts = new Map<string, 1 | -1>();
-      for (const { quantity, up, down } of ends) {
-        const [above, below] = [up.budgets[at]?.total ?? null, down.budgets[at]?.total ?? null];
-        if (above !== null && below !== null && above !== below) shifts.set(quantity.key, (below < above ? 1 : -1) * direction === 1 ? 1 : -1);
-      }
-      corners.set(JSON.stringify([...shifts]), shifts);
-    }
-  });
-  return [...corners.values()].filter(({ size }) => 1 < size);
+interface Corner {
+  readonly budget: number;
+  /** 1 towards the largest total. */
+  readonly direction: 1 | -1;
+  readonly shifts: Map<string, 1 | -1>;
+  /** What does so little by itself that its sign may be another one there, the largest first. */
+  readonly doubtful: readonly string[];
 }
+
+/** Each budget's worst and best corner, of those that more than one quantity moves. */
+function cornersOf({ budgets }: Evaluation, ends: readonly { readonly quantity: Toleranced; readonly up: Evaluation; readonly down: Evaluation }[]): readonly Corner[] {
+  return budgets.flatMap((_, budget): readonly Corner[] => {
+    const moves = ends.flatMap(({ quantity: { key }, up, down }) => {
+      const [above, below] = [up.budgets[budget]?.total ?? null, down.budgets[budget]?.total ?? null];
+      return above === null || below === null || above === below ? [] : [{ key, by: above - below }];
+    });
+    if (moves.length < 2) return [];
+    const largest = Math.max(...moves.map(({ by }) => Math.abs(by)));
+    const doubtful = moves.filter(({ by }) => Math.abs(by) < little * largest).sort((a, b) => Math.abs(b.by) - Math.abs(a.by)).map(({ key }) => key);
+    return ([1, -1] as const).map((direction) => ({ budget, direction, shifts: new Map(moves.map(({ key, by }) => [key, 0 < by * direction ? 1 : -1])), doubtful }));
+  });
+}
+
+const little = 0.5;
 
 type Range = [number, number];
 
