@@ -4,7 +4,7 @@
  * Method    every quantity at both its ends by itself; the signs of what that does choose each budget's two worst corners, which
  *           are then evaluated. Of what does little, others may have turned the sign there: each is tried at its other end once, and
  *           left there where that is worse. Where both ends of a quantity do the same, its effect turns inside the box: both stand in
- *           the bounds, and the corners have the worse one
+ *           the bounds, and a corner has the worse one of the two and of what is drawn
  * Range     exact where totals are monotone in every quantity; test/budget/tolerances.test.ts holds it against every corner of the box
  */
 import type { Place, Project } from '../../board/model';
@@ -80,14 +80,22 @@ interface Corner {
 /** Each budget's worst and best corner, of those that more than one quantity moves. */
 function cornersOf({ budgets }: Evaluation, ends: readonly { readonly quantity: Toleranced; readonly up: Evaluation; readonly down: Evaluation }[]): readonly Corner[] {
   return budgets.flatMap((_, budget): readonly Corner[] => {
+    const nominal = budgets[budget]!.total;
     const moves = ends.flatMap(({ quantity: { key }, up, down }) => {
       const [above, below] = [up.budgets[budget]?.total ?? null, down.budgets[budget]?.total ?? null];
-      return above === null || below === null || above === below ? [] : [{ key, by: above - below }];
+      return nominal === null || above === null || below === null || (above === nominal && below === nominal) ? [] : [{ key, above: above - nominal, below: below - nominal }];
     });
     if (moves.length < 2) return [];
-    const largest = Math.max(...moves.map(({ by }) => Math.abs(by)));
-    const doubtful = moves.filter(({ by }) => Math.abs(by) < little * largest).sort((a, b) => Math.abs(b.by) - Math.abs(a.by)).map(({ key }) => key);
-    return ([1, -1] as const).map((direction) => ({ budget, direction, shifts: new Map(moves.map(({ key, by }) => [key, 0 < by * direction ? 1 : -1])), doubtful }));
+    const sizeOf = ({ above, below }: { readonly above: number; readonly below: number }) => Math.max(Math.abs(above), Math.abs(below));
+    const largest = Math.max(...moves.map(sizeOf));
+    const doubtful = moves.filter((each) => sizeOf(each) < little * largest).sort((a, b) => sizeOf(b) - sizeOf(a)).map(({ key }) => key);
+    return ([1, -1] as const).map((direction) => {
+      const shifts = moves.flatMap(({ key, above, below }): readonly (readonly [string, 1 | -1])[] => {
+        if (above * direction < 0 && below * direction < 0) return [];
+        return [[key, below * direction < above * direction ? 1 : -1]];
+      });
+      return { budget, direction, shifts: new Map(shifts), doubtful };
+    });
   });
 }
 
