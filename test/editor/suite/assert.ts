@@ -13,7 +13,7 @@ export function match(text: string, pattern: RegExp, what = 'text'): void {
 }
 
 /** Asks again until it is answered: findings arrive when the server has them. */
-export async function eventually<T>(ask: () => T | undefined | Promise<T | undefined>, what: string, milliseconds = 10_000): Promise<T> {
+export async function eventually<T>(ask: () => T | undefined | Promise<T | undefined>, what: string, milliseconds = 60_000): Promise<T> {
   const end = Date.now() + milliseconds;
   for (;;) {
     const answer = await ask();

@@ -7,7 +7,7 @@ import { report } from './report';
 declare const ONLY: string;
 
 export async function run(): Promise<void> {
-  const mocha = new Mocha({ ui: 'bdd', timeout: 30_000, reporter: class {} as never });
+  const mocha = new Mocha({ ui: 'bdd', timeout: 120_000, reporter: class {} as never });
   if (ONLY !== '') mocha.fgrep(ONLY);
   mocha.suite.emit('pre-require', globalThis, '', mocha);
   await loadAll();

@@ -7,7 +7,7 @@ import { report } from './report';
 declare const ONLY: string;
 
 export async function run(): Promise<void> {
-  mocha.setup({ ui: 'bdd', timeout: 30_000, reporter: class {} as never });
+  mocha.setup({ ui: 'bdd', timeout: 120_000, reporter: class {} as never });
   if (ONLY !== '') mocha.fgrep(ONLY);
   await loadAll();
   const counts = await new Promise<{ passed: number; failed: number }>((resolve) => {

@@ -2,9 +2,9 @@
  * Budgets over the stated tolerances: the largest and the smallest total in the box of all of them, and which quantity moves it most.
  *
  * Method    every quantity at both its ends by itself; the signs of what that does choose each budget's two worst corners, which
- *           are then evaluated. Of what does little, others may have turned the sign there: each is tried at its other end once, and
- *           left there where that is worse. Where both ends of a quantity do the same, its effect turns inside the box: both stand in
- *           the bounds, and a corner has the worse one of the two and of what is drawn
+ *           are then evaluated. There, others may have turned the sign of what does little, or of anything where few move a budget:
+ *           each is tried at its other end once, and left there where that is worse. Where both ends of a quantity do the same, its
+ *           effect turns inside the box: both stand in the bounds, and a corner has the worse one of the two and of what is drawn
  * Range     exact where totals are monotone in every quantity; test/budget/tolerances.test.ts holds it against every corner of the box
  */
 import type { Place, Project } from '../../board/model';
@@ -73,7 +73,7 @@ interface Corner {
   /** 1 towards the largest total. */
   readonly direction: 1 | -1;
   readonly shifts: Map<string, 1 | -1>;
-  /** What does so little by itself that its sign may be another one there, the largest first. */
+  /** What may have another sign there, the largest first. */
   readonly doubtful: readonly string[];
 }
 
@@ -88,7 +88,7 @@ function cornersOf({ budgets }: Evaluation, ends: readonly { readonly quantity: 
     if (moves.length < 2) return [];
     const sizeOf = ({ above, below }: { readonly above: number; readonly below: number }) => Math.max(Math.abs(above), Math.abs(below));
     const largest = Math.max(...moves.map(sizeOf));
-    const doubtful = moves.filter((each) => sizeOf(each) < little * largest).sort((a, b) => sizeOf(b) - sizeOf(a)).map(({ key }) => key);
+    const doubtful = moves.filter((each) => moves.length <= few || sizeOf(each) < little * largest).sort((a, b) => sizeOf(b) - sizeOf(a)).map(({ key }) => key);
     return ([1, -1] as const).map((direction) => {
       const shifts = moves.flatMap(({ key, above, below }): readonly (readonly [string, 1 | -1])[] => {
         if (above * direction < 0 && below * direction < 0) return [];
@@ -100,6 +100,8 @@ function cornersOf({ budgets }: Evaluation, ends: readonly { readonly quantity: 
 }
 
 const little = 0.5;
+/** So many cost little to try, all of them. */
+const few = 12;
 
 type Range = [number, number];
 
