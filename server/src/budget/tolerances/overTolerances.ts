@@ -6,7 +6,7 @@
  *           each is tried at its other end once, and left there where that is worse. Where both ends of a quantity do the same, its
  *           effect turns inside the box: both stand in the bounds, and a corner has the worse one of the two and of what is drawn
  * Range     exact where totals are monotone in every quantity; test/budget/tolerances.test.ts holds it against every corner of the box.
- *           Where ways of opposite sign cancel, the smallest total may be missed: by 7e-4 on one of 700 seeded boards
+ *           Where ways of opposite sign cancel, the smallest total may be missed: by 7e-4 on one of 1 000 seeded boards
  */
 import type { Place, Project } from '../../board/model';
 import { volts, type Voltage } from '../../units/quantity';
