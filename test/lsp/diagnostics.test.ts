@@ -19,6 +19,23 @@ describe('diagnostics that the client asks for', () => {
     await client.stop();
   });
 
+  it('are brought to the notice of a client that does not ask after an edit, and of no other', async () => {
+    let reminded = 0;
+    const capabilities = { textDocument: { diagnostic: {} }, workspace: { diagnostics: { refreshSupport: true } } };
+    const client = await startClient({ capabilities, answers: (connection) => connection.onRequest('workspace/diagnostic/refresh', () => { reminded += 1; return null; }) });
+    await eventually(() => (reminded === 1 ? true : undefined), 'the refresh when the workspace was read');
+    await client.open(uri, 'net A { swing 3 }\n');
+    await client.diagnostics(uri);
+    await new Promise((resolve) => setTimeout(resolve, 800));
+    assert.equal(reminded, 1, 'it asked: nothing to say');
+    await client.change(uri, 2, 'net A { swing 3 V }\n');
+    await eventually(() => (reminded === 2 ? true : undefined), 'a reminder of the edit');
+    await client.diagnostics(uri);
+    await new Promise((resolve) => setTimeout(resolve, 1200));
+    assert.equal(reminded, 2, 'it has asked since');
+    await client.stop();
+  });
+
   it('are not repeated while they are the same', async () => {
     const client = await startClient();
     await client.open(uri, 'net A { swing 3 }\n');

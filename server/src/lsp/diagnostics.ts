@@ -5,6 +5,7 @@
 import { DocumentDiagnosticReportKind, LSPErrorCodes, ResponseError, type CancellationToken, type Connection, type Diagnostic, type DocumentDiagnosticReport, type WorkspaceDiagnosticParams, type WorkspaceDiagnosticReport } from 'vscode-languageserver';
 import { diagnosticOf, type FindingsToShow } from './findings';
 import { guarded, Superseded } from './guard';
+import { remindOfOverlooked } from './overlooked';
 import type { Refresher } from './refresh';
 import { textHash } from './textHash';
 
@@ -17,12 +18,14 @@ export interface DiagnosticsOptions extends FindingsToShow {
 /** "Content modified" would be taken for "no findings", and they would flicker. */
 const overtaken = new ResponseError(LSPErrorCodes.ServerCancelled, 'the text has changed since', { retriggerRequest: true });
 
-export function answerPulls(options: DiagnosticsOptions): void {
+export function answerPulls(options: DiagnosticsOptions, refresher: Pick<Refresher, 'findings'>): void {
   const { connection, documents, computed } = options;
+  const overlooked = remindOfOverlooked(documents, () => refresher.findings());
   connection.languages.diagnostics.on(guarded({
     connection,
     name: 'diagnostics',
     async answer({ textDocument, previousResultId }): Promise<DocumentDiagnosticReport> {
+      overlooked.asked(textDocument.uri);
       const file = await documents.known(textDocument.uri); // a client asks once more when it has closed a file
       const items = file === null ? [] : diagnosticsOf(file.path, options);
       if (file !== null) computed(file.path);

@@ -6,10 +6,14 @@ import type { ClientCapabilities, Connection } from 'vscode-languageserver';
 import type { Documents } from './documents';
 
 export interface Refresher {
-  /** At once. */
+  /** All that is shown, at once. */
   readonly now: () => void;
+  /** The findings alone, at once. */
+  readonly findings: () => void;
   /** For findings that are sent, not asked for. */
   readonly onNow: (listener: () => void) => void;
+  /** For good: the client will hear no more. */
+  readonly stop: () => void;
 }
 
 /** Long enough to wait for the end of a word that is being typed. */
@@ -18,13 +22,19 @@ const pause = 150;
 export function createRefresher(connection: Connection, documents: Documents, capabilities: () => ClientCapabilities): Refresher {
   let due: ReturnType<typeof setTimeout> | undefined;
   const listeners: (() => void)[] = [];
+  const failed = (error: unknown) => connection.console.warn(`refresh: ${String(error)}`);
+  let stopped = false;
+  const findings = () => {
+    if (stopped) return;
+    if (capabilities().workspace?.diagnostics?.refreshSupport === true) connection.languages.diagnostics.refresh().catch(failed);
+  };
   const now = () => {
+    if (stopped) return;
     for (const listener of listeners) listener();
     clearTimeout(due);
     due = undefined;
+    findings();
     const { workspace } = capabilities();
-    const failed = (error: unknown) => connection.console.warn(`refresh: ${String(error)}`);
-    if (workspace?.diagnostics?.refreshSupport === true) connection.languages.diagnostics.refresh().catch(failed);
     if (workspace?.inlayHint?.refreshSupport === true) connection.languages.inlayHint.refresh().catch(failed);
   };
   documents.onReread(now);
@@ -32,7 +42,7 @@ export function createRefresher(connection: Connection, documents: Documents, ca
     clearTimeout(due);
     due = setTimeout(() => { if (isSeenElsewhere(documents, path)) now(); }, pause);
   });
-  return { now, onNow: (listener) => listeners.push(listener) };
+  return { now, findings, onNow: (listener) => listeners.push(listener), stop: () => { stopped = true; } };
 }
 
 /** Another file that is open belongs to a project of this one. */

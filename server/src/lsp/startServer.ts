@@ -49,7 +49,7 @@ export function startServer(connection: Connection, ownReader: FileReader): void
       if (clientOptions.showsStatus === true) sendStatus(server, path);
       tolerances.wanted(path);
     } };
-    if (pulls(capabilities)) answerPulls(findings);
+    if (pulls(capabilities)) answerPulls(findings, refresher);
     else pushFindings(findings, refresher);
     return abilities(capabilities);
   });
@@ -65,6 +65,7 @@ export function startServer(connection: Connection, ownReader: FileReader): void
     await readWorkspace(server, refresher);
   });
 
+  connection.onShutdown(() => refresher.stop());
   connection.onDidChangeWatchedFiles((params) => documents.changedOnDisk(params));
   connection.onRequest(explainMethod, (params: ExplainParams) => {
     const rule = rules.find(({ name }) => name === params.rule);
