@@ -22,6 +22,15 @@ describe('findings', () => {
     match(found.message, /fits: .*ns/);
   });
 
+  it('follows a board that is closed and opened again at once, over and over', async () => {
+    for (let time = 0; time < 5; time += 1) {
+      const board = await openBoard('quiet-corner.quiet');
+      await replace(board, 'rise 40 ns', 'rise 40');
+      await waitForFindings(board.document, 'unit', 'some');
+      await revertAndClose();
+    }
+  });
+
   it('places a finding after µ, Ω and an emoji where it is', async () => {
     const board = await newBoard('net A { swing 3 V; rise 1 µs; source 50 Ω; load 1 kΩ } # 😀\nnet B { /* 😀 */ }\nnet C { swing "😀" 3 V }\n');
     await waitForFindings(board.document, 'syntax', 'some');
