@@ -1,4 +1,4 @@
-/** One pass: a fresh workspace, one host, one browser, and either the suite or the driven scenes. */
+/** One pass: a fresh workspace, one host, one browser, and either the suite or the scenes of one folder. */
 import { readdirSync, readFileSync } from 'node:fs';
 import path from 'node:path';
 import { fileURLToPath } from 'node:url';
@@ -19,7 +19,7 @@ const settings = {
 };
 
 export async function runPass({ root, modules, chromium, host: kindOfHost, lineEnds, kind, screenshots, only }) {
-  const workspace = freshWorkspace({ from: [path.join(here, 'workspace'), path.join(root, 'examples')], lineEnds });
+  const workspace = freshWorkspace({ from: kind === 'newcomer' ? [] : [path.join(here, 'workspace'), path.join(root, 'examples')], lineEnds });
   const start = kindOfHost === 'web' ? startWebHost : startNodeHost;
   const host = await start({ modules, extension: root, workspace: workspace.folder, settings });
   const browser = await launchBrowser({ chromium });
@@ -31,7 +31,7 @@ export async function runPass({ root, modules, chromium, host: kindOfHost, lineE
   };
   try {
     const run = kind === 'suite' ? runSuite : runScenes;
-    await run({ host, workspace: workspace.folder, page: browser.page, tell, lineEnds, screenshots, name: `${kindOfHost}-${lineEnds}`, only });
+    await run({ host, workspace: workspace.folder, page: browser.page, tell, lineEnds, screenshots, name: `${kindOfHost}-${lineEnds}`, folder: kind, only });
     const outside = [...browser.outside, ...host.outside];
     tell('nothing leaves this machine', outside.length === 0 ? null : outside.join('\n'));
   } catch (error) {
@@ -62,8 +62,8 @@ async function runSuite({ host, page, tell }) {
   if (code !== 0) tell('the suite ends with status 0', `status ${code}\n${other.slice(-10).join('\n')}`);
 }
 
-/** Each file of `driven/` exports scenes: a title, and what a person does and sees. */
-async function runScenes({ host, workspace, page, tell, lineEnds, screenshots, name, only }) {
+/** Each file of the folder exports scenes: a title, and what a person does and sees. */
+async function runScenes({ host, workspace, page, tell, lineEnds, screenshots, name, folder, only }) {
   await page.goto(host.address());
   const ui = actions(page, screenshots);
   await ui.ready();
@@ -74,8 +74,8 @@ async function runScenes({ host, workspace, page, tell, lineEnds, screenshots, n
     if (!content.includes(text)) throw new Error(`no ${text} in ${file}`);
     return [before.length, before[before.length - 1].length + 1];
   };
-  for (const file of readdirSync(path.join(here, 'driven')).sort()) {
-    const { scenes } = await import(`./driven/${file}`);
+  for (const file of readdirSync(path.join(here, folder)).sort()) {
+    const { scenes } = await import(`./${folder}/${file}`);
     for (const scene of scenes.filter(({ title }) => title.includes(only))) {
       const shot = (what) => ui.shot(`${name}-${what}`);
       try {

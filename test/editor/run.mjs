@@ -1,8 +1,9 @@
 /**
- * The extension in two real editors: `node test/editor/run.mjs [web|node] [lf|crlf] [suite|driven] [--only TEXT]`, everything by default.
+ * The extension in two real editors: `node test/editor/run.mjs [web|node] [lf|crlf] [suite|driven|newcomer] [--only TEXT]`, everything by default.
  *
  * Sets up what is missing, builds the extension and the suite, and runs, in each host and with each
- * kind of line end, the mocha suite inside the extension host and then the scenes driven by hand.
+ * kind of line end, the mocha suite inside the extension host and then the scenes driven by hand; and once in each host the way of
+ * a newcomer, who begins with an empty folder.
  */
 import { spawnSync } from 'node:child_process';
 import { mkdirSync, rmSync } from 'node:fs';
@@ -27,7 +28,8 @@ export async function runEditorTests(words = []) {
     mkdirSync(screenshots, { recursive: true });
     for (const host of among(words, ['web', 'node'])) {
       for (const lineEnds of among(words, ['lf', 'crlf'])) {
-        for (const kind of among(words, ['suite', 'driven'])) {
+        for (const kind of among(words, ['suite', 'driven', 'newcomer'])) {
+          if (kind === 'newcomer' && lineEnds === 'crlf') continue; // there is no file yet that could have them
           const counts = await runPass({ ...tools, root, host, lineEnds, kind, screenshots, only });
           step(`${host}, ${lineEnds}, ${kind}: ${counts.passed} passed, ${counts.failed} failed`);
           total.passed += counts.passed;
