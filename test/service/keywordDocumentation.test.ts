@@ -26,7 +26,7 @@ describe('documentation at a point', () => {
   check('of a fixed word', 'run r on TOP for 1 mm { trace A 1 mm rev<|>ersed }', 'reversed', 'This net’s receiving end');
   check('of a fixed word with a meaning of its own here', 'net A { samples 1 us af<|>ter G }', 'after', 'The group of which the edge has passed');
   check('of a word that only joins', 'net A { band 1 Hz t<|>o 2 Hz }', 'to', '```quietrun\nband FREQUENCY to FREQUENCY\n```');
-  check('of a unit', 'net A { rise 40 n<|>s }', 'ns', '`ns` measures a time: 1 ns is 1e-9 s.');
+  check('of a unit', 'net A { rise 40 n<|>s }', 'ns', '`ns` measures a time: 1 ns is 10⁻⁹ s.');
   check('of a unit in a point', 'loop l { circle 1 mm at (1 mm, 2 mi<|>l) }', 'mil', '`mil` measures a length: 1 mil is 25.4 µm.');
   check('of copper by weight', 'stackup { copper A 1 o<|>z }', 'oz', '`oz` measures a length: 1 oz is 35 µm.');
   check('not of a name, whatever it is spelt like', 'net i<|>s is gate', null);
@@ -52,9 +52,10 @@ describe('documentation', () => {
   });
 
   it('says what one of a unit is', () => {
-    assert.equal(unitMarkdown('kohm'), '`kohm` measures a resistance: 1 kohm is 1000 Ω.');
+    assert.equal(unitMarkdown('kohm'), '`kohm` measures a resistance: 1 kohm is 10³ Ω.');
     assert.equal(unitMarkdown('degC'), '`degC` measures a temperature: 0 degC is 273.15 K.');
-    assert.equal(unitMarkdown('mm2'), '`mm2` measures an area: 1 mm2 is 1 mm².');
+    assert.equal(unitMarkdown('mm2'), '`mm2` measures an area: 1 mm2 is 10⁻⁶ m².');
+    assert.equal(unitMarkdown('V'), '`V` measures a voltage.');
     assert.equal(unitMarkdown('dB'), '`dB` measures a level, in decibels.');
     assert.equal(unitMarkdown('%'), '`%` measures a percentage: hundredths.');
     assert.equal(unitMarkdown('MHZ'), null);

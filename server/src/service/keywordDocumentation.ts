@@ -4,8 +4,8 @@ import { formOf } from '../syntax/forms';
 import type { BlockKind, Part, StatementShape } from '../syntax/grammar';
 import type { QuantityValue, SourceTree, Span, Statement, Value } from '../syntax/tree';
 import type { Dimension } from '../units/dimension';
-import { inText } from '../units/inText';
-import { dimensionInWords, exampleOf, fittingUnits, unitSpelt } from '../units/spelling';
+import { inText, unitOfSi } from '../units/inText';
+import { dimensionInWords, exampleOf, fittingUnits, unitSpelt, type Unit } from '../units/spelling';
 import type { HoverAnswer } from './answers';
 import { wordMeanings } from './wordMeanings';
 
@@ -47,17 +47,20 @@ export function unitMarkdown(spelling: string): string | null {
     case 'fraction': return `${measures}: hundredths.`;
     case 'angle': return `${measures}: 360 make a full turn.`;
     default: if (unit.dimension === 'temperature' && !unit.toleranced) return `${measures}: 0 ${spelling} is ${unit.inSi({ digits: '0', exponent: 0 })} K.`;
-      return `${measures}: 1 ${spelling} is ${inSiWords(unit.inSi({ digits: '1', exponent: 0 }), unit.dimension)}.`;
+      return `${measures}${inSiWords(spelling, unit)}.`;
   }
 }
 
-function inSiWords(value: number, dimension: Dimension): string {
-  // 1 uF is said as 1e-6 F: its own spelling would say nothing.
-  if (dimension === 'length' || dimension === 'area') return inText(value, dimension);
-  const symbols: Partial<Record<Dimension, string>> = { time: 's', frequency: 'Hz', voltage: 'V', current: 'A', resistance: 'Ω', capacitance: 'F', inductance: 'H', field: 'V/m', 'voltage-noise': 'V/√Hz', 'current-noise': 'A/√Hz', temperature: 'K' };
-  const number = String(value).replace('e+', 'e');
-  return `${number} ${symbols[dimension] ?? ''}`.trim();
+/** `: 1 uF is 10⁻⁶ F`; nothing for a unit that is that of the SI. Its own spelling, or a millimetre in millimetres, would say nothing. */
+function inSiWords(spelling: string, { inSi, dimension }: Unit): string {
+  const value = inSi({ digits: '1', exponent: 0 });
+  if (value === 1) return '';
+  const power = Math.round(Math.log10(value));
+  const isPower = Number(`1e${power}`) === value;
+  return `: 1 ${spelling} is ${isPower ? `10${superscript(power)} ${unitOfSi(dimension)}` : inText(value, dimension)}`;
 }
+
+const superscript = (power: number) => [...String(power)].map((each) => '⁻⁰¹²³⁴⁵⁶⁷⁸⁹'['-0123456789'.indexOf(each)]).join('');
 
 function hoverOf(span: Span, markdown: string | null): HoverAnswer | null {
   return markdown === null ? null : { span: { start: span.start, end: span.end }, markdown };

@@ -6,7 +6,7 @@
 import type { Dimension } from './dimension';
 
 export function inText(value: number, dimension: Dimension): string {
-  if (!Number.isFinite(value)) return `${Number.isNaN(value) ? '?' : value < 0 ? '-∞' : '∞'}${tail(unprefixed(dimension))}`;
+  if (!Number.isFinite(value)) return `${Number.isNaN(value) ? '?' : value < 0 ? '-∞' : '∞'}${tail(unitOfSi(dimension))}`;
   switch (dimension) {
     case 'length': return drawn(value, [[1e-4, 1e-6, 'µm'], [1, 1e-3, 'mm'], [Infinity, 1, 'm']]);
     case 'area': return drawn(value, [[1, 1e-6, 'mm²'], [Infinity, 1, 'm²']]);
@@ -18,6 +18,19 @@ export function inText(value: number, dimension: Dimension): string {
     default: return engineering(value, symbols[dimension]);
   }
 }
+
+/**
+ * How far a value may be off, `± 0.045 %`: as a share of it in two figures, which reads at a glance and needs no second prefix; as a
+ * quantity where it is larger than the value. No more than is worth a digit is said to be so.
+ */
+export function errorInText(error: number, value: number, dimension: Dimension): string {
+  const share = 100 * Math.abs(error / value);
+  if (!(share <= 100)) return `± ${inText(error, dimension)}`;
+  return share < leastShare ? `± < ${leastShare} %` : `± ${Number(share.toPrecision(2))} %`;
+}
+
+/** Per cent: half of the last of three figures. */
+const leastShare = 0.05;
 
 const symbols = { time: 's', frequency: 'Hz', voltage: 'V', current: 'A', resistance: 'Ω', capacitance: 'F', inductance: 'H', field: 'V/m', 'voltage-noise': 'V/√Hz', 'current-noise': 'A/√Hz' } as const;
 
@@ -60,7 +73,8 @@ function trimmed(text: string): string {
   return text.replace(/\.0+$/, '');
 }
 
-function unprefixed(dimension: Dimension): string {
+/** `V`, `m²`; nothing for a plain number. */
+export function unitOfSi(dimension: Dimension): string {
   switch (dimension) {
     case 'length': return 'm';
     case 'area': return 'm²';

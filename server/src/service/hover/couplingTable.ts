@@ -1,6 +1,6 @@
 /** What nets of a run put on each other, and what those numbers rest on. */
 import type { Coupling } from '../../budget/results';
-import { inText } from '../../units/inText';
+import { errorInText, inText } from '../../units/inText';
 import { escaped, table } from './markdown';
 
 const couplingsShown = 12;
@@ -10,7 +10,7 @@ export function couplingTable(couplings: readonly Coupling[]): string {
   const sorted = [...couplings].sort((a, b) => sizeOf(b) - sizeOf(a));
   const rows = sorted.slice(0, couplingsShown).map((coupling) => [
     `${escaped(coupling.aggressor.name)} → ${escaped(coupling.victim.name)}`,
-    `**${voltage(coupling.atReceiver)}** ± ${voltage(coupling.errorBar)}${coupling.counted === null ? '' : `, ${voltage(coupling.counted)} counts`}`,
+    `**${voltage(coupling.atReceiver)}** ${errorInText(coupling.errorBar, coupling.atReceiver, 'voltage')}${coupling.counted === null ? '' : `, ${voltage(coupling.counted)} counts`}`,
     voltage(coupling.nearEnd),
     voltage(coupling.farEnd),
     voltage(coupling.capacitivePart),

@@ -3,10 +3,22 @@
  * without trust and without HTML; that no name becomes a link, a picture or a table of its own is made sure here.
  */
 
-/** ASCII punctuation may be escaped by a backslash wherever it stands (CommonMark 2.4); `|` in a table, too. */
+/**
+ * A backslash stands before what has a meaning to Markdown where it stands, and before nothing else: a client that shows the source of
+ * a hover shows `HYDRO_A` and `past-sense` as they are.
+ */
 export function escaped(text: string): string {
-  return text.replace(unseen, '\ufffd').replace(/[!-/:-@[-`{-~]/g, '\\$&');
+  return text.replace(unseen, '\ufffd').replace(always, '\\$&').replace(emphasis, '\\_').replace(address, '$1\\$2').replace(atStart, '$1\\$2');
 }
+
+/** Wherever they stand; `$(` begins an icon, `&` an entity, `|` a cell, `@` ends the first half of an address. */
+const always = /[\\`*[\]{}()<>&|~!$@]/g;
+/** Between letters an underscore is one (CommonMark 6.2). */
+const emphasis = /(?<![\p{L}\p{N}_])_|_(?![\p{L}\p{N}_])/gu;
+/** What becomes a link without being marked as one: `http://`, `www.`. */
+const address = /(\w)(:\/|(?<=\bwww)\.)/gi;
+/** What begins a heading, a list, a quotation or a rule; the text may come to stand at the beginning of a line. */
+const atStart = /^(\s*\d*)([#+\-=.)])/;
 
 /** Control characters, and those that turn the direction of what follows. */
 const unseen = /[\u0000-\u001f\u007f-\u009f\u200e\u200f\u202a-\u202e\u2066-\u2069]/g;
@@ -37,5 +49,5 @@ export function percent(share: number): string {
   const value = 100 * share;
   if (value === 0) return '0 %';
   if (value < 1) return '< 1 %';
-  return `${value < 10 ? Number(value.toPrecision(2)) : Math.round(value)} %`;
+  return `${value < 10 ? Number(value.toPrecision(2)) : value < 1000 ? Math.round(value) : Number(value.toPrecision(3))} %`;
 }

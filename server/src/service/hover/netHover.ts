@@ -2,7 +2,7 @@
 import type { End, Net, Pair, Project, Signal, SignalCurrent } from '../../board/model';
 import type { Budget, Contribution } from '../../budget/results';
 import { causeInText, budgetFault, excessInText, placeWords, receiverInText, remedyInText, shareOf, voltageInText } from '../../rules/budgetFault';
-import { inText } from '../../units/inText';
+import { errorInText, inText } from '../../units/inText';
 import type { Analysis } from '../session';
 import { tolerancesInWords } from './tolerancesInWords';
 import { bar, escaped, escapedLines, paragraphs, percent, table } from './markdown';
@@ -79,7 +79,7 @@ function budgetInWords(project: Project, budget: Budget): string {
 function totalInWords(project: Project, budget: Budget): string {
   const tolerated = `${voltageInText(budget.tolerates, budget)} tolerated${ofWhat[budget.kind]}`;
   if (budget.total === null) return `No total of ${tolerated}`;
-  const amount = `**${voltageInText(budget.total, budget)}**${errorInText(budget)} of ${tolerated}`;
+  const amount = `**${voltageInText(budget.total, budget)}**${barInText(budget)} of ${tolerated}`;
   return `${amount}: ${verdictInWords(project, budget)}`;
 }
 
@@ -96,8 +96,8 @@ function verdictInWords({ board }: Project, { verdict, marginDb, total, tolerate
   }
 }
 
-function errorInText({ errorBar, total }: Budget): string {
-  return errorBar === null || errorBar <= shownError * (total ?? 0) ? '' : ` ± ${inText(errorBar, 'voltage')}`;
+function barInText({ errorBar, total }: Budget): string {
+  return errorBar === null || total === null || errorBar <= shownError * total ? '' : ` ${errorInText(errorBar, total, 'voltage')}`;
 }
 
 /** Relative. Less is rounding, which nobody wants to read. */

@@ -5,7 +5,7 @@ import { refusalInText } from '../../budget/runs/refusalInText';
 import type { FixContext } from '../../fixes/fix';
 import { sufficientGap, sufficientLength, type Sufficient } from '../../fixes/sufficient';
 import { gapsBetween } from '../../rules/gapsBetween';
-import { inText } from '../../units/inText';
+import { errorInText, inText } from '../../units/inText';
 import { assumptionsOf, couplingTable } from './couplingTable';
 import { escaped, escapedLines, paragraphs, table } from './markdown';
 import { sufficientInWords } from './sufficientInWords';
@@ -111,5 +111,5 @@ function linesTable({ traces, impedance, delay, matrices }: RunResult): string {
     `${inText(matrices!.capacitance[index * (order + 1)] * 1e-3, 'capacitance')}/mm`, `${inText(matrices!.inductance[index * (order + 1)] * 1e-3, 'inductance')}/mm`,
   ]);
   const error = Math.max(...matrices!.capacitanceError.filter(Number.isFinite), ...matrices!.inductanceError.filter(Number.isFinite));
-  return paragraphs(table(['line', 'impedance', 'delay', 'C', 'L'], rows), `${linesShown < order ? `and ${order - linesShown} more lines. ` : ''}C and L to ${inText(error, 'fraction')}.`);
+  return paragraphs(table(['line', 'impedance', 'delay', 'C', 'L'], rows), `${linesShown < order ? `and ${order - linesShown} more lines. ` : ''}C and L are solved to ${errorInText(error, 1, 'number')}.`);
 }

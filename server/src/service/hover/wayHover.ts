@@ -5,7 +5,7 @@ import type { Heard } from '../../budget/heard';
 import { budgetOfHeard } from '../../rules/budgetOfHeard';
 import { receiverInText, voltageInText } from '../../rules/budgetFault';
 import { levelInText } from '../../rules/emissionOverLimit';
-import { inText } from '../../units/inText';
+import { errorInText, inText } from '../../units/inText';
 import { currentInWords } from './netHover';
 import { escaped, escapedLines, paragraphs, percent, table } from './markdown';
 
@@ -66,7 +66,7 @@ function assumptionsInWords(heard: readonly Heard[]): string | null {
 
 function loopInWords({ loop, area, perimeter, inductance, inductanceError, emission, mutual }: LoopResult): readonly (string | null)[] {
   const size = area === null || perimeter === null ? 'its path is none that a current can take' : `${inText(area, 'area')}, ${inText(perimeter, 'length')} around`;
-  const own = inductance === null ? 'no inductance without `strip` or `wire`' : `${inText(inductance, 'inductance')}${inductanceError === null || inductanceError < 5e-4 * inductance ? '' : ` ± ${inText(inductanceError, 'inductance')}`}`;
+  const own = inductance === null ? 'no inductance without `strip` or `wire`' : `${inText(inductance, 'inductance')}${inductanceError === null || inductanceError < 5e-4 * inductance ? '' : ` ${errorInText(inductanceError, inductance, 'inductance')}`}`;
   const limits = [...(loop.areaLimit === null ? [] : [`${inText(loop.areaLimit.value, 'area')} at most`]), ...(loop.inductanceLimit === null ? [] : [`${inText(loop.inductanceLimit.value, 'inductance')} at most`])];
   const near = [...mutual].sort((a, b) => Math.abs(b.inductance) - Math.abs(a.inductance)).slice(0, 3).map(({ other, inductance: with_ }) => `${inText(with_, 'inductance')} with ${escaped(other.name)}`);
   return [`${size}, ${own}`, loopUseInWords(loop), limits.length === 0 ? null : `Its limits: ${limits.join(', ')}.`, near.length === 0 ? null : `Mutual inductance: ${near.join(', ')}.`, emission.length === 0 ? null : emissionInWords(emission)];
