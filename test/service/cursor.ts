@@ -12,6 +12,8 @@ export interface AtCursor {
   readonly offset: number;
   /** `path:line text[named]`: where a place is and what stands there, whatever the line ends are. */
   readonly inText: (places: readonly Place[]) => readonly string[];
+  /** Counted from 1, of a line of the file counted from 0: that of the text as it was given. */
+  readonly lineOf: (path: string, line: number) => number;
 }
 
 /** `files`: texts by path, one of them with the mark. */
@@ -25,12 +27,12 @@ export function atCursor(title: string, files: Readonly<Record<string, string>>,
         const offset = texts.get(path)!.indexOf(mark);
         const session = new Session();
         for (const [each, text] of texts) session.setText(each, text.replace(mark, ''));
+        const lineOf = (of: string, line: number) => line + 1 - (prefix !== '' && of === path ? 1 : 0);
         const inText = (places: readonly Place[]) => places.map((place) => {
           const text = session.text(place.path)!;
-          const line = text.slice(0, place.span.start).split('\n').length - (prefix !== '' && place.path === path ? 1 : 0);
-          return `${place.path}:${line} ${text.slice(place.span.start, place.span.end)}`;
+          return `${place.path}:${lineOf(place.path, text.slice(0, place.span.start).split('\n').length - 1)} ${text.slice(place.span.start, place.span.end)}`;
         });
-        check({ session, path, offset, inText });
+        check({ session, path, offset, inText, lineOf });
       });
     }
   }

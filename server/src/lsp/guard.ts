@@ -21,6 +21,7 @@ export function guarded<P, R>({ connection, name, answer, otherwise, overtaken }
       return await answer(params, token);
     } catch (error) {
       if (error instanceof Superseded) throw overtaken ?? new ResponseError(LSPErrorCodes.ContentModified, 'the text has changed since');
+      if (error instanceof Refusal) throw new ResponseError(LSPErrorCodes.RequestFailed, error.message);
       connection.console.error(`${name}: ${error instanceof Error ? (error.stack ?? error.message) : String(error)}`);
       return otherwise(error);
     }
@@ -29,3 +30,6 @@ export function guarded<P, R>({ connection, name, answer, otherwise, overtaken }
 
 /** Thrown where a request was overtaken by an edit: what it asks about is no longer there. */
 export class Superseded extends Error {}
+
+/** Thrown where what was asked for is not done, for a reason that the person who asked is told. */
+export class Refusal extends Error {}

@@ -19,6 +19,7 @@ import { explainMethod, type ClientOptions, type ExplainParams } from './message
 import { clientReader, type FileReader } from './reader';
 import { answerReferences } from './references';
 import { createRefresher, type Refresher } from './refresh';
+import { answerRename } from './rename';
 import type { Server } from './server';
 import { createSettings } from './settings';
 import { sendStatus } from './status';
@@ -34,6 +35,7 @@ export function startServer(connection: Connection, ownReader: FileReader): void
     connection,
     documents,
     settings: createSettings(connection, () => capabilities),
+    capabilities: () => capabilities,
     guard: (name, otherwise, answer) => guarded({ connection, name, answer, otherwise: () => otherwise }),
   };
 
@@ -80,6 +82,7 @@ export function startServer(connection: Connection, ownReader: FileReader): void
   answerDefinition(server);
   answerReferences(server);
   answerSymbols(server);
+  answerRename(server);
   connection.listen();
 }
 
@@ -98,6 +101,7 @@ function abilities(capabilities: ClientCapabilities): InitializeResult {
       definitionProvider: true,
       referencesProvider: true,
       documentSymbolProvider: true,
+      renameProvider: capabilities.textDocument?.rename?.prepareSupport === true ? { prepareProvider: true } : true,
       workspace: { workspaceFolders: { supported: true, changeNotifications: true } },
     },
     serverInfo: { name: 'quietrun' },

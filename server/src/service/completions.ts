@@ -16,6 +16,7 @@ import { writtenName } from '../syntax/writtenName';
 import { copperWeight, dimensionInWords, fittingUnits } from '../units/spelling';
 import type { Completion, CompletionKind } from './answers';
 import { statementMarkdown, unitMarkdown, wordMarkdown } from './keywordDocumentation';
+import { setsOf } from './nameSets';
 import type { Session } from './session';
 
 export function completions(session: Session, path: string, offset: number): readonly Completion[] {
@@ -122,11 +123,6 @@ function isFitting({ kind, name, declarations }: NameRecord, of: NameKind, { key
 }
 
 const waivableSets: readonly NameSet[] = ['signal', 'run', 'return', 'link', 'shield', 'ambient', 'family', 'board'];
-
-const setsOf: Readonly<Record<NameKind, readonly NameSet[]>> = {
-  copper: ['layer'], plane: ['layer'], family: ['family'], net: ['signal'], pair: ['signal'], loop: ['signal'], group: ['group'], run: ['run'], return: ['return'],
-  link: ['link'], shield: ['shield'], ambient: ['ambient'], board: ['board'], stackup: ['stackup'], any: ['signal'], free: ['conductor'],
-};
 
 function documentationOf(project: Project, { kind, name }: NameRecord): string {
   if (kind === 'family') {

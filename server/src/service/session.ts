@@ -182,19 +182,24 @@ export class Session {
 
   /** The root as it would be after the edits, which stay undone. */
   evaluateWith(root: string, edits: readonly Edit[]): Evaluation {
+    const project = this.projectWith(root, edits);
+    const nominal = evaluate(project, this.cache);
+    // Compared with what is known now: with its bounds where those are.
+    return this.analyse(root).bounded ? boundedAtOnce(project, nominal, this.cache) : nominal;
+  }
+
+  /** The same, names and values only. */
+  projectWith(root: string, edits: readonly Edit[]): Project {
     const changed = new Map<string, SourceTree>();
     for (const path of new Set(edits.map((edit) => edit.path))) {
       changed.set(path, parse(editedText(this.text(path) ?? '', edits.filter((edit) => edit.path === path))));
     }
-    const project = resolveProject(root, {
+    return resolveProject(root, {
       read: (path) => {
         const tree = changed.get(path);
         return tree === undefined ? this.answer(path) : { tree };
       },
     });
-    const nominal = evaluate(project, this.cache);
-    // Compared with what is known now: with its bounds where those are.
-    return this.analyse(root).bounded ? boundedAtOnce(project, nominal, this.cache) : nominal;
   }
 
   private analysisOf(project: Project): Analysis {
