@@ -2,7 +2,7 @@
 import assert from 'node:assert/strict';
 import { describe, it } from 'node:test';
 import { LSPErrorCodes, type ClientCapabilities, type TextDocumentEdit, type WorkspaceEdit } from 'vscode-languageserver-protocol/node';
-import type { ReadFileAnswer, ReadFileParams } from '../../server/src/lsp/messages';
+import type { ReadFileParams } from '../../server/src/lsp/messages';
 import { startClient, type TestClient } from './client';
 
 const folder = 'memory://box/boards';
@@ -66,7 +66,7 @@ async function started(capabilities: ClientCapabilities): Promise<TestClient> {
     capabilities, folders: [folder], options: { readsFiles: true },
     answers(connection) {
       connection.onRequest('quietrun/listFiles', () => ({ uris: [] }));
-      connection.onRequest('quietrun/readFile', ({ uri }: ReadFileParams): ReadFileAnswer => (uri === parts ? { text: 'net A { once }\nnet B { once }\n' } : { problem: 'missing' }));
+      connection.onRequest('quietrun/readFile', ({ uri }: ReadFileParams) => (uri === parts ? { text: 'net A { once }\nnet B { once }\n' } : { problem: 'missing' }) as never);
     },
   });
   await client.open(board, text);

@@ -2,7 +2,8 @@
 import assert from 'node:assert/strict';
 import { describe } from 'node:test';
 import { definition } from '../../server/src/service/definition';
-import { highlights, references } from '../../server/src/service/references';
+import { highlights } from '../../server/src/service/highlights';
+import { references } from '../../server/src/service/references';
 import { atCursor } from './cursor';
 
 const layers = 'stackup { copper TOP 35 um; prepreg 0.2 mm er 4.2; plane GND 18 um }\n';
@@ -44,8 +45,15 @@ describe('references', () => {
   atCursor('without the declaration', board(run.replace('trace A', 'trace <|>A')), ({ session, path, offset, inText }) =>
     assert.deepEqual(inText(references(session, path, offset, { includeDeclaration: false })), ['board.quiet:4 A']));
 
-  atCursor('in this file alone, as highlights', board(run.replace('trace "B 1"', 'trace "B <|>1"')), ({ session, path, offset, inText }) =>
-    assert.deepEqual(inText(highlights(session, path, offset)), ['board.quiet:5 "B 1"', 'board.quiet:8 "B 1"']));
-
   checkReferences('of a used file, over all projects that use it', { 'a.quiet': 'use "fam.quiet"\nnet A is f\n', 'b.quiet': 'use "fam.quiet"\nnet B is f\n', 'fam.quiet': 'family <|>f { swing 1 V }\n' }, 'a.quiet:2 f', 'b.quiet:2 f', 'fam.quiet:1 f');
+});
+
+describe('highlights', () => {
+  const check = (title: string, files: Readonly<Record<string, string>>, ...expected: readonly string[]) =>
+    atCursor(title, files, ({ session, path, offset, inText }) => assert.deepEqual(highlights(session, path, offset).map(({ span, kind }) => `${inText([{ path, span }])[0]} ${kind}`), expected));
+
+  check('are those of this file alone', board(run.replace('trace "B 1"', 'trace "B <|>1"')), 'board.quiet:5 "B 1" use', 'board.quiet:8 "B 1" use');
+  check('tell the declaration from the uses', { 'board.quiet': 'net A { once }\nlink l { between <|>A and A; mutual 1 nH }\n' }, 'board.quiet:1 A declaration', 'board.quiet:2 A use', 'board.quiet:2 A use');
+  check('of a range', { ...board(run), 'parts/nets.quiet': nets.replace('net D[0..1]', 'net <|>D[0..1]') }, 'parts/nets.quiet:3 D[0..1] declaration');
+  check('of a keyword are none', board(run.replace('trace A', 'tra<|>ce A')));
 });

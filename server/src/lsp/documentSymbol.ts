@@ -5,7 +5,7 @@ import { symbols } from '../service/symbols';
 import { rangeOf } from './positions';
 import type { Server } from './server';
 
-const kinds = new Map<string, SymbolKind>([
+export const symbolKinds: ReadonlyMap<string, SymbolKind> = new Map<string, SymbolKind>([
   ['board', SymbolKind.Module], ['stackup', SymbolKind.Struct], ['family', SymbolKind.Class], ['net', SymbolKind.Variable], ['pair', SymbolKind.Array],
   ['run', SymbolKind.Object], ['loop', SymbolKind.Event], ['return', SymbolKind.Interface], ['link', SymbolKind.Operator], ['shield', SymbolKind.Package],
   ['ambient', SymbolKind.Constant], ['copper', SymbolKind.Field], ['plane', SymbolKind.Field], ['trace', SymbolKind.Field], ['guard', SymbolKind.Field],
@@ -21,7 +21,7 @@ export function answerSymbols({ connection, guard, documents }: Server): void {
 function symbolOf({ name, kind, detail, span, nameSpan, children }: SymbolEntry, document: TextDocument): DocumentSymbol {
   return {
     name: name === '' ? kind : name, // the protocol refuses a symbol without a name
-    kind: kinds.get(kind) ?? SymbolKind.Property,
+    kind: symbolKinds.get(kind) ?? SymbolKind.Property,
     detail,
     range: rangeOf(document, span),
     selectionRange: rangeOf(document, nameSpan),

@@ -10,6 +10,8 @@ import { answerCodeActions } from './codeAction';
 import { answerCompletions } from './completion';
 import { answerDefinition } from './definition';
 import { answerPulls, pushFindings } from './diagnostics';
+import { answerHighlights } from './documentHighlight';
+import { answerLinks } from './documentLink';
 import { Documents } from './documents';
 import { answerSymbols } from './documentSymbol';
 import { guarded } from './guard';
@@ -24,6 +26,7 @@ import type { Server } from './server';
 import { createSettings } from './settings';
 import { sendStatus } from './status';
 import { tolerancesBehind } from './tolerancesBehind';
+import { answerWorkspaceSymbols } from './workspaceSymbol';
 
 /** `ownReader` reads for a client that does not offer to read for the server. */
 export function startServer(connection: Connection, ownReader: FileReader): void {
@@ -83,6 +86,9 @@ export function startServer(connection: Connection, ownReader: FileReader): void
   answerReferences(server);
   answerSymbols(server);
   answerRename(server);
+  answerHighlights(server);
+  answerWorkspaceSymbols(server);
+  answerLinks(server);
   connection.listen();
 }
 
@@ -101,6 +107,9 @@ function abilities(capabilities: ClientCapabilities): InitializeResult {
       definitionProvider: true,
       referencesProvider: true,
       documentSymbolProvider: true,
+      documentHighlightProvider: true,
+      workspaceSymbolProvider: true,
+      documentLinkProvider: {},
       renameProvider: capabilities.textDocument?.rename?.prepareSupport === true ? { prepareProvider: true } : true,
       workspace: { workspaceFolders: { supported: true, changeNotifications: true } },
     },

@@ -12,8 +12,3 @@ export function references(session: Session, path: string, offset: number, { inc
     records.flatMap(({ declarations, uses, waivers }) => [...(includeDeclaration ? declarations : []), ...uses, ...waivers]));
   return distinctPlaces(places);
 }
-
-/** The same within the file that is looked at. */
-export function highlights(session: Session, path: string, offset: number): readonly Place[] {
-  return references(session, path, offset).filter((place) => place.path === path);
-}
