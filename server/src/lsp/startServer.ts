@@ -6,6 +6,7 @@ import { CodeActionKind, DidChangeConfigurationNotification, DidChangeWatchedFil
 import { rules } from '../rules/index';
 import { rulePage } from '../rules/rulePage';
 import { Session } from '../service/session';
+import { answerCallHierarchy } from './callHierarchy';
 import { answerCodeActions } from './codeAction';
 import { answerCompletions } from './completion';
 import { answerDefinition } from './definition';
@@ -89,6 +90,7 @@ export function startServer(connection: Connection, ownReader: FileReader): void
   answerHighlights(server);
   answerWorkspaceSymbols(server);
   answerLinks(server);
+  answerCallHierarchy(server);
   connection.listen();
 }
 
@@ -110,6 +112,7 @@ function abilities(capabilities: ClientCapabilities): InitializeResult {
       documentHighlightProvider: true,
       workspaceSymbolProvider: true,
       documentLinkProvider: {},
+      callHierarchyProvider: true,
       renameProvider: capabilities.textDocument?.rename?.prepareSupport === true ? { prepareProvider: true } : true,
       workspace: { workspaceFolders: { supported: true, changeNotifications: true } },
     },
