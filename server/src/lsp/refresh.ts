@@ -35,6 +35,7 @@ export function createRefresher(connection: Connection, documents: Documents, ca
     due = undefined;
     findings();
     const { workspace } = capabilities();
+    if (workspace?.semanticTokens?.refreshSupport === true) connection.languages.semanticTokens.refresh().catch(failed);
     if (workspace?.inlayHint?.refreshSupport === true) connection.languages.inlayHint.refresh().catch(failed);
   };
   documents.onReread(now);

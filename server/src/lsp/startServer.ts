@@ -16,6 +16,7 @@ import { answerLinks } from './documentLink';
 import { Documents } from './documents';
 import { answerSymbols } from './documentSymbol';
 import { guarded } from './guard';
+import { answerFolding } from './folding';
 import { answerHover } from './hover';
 import { answerInlayHints } from './inlayHint';
 import { explainMethod, type ClientOptions, type ExplainParams } from './messages';
@@ -23,6 +24,8 @@ import { clientReader, type FileReader } from './reader';
 import { answerReferences } from './references';
 import { createRefresher, type Refresher } from './refresh';
 import { answerRename } from './rename';
+import { answerSelectionRanges } from './selectionRange';
+import { answerSemanticTokens, semanticTokensLegend } from './semanticTokens';
 import type { Server } from './server';
 import { createSettings } from './settings';
 import { sendStatus } from './status';
@@ -91,6 +94,9 @@ export function startServer(connection: Connection, ownReader: FileReader): void
   answerWorkspaceSymbols(server);
   answerLinks(server);
   answerCallHierarchy(server);
+  answerFolding(server);
+  answerSelectionRanges(server);
+  answerSemanticTokens(server);
   connection.listen();
 }
 
@@ -114,6 +120,9 @@ function abilities(capabilities: ClientCapabilities): InitializeResult {
       documentLinkProvider: {},
       callHierarchyProvider: true,
       renameProvider: capabilities.textDocument?.rename?.prepareSupport === true ? { prepareProvider: true } : true,
+      foldingRangeProvider: true,
+      selectionRangeProvider: true,
+      semanticTokensProvider: { legend: semanticTokensLegend, full: true, range: true },
       workspace: { workspaceFolders: { supported: true, changeNotifications: true } },
     },
     serverInfo: { name: 'quietrun' },

@@ -46,3 +46,19 @@ export interface SymbolEntry {
   readonly nameSpan: Span;
   readonly children: readonly SymbolEntry[];
 }
+
+/** Lines count from 0, the last of them included. */
+export interface Fold {
+  readonly startLine: number;
+  readonly endLine: number;
+  readonly kind: 'block' | 'comment' | 'imports';
+}
+
+export interface SemanticToken {
+  /** Within one line. */
+  readonly span: Span;
+  readonly type: 'net' | 'layer' | 'family' | 'group' | 'part' | 'quantity' | 'unit';
+  readonly declaration: boolean;
+  /** A net or pair that gets more noise than it tolerates. */
+  readonly overBudget: boolean;
+}

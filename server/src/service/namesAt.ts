@@ -13,7 +13,7 @@ export interface NamesAt {
 export function namesAt(session: Session, path: string, offset: number): readonly NamesAt[] {
   return session.projectsOf(path).flatMap((root) => {
     const project = session.project(root);
-    const mentions = (mentionsOf(project).get(path) ?? []).filter(({ place: { span } }) => span.start <= offset && offset <= span.end);
+    const mentions = namesIn(project, path).filter(({ place: { span } }) => span.start <= offset && offset <= span.end);
     // Beside a name and at the start of another, the one that begins here is meant.
     const start = Math.max(...mentions.map(({ place }) => place.span.start));
     const here = mentions.filter(({ place }) => place.span.start === start);
@@ -27,7 +27,12 @@ export function distinctPlaces(places: readonly Place[]): readonly Place[] {
   return [...distinct.values()].sort((a, b) => (a.path < b.path ? -1 : b.path < a.path ? 1 : a.span.start - b.span.start));
 }
 
-interface Mention {
+/** Every name of a file, wherever it stands. */
+export function namesIn(project: Project, path: string): readonly Mention[] {
+  return mentionsOf(project).get(path) ?? [];
+}
+
+export interface Mention {
   readonly place: Place;
   readonly record: NameRecord;
 }

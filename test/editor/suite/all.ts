@@ -6,5 +6,6 @@ export async function loadAll(): Promise<void> {
   await import('./fixes.suite');
   await import('./completion.suite');
   await import('./navigation.suite');
+  await import('./structure.suite');
   await import('./files.suite');
 }
