@@ -1,25 +1,15 @@
 /**
  * Charges of conductors at unit potentials, and from them the capacitance matrix, at two degrees of the charge series at once.
  *
- *   A Q = V     A  Galerkin matrix of the sides, symmetric positive definite        Method  A = L L^T,  L Y = B,
- *               B  ones in the net-charge row of every side of a conductor                  C = Y^T Y
- *
- * With the highest polynomials of every side ordered last, the leading rows of Y are those of the system without them:
- * C of the lower degree is the same sum cut short. Two are left out together, one even and one odd: a charge that is nearly
- * symmetric hardly takes the odd one, and the difference to one degree less was seen to miss errors four times its size.
- *
- * Model     without a plane the potential has no zero: only charge-neutral states count. A constant on every potential
- *           changes none of them; one large enough makes A positive definite, and the projection
- *           C - (C 1)(C 1)^T / (1^T C 1) removes it
- * Source    Harrington 1968 for the moment method; Weeks 1970; Kelvin's and Thomson's theorems in any textbook
- * Accuracy  C in units of 2 pi eps0. The constant is removed to 1e-15 times its size
+ * Method    conductors beside each other, as nearly always: each by what the others see of it (rowSolution.ts); where one stands
+ *           above another, side by side (sidesSolution.ts)
+ * Accuracy  C in units of 2 pi eps0; the two ways agree to 1e-5 (the test)
  */
-import { cholesky, forwardSubstitute } from '../../../numeric/cholesky';
 import type { ChargedConductor } from '../basis/chargedConductor';
 import type { Kernel } from '../kernel/layeredKernel';
-import { layOut, type Layout } from './layout';
-import { mutualBlock } from './mutualBlock';
-import { ownBlock } from './ownBlock';
+import { distancesBeside } from './distancesBeside';
+import { rowSolution } from './rowSolution';
+import { sidesSolution } from './sidesSolution';
 
 export { leftOut } from './layout';
 
@@ -40,81 +30,7 @@ export interface ChargeSolution {
 }
 
 /** Null where the matrix is not positive definite: some integral was not accurate enough. */
-export function chargeSolution({ conductors, signals, kernel, constant }: ChargeProblem): ChargeSolution | null {
-  const layout = layOut(conductors);
-  const { unknowns, coarse, charges } = layout;
-  const matrix = assembled(conductors, layout, kernel);
-  if (constant !== null) addConstant(charges, constant, matrix, unknowns);
-  if (!cholesky(matrix, unknowns)) return null;
-  const count = signals.length + (constant === null ? 0 : 1);
-  const right = new Float64Array(count * unknowns);
-  signals.forEach((conductor, index) => {
-    for (const row of charges[conductor]) right[index * unknowns + row] = 1;
-  });
-  if (constant !== null) for (const rows of charges) for (const row of rows) right[signals.length * unknowns + row] = 1;
-  forwardSubstitute(matrix, unknowns, right, count);
-  const finish = (to: number) => {
-    const products = innerProducts(right, unknowns, to, count);
-    return constant === null ? products : neutral(products, count);
-  };
-  return { order: signals.length, fine: finish(unknowns), coarse: finish(coarse), unknowns };
-}
-
-let memory = new Float64Array(4096);
-
-/** The lower triangle; what lies above it is whatever was there before. */
-function assembled(conductors: readonly ChargedConductor[], { unknowns, rows }: Layout, kernel: ChargeProblem['kernel']): Float64Array {
-  if (memory.length < unknowns * unknowns) memory = new Float64Array(unknowns * unknowns);
-  conductors.forEach((conductor, index) => {
-    const { layer } = conductor.sides[0];
-    placeBlock(ownBlock(conductor, kernel(layer, layer)), rows[index], rows[index], unknowns);
-    for (let other = 0; other < index; other += 1) {
-      // The kernel wants the conductor in the higher layer first.
-      const [above, below] = layer < conductors[other].sides[0].layer ? [other, index] : [index, other];
-      const between = kernel(conductors[below].sides[0].layer, conductors[above].sides[0].layer);
-      placeBlock(mutualBlock(conductors[above], conductors[below], between), rows[above], rows[below], unknowns);
-    }
-  });
-  return memory;
-}
-
-function placeBlock(block: Float64Array, rows: Int32Array, columns: Int32Array, unknowns: number): void {
-  let at = 0;
-  for (let a = 0; a < rows.length; a += 1) {
-    const row = rows[a];
-    for (let b = 0; b < columns.length; b += 1) {
-      const column = columns[b];
-      memory[column < row ? row * unknowns + column : column * unknowns + row] = block[at];
-      at += 1;
-    }
-  }
-}
-
-/** Only net charges feel it. */
-function addConstant(charges: readonly Int32Array[], constant: number, matrix: Float64Array, unknowns: number): void {
-  const rows = charges.flatMap((own) => [...own]);
-  for (const row of rows) for (const column of rows) if (column <= row) matrix[row * unknowns + column] += constant;
-}
-
-function innerProducts(rows: Float64Array, stride: number, to: number, count: number): Float64Array {
-  const products = new Float64Array(count * count);
-  for (let a = 0; a < count; a += 1) {
-    for (let b = 0; b <= a; b += 1) {
-      let sum = 0;
-      for (let i = 0; i < to; i += 1) sum += rows[a * stride + i] * rows[b * stride + i];
-      products[a * count + b] = products[b * count + a] = sum;
-    }
-  }
-  return products;
-}
-
-/** The last row and column belong to all conductors at potential 1 together. */
-function neutral(products: Float64Array, count: number): Float64Array {
-  const order = count - 1;
-  const all = products[count * count - 1];
-  const result = new Float64Array(order * order);
-  for (let a = 0; a < order; a += 1) {
-    for (let b = 0; b < order; b += 1) result[a * order + b] = products[a * count + b] - (products[a * count + order] * products[b * count + order]) / all;
-  }
-  return result;
+export function chargeSolution(problem: ChargeProblem): ChargeSolution | null {
+  const distances = distancesBeside(problem.conductors);
+  return distances === null ? sidesSolution(problem) : rowSolution(problem, distances);
 }

@@ -30,6 +30,16 @@ export class NodeSet {
     }
   }
 
+  /** Points given by their places in a conductor whose left end is at `left`. */
+  placePoints(x: Float64Array, y: Float64Array, left: number): void {
+    this.count = x.length;
+    while (this.x.length < this.count) this.grow();
+    for (let i = 0; i < x.length; i += 1) {
+      this.x[i] = left + x[i];
+      this.y[i] = y[i];
+    }
+  }
+
   /** e^(2 q (x - centre)), and cos and sin of 2 q (y - low), for sums over the images between two planes. */
   placeWaves(q: number, centre: number, low: number): void {
     if (this.growing.length < this.count) {

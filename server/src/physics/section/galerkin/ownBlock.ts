@@ -8,27 +8,12 @@
 import { polynomialLimit } from '../basis/orthonormalJacobi';
 import type { ChargedConductor } from '../basis/chargedConductor';
 import type { Kernel } from '../kernel/layeredKernel';
+import { keptShape } from './keptShapes';
 import { writeSideBlock } from './sideBlock';
 
-const kept = new WeakMap<Kernel, Map<string, Float64Array>>();
-/** Numbers kept for one kernel: 8 MB. */
-const keptLimit = 1 << 20;
-const keptSize = new WeakMap<Kernel, number>();
-
 export function ownBlock({ shape, atOrigin }: ChargedConductor, kernel: Kernel): Float64Array {
-  let blocks = kept.get(kernel);
-  if (blocks === undefined) kept.set(kernel, (blocks = new Map()));
-  const known = blocks.get(shape);
-  if (known !== undefined) return known;
-  const made = blockAtOrigin(atOrigin(), kernel);
-  let size = (keptSize.get(kernel) ?? 0) + made.length;
-  if (keptLimit < size) {
-    blocks.clear();
-    size = made.length;
-  }
-  blocks.set(shape, made);
-  keptSize.set(kernel, size);
-  return made;
+  const kept = keptShape(shape, kernel);
+  return (kept.ownBlock ??= blockAtOrigin(atOrigin(), kernel));
 }
 
 const block = new Float64Array(polynomialLimit * polynomialLimit);

@@ -1,0 +1,95 @@
+/**
+ * Nodes on the sides of a conductor, with what a potential there is worth to each polynomial, close enough for potentials whose
+ * sources are `distance` or more away to the left and to the right.
+ */
+import { polynomialLimit } from '../basis/orthonormalJacobi';
+import type { PartRule } from '../basis/partRule';
+import type { Side } from '../basis/side';
+import { farRatio } from './pairIntegral';
+import { farPoints } from './sideBlock';
+
+export interface Moments {
+  readonly count: number;
+  readonly x: Float64Array;
+  readonly y: Float64Array;
+  /** count × unknowns. */
+  readonly moments: Float64Array;
+  readonly unknowns: number;
+  readonly left: number;
+  readonly right: number;
+  readonly bottom: number;
+  readonly top: number;
+  /** The nodes of one half, and their images about the middle: their own where they lie there. */
+  readonly pairs: { readonly own: Int32Array; readonly mirrored: Int32Array };
+}
+
+/** `rows`: of every polynomial, side after side, the unknown. */
+export function nodesWithin(sides: readonly Side[], rows: Int32Array, unknowns: number, distance: number): Moments {
+  const extent = extentOf(sides);
+  const reach = { left: extent.left - distance, right: extent.right + distance };
+  const found: { side: Side; rule: PartRule; row: number }[] = [];
+  let row = 0;
+  let count = 0;
+  for (const side of sides) {
+    const start = row;
+    visit(side, 0, 0, reach, (rule) => {
+      found.push({ side, rule, row: start });
+      count += rule.count;
+    });
+    row += side.order;
+  }
+  const [x, y, moments] = [new Float64Array(count), new Float64Array(count), new Float64Array(count * unknowns)];
+  let at = 0;
+  for (const { side: { x0, y0, x1, y1, order }, rule, row: first } of found) {
+    for (let i = 0; i < rule.count; i += 1, at += 1) {
+      x[at] = x0 + (x1 - x0) * rule.t[i];
+      y[at] = y0 + (y1 - y0) * rule.t[i];
+      for (let m = 0; m < order; m += 1) moments[at * unknowns + rows[first + m]] = rule.weighted[i * polynomialLimit + m];
+    }
+  }
+  return { count, x, y, moments, unknowns, ...extent, pairs: pairsOf(x, y, extent) };
+}
+
+function pairsOf(x: Float64Array, y: Float64Array, { left, right }: { readonly left: number; readonly right: number }) {
+  const tolerance = 1e-9 * (right - left);
+  const own: number[] = [];
+  const mirrored: number[] = [];
+  for (let i = 0; i < x.length; i += 1) {
+    const image = left + right - x[i];
+    if (image + tolerance < x[i]) continue;
+    let j = 0;
+    while (j < x.length && !(Math.abs(x[j] - image) <= tolerance && Math.abs(y[j] - y[i]) <= tolerance)) j += 1;
+    if (j === x.length) throw new Error(`node ${i} at ${x[i]}, ${y[i]} has no mirror image`);
+    own.push(i);
+    mirrored.push(j);
+  }
+  return { own: Int32Array.from(own), mirrored: Int32Array.from(mirrored) };
+}
+
+export function extentOf(sides: readonly Side[]) {
+  let [left, right, bottom, top] = [Infinity, -Infinity, Infinity, -Infinity];
+  for (const { x0, x1, y0, y1 } of sides) {
+    left = Math.min(left, x0, x1);
+    right = Math.max(right, x0, x1);
+    bottom = Math.min(bottom, y0, y1);
+    top = Math.max(top, y0, y1);
+  }
+  return { left, right, bottom, top };
+}
+
+/** Sides longer than this over the distance are cut. */
+const wholeRatio = 0.3;
+
+function visit(side: Side, level: number, index: number, reach: { readonly left: number; readonly right: number }, take: (rule: PartRule) => void): void {
+  const size = 2 ** -level;
+  const from = side.x0 + (side.x1 - side.x0) * index * size;
+  const to = from + (side.x1 - side.x0) * size;
+  const near = Math.min(Math.min(from, to) - reach.left, reach.right - Math.max(from, to));
+  const length = side.length * size;
+  if (level === 0 && wholeRatio * length <= near) take(side.basis.whole(Math.max(farPoints(near / length), side.order)));
+  else if (0 < level && farRatio * length <= near) take(side.basis.part(level, index));
+  else {
+    visit(side, level + 1, 2 * index, reach, take);
+    visit(side, level + 1, 2 * index + 1, reach, take);
+  }
+}
