@@ -98,7 +98,7 @@ describe('missing-value', () => {
   });
 
   it('of a run', () => {
-    check(run(rows, 'run r on TOP'), 'missing-value [TOP]: length is missing: `for` and a length such as `0.2 mm`');
+    check(run(rows, 'run r on TOP'), 'missing-value [TOP]: length is missing: `for` and a length such as `38 mm`');
     check(run(rows, 'run r for 20 mm'), 'missing-value [r]: layer of run r is missing: such as `on TOP`');
     check(`${layers}net D[0..7] { swing 1 V }\nrun r on TOP for 1 mm { trace D[0..7] 0.1 mm }\n`, 'missing-value [D[0..7] 0.1 mm]: spacing of D[0..7] is missing: such as `spaced 0.12 mm`');
     check(run(''));

@@ -26,7 +26,7 @@ describe('the package of the extension', () => {
   it('holds both entry points, both servers, the icon and every file that the manifest names', () => {
     const { contributes } = manifest;
     const named = [manifest.main, manifest.browser, manifest.icon, 'dist/server.node.cjs', 'dist/server.browser.js', 'README.md', 'CHANGELOG.md', 'LICENSE', 'package.json',
-      contributes.languages[0].configuration, contributes.grammars[0].path, contributes.snippets[0].path, ...contributes.walkthroughs[0].steps.map(({ media }: { media: { markdown: string } }) => media.markdown)];
+      contributes.languages[0].configuration, contributes.grammars[0].path, ...contributes.walkthroughs[0].steps.map(({ media }: { media: { markdown: string } }) => media.markdown)];
     for (const file of named.map((each: string) => path.normalize(each))) assert.ok(files.includes(file), `${file} is not packed`);
   });
 

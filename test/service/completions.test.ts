@@ -3,6 +3,7 @@ import assert from 'node:assert/strict';
 import { describe, it } from 'node:test';
 import fc from 'fast-check';
 import { completions } from '../../server/src/service/completions';
+import { declarationSnippets } from '../../server/src/service/declarationSnippets';
 import { Session } from '../../server/src/service/session';
 import { shapeOf } from '../../server/src/syntax/fits';
 import type { BlockKind } from '../../server/src/syntax/grammar';
@@ -29,7 +30,7 @@ function offers(title: string, text: string, ...expected: readonly string[]): vo
   atCursor(title, { 'shared.quiet': shared, 'a.quiet': `use "shared.quiet"\n${text}` }, ({ session, path, offset }) => assert.deepEqual(completions(session, path, offset).map(({ label }) => label), expected));
 }
 
-const keywords = (kind: keyof typeof statementShapes) => statementShapes[kind].map(({ keyword }) => keyword);
+const keywords = (kind: keyof typeof statementShapes) => [...statementShapes[kind].map(({ keyword }) => keyword), ...(kind === 'file' ? declarationSnippets.map(({ prefix }) => prefix) : [])];
 
 describe('completion where a statement may begin', () => {
   offers('declarations at the start of a line', '<|>', ...keywords('file'));

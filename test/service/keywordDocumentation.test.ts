@@ -7,6 +7,8 @@ import { fixedWords } from '../../server/src/syntax/fits';
 import { formOf } from '../../server/src/syntax/forms';
 import { statementShapes } from '../../server/src/syntax/statements';
 import { atCursor } from './cursor';
+import type { Part } from '../../server/src/syntax/grammar';
+import { unitSpelt } from '../../server/src/units/spelling';
 
 /** What the answer covers, and its beginning. */
 function check(title: string, text: string, covered: string | null, beginning = ''): void {
@@ -43,6 +45,19 @@ describe('documentation', () => {
     }
   });
 
+  it('gives examples as large as such a value is', () => {
+    const of = (kind: keyof typeof statementShapes, keyword: string) => statementMarkdown(statementShapes[kind].find((shape) => shape.keyword === keyword)!);
+    assert.match(of('net', 'tolerates'), /a voltage: .*such as `2 mV`/);
+    assert.match(of('net', 'swing'), /a voltage: .*such as `3\.3 V`/);
+    assert.match(of('link', 'capacitance'), /such as `0\.8 pF`/);
+    for (const [kind, shapes] of Object.entries(statementShapes)) {
+      for (const shape of shapes) for (const { role, dimension, example } of shape.parts.flatMap(quantitiesIn)) {
+        const [, number, unit] = /^(-?\d+(?:\.\d+)?)(?: (\S+))?$/.exec(example) ?? [];
+        assert.ok(number !== undefined && (unit === undefined ? 'number' : unitSpelt(unit)?.dimension) === dimension, `${kind} ${shape.keyword} ${role}: ${example}`);
+      }
+    }
+  });
+
   it('says of every word that is no mere joint what it means', () => {
     const statements = new Set(Object.values(statementShapes).flatMap((shapes) => shapes.map(({ keyword }) => keyword)));
     const joints = ['to', 'from', 'at', 'and', 'above'];
@@ -62,3 +77,14 @@ describe('documentation', () => {
     assert.equal(wordMarkdown('and', statementShapes.link[0]!), '```quietrun\nbetween NET and NET\n```');
   });
 });
+
+function quantitiesIn(part: Part): readonly (Part & { readonly is: 'quantity' })[] {
+  switch (part.is) {
+    case 'quantity': return [part];
+    case 'optional':
+    case 'repeat': return part.parts.flatMap(quantitiesIn);
+    case 'choice':
+    case 'suffixes': return part.of.flatMap((parts) => parts.flatMap(quantitiesIn));
+    default: return [];
+  }
+}

@@ -1,10 +1,9 @@
-/** The colouring grammar, the language configuration and the snippets say what the language says. */
+/** The colouring grammar and the language configuration say what the language says. */
 import assert from 'node:assert/strict';
 import { readFileSync } from 'node:fs';
 import path from 'node:path';
 import { describe, it } from 'node:test';
 import { fixedWords, keywordsOf } from '../../server/src/syntax/fits';
-import { parse } from '../../server/src/syntax/parse';
 import { statementShapes } from '../../server/src/syntax/statements';
 import { unitSpelt } from '../../server/src/units/spelling';
 import { colouredLine, expressionsIn, type Grammar } from './textMate';
@@ -12,7 +11,6 @@ import { colouredLine, expressionsIn, type Grammar } from './textMate';
 const read = (file: string): unknown => JSON.parse(readFileSync(path.join('syntaxes', file), 'utf8'));
 const grammar = read('quietrun.tmLanguage.json') as Grammar;
 const configuration = read('language-configuration.json') as { readonly wordPattern: { readonly pattern: string; readonly flags: string }; readonly indentationRules: Readonly<Record<string, string>> };
-const snippets = read('quietrun.code-snippets') as Readonly<Record<string, { readonly prefix: string; readonly description: string; readonly body: readonly string[] }>>;
 
 /** The words of a rule that is one list of alternatives. */
 const wordsOf = (key: string) => /\(\?:([a-z|-]+)\)/.exec(grammar.repository[key]!.match!)![1]!.split('|').sort();
@@ -94,24 +92,3 @@ describe('the language configuration', () => {
     assert.match('  }', new RegExp(decreaseIndentPattern));
   });
 });
-
-describe('snippets', () => {
-  it('are there for each declaration', () => {
-    const begun = new Set(Object.values(snippets).map(({ body }) => body[0]!.split(' ')[0]));
-    assert.deepEqual(sorted(keywordsOf('file').filter((keyword) => !begun.has(keyword))), []);
-    for (const keyword of keywordsOf('file')) assert.ok(Object.values(snippets).some(({ prefix }) => prefix === keyword), keyword);
-  });
-
-  for (const [title, { body }] of Object.entries(snippets)) {
-    it(`${title} is read without a mistake once its places are filled`, () => {
-      const { errors, statements } = parse(filled(body.join('\n')));
-      assert.deepEqual(errors, []);
-      assert.equal(statements.length, 1);
-    });
-  }
-});
-
-/** Each place with what stands in it; a choice with its first. */
-function filled(body: string): string {
-  return body.replace(/\$\{\d+:([^}]*)\}/g, '$1').replace(/\$\{\d+\|([^,|]*)[^}]*\|\}/g, '$1').replace(/\$\d+/g, '');
-}

@@ -16,12 +16,14 @@ const kinds: Record<CompletionKind, CompletionItemKind> = {
 };
 
 /** Documentation is asked for item by item: most of a list is never looked at. */
-export function answerCompletions({ connection, guard, documents }: Server): void {
+export function answerCompletions({ connection, guard, documents, capabilities }: Server): void {
   let last: readonly Completion[] = [];
   connection.onCompletion(guard('completion', [], async ({ textDocument, position }): Promise<CompletionItem[]> => {
     const file = await documents.at(textDocument.uri);
     if (file === null) return [];
-    last = completions(documents.session, file.path, file.document.offsetAt(position));
+    // A client that knows no snippets would insert their places as they are written.
+    const takesSnippets = capabilities().textDocument?.completion?.completionItem?.snippetSupport === true;
+    last = completions(documents.session, file.path, file.document.offsetAt(position)).filter(({ snippet }) => takesSnippets || !snippet);
     return last.map(({ label, kind, detail, span, newText, snippet, rank }, index) => ({
       label,
       kind: kinds[kind],

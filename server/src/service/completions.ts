@@ -15,6 +15,7 @@ import type { SourceTree, Span, Statement } from '../syntax/tree';
 import { writtenName } from '../syntax/writtenName';
 import { copperWeight, dimensionInWords, fittingUnits } from '../units/spelling';
 import type { Completion, CompletionKind } from './answers';
+import { declarationSnippets } from './declarationSnippets';
 import { statementMarkdown, unitMarkdown, wordMarkdown } from './keywordDocumentation';
 import { setsOf } from './nameSets';
 import type { Session } from './session';
@@ -25,7 +26,7 @@ export function completions(session: Session, path: string, offset: number): rea
   if (tree === undefined || expected === null) return [];
   const offers = expected.block !== null ? statementOffers(tree, expected.block, expected.span) : [...unitOffers(tree.text, expected), ...expected.parts.flatMap(({ part, shape }) => partOffers(session, { path, span: expected.span }, part, shape))];
   const distinct = new Map(offers.map((offer) => [`${offer.kind} ${offer.label}`, offer]));
-  return [...distinct.values()].map((offer, rank) => ({ ...offer, span: expected.span, newText: offer.newText ?? offer.label, snippet: false, rank }));
+  return [...distinct.values()].map((offer, rank) => ({ ...offer, span: expected.span, newText: offer.newText ?? offer.label, snippet: offer.kind === 'declaration', rank }));
 }
 
 interface Offer {
@@ -42,7 +43,16 @@ function statementOffers(tree: SourceTree, kind: BlockKind, span: Span): readonl
   const shapes = shapesOf(kind).filter((shape) => shape.repeats || !stated.has(shape.keyword));
   const isFirst = kind === 'file' && tree.version === null && !tree.tokens.some(({ kind: token, start }) => (token === 'word' || token === 'string') && start < span.start);
   const version: Offer = { label: 'quietrun', kind: 'keyword', detail: 'version of the language', documentation: 'The version of the language that the file is written in: an optional first statement.', newText: `quietrun ${languageVersion}` };
-  return [...(isFirst ? [version] : []), ...shapes.map((shape) => ({ label: shape.keyword, kind: 'keyword' as const, detail: formOf(shape).slice(shape.keyword.length).trim(), documentation: statementMarkdown(shape) }))];
+  return [...(isFirst ? [version] : []), ...shapes.map((shape) => ({ label: shape.keyword, kind: 'keyword' as const, detail: formOf(shape).slice(shape.keyword.length).trim(), documentation: statementMarkdown(shape) })), ...(kind === 'file' ? snippetOffers() : [])];
+}
+
+function snippetOffers(): readonly Offer[] {
+  return declarationSnippets.map(({ prefix, about, body }) => ({ label: prefix, kind: 'declaration' as const, detail: about, documentation: `\`\`\`quietrun\n${plain(body)}\n\`\`\``, newText: body }));
+}
+
+/** As it is before anything is filled in. */
+function plain(body: string): string {
+  return body.replace(/\$\{\d+:([^}]*)\}/g, '$1').replace(/\$\{\d+\|([^,|]*)[^}]*\|\}/g, '$1').replace(/\$\d+/g, '').trimEnd();
 }
 
 /** Statements of the block around the point, but for the one that is being written. */

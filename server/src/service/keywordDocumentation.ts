@@ -5,7 +5,7 @@ import type { BlockKind, Part, StatementShape } from '../syntax/grammar';
 import type { QuantityValue, SourceTree, Span, Statement, Value } from '../syntax/tree';
 import type { Dimension } from '../units/dimension';
 import { inText, unitOfSi } from '../units/inText';
-import { dimensionInWords, exampleOf, fittingUnits, unitSpelt, type Unit } from '../units/spelling';
+import { dimensionInWords, fittingUnits, unitSpelt, type Unit } from '../units/spelling';
 import type { HoverAnswer } from './answers';
 import { wordMeanings } from './wordMeanings';
 
@@ -26,8 +26,9 @@ export function keywordDocumentation(tree: SourceTree, offset: number): HoverAns
 
 /** What the statement says, its form, and the units that fit. */
 export function statementMarkdown(shape: StatementShape): string {
-  const dimensions = [...new Set(shape.parts.flatMap(dimensionsIn))].filter((dimension) => dimension !== 'number');
-  const units = dimensions.map((dimension) => `- ${dimensionInWords(dimension)}: ${fittingUnits(dimension).map((unit) => `\`${unit}\``).join(', ')}, such as \`${exampleOf(dimension)}\``);
+  const examples = new Map<Dimension, string>();
+  for (const { dimension, example } of shape.parts.flatMap(examplesIn)) if (dimension !== 'number' && !examples.has(dimension)) examples.set(dimension, example);
+  const units = [...examples].map(([dimension, example]) => `- ${dimensionInWords(dimension)}: ${fittingUnits(dimension).map((unit) => `\`${unit}\``).join(', ')}, such as \`${example}\``);
   return [shape.about, '', '```quietrun', formOf(shape), '```', ...units].join('\n').trimEnd();
 }
 
@@ -83,14 +84,20 @@ function quantitiesIn(values: readonly Value[]): readonly QuantityValue[] {
   return values.flatMap((value) => (value.kind === 'quantity' ? [value] : value.kind === 'point' ? [value.x, value.y, ...(value.z === null ? [] : [value.z])] : []));
 }
 
-function dimensionsIn(part: Part): readonly Dimension[] {
+interface Example {
+  readonly dimension: Dimension;
+  readonly example: string;
+}
+
+/** In the order in which they are written. */
+function examplesIn(part: Part): readonly Example[] {
   switch (part.is) {
-    case 'quantity': return [part.dimension];
-    case 'point': return ['length'];
+    case 'quantity': return [part];
+    case 'point': return [{ dimension: 'length', example: '10 mm' }];
     case 'optional':
-    case 'repeat': return part.parts.flatMap(dimensionsIn);
+    case 'repeat': return part.parts.flatMap(examplesIn);
     case 'choice':
-    case 'suffixes': return part.of.flatMap((parts) => parts.flatMap(dimensionsIn));
+    case 'suffixes': return part.of.flatMap((parts) => parts.flatMap(examplesIn));
     default: return [];
   }
 }

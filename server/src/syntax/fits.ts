@@ -1,6 +1,6 @@
 /** What fits at a place of the grammar, in the words of messages. */
 import type { Dimension } from '../units/dimension';
-import { dimensionInWords, exampleOf } from '../units/spelling';
+import { dimensionInWords } from '../units/spelling';
 import type { BlockKind, NameKind, Part, StatementShape } from './grammar';
 import { statementShapes } from './statements';
 
@@ -38,7 +38,7 @@ export function firstWords(part: Part): readonly string[] {
 /** `a time such as 40 ns`, `` `worst` or `rss` ``: what a message says belongs here. */
 export function inWords(part: Part): string {
   switch (part.is) {
-    case 'quantity': return quantityInWords([part.dimension]);
+    case 'quantity': return quantityInWords([part]);
     case 'count': return 'a whole number';
     case 'name': return nameInWords(part.of);
     case 'string': return 'a text in quotes';
@@ -55,9 +55,9 @@ export function inWords(part: Part): string {
       return first!.is === 'comma' ? `a comma and ${inWords(second!)}` : inWords(first!);
     }
     case 'choice': {
-      const dimensions = dimensionsOf(part.of);
+      const quantities = part.of.flatMap(([first]) => (first!.is === 'quantity' ? [first!] : []));
       const others = part.of.filter(([first]) => first!.is !== 'quantity').map(([first]) => inWords(first!));
-      return listed([...(0 < dimensions.length ? [quantityInWords(dimensions)] : []), ...others]);
+      return listed([...(0 < quantities.length ? [quantityInWords(quantities)] : []), ...others]);
     }
     case 'suffixes': return listed(part.of.map(([first]) => inWords(first!)));
   }
@@ -68,8 +68,8 @@ export function dimensionsOf(alternatives: readonly (readonly Part[])[]): readon
   return alternatives.flatMap(([first]) => (first!.is === 'quantity' ? [first!.dimension] : []));
 }
 
-export function quantityInWords(dimensions: readonly Dimension[]): string {
-  return listed(dimensions.map((dimension) => `${dimensionInWords(dimension)} such as \`${exampleOf(dimension)}\``));
+export function quantityInWords(parts: readonly { readonly dimension: Dimension; readonly example: string }[]): string {
+  return listed(parts.map(({ dimension, example }) => `${dimensionInWords(dimension)} such as \`${example}\``));
 }
 
 /** What fits at one place, each once: its words where it has any. */

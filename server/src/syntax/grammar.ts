@@ -19,7 +19,7 @@ export type NameKind =
 export type Role = string;
 
 export type Part =
-  | { readonly is: 'quantity'; readonly role: Role; readonly dimension: Dimension; readonly toleranced: boolean; /** A thickness of copper, where `oz` fits too. */ readonly copper: boolean }
+  | { readonly is: 'quantity'; readonly role: Role; readonly dimension: Dimension; readonly toleranced: boolean; /** A thickness of copper, where `oz` fits too. */ readonly copper: boolean; /** As large as such a value usually is: `2 mV` is tolerated, not `3.3 V`. */ readonly example: string }
   | { readonly is: 'count'; readonly role: Role }
   /** `declares` or refers to; `many`: a range `D[0..7]` may stand here. */
   | { readonly is: 'name'; readonly role: Role; readonly of: NameKind; readonly declares: boolean; readonly many: boolean }

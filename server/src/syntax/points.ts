@@ -21,7 +21,7 @@ export function readPoint(reading: StatementReading, role: string): PointValue |
     if (count === 2 && !cursor.isMark(',')) break;
     if (0 < count) readPointComma(reading);
     passNewlinesWithin(cursor);
-    const part = { is: 'quantity', role: 'xyz'[count]!, dimension: 'length', toleranced: true, copper: false } as const;
+    const part = { is: 'quantity', role: 'xyz'[count]!, dimension: 'length', toleranced: true, copper: false, example: '10 mm' } as const;
     expect(reading, part);
     coordinates.push(readQuantityOf(reading, part.role, [part]));
   }

@@ -1,5 +1,4 @@
 /** Reads the values of a statement: each reports what is wrong with it, and leaves the cursor beyond what it could make out. */
-import type { Dimension } from '../units/dimension';
 import { unitSpelt } from '../units/spelling';
 import { isTypographicQuote } from './characters';
 import { fixedWords, inWords, nameInWords, quantityInWords } from './fits';
@@ -27,13 +26,13 @@ export function readQuantityOf(reading: StatementReading, role: string, parts: r
     if (lacksUnit && cursor.kind === 'end') reading.expectations?.units.push(...parts);
     return read.value;
   }
-  missingQuantity(reading, role, dimensions);
+  missingQuantity(reading, role, parts);
   return null;
 }
 
-function missingQuantity(reading: StatementReading, role: string, dimensions: readonly Dimension[]): void {
+function missingQuantity(reading: StatementReading, role: string, parts: readonly QuantityPart[]): void {
   const { cursor } = reading;
-  const fits = quantityInWords(dimensions);
+  const fits = quantityInWords(parts);
   const found = cursor.kind === 'word' ? cursor.word : '';
   if (found !== '' && unitSpelt(found) !== undefined) {
     const name = reading.values.at(-1);
