@@ -9,19 +9,25 @@ export type Command =
 export interface CheckCommand {
   readonly command: 'check';
   readonly files: readonly string[];
-  readonly format: 'text' | 'json';
+  readonly format: 'text' | 'json' | 'sarif' | 'junit';
   readonly failOn: 'error' | 'warning';
+  /** More warnings than this fail a check; null where any number is fine. */
+  readonly maxWarnings: number | null;
+  readonly baseline: string | null;
+  readonly updateBaseline: string | null;
   readonly stdinFilename: string | null;
 }
 
 export type ReadArguments = { readonly read: Command } | { readonly refused: string };
 
-export const usage = `quietrun check FILE... [--format text|json] [--fail-on error|warning] [--stdin-filename NAME]
+export const usage = `quietrun check FILE... [--format text|json|sarif|junit] [--fail-on error|warning] [--max-warnings N]
+                       [--baseline FILE] [--update-baseline FILE] [--stdin-filename NAME]
 quietrun explain [RULE]
 quietrun serve --stdio
 quietrun --version | --help
 
 FILE: a .quiet file, or - for standard input
+--baseline: findings that it lists are shown and fail nothing; --update-baseline writes those of now
 Exit status: 0 nothing at or over --fail-on (default error), 1 findings, 2 the command could not run`;
 
 export function readArguments(words: readonly string[]): ReadArguments {
@@ -39,8 +45,11 @@ export function readArguments(words: readonly string[]): ReadArguments {
 
 /** Option to the words that it takes; null where any will do. */
 const options: ReadonlyMap<string, readonly string[] | null> = new Map([
-  ['--format', ['text', 'json']],
+  ['--format', ['text', 'json', 'sarif', 'junit']],
   ['--fail-on', ['error', 'warning']],
+  ['--max-warnings', null],
+  ['--baseline', null],
+  ['--update-baseline', null],
   ['--stdin-filename', null],
 ]);
 
@@ -62,22 +71,29 @@ function readCheck(words: readonly string[]): ReadArguments {
     if (choices === undefined) return { refused: `check has no ${name}` };
     if (given.has(name)) return { refused: `${name} stands twice` };
     const value = attached ?? words[(at += 1)];
-    if (value === undefined || value === '') return { refused: `${name} takes ${choices?.join(' or ') ?? 'a name'}` };
+    if (value === undefined || value === '') return { refused: `${name} takes ${choices?.join(' or ') ?? wantedBy(name)}` };
     if (choices !== null && !choices.includes(value)) return { refused: `${name} takes ${choices.join(' or ')}, not ${value}` };
     given.set(name, value);
   }
+  const maxWarnings = given.get('--max-warnings') ?? null;
+  if (maxWarnings !== null && !/^\d{1,9}$/.test(maxWarnings)) return { refused: `--max-warnings takes a count, not ${maxWarnings}` };
   if (files.length === 0) return { refused: 'check which file?' };
   if (1 < files.filter((file) => file === '-').length) return { refused: '- stands twice' };
   return {
     read: {
       command: 'check',
       files,
-      format: given.get('--format') === 'json' ? 'json' : 'text',
+      format: (given.get('--format') ?? 'text') as CheckCommand['format'],
       failOn: given.get('--fail-on') === 'warning' ? 'warning' : 'error',
+      maxWarnings: maxWarnings === null ? null : Number(maxWarnings),
+      baseline: given.get('--baseline') ?? null,
+      updateBaseline: given.get('--update-baseline') ?? null,
       stdinFilename: given.get('--stdin-filename') ?? null,
     },
   };
 }
+
+const wantedBy = (option: string) => (option === '--max-warnings' ? 'a count' : option === '--stdin-filename' ? 'a name' : 'a file');
 
 function splitOption(word: string): readonly [string, string | undefined] {
   const equals = word.startsWith('--') ? word.indexOf('=') : -1;

@@ -26,7 +26,7 @@ function summaryOf(files: readonly FileReport[]): Summary {
 
 type Placed = (place: Place) => { readonly path: string; readonly range: ReturnType<Lines['range']> };
 
-function fileReport({ path, analysis, text }: CheckedFile): FileReport {
+function fileReport({ path, analysis, text, known: inBaseline }: CheckedFile): FileReport {
   const { project, evaluation, findings } = analysis;
   const lines = new Map<string, Lines>();
   const placed: Placed = (place) => {
@@ -39,7 +39,7 @@ function fileReport({ path, analysis, text }: CheckedFile): FileReport {
     path,
     uses: project.files.filter((file) => file !== path),
     complete: project.complete,
-    findings: findings.map((finding) => findingReport(finding, placed)),
+    findings: findings.map((finding) => findingReport(inBaseline.has(finding) ? { ...finding, waived: 'in the baseline' } : finding, placed)),
     runs: evaluation.runs.map((result) => runReport(result, named)),
     loops: evaluation.loops.map((result) => loopReport(result, evaluation.heard, named)),
     returns: evaluation.returns.map(({ shared, resistance, inductance }) => ({ ...named(shared), resistance: finite(resistance), inductance: finite(inductance), drops: dropsOver(evaluation.heard, shared.name) })),

@@ -2,6 +2,9 @@
 import { readFile, realpath, stat } from 'node:fs/promises';
 import path from 'node:path';
 import { isBelow, largestFile, usedFile } from '../disk/usedFile';
+import type { Fix } from '../fixes/fix';
+import { mendingFixes } from '../fixes/index';
+import type { Finding } from '../rules/rule';
 import { Session, type Analysis } from '../service/session';
 
 export interface CheckedFile {
@@ -9,6 +12,10 @@ export interface CheckedFile {
   readonly path: string;
   readonly analysis: Analysis;
   readonly text: (path: string) => string;
+  /** Findings that a baseline knows: they are shown, and fail nothing. */
+  readonly known: ReadonlySet<Finding>;
+  /** Solved for when they are asked for. */
+  readonly fixes: (finding: Finding) => readonly Fix[];
 }
 
 export interface CheckOptions {
@@ -32,7 +39,7 @@ export async function checkedFiles(options: CheckOptions): Promise<CheckedFiles>
     session.setText(key, text);
   }
   await readUsed(session, roots, options);
-  return { checked: roots.map((root) => ({ path: root, analysis: session.analyseFully(root), text: (other) => session.text(other) ?? '' })) };
+  return { checked: roots.map((root) => ({ path: root, analysis: session.analyseFully(root), text: (other) => session.text(other) ?? '', known: new Set(), fixes: (finding) => mendingFixes(finding, session.fixContext(root)) })) };
 }
 
 function keyOf(file: string, { workingDirectory }: CheckOptions): string {

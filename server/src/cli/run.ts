@@ -2,11 +2,15 @@
 import { rules } from '../rules/index';
 import { rulePage } from '../rules/rulePage';
 import { readArguments, usage, type CheckCommand } from './arguments';
-import { checkedFiles } from './checkedFiles';
+import { baselineOf, comparedWith } from './baseline';
+import { loadBaseline, saveBaseline } from './baselineFile';
+import { checkedFiles, type CheckedFile } from './checkedFiles';
 import { checkReport } from './checkReport';
-import type { Summary } from './checkSchema';
+import type { CheckReport, Summary } from './checkSchema';
+import { junitOutput } from './junitOutput';
 import { paintFor } from './paint';
 import { printableWord } from './printable';
+import { sarifOutput } from './sarifOutput';
 import { textOutput } from './textOutput';
 
 export interface Surroundings {
@@ -44,13 +48,42 @@ async function check(command: CheckCommand, around: Surroundings): Promise<numbe
     around.complain(`quietrun: ${printableWord(answer.refused)}\n`);
     return status.notRun;
   }
-  const report = checkReport(answer.checked, around.version);
-  around.write(command.format === 'json' ? `${JSON.stringify(report, null, 2)}\n` : textOutput(answer.checked, report.summary, paintFor(around.coloured)));
-  return fails(report.summary, command.failOn) ? status.findings : status.clean;
+  const compared = await withBaseline(answer.checked, command, around);
+  if ('refused' in compared) {
+    around.complain(`quietrun: ${printableWord(compared.refused)}\n`);
+    return status.notRun;
+  }
+  const report = checkReport(compared.checked, around.version);
+  around.write(outputOf(compared.checked, report, { format: command.format, failOn: command.failOn, around }));
+  return fails(report.summary, command) ? status.findings : status.clean;
 }
 
-function fails({ errors, warnings }: Summary, failOn: 'error' | 'warning'): boolean {
-  return 0 < errors || (failOn === 'warning' && 0 < warnings);
+function outputOf(checked: readonly CheckedFile[], report: CheckReport, { format, failOn, around }: Pick<CheckCommand, 'format' | 'failOn'> & { readonly around: Surroundings }): string {
+  switch (format) {
+    case 'json': return `${JSON.stringify(report, null, 2)}\n`;
+    case 'sarif': return sarifOutput(checked, around.version);
+    case 'junit': return junitOutput(checked, failOn);
+    case 'text': return textOutput(checked, report.summary, paintFor(around.coloured));
+  }
+}
+
+/** With what a baseline knows of them; the one that is to be written is written first, and counts. */
+async function withBaseline(checked: readonly CheckedFile[], { baseline, updateBaseline }: CheckCommand, { workingDirectory, complain }: Surroundings): Promise<{ readonly checked: readonly CheckedFile[] } | { readonly refused: string }> {
+  if (updateBaseline !== null) {
+    const refused = await saveBaseline(updateBaseline, workingDirectory, baselineOf(checked, { baselineFile: updateBaseline, workingDirectory }));
+    if (refused !== null) return { refused };
+  }
+  const file = updateBaseline ?? baseline;
+  if (file === null) return { checked };
+  const loaded = await loadBaseline(file, workingDirectory);
+  if ('refused' in loaded) return loaded;
+  const { checked: compared, gone } = comparedWith(loaded.baseline, checked, { baselineFile: file, workingDirectory });
+  if (0 < gone) complain(`quietrun: ${gone === 1 ? 'a finding' : `${gone} findings`} of ${printableWord(file)} no longer ${gone === 1 ? 'occurs' : 'occur'}; --update-baseline ${printableWord(file)} drops ${gone === 1 ? 'it' : 'them'}\n`);
+  return { checked: compared };
+}
+
+function fails({ errors, warnings }: Summary, { failOn, maxWarnings }: CheckCommand): boolean {
+  return 0 < errors || (failOn === 'warning' && 0 < warnings) || (maxWarnings !== null && maxWarnings < warnings);
 }
 
 function explain(name: string | null, around: Surroundings): number {

@@ -11,9 +11,9 @@ import { printable, printableWord } from './printable';
 export function textOutput(checked: readonly CheckedFile[], summary: Summary, paint: Paint): string {
   const blocks = checked.flatMap((file) => {
     const lines = linesOfFiles(file);
-    return [heading(file, paint), ...file.analysis.findings.map((finding) => findingBlock(finding, lines, paint))];
+    return [heading(file, paint), ...file.analysis.findings.map((finding) => findingBlock(finding, { isKnown: file.known.has(finding), linesIn: lines, paint }))];
   });
-  return `${[...blocks, summaryLine(summary, checked.length, paint)].join('\n\n')}\n`;
+  return `${[...blocks, summaryLine(summary, checked, paint)].join('\n\n')}\n`;
 }
 
 function heading({ path, analysis }: CheckedFile, paint: Paint): string {
@@ -34,12 +34,12 @@ function linesOfFiles({ text }: CheckedFile): LinesOf {
   };
 }
 
-function findingBlock(finding: Finding, linesIn: LinesOf, paint: Paint): string {
+function findingBlock(finding: Finding, { isKnown, linesIn, paint }: { readonly isKnown: boolean; readonly linesIn: LinesOf; readonly paint: Paint }): string {
   const { rule, severity, message, waived, related } = finding;
-  const colour = waived !== null || severity === 'hint' ? paint.faint : paint[severity];
+  const colour = waived !== null || isKnown || severity === 'hint' ? paint.faint : paint[severity];
   const { where, shown } = underlined(finding.at, linesIn, colour);
   return [
-    `${where}  ${colour(`${waived === null ? severity : 'waived'}[${rule}]`)}`,
+    `${where}  ${colour(`${waived !== null ? 'waived' : isKnown ? 'known' : severity}[${rule}]`)}`,
     ...shown,
     `  ${printable(message).split('\n').join('\n  ')}`,
     ...(waived === null ? [] : [`  waived: ${printable(waived)}`]),
@@ -68,8 +68,10 @@ function underlined({ path, span }: Place, linesIn: LinesOf, colour: (text: stri
 /** Code points: near enough to columns for what board files hold. */
 const widthOf = (text: string) => [...text].length;
 
-function summaryLine({ errors, warnings, information, hints, waived, worst }: Summary, files: number, paint: Paint): string {
-  const counts = [[errors, 'error', 'errors'], [warnings, 'warning', 'warnings'], [information, 'note', 'notes'], [hints, 'hint', 'hints'], [waived, 'waived', 'waived']] as const;
+function summaryLine({ errors, warnings, information, hints, waived, worst }: Summary, checked: readonly CheckedFile[], paint: Paint): string {
+  const files = checked.length;
+  const known = checked.reduce((sum, file) => sum + file.known.size, 0);
+  const counts = [[errors, 'error', 'errors'], [warnings, 'warning', 'warnings'], [information, 'note', 'notes'], [hints, 'hint', 'hints'], [waived - known, 'waived', 'waived'], [known, 'in the baseline', 'in the baseline']] as const;
   const said = counts.filter(([count]) => 0 < count).map(([count, one, many]) => `${count} ${count === 1 ? one : many}`);
   const least = worst === null ? '' : ` Least margin: ${printableWord(worst.budget)}, ${worst.marginDb.toFixed(1)} dB.`;
   const findings = said.length === 0 ? `No findings in ${files === 1 ? 'this file' : `${files} files`}.` : `${said.join(', ')}.`;

@@ -24,9 +24,15 @@ import { widenedGaps, widenedToClearance } from './widenGap';
 const proposers: readonly ((finding: Finding, context: FixContext) => readonly Proposal[])[] = [widenedGaps, shortenedRun, stitchedGuard, shrunkLoops, laidOverPlane, separatedReturns, shieldGrounded, slowedEdges, narrowedBand];
 
 /** For everything else. */
-const makers: readonly ((finding: Finding, context: FixContext) => readonly Fix[])[] = [widenedToClearance, stitchedMoreOften, groundedShield, shrunkToLimit, laidOverPlaneForLimit, corrections, declaredNet, unusedRemoved, waived];
+const makers: readonly ((finding: Finding, context: FixContext) => readonly Fix[])[] = [widenedToClearance, stitchedMoreOften, groundedShield, shrunkToLimit, laidOverPlaneForLimit, corrections, declaredNet, unusedRemoved];
 
 export function fixesFor(finding: Finding, context: FixContext): readonly Fix[] {
+  if (finding.waived !== null) return [];
+  return [...mendingFixes(finding, context), ...waived(finding, context)];
+}
+
+/** Those that need no one's judgement afterwards: all but the waiver, of which the reason is still to be written. */
+export function mendingFixes(finding: Finding, context: FixContext): readonly Fix[] {
   if (finding.waived !== null) return [];
   return [...quieter(finding, context), ...makers.flatMap((make) => make(finding, context))];
 }
