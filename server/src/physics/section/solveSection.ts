@@ -36,7 +36,7 @@ export interface SolveOptions {
 /** A larger one is worth a finer setting: it is 5 to 50 times the error. */
 const wantedChange = 2e-4;
 
-export function solveSection(section: Section, { effort = 0, mostEffort = 4 }: SolveOptions = {}): SectionSolution {
+export function solveSection(section: Section, { effort = usualEffort(section), mostEffort = 4 }: SolveOptions = {}): SectionSolution {
   const refused = refusalOf(section);
   if (refused !== null) return { refused };
   if (section.film !== null) {
@@ -54,6 +54,9 @@ export function solveSection(section: Section, { effort = 0, mostEffort = 4 }: S
   }
   return best === null ? { refused: { reason: 'not-solved', what: 'the charges do not come out positive definite' } } : { solved: best.matrices };
 }
+
+/** Of three or more, some mutual is weak enough to want the second setting, which costs little more than the first. */
+const usualEffort = ({ conductors, film }: Section) => (film === null && 2 < conductors.length ? 1 : 0);
 
 interface Attempt {
   readonly matrices: SectionMatrices;

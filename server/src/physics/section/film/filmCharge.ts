@@ -26,7 +26,7 @@ import { acrossGap, addFluxBlock } from './fluxBlock';
 import { plainBasis } from './fluxProduct';
 import { FoldedSystem } from './foldedSystem';
 import { keptBlock, shapeOf, type Shape } from './keptBlocks';
-import { mirrorImages } from './mirrorImages';
+import { mirrorImages } from '../basis/mirrorImages';
 import { writePotentialBlock } from './potentialBlock';
 
 export interface FilmProblem {

@@ -12,9 +12,11 @@ export interface Moments {
   readonly count: number;
   readonly x: Float64Array;
   readonly y: Float64Array;
-  /** count × unknowns. */
-  readonly moments: Float64Array;
-  readonly unknowns: number;
+  /** count × polynomialLimit: what a potential at the node is worth to the polynomials of its side. */
+  readonly weighted: Float64Array;
+  /** Of each node, the first of its side's polynomials, all sides' counted one after the other; and how many they are. */
+  readonly start: Int32Array;
+  readonly order: Int32Array;
   readonly left: number;
   readonly right: number;
   readonly bottom: number;
@@ -23,8 +25,7 @@ export interface Moments {
   readonly pairs: { readonly own: Int32Array; readonly mirrored: Int32Array };
 }
 
-/** `rows`: of every polynomial, side after side, the unknown. */
-export function nodesWithin(sides: readonly Side[], rows: Int32Array, unknowns: number, distance: number): Moments {
+export function nodesWithin(sides: readonly Side[], distance: number): Moments {
   const extent = extentOf(sides);
   const reach = { left: extent.left - distance, right: extent.right + distance };
   const found: { side: Side; rule: PartRule; row: number }[] = [];
@@ -38,16 +39,19 @@ export function nodesWithin(sides: readonly Side[], rows: Int32Array, unknowns: 
     });
     row += side.order;
   }
-  const [x, y, moments] = [new Float64Array(count), new Float64Array(count), new Float64Array(count * unknowns)];
+  const [x, y, weighted] = [new Float64Array(count), new Float64Array(count), new Float64Array(count * polynomialLimit)];
+  const [start, order] = [new Int32Array(count), new Int32Array(count)];
   let at = 0;
-  for (const { side: { x0, y0, x1, y1, order }, rule, row: first } of found) {
+  for (const { side: { x0, y0, x1, y1, order: own }, rule, row: first } of found) {
+    weighted.set(rule.weighted.subarray(0, rule.count * polynomialLimit), at * polynomialLimit);
     for (let i = 0; i < rule.count; i += 1, at += 1) {
       x[at] = x0 + (x1 - x0) * rule.t[i];
       y[at] = y0 + (y1 - y0) * rule.t[i];
-      for (let m = 0; m < order; m += 1) moments[at * unknowns + rows[first + m]] = rule.weighted[i * polynomialLimit + m];
+      start[at] = first;
+      order[at] = own;
     }
   }
-  return { count, x, y, moments, unknowns, ...extent, pairs: pairsOf(x, y, extent) };
+  return { count, x, y, weighted, start, order, ...extent, pairs: pairsOf(x, y, extent) };
 }
 
 function pairsOf(x: Float64Array, y: Float64Array, { left, right }: { readonly left: number; readonly right: number }) {

@@ -29,8 +29,8 @@ export interface OutsideView {
   readonly fineNet: number;
   readonly coarseNet: number;
   readonly near: Sight;
-  /** For what is at least `farDistance` away: fewer points. */
-  readonly far: Sight;
+  /** For what is at least `farDistance` away: fewer points, found when first asked for. */
+  readonly far: () => Sight;
   readonly farDistance: number;
   /** Of the polynomials behind it. */
   readonly unknowns: number;
@@ -67,9 +67,9 @@ export function outsideView(conductor: ChargedConductor, { kernel, distance, far
   forwardSubstitute(lower, unknowns, net);
   const sides = conductor.atOrigin();
   const seenFrom = (least: number) => {
-    const nodes = nodesWithin(sides, rows, unknowns, least);
+    const nodes = nodesWithin(sides, least);
     const fields = trainingFields(nodes, least, conductor.effort);
-    const skeleton = skeletonOf(nodes, fields, conductor.effort);
+    const skeleton = skeletonOf(nodes, fields, rows, conductor.effort);
     forwardSubstitute(lower, unknowns, skeleton.moments, skeleton.points);
     return { fields, skeleton };
   };
@@ -80,9 +80,10 @@ export function outsideView(conductor: ChargedConductor, { kernel, distance, far
   const coarseCharges = chargesOf({ answers, net, least }, coarse, fine.count);
   const sight = ({ points, x, y, moments }: Skeleton): Sight => ({ points, x, y, worth: worthOf(fine, coarseCharges, moments, points, unknowns) });
   const nearSight = sight(near.skeleton);
+  let farSight = distance < farDistance ? null : nearSight;
   return {
     charges: fine.count, fineNet: fine.net, coarseNet: coarseCharges.net, unknowns,
-    near: nearSight, far: distance < farDistance ? sight(seenFrom(farDistance).skeleton) : nearSight, farDistance: Math.max(distance, farDistance),
+    near: nearSight, far: () => (farSight ??= sight(seenFrom(farDistance).skeleton)), farDistance: Math.max(distance, farDistance),
   };
 }
 

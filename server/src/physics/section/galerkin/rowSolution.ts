@@ -95,8 +95,8 @@ interface Between {
 
 /** Charges of the upper × charges of the lower, twice: of all polynomials, and of the shorter series. */
 function pairBlock(upper: OutsideView, lower: OutsideView, { apart, gap, kernel, constant }: Between): Float64Array {
-  const above = upper.farDistance <= gap ? upper.far : upper.near;
-  const below = lower.farDistance <= gap ? lower.far : lower.near;
+  const above = upper.farDistance <= gap ? upper.far() : upper.near;
+  const below = lower.farDistance <= gap ? lower.far() : lower.near;
   upperNodes.placePoints(above.x, above.y, apart);
   lowerNodes.placePoints(below.x, below.y, 0);
   const [rows, columns] = [upper.charges, lower.charges];

@@ -6,6 +6,7 @@
  *           nodes of one half only, and nodes are taken in pairs: what comes of it is the same in a mirror
  * Source    Cheng, Gimbutas, Martinsson & Rokhlin 2005, from memory
  */
+import { polynomialLimit } from '../basis/orthonormalJacobi';
 import type { Moments } from './momentNodes';
 import { pivotedBasis, type PivotedBasis } from './pivotedBasis';
 import type { TrainingFields } from './trainingFields';
@@ -24,7 +25,10 @@ export interface Skeleton {
 /** Of a field that changes by 1. */
 const tolerance = 5e-7;
 
-export function skeletonOf({ x, y, left, right, moments, unknowns, pairs: { own, mirrored } }: Moments, { even, odd }: TrainingFields, effort: number): Skeleton {
+/** `rows`: of every polynomial, side after side, the unknown. */
+export function skeletonOf(nodes: Moments, { even, odd }: TrainingFields, rows: Int32Array, effort: number): Skeleton {
+  const { x, y, left, right, pairs: { own, mirrored } } = nodes;
+  const unknowns = rows.length;
   const count = own.length;
   const sets = [even, odd].map(({ values, count: length }) => ({ vectors: Float64Array.from(values), count, length }));
   const basis = pivotedBasis(sets, tolerance / 6 ** effort, count);
@@ -41,21 +45,27 @@ export function skeletonOf({ x, y, left, right, moments, unknowns, pairs: { own,
       // A value is its even and its odd part.
       const same = share * (symmetric[p] + opposite[p]);
       const across = share * (symmetric[p] - opposite[p]);
-      for (let m = 0; m < unknowns; m += 1) {
-        const [here, there] = [moments[own[v] * unknowns + m], moments[mirrored[v] * unknowns + m]];
-        gathered[p * unknowns + m] += same * here + across * there;
-        gathered[(half + p) * unknowns + m] += across * here + same * there;
-      }
+      gather(nodes, own[v], same, gathered, rows, p);
+      gather(nodes, own[v], across, gathered, rows, half + p);
+      gather(nodes, mirrored[v], across, gathered, rows, p);
+      gather(nodes, mirrored[v], same, gathered, rows, half + p);
     }
   }
-  const nodes = Array.from(basis.pivots, (v) => own[v]);
+  const taken = Array.from(basis.pivots, (v) => own[v]);
   return {
     points: 2 * half,
-    x: Float64Array.from([...nodes.map((node) => x[node]), ...nodes.map((node) => left + right - x[node])]),
-    y: Float64Array.from([...nodes, ...nodes], (node) => y[node]),
+    x: Float64Array.from([...taken.map((node) => x[node]), ...taken.map((node) => left + right - x[node])]),
+    y: Float64Array.from([...taken, ...taken], (node) => y[node]),
     taken: basis.pivots,
     moments: gathered,
   };
+}
+
+/** Adds `share` of a node's moments to those of point `p`. */
+function gather({ weighted, start, order }: Moments, node: number, share: number, gathered: Float64Array, rows: Int32Array, p: number): void {
+  const to = p * rows.length;
+  const from = node * polynomialLimit;
+  for (let m = 0; m < order[node]; m += 1) gathered[to + rows[start[node] + m]] += share * weighted[from + m];
 }
 
 /** What vector `v` of a set is of its pivots: their triangle, from below. */

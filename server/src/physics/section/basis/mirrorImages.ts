@@ -5,7 +5,7 @@
  *   s  |  image     its polynomial p_m is (-1)^m times the image's
  *   |  |
  */
-import type { Side } from '../basis/side';
+import type { Side } from './side';
 
 /** Of each side the index of its image, its own where it straddles the middle; null where some side has none. */
 export function mirrorImages(sides: readonly Side[]): Int32Array | null {

@@ -1,7 +1,7 @@
 import { describe, it } from 'node:test';
 import assert from 'node:assert/strict';
 import { filmedCharge } from '../../../../server/src/physics/section/film/filmedCharge';
-import { mirrorImages } from '../../../../server/src/physics/section/film/mirrorImages';
+import { mirrorImages } from '../../../../server/src/physics/section/basis/mirrorImages';
 import { sideBasis } from '../../../../server/src/physics/section/basis/sideBasis';
 import type { Side } from '../../../../server/src/physics/section/basis/side';
 import type { Section } from '../../../../server/src/physics/section/section';
