@@ -15,7 +15,7 @@ export interface Placement {
 }
 
 export function placementOf(section: Section): Placement | { readonly refused: SectionRefusal } {
-  const unit = unitOf(section);
+  const unit = unitOf(section, stackOf(section, 1));
   const stack = stackOf(section, unit);
   const left = Math.min(...section.conductors.map(({ x }) => x));
   const conductors: Trapezoid[] = [];
@@ -34,8 +34,8 @@ export function placementOf(section: Section): Placement | { readonly refused: S
 const thinnest = 1e-3;
 
 /** The stack's height, or where it has none the conductors' own extent. */
-function unitOf(section: Section): number {
-  const height = stackHeight(stackOf(section, 1));
+function unitOf(section: Section, whole: Stack): number {
+  const height = stackHeight(whole);
   if (0 < height) return height;
   const left = Math.min(...section.conductors.map(({ x }) => x));
   return Math.max(...section.conductors.map(({ x, y, width, height: own }) => Math.max(x + width - left, own, Math.abs(y), Math.abs(y + own))));

@@ -79,9 +79,9 @@ function attemptAt(section: Section, placement: Placement, effort: number): Atte
   if (inductance === null || coarseInductance === null) return null;
   const matrices: SectionMatrices = {
     order,
-    capacitance: solution.fine.map((value) => value * 2 * Math.PI * epsilon0),
-    capacitanceInAir: inAirSolution.fine.map((value) => value * 2 * Math.PI * epsilon0),
-    inductance: inductance.map((value) => (value * mu0) / (2 * Math.PI)),
+    capacitance: times(solution.fine, 2 * Math.PI * epsilon0),
+    capacitanceInAir: times(inAirSolution.fine, 2 * Math.PI * epsilon0),
+    inductance: times(inductance, mu0 / (2 * Math.PI)),
     capacitanceError: errorBars(solution.fine, solution.coarse, order),
     inductanceError: errorBars(inductance, coarseInductance, order),
     unknowns: Math.max(solution.unknowns, inAirSolution.unknowns),
@@ -95,5 +95,11 @@ function solveIn(stack: Stack, conductors: readonly Trapezoid[], signals: readon
 }
 
 function scaled({ fine, coarse, ...rest }: ChargeSolution, factor: number): ChargeSolution {
-  return { ...rest, fine: fine.map((value) => value * factor), coarse: coarse.map((value) => value * factor) };
+  return { ...rest, fine: times(fine, factor), coarse: times(coarse, factor) };
+}
+
+function times(values: Float64Array, factor: number): Float64Array {
+  const scaledValues = new Float64Array(values.length);
+  for (let at = 0; at < values.length; at += 1) scaledValues[at] = factor * values[at];
+  return scaledValues;
 }

@@ -19,8 +19,10 @@ export function refusalOf(section: Section): SectionRefusal | null {
   if (conductors.some(isExtreme)) return { reason: 'not-covered', what: `a conductor more than ${flattest} times as wide as thick, or as thick as wide` };
   for (let second = 1; second < conductors.length; second += 1) {
     for (let first = 0; first < second; first += 1) {
-      const separation = separationOf(conductors[first], conductors[second]);
       const size = Math.min(smallSize(conductors[first]), smallSize(conductors[second]));
+      // Nearly all are plainly beside each other.
+      if (size < acrossGap(conductors[first], conductors[second])) continue;
+      const separation = separationOf(conductors[first], conductors[second]);
       if (separation < -1e-6 * size) return { reason: 'overlap', first, second };
       if (separation <= 1e-6 * size) return { reason: 'touching', first, second };
       if (separation < closest * size) return { reason: 'not-covered', what: 'conductors nearer to each other than a two-hundredth of their size' };
@@ -55,6 +57,11 @@ function isDegenerate({ x, y, width, height, undercut }: SectionConductor): bool
 const isExtreme = ({ width, height }: SectionConductor) => 0 < height && (flattest * height < width || flattest * width < height);
 
 const smallSize = ({ width, height, undercut }: SectionConductor) => Math.min(width, width - 2 * undercut, 0 < height ? height : width);
+
+function acrossGap(a: SectionConductor, b: SectionConductor): number {
+  const reaching = Math.max(0, -a.undercut) + Math.max(0, -b.undercut);
+  return Math.max(b.x - a.x - a.width, a.x - b.x - b.width) - reaching;
+}
 
 /** How far two trapezoids are apart along the axis that parts them best; negative where they overlap. */
 function separationOf(a: SectionConductor, b: SectionConductor): number {

@@ -134,10 +134,13 @@ function placeBlock(block: Float64Array, { order, row, column, transposed, rows,
   }
 }
 
+let right = new Float64Array(256);
+
 function solved(matrix: Float64Array, { views, starts, order }: Row, signals: readonly number[], constant: number | null, net: 'fineNet' | 'coarseNet'): Float64Array | null {
   if (!cholesky(matrix, order)) return null;
   const count = signals.length + (constant === null ? 0 : 1);
-  const right = new Float64Array(count * order);
+  if (right.length < count * order) right = new Float64Array(count * order);
+  right.fill(0, 0, count * order);
   signals.forEach((conductor, index) => { right[index * order + starts[conductor]] = views[conductor][net]; });
   if (constant !== null) views.forEach((view, c) => { right[signals.length * order + starts[c]] = view[net]; });
   forwardSubstitute(matrix, order, right, count);

@@ -1,28 +1,47 @@
-/** Kernels by the numbers of their stack: an edit of a gap or a width meets the same ones again. */
+/**
+ * Kernels by the numbers of their stack: an edit of a gap or a width meets the same ones again.
+ *
+ * The latest is looked at first, and numbers are compared as they are: to write them as text takes longer than what is found saves.
+ */
 import { layeredKernel, type Kernel } from './layeredKernel';
 import type { Stack } from './stack';
 
-const kept = new Map<string, Map<number, Kernel>>();
+interface KeptStack {
+  readonly stack: Stack;
+  /** Of the layers of source and observer. */
+  readonly kernels: (Kernel | undefined)[];
+  readonly kernel: (lower: number, upper: number) => Kernel;
+}
+
+/** The latest last. */
+const kept: KeptStack[] = [];
 const keptLimit = 64;
 
 export function kernelsOf(stack: Stack): (lower: number, upper: number) => Kernel {
-  const { layers, planeBelow, planeAbove } = stack;
-  const key = JSON.stringify([planeBelow, planeAbove, ...layers.flatMap(({ permittivity, top }) => [permittivity, top])]);
-  let kernels = kept.get(key);
-  if (kernels === undefined) {
-    // The oldest goes: a map lists its keys in the order they came.
-    if (keptLimit <= kept.size) kept.delete(kept.keys().next().value as string);
-    kernels = new Map();
-    kept.set(key, kernels);
+  for (let at = kept.length - 1; 0 <= at; at -= 1) {
+    const found = kept[at];
+    if (!areEqual(found.stack, stack)) continue;
+    // Two stacks take turns, a section's and its own in air: no need to reorder those.
+    if (at < kept.length - 2) kept.push(...kept.splice(at, 1));
+    return found.kernel;
   }
-  const known = kernels;
-  return (lower, upper) => {
-    const at = lower * layers.length + upper;
-    let kernel = known.get(at);
-    if (kernel === undefined) {
-      kernel = layeredKernel(stack, lower, upper);
-      known.set(at, kernel);
-    }
-    return kernel;
-  };
+  if (keptLimit <= kept.length) kept.shift();
+  const made = keptStack(stack);
+  kept.push(made);
+  return made.kernel;
+}
+
+function areEqual(a: Stack, b: Stack): boolean {
+  if (a.layers.length !== b.layers.length || a.planeBelow !== b.planeBelow || a.planeAbove !== b.planeAbove) return false;
+  for (let i = 0; i < a.layers.length; i += 1) {
+    const [own, other] = [a.layers[i], b.layers[i]];
+    if (own.permittivity !== other.permittivity || own.bottom !== other.bottom || own.top !== other.top) return false;
+  }
+  return true;
+}
+
+function keptStack(stack: Stack): KeptStack {
+  const kernels: (Kernel | undefined)[] = [];
+  const { length } = stack.layers;
+  return { stack, kernels, kernel: (lower, upper) => (kernels[lower * length + upper] ??= layeredKernel(stack, lower, upper)) };
 }
