@@ -5,6 +5,7 @@
 import { CodeActionKind, DidChangeConfigurationNotification, DidChangeWatchedFilesNotification, TextDocumentSyncKind, type ClientCapabilities, type Connection, type InitializeParams, type InitializeResult } from 'vscode-languageserver';
 import { rules } from '../rules/index';
 import { rulePage } from '../rules/rulePage';
+import { formatsAfter } from '../service/formatting';
 import { Session } from '../service/session';
 import { answerCallHierarchy } from './callHierarchy';
 import { answerCodeActions } from './codeAction';
@@ -17,6 +18,7 @@ import { Documents } from './documents';
 import { answerSymbols } from './documentSymbol';
 import { guarded } from './guard';
 import { answerFolding } from './folding';
+import { answerFormatting } from './formatting';
 import { answerHover } from './hover';
 import { answerInlayHints } from './inlayHint';
 import { explainMethod, type ClientOptions, type ExplainParams } from './messages';
@@ -95,6 +97,7 @@ export function startServer(connection: Connection, ownReader: FileReader): void
   answerLinks(server);
   answerCallHierarchy(server);
   answerFolding(server);
+  answerFormatting(server);
   answerSelectionRanges(server);
   answerSemanticTokens(server);
   connection.listen();
@@ -119,6 +122,9 @@ function abilities(capabilities: ClientCapabilities): InitializeResult {
       workspaceSymbolProvider: true,
       documentLinkProvider: {},
       callHierarchyProvider: true,
+      documentFormattingProvider: true,
+      documentRangeFormattingProvider: true,
+      documentOnTypeFormattingProvider: { firstTriggerCharacter: formatsAfter[0], moreTriggerCharacter: formatsAfter.slice(1) },
       renameProvider: capabilities.textDocument?.rename?.prepareSupport === true ? { prepareProvider: true } : true,
       foldingRangeProvider: true,
       selectionRangeProvider: true,

@@ -25,16 +25,16 @@ export function codeOf(text: string, start: number, limit: number, dimensions: r
   const [, sign, whole, letter, fraction] = parts as unknown as readonly [string, string, string, string, string];
   for (const dimension of dimensions) {
     const power = letters.get(dimension)?.[letter];
-    if (power === undefined || !isComplete(dimension, whole, fraction)) continue;
+    if (power === undefined || !isComplete(letter, whole, fraction)) continue;
     const number = { digits: `${sign === '' || sign === '+' ? '' : '-'}${whole === '' ? '0' : whole}.${fraction === '' ? '0' : fraction}`, exponent: 0 };
     return { dimension, value: inPowerOfTen(number, power), number, end };
   }
   return null;
 }
 
-/** `4R` is a number and its unit, to the same effect; `3V` is too, and `V3` is neither. */
-function isComplete(dimension: Dimension, whole: string, fraction: string): boolean {
-  return dimension === 'voltage' ? whole !== '' && fraction !== '' : whole !== '' || fraction !== '';
+/** `4R` is a number and its unit, and so is `3V`; `V3` is neither. */
+function isComplete(letter: string, whole: string, fraction: string): boolean {
+  return letter === 'V' ? whole !== '' && fraction !== '' : letter === 'R' ? fraction !== '' : whole !== '' || fraction !== '';
 }
 
 const letters: ReadonlyMap<Dimension, Readonly<Record<string, number>>> = new Map<Dimension, Readonly<Record<string, number>>>([

@@ -6,7 +6,7 @@
 import { parse } from '../parse';
 import type { SourceTree, Span } from '../tree';
 import { indentOf, setLines, type SetLine } from './columns';
-import { linesOf } from './lines';
+import { linesOf, type Line } from './lines';
 
 export interface SpaceEdit {
   readonly span: Span;
@@ -16,8 +16,13 @@ export interface SpaceEdit {
 
 /** In the order of the text. */
 export function formatEdits(tree: SourceTree): readonly SpaceEdit[] {
+  return editsOf(tree, linesOf(tree));
+}
+
+/** `of`: the lines of the tree, or some of them: what is left out stays and parts nothing. */
+export function editsOf(tree: SourceTree, of: readonly Line[]): readonly SpaceEdit[] {
   const { text } = tree;
-  const lines = setLines(text, linesOf(tree));
+  const lines = setLines(text, of);
   const edits = lines.flatMap((each, index) => (each.line.kept ? [] : wantedSpaces(each, index === lines.length - 1 ? missingNewline(tree) : '')));
   return edits.filter(({ span, newText }) => text.slice(span.start, span.end) !== newText);
 }
