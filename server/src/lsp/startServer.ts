@@ -30,6 +30,7 @@ import { answerSelectionRanges } from './selectionRange';
 import { answerSemanticTokens, semanticTokensLegend } from './semanticTokens';
 import type { Server } from './server';
 import { createSettings } from './settings';
+import { answerSignatureHelp, signatureTriggers } from './signatureHelp';
 import { sendStatus } from './status';
 import { tolerancesBehind } from './tolerancesBehind';
 import { answerWorkspaceSymbols } from './workspaceSymbol';
@@ -96,6 +97,7 @@ export function startServer(connection: Connection, ownReader: FileReader): void
   answerWorkspaceSymbols(server);
   answerLinks(server);
   answerCallHierarchy(server);
+  answerSignatureHelp(server);
   answerFolding(server);
   answerFormatting(server);
   answerSelectionRanges(server);
@@ -114,6 +116,7 @@ function abilities(capabilities: ClientCapabilities): InitializeResult {
       hoverProvider: true,
       inlayHintProvider: true,
       completionProvider: { resolveProvider: true },
+      signatureHelpProvider: signatureTriggers,
       codeActionProvider: { codeActionKinds: [CodeActionKind.QuickFix] },
       definitionProvider: true,
       referencesProvider: true,

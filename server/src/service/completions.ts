@@ -69,7 +69,7 @@ function statementsAround(tree: SourceTree, kind: BlockKind, { start }: Span): r
 function unitOffers(text: string, { units, span }: Expected): readonly Offer[] {
   // One space between number and unit, whether or not it has been typed.
   const isGlued = 0 < span.start && !isSpace(text.charCodeAt(span.start - 1));
-  return units.flatMap(({ dimension, copper }) => [...fittingUnits(dimension), ...(copper ? [copperWeight] : [])].map((unit) => ({
+  return units.flatMap(({ part: { dimension, copper } }) => [...fittingUnits(dimension), ...(copper ? [copperWeight] : [])].map((unit) => ({
     label: unit, kind: 'unit' as const, detail: dimensionInWords(dimension).replace(/^an? /, ''), documentation: unitMarkdown(unit) ?? '', newText: isGlued ? ` ${unit}` : unit,
   })));
 }

@@ -2,8 +2,7 @@
  * What fits at a point of a text, for completion: the text up to there is read as ever, and what the parser
  * would have taken at its end is what fits. Nothing fits within a comment or a string.
  */
-import type { Dimension } from '../units/dimension';
-import type { BlockKind, Part, StatementShape } from './grammar';
+import type { BlockKind, Part, QuantityPart, StatementShape } from './grammar';
 import { readNumber } from './numbers';
 import { readText } from './parse';
 import type { Expectations } from './reading';
@@ -15,7 +14,7 @@ export interface Expected {
   readonly block: BlockKind | null;
   readonly parts: readonly { readonly part: Part; readonly shape: StatementShape }[];
   /** Units of these are due: a number stands before. */
-  readonly units: readonly { readonly dimension: Dimension; readonly copper: boolean }[];
+  readonly units: readonly { readonly part: QuantityPart; readonly shape: StatementShape }[];
   /** The word under the cursor, which is replaced; empty where there is none. */
   readonly span: Span;
 }
@@ -45,12 +44,12 @@ function isBehindString(text: string, token: Token, offset: number): boolean {
 
 /** `40n|`: a number stands under the cursor, and the unit that may follow it is replaced. */
 function unitsAfterNumber(text: string, numberEnd: number, word: Span, { parts }: Expectations): Expected | null {
-  const units = parts.flatMap(({ part }) => quantitiesOf(part));
+  const units = parts.flatMap(({ part, shape }) => quantitiesOf(part).map((quantity) => ({ part: quantity, shape })));
   const end = endOfUnit(text, numberEnd, word.end);
   return units.length === 0 ? null : { block: null, parts: [], units, span: { start: numberEnd, end } };
 }
 
-function quantitiesOf(part: Part): readonly (Part & { readonly is: 'quantity' })[] {
+function quantitiesOf(part: Part): readonly QuantityPart[] {
   if (part.is === 'quantity') return part.dimension === 'number' ? [] : [part];
   if (part.is === 'choice') return part.of.flatMap(([first]) => quantitiesOf(first!));
   return part.is === 'optional' ? quantitiesOf(part.parts[0]!.is === 'comma' ? part.parts[1]! : part.parts[0]!) : [];

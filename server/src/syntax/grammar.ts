@@ -39,6 +39,8 @@ export type Part =
   /** One or more. */
   | { readonly is: 'repeat'; readonly parts: readonly Part[] };
 
+export type QuantityPart = Part & { readonly is: 'quantity' };
+
 export interface StatementShape {
   readonly keyword: string;
   readonly parts: readonly Part[];

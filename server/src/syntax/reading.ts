@@ -8,7 +8,7 @@
  */
 import type { Dimension } from '../units/dimension';
 import type { TokenCursor } from './cursor';
-import type { BlockKind, Part, StatementShape } from './grammar';
+import type { BlockKind, Part, QuantityPart, StatementShape } from './grammar';
 import { codeOf } from './letterCodes';
 import { Mistakes, quoted } from './mistakes';
 import { beginsNumber } from './numbers';
@@ -36,7 +36,7 @@ export interface StatementReading {
 export interface Expectations {
   readonly parts: { readonly part: Part; readonly shape: StatementShape }[];
   /** A number stands at the end, without a unit. */
-  readonly units: { readonly dimension: Dimension; readonly copper: boolean }[];
+  readonly units: { readonly part: QuantityPart; readonly shape: StatementShape }[];
   /** The innermost block that is open at the end. */
   block: BlockKind | null;
 }

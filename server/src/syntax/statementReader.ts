@@ -2,13 +2,13 @@
 import { unitSpelt } from '../units/spelling';
 import { isTimesSign } from './characters';
 import { dimensionsOf, firstWords, fixedWords, inWords, shapeOf } from './fits';
-import type { Part } from './grammar';
+import type { Part, QuantityPart } from './grammar';
 import { quoted } from './mistakes';
 import { beginsNumber } from './numbers';
 import { readComma, readPoint } from './points';
 import { begins, decline, expect, fail, lastText, nameTakenFor, type StatementReading } from './reading';
 import { tooMuch } from './statementEnd';
-import { readCount, readNameOf, readQuantityOf, readRuleName, readStringOf, readWord, type QuantityPart } from './values';
+import { readCount, readNameOf, readQuantityOf, readRuleName, readStringOf, readWord } from './values';
 import { closest } from './words';
 
 export function readParts(reading: StatementReading, parts: readonly Part[]): void {

@@ -2,7 +2,7 @@
 import { unitSpelt } from '../units/spelling';
 import { isTypographicQuote } from './characters';
 import { fixedWords, inWords, nameInWords, quantityInWords } from './fits';
-import type { Part } from './grammar';
+import type { Part, QuantityPart } from './grammar';
 import { plainly, quoted } from './mistakes';
 import { readName, readString, readTypographicString } from './names';
 import { beginsNumber } from './numbers';
@@ -10,8 +10,6 @@ import { readQuantity } from './quantities';
 import { fail, lastText, lose, type StatementReading } from './reading';
 import type { QuantityValue } from './tree';
 import { closest } from './words';
-
-export type QuantityPart = Part & { readonly is: 'quantity' };
 
 /** Reads a quantity of one of the dimensions of `parts`; null where there is none, which is reported. */
 export function readQuantityOf(reading: StatementReading, role: string, parts: readonly QuantityPart[]): QuantityValue | null {
@@ -23,7 +21,7 @@ export function readQuantityOf(reading: StatementReading, role: string, parts: r
     cursor.readTo(cursor.start, read.end);
     if (Number.isNaN(read.value.value)) reading.broken = true;
     const lacksUnit = read.value.unit === '' && Number.isNaN(read.value.value) && read.value.dimension !== 'number';
-    if (lacksUnit && cursor.kind === 'end') reading.expectations?.units.push(...parts);
+    if (lacksUnit && cursor.kind === 'end') reading.expectations?.units.push(...parts.map((part) => ({ part, shape: reading.shape })));
     return read.value;
   }
   missingQuantity(reading, role, parts);
