@@ -7,6 +7,7 @@ import { registerFirstSteps } from './firstSteps';
 import { listFiles } from './listFiles';
 import { readFile, type RealPath } from './readFile';
 import { registerRulePages, rulePagesScheme } from './rulePages';
+import { registerShowPlaces, showPlacesCommand } from './showPlaces';
 import { createStatusItem } from './statusItem';
 
 export interface RunningClient {
@@ -19,7 +20,7 @@ export interface Host {
 }
 
 export async function startClient(context: vscode.ExtensionContext, host: Host): Promise<RunningClient> {
-  const clientOptions: ClientOptions = { readsFiles: true, rulePages: rulePagesScheme, showsStatus: true };
+  const clientOptions: ClientOptions = { readsFiles: true, rulePages: rulePagesScheme, showsStatus: true, showPlaces: showPlacesCommand };
   const output = vscode.window.createOutputChannel('Quietrun', { log: true });
   const client = host.createClient({
     documentSelector: [{ language: 'quietrun' }],
@@ -33,7 +34,7 @@ export async function startClient(context: vscode.ExtensionContext, host: Host):
   client.onRequest<ReadFileAnswer, void>(readFileMethod, (params: ReadFileParams) => readFile(params, host.realPath));
   client.onRequest(listFilesMethod, () => listFiles());
   client.onNotification(statusMethod, (params: StatusParams) => status.show(params));
-  context.subscriptions.push(output, status, registerRulePages(client), registerCommands(client, output), registerFirstSteps(context));
+  context.subscriptions.push(output, status, registerRulePages(client), registerCommands(client, output), registerShowPlaces(), registerFirstSteps(context));
   try {
     await client.start();
   } catch (error) {

@@ -11,7 +11,17 @@ export interface ClientOptions {
   readonly rulePages?: string;
   /** It shows `status` notifications. */
   readonly showsStatus?: boolean;
+  /** Its command that shows several places at once, called with `ShowPlacesArguments`: for code lenses. */
+  readonly showPlaces?: string;
 }
+
+interface Point {
+  readonly line: number;
+  readonly character: number;
+}
+
+/** The document and the point that it is shown at, and the places. */
+export type ShowPlacesArguments = readonly [uri: string, at: Point, places: readonly { readonly uri: string; readonly range: { readonly start: Point; readonly end: Point } }[]];
 
 /** Server to client. */
 export const readFileMethod = 'quietrun/readFile';

@@ -2,7 +2,7 @@
  * Asks the client to ask anew for what it shows. It asks of its own accord about the file that is being
  * edited; it cannot know of a file read again from the disk, nor that one file shows what another says.
  */
-import type { ClientCapabilities, Connection } from 'vscode-languageserver';
+import { CodeLensRefreshRequest, type ClientCapabilities, type Connection } from 'vscode-languageserver';
 import type { Documents } from './documents';
 
 export interface Refresher {
@@ -37,6 +37,7 @@ export function createRefresher(connection: Connection, documents: Documents, ca
     const { workspace } = capabilities();
     if (workspace?.semanticTokens?.refreshSupport === true) connection.languages.semanticTokens.refresh().catch(failed);
     if (workspace?.inlayHint?.refreshSupport === true) connection.languages.inlayHint.refresh().catch(failed);
+    if (workspace?.codeLens?.refreshSupport === true) connection.sendRequest(CodeLensRefreshRequest.type).catch(failed);
   };
   documents.onReread(now);
   documents.onEdit((path) => {

@@ -9,6 +9,7 @@ import { formatsAfter } from '../service/formatting';
 import { Session } from '../service/session';
 import { answerCallHierarchy } from './callHierarchy';
 import { answerCodeActions } from './codeAction';
+import { answerCodeLenses } from './codeLens';
 import { answerCompletions } from './completion';
 import { answerDefinition } from './definition';
 import { answerPulls, pushFindings } from './diagnostics';
@@ -98,6 +99,7 @@ export function startServer(connection: Connection, ownReader: FileReader): void
   answerLinks(server);
   answerCallHierarchy(server);
   answerSignatureHelp(server);
+  answerCodeLenses(server, () => clientOptions.showPlaces ?? null);
   answerFolding(server);
   answerFormatting(server);
   answerSelectionRanges(server);
@@ -128,6 +130,7 @@ function abilities(capabilities: ClientCapabilities): InitializeResult {
       documentFormattingProvider: true,
       documentRangeFormattingProvider: true,
       documentOnTypeFormattingProvider: { firstTriggerCharacter: formatsAfter[0], moreTriggerCharacter: formatsAfter.slice(1) },
+      codeLensProvider: {},
       renameProvider: capabilities.textDocument?.rename?.prepareSupport === true ? { prepareProvider: true } : true,
       foldingRangeProvider: true,
       selectionRangeProvider: true,
