@@ -16,12 +16,12 @@ for (const stream of [process.stdout, process.stderr]) {
   });
 }
 
-async function readStandardInput(): Promise<string> {
+async function readStandardInput(): Promise<Uint8Array> {
   // Node takes a folder there for nothing at all, and nothing has no findings.
   if (process.platform !== 'win32' && fstatSync(0).isDirectory()) throw new Error('it is a folder');
   const chunks: Buffer[] = [];
   for await (const chunk of process.stdin) chunks.push(chunk as Buffer);
-  return new TextDecoder('utf-8').decode(Buffer.concat(chunks));
+  return Buffer.concat(chunks);
 }
 
 void run(process.argv.slice(2), {

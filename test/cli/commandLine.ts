@@ -16,12 +16,12 @@ export function commandLine() {
   after(() => rmSync(folder, { recursive: true, force: true }));
   return {
     folder,
-    put(name: string, text: string): void {
+    put(name: string, text: string | Uint8Array): void {
       mkdirSync(path.dirname(path.join(folder, name)), { recursive: true });
       writeFileSync(path.join(folder, name), text);
     },
     textOf: (name: string): string => readFileSync(path.join(folder, name), 'utf8'),
-    async quietrun(words: readonly string[], input = ''): Promise<Ran> {
+    async quietrun(words: readonly string[], input: string | Uint8Array = ''): Promise<Ran> {
       let out = '';
       let complaints = '';
       const code = await run(words, {
@@ -30,7 +30,7 @@ export function commandLine() {
         coloured: false,
         write: (text) => { out += text; },
         complain: (text) => { complaints += text; },
-        readStandardInput: async () => input,
+        readStandardInput: async () => (typeof input === 'string' ? new TextEncoder().encode(input) : input),
         serve: async () => { out += 'served'; },
       });
       return { code, out, complaints };

@@ -24,7 +24,7 @@ async function quietrun(words: readonly string[], input = '', coloured = false) 
     coloured,
     write: (text) => { out += text; },
     complain: (text) => { complaints += text; },
-    readStandardInput: async () => input,
+    readStandardInput: async () => new TextEncoder().encode(input),
     serve: async () => { out += 'served'; },
   });
   return { code, out, complaints };

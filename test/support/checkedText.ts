@@ -25,7 +25,7 @@ export async function checkedText(text: string, options: readonly string[] = [])
     coloured: false,
     write: (more) => { raw += more; },
     complain: (more) => { complaints += more; },
-    readStandardInput: async () => text,
+    readStandardInput: async () => new TextEncoder().encode(text),
     serve: async () => assert.fail('check does not serve'),
   });
   assert.equal(complaints, '');

@@ -15,7 +15,7 @@ after(() => rmSync(folder, { recursive: true, force: true }));
 async function quietrun(words: readonly string[], input = '') {
   let out = '';
   let complaints = '';
-  const status = await run(words, { workingDirectory: folder, version: '1.2.3', coloured: false, write: (text) => { out += text; }, complain: (text) => { complaints += text; }, readStandardInput: async () => input, serve: async () => {} });
+  const status = await run(words, { workingDirectory: folder, version: '1.2.3', coloured: false, write: (text) => { out += text; }, complain: (text) => { complaints += text; }, readStandardInput: async () => new TextEncoder().encode(input), serve: async () => {} });
   return { status, out, complaints };
 }
 type Json = { readonly [key: string]: any };

@@ -1,6 +1,7 @@
 /** The words of the command line, read into a command; what does not fit is one sentence. */
 export type Command =
   | CheckCommand
+  | FormatCommand
   | { readonly command: 'explain'; readonly rule: string | null }
   | { readonly command: 'serve' }
   | { readonly command: 'help' }
@@ -18,10 +19,18 @@ export interface CheckCommand {
   readonly stdinFilename: string | null;
 }
 
+export interface FormatCommand {
+  readonly command: 'format';
+  readonly files: readonly string[];
+  /** Only say which files are not formatted. */
+  readonly check: boolean;
+}
+
 export type ReadArguments = { readonly read: Command } | { readonly refused: string };
 
 export const usage = `quietrun check FILE... [--format text|json|sarif|junit] [--fail-on error|warning] [--max-warnings N]
                        [--baseline FILE] [--update-baseline FILE] [--stdin-filename NAME]
+quietrun format FILE... [--check]
 quietrun explain [RULE]
 quietrun serve --stdio
 quietrun --version | --help
@@ -34,6 +43,7 @@ export function readArguments(words: readonly string[]): ReadArguments {
   const [command, ...rest] = words;
   switch (command) {
     case 'check': return readCheck(rest);
+    case 'format': return readFormat(rest);
     case 'explain': return rest.length <= 1 ? { read: { command, rule: rest[0] ?? null } } : { refused: 'explain takes one rule' };
     case 'serve': return rest.length === 1 && rest[0] === '--stdio' ? { read: { command } } : { refused: 'serve takes --stdio' };
     case '--help': case '-h': case 'help': return { read: { command: 'help' } };
@@ -41,6 +51,19 @@ export function readArguments(words: readonly string[]): ReadArguments {
     case undefined: return { refused: 'what is to be done?' };
     default: return { refused: `no command ${command}` };
   }
+}
+
+function readFormat(words: readonly string[]): ReadArguments {
+  const end = words.indexOf('--');
+  const [before, names] = end < 0 ? [words, []] : [words.slice(0, end), words.slice(end + 1)];
+  const options = before.filter((word) => word.startsWith('-') && word !== '-');
+  const files = [...before.filter((word) => !options.includes(word)), ...names];
+  const wrong = options.find((option) => option !== '--check');
+  if (wrong !== undefined) return { refused: `format has no ${wrong}` };
+  if (1 < options.length) return { refused: '--check stands twice' };
+  if (files.length === 0) return { refused: 'format which file?' };
+  if (1 < files.filter((file) => file === '-').length) return { refused: '- stands twice' };
+  return { read: { command: 'format', files, check: options.length === 1 } };
 }
 
 /** Option to the words that it takes; null where any will do. */

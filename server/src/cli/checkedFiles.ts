@@ -22,7 +22,7 @@ export interface CheckOptions {
   readonly files: readonly string[];
   readonly stdinFilename: string | null;
   readonly workingDirectory: string;
-  readonly readStandardInput: () => Promise<string>;
+  readonly readStandardInput: () => Promise<Uint8Array>;
   readonly log: (rule: string, error: unknown) => void;
 }
 
@@ -48,8 +48,8 @@ function keyOf(file: string, { workingDirectory }: CheckOptions): string {
 
 async function standardInput({ readStandardInput }: CheckOptions): Promise<string | { readonly why: string }> {
   try {
-    const text = await readStandardInput();
-    return text.length <= largestFile ? text : { why: 'standard input is over 8 MiB' };
+    const bytes = await readStandardInput();
+    return bytes.length <= largestFile ? new TextDecoder('utf-8').decode(bytes) : { why: 'standard input is over 8 MiB' };
   } catch (error) {
     return { why: `standard input cannot be read (${error instanceof Error ? error.message : String(error)})` };
   }

@@ -10,3 +10,8 @@ export function printable(text: string): string {
 export function printableWord(text: string): string {
   return printable(text).replace(/[\t\n]/g, '\ufffd');
 }
+
+/** `1 line`, `2 lines`. */
+export function counted(count: number, what: string): string {
+  return `${count} ${what}${count === 1 ? '' : 's'}`;
+}

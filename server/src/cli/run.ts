@@ -7,6 +7,7 @@ import { loadBaseline, saveBaseline } from './baselineFile';
 import { checkedFiles, type CheckedFile } from './checkedFiles';
 import { checkReport } from './checkReport';
 import type { CheckReport, Summary } from './checkSchema';
+import { format } from './format';
 import { junitOutput } from './junitOutput';
 import { paintFor } from './paint';
 import { printableWord } from './printable';
@@ -19,7 +20,7 @@ export interface Surroundings {
   readonly coloured: boolean;
   readonly write: (text: string) => void;
   readonly complain: (text: string) => void;
-  readonly readStandardInput: () => Promise<string>;
+  readonly readStandardInput: () => Promise<Uint8Array>;
   /** Serves until the client ends it. */
   readonly serve: () => Promise<void>;
 }
@@ -35,6 +36,7 @@ export async function run(words: readonly string[], around: Surroundings): Promi
   const command = answer.read;
   switch (command.command) {
     case 'check': return check(command, around);
+    case 'format': return status[await format(command, around)];
     case 'explain': return explain(command.rule, around);
     case 'help': around.write(`${usage}\n`); return status.clean;
     case 'version': around.write(`${around.version}\n`); return status.clean;
