@@ -5,7 +5,7 @@ export const starterBoard = `stackup {
   plane   GND     18 um
 }
 
-net CLK   { swing 3.3 V; rise 1 ns; source 40 ohm; load 1 Mohm, 5 pF }
+net CLK { swing 3.3 V; rise 1 ns; source 40 ohm; load 1 Mohm, 5 pF }
 net SENSE { source 1 kohm; load 1 Mohm, 20 pF; tolerates 10 mV peak }
 
 run clock-past-sense on TOP for 30 mm {

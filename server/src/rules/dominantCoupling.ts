@@ -18,7 +18,7 @@ export const dominantCoupling = defineRule<DominantCoupling>({
     matters: 'A receiver can lie beside a dozen nets on its way across the board. Nearly always one of them decides, and an hour spent on any other is lost.',
     bad: `stackup { copper TOP 35 um; prepreg 0.2 mm er 4.2; plane GND 18 um }
 net VALVE_PWM { swing 24 V; rise 40 ns; source 5 ohm; load 10 kohm, 470 pF }
-net RX_IN     { source 200 ohm; load 1 Mohm, 8 pF; tolerates 2 mV peak }
+net RX_IN { source 200 ohm; load 1 Mohm, 8 pF; tolerates 2 mV peak }
 run valve-past-rx on TOP for 38 mm {
   trace VALVE_PWM 0.25 mm
   gap   0.30 mm
@@ -27,7 +27,7 @@ run valve-past-rx on TOP for 38 mm {
 `,
     good: `stackup { copper TOP 35 um; prepreg 0.2 mm er 4.2; plane GND 18 um }
 net VALVE_PWM { swing 24 V; rise 40 ns; source 5 ohm; load 10 kohm, 470 pF }
-net RX_IN     { source 200 ohm; load 1 Mohm, 8 pF; tolerates 2 mV peak }
+net RX_IN { source 200 ohm; load 1 Mohm, 8 pF; tolerates 2 mV peak }
 run valve-past-rx on TOP for 8 mm {
   trace VALVE_PWM 0.25 mm
   gap   2.50 mm

@@ -27,7 +27,7 @@ export const insulationCaution = defineRule<InsulationCaution>({
     matters: 'A gap that is wide enough for noise says nothing of whether it is wide enough for people. Quietrun never proposes to bring copper nearer to such a net, and it never says that a distance is safe.',
     bad: `stackup { copper TOP 35 um; core 1.5 mm er 4.4; copper BOTTOM 35 um }
 net MAINS_L { working 230 V rms }
-net COIL    { swing 12 V; rise 1 us; source 10 ohm; load 1 kohm, 100 pF }
+net COIL { swing 12 V; rise 1 us; source 10 ohm; load 1 kohm, 100 pF }
 run relay on TOP for 15 mm {
   trace  MAINS_L 2.00 mm
   gap    6.00 mm
@@ -38,7 +38,7 @@ run relay on TOP for 15 mm {
 `,
     good: `stackup { copper TOP 35 um; core 1.5 mm er 4.4; copper BOTTOM 35 um }
 net SUPPLY { working 24 V dc }
-net COIL   { swing 12 V; rise 1 us; source 10 ohm; load 1 kohm, 100 pF }
+net COIL { swing 12 V; rise 1 us; source 10 ohm; load 1 kohm, 100 pF }
 run relay on TOP for 15 mm {
   trace  SUPPLY 2.00 mm
   gap    0.50 mm

@@ -15,7 +15,7 @@ export const lowMargin = defineRule<LowMargin>({
     matters: 'A prepreg presses thinner, an etch runs wide, a neighbour is rerouted late. The headroom is what a board keeps for that; once it is spent, the next change is a respin.',
     bad: `board quiet-corner { headroom 6 dB }
 stackup { copper TOP 35 um; prepreg 0.2 mm er 4.2; plane GND 18 um }
-net FAN   { swing 12 V; rise 100 ns; source 10 ohm; load 10 kohm, 1 nF }
+net FAN { swing 12 V; rise 100 ns; source 10 ohm; load 10 kohm, 1 nF }
 net PROBE { source 1 kohm; load 1 Mohm, 47 pF; tolerates 12 mV peak }
 run fan-past-probe on TOP for 20 mm {
   trace FAN   0.25 mm
@@ -25,7 +25,7 @@ run fan-past-probe on TOP for 20 mm {
 `,
     good: `board quiet-corner { headroom 6 dB }
 stackup { copper TOP 35 um; prepreg 0.2 mm er 4.2; plane GND 18 um }
-net FAN   { swing 12 V; rise 100 ns; source 10 ohm; load 10 kohm, 1 nF }
+net FAN { swing 12 V; rise 100 ns; source 10 ohm; load 10 kohm, 1 nF }
 net PROBE { source 1 kohm; load 1 Mohm, 47 pF; tolerates 12 mV peak }
 run fan-past-probe on TOP for 20 mm {
   trace FAN   0.25 mm

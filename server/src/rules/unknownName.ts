@@ -11,7 +11,7 @@ net SENSE { source 100 ohm; load 1 kohm, 10 pF; tolerates 2 V peak }
 run beside on TOP for 20 mm { trace SENSE_A 0.15 mm; gap 0.5 mm; trace SENSE 0.15 mm }
 `,
   good: `stackup { copper TOP 35 um; prepreg 0.2 mm er 4.2; plane GND 18 um }
-net SENSE   { source 100 ohm; load 1 kohm, 10 pF; tolerates 2 V peak }
+net SENSE { source 100 ohm; load 1 kohm, 10 pF; tolerates 2 V peak }
 net SENSE_A { swing 3.3 V; rise 5 ns; source 33 ohm; load 1 Mohm, 5 pF }
 run beside on TOP for 20 mm { trace SENSE_A 0.15 mm; gap 0.5 mm; trace SENSE 0.15 mm }
 `,
