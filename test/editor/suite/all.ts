@@ -5,6 +5,7 @@ export async function loadAll(): Promise<void> {
   await import('./reading.suite');
   await import('./fixes.suite');
   await import('./completion.suite');
+  await import('./formatting.suite');
   await import('./navigation.suite');
   await import('./structure.suite');
   await import('./files.suite');

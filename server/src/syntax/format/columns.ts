@@ -54,8 +54,8 @@ function parted(lines: readonly Line[], isParted: (before: Line, line: Line) => 
 
 function paddedGaps(text: string, lines: readonly Line[]): readonly (readonly string[])[] {
   const cells = lines.map((line) => cellsOf(text, line));
-  const first = Math.max(0, ...cells.map((cell) => cell?.first ?? 0));
-  const second = Math.max(0, ...cells.map((cell) => cell?.second ?? 0));
+  const first = widest(cells.map((cell) => cell?.first ?? 0));
+  const second = widest(cells.map((cell) => cell?.second ?? 0));
   return lines.map((line, index) => {
     const gaps = [...plainGaps(text, line)];
     const cell = cells[index];
@@ -97,6 +97,11 @@ function widthWithoutTolerance(text: string, { numberSpan, unitSpan }: QuantityV
 
 function withComments(text: string, group: readonly Line[], gaps: readonly (readonly string[])[]): readonly SetLine[] {
   const widths = group.map((line, index) => widthOf(indentOf(line)) + line.pieces.reduce((sum, { start, end }, at) => sum + widthOf(text.slice(start, end)) + (at === 0 ? 0 : gaps[index]![at - 1]!.length), 0));
-  const column = 2 + Math.max(0, ...group.map(({ comment, kept }, index) => (comment === null || kept ? 0 : widths[index]!)));
+  const column = 2 + widest(group.map(({ comment, kept }, index) => (comment === null || kept ? 0 : widths[index]!)));
   return group.map((line, index) => ({ line, gaps: gaps[index]!, commentGap: line.comment === null || line.kept || line.pieces.length === 0 ? '' : ' '.repeat(column - widths[index]!) }));
+}
+
+/** A group may have more lines than a call takes arguments. */
+function widest(widths: readonly number[]): number {
+  return widths.reduce((most, width) => Math.max(most, width), 0);
 }

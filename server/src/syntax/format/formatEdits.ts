@@ -22,8 +22,7 @@ export function formatEdits(tree: SourceTree): readonly SpaceEdit[] {
 /** `of`: the lines of the tree, or some of them: what is left out stays and parts nothing. */
 export function editsOf(tree: SourceTree, of: readonly Line[]): readonly SpaceEdit[] {
   const { text } = tree;
-  const lines = setLines(text, of);
-  const edits = lines.flatMap((each, index) => (each.line.kept ? [] : wantedSpaces(each, index === lines.length - 1 ? missingNewline(tree) : '')));
+  const edits = setLines(text, of).flatMap((each) => (each.line.kept ? [] : wantedSpaces(each, each.line.end === text.length ? missingNewline(tree) : '')));
   return edits.filter(({ span, newText }) => text.slice(span.start, span.end) !== newText);
 }
 

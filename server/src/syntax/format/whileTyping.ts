@@ -12,8 +12,7 @@ export function editsAfterNewline(tree: SourceTree, offset: number): readonly Sp
   if (finished === undefined) return [];
   const { pieces, comment } = all[at]!;
   const lines = pieces.length === 0 && comment === null ? all.filter((_, index) => index !== at) : all;
-  const group = groupsOf(tree.text, lines).find((each) => each.includes(finished))!;
-  return within(editsOf(tree, lines), { start: group[0]!.start, end: group.at(-1)!.end });
+  return editsOf(tree, groupsOf(tree.text, lines).find((group) => group.includes(finished))!);
 }
 
 /** `offset`: behind a brace. The declaration that it closes is set; nothing where it closes none. */
