@@ -7,6 +7,7 @@ export async function loadAll(): Promise<void> {
   await import('./completion.suite');
   await import('./formatting.suite');
   await import('./navigation.suite');
+  await import('./names.suite');
   await import('./structure.suite');
   await import('./files.suite');
 }
