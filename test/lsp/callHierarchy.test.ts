@@ -33,7 +33,7 @@ describe('call hierarchy', () => {
     assert.match(item!.detail!, /^[\d.]+ mV of 50\.0 mV · [\d.]+ dB (left|too much)$/);
     const calls = await client.connection.sendRequest<CallHierarchyIncomingCall[]>('callHierarchy/incomingCalls', { item });
     assert.deepEqual(calls.map(({ from, fromRanges }) => [from.name, from.uri, fromRanges.map((range) => textAt(from.uri, range))]), [['NOISY', parts, ['body']], ['NOISY', board, ['trace NOISY 0.15 mm']]]);
-    assert.match(calls[0]!.from.detail!, /^[\d.]+ mV on V · \d+ %: [\d.]+ mV in link body, [\d.]+ mV in run bus$/);
+    assert.match(calls[0]!.from.detail!, /^[\d.]+ mV \(\d+ %\) on V: [\d.]+ mV in link body, [\d.]+ mV in run bus$/);
     await client.stop();
   });
 

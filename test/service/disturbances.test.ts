@@ -40,9 +40,9 @@ describe('who disturbs a net', () => {
   it('is every source, the worst first, by all its ways, and says where', () => {
     const found = disturbedBy(session, { root, kind: 'net', name: 'V' });
     assert.deepEqual(found.map(({ party, detail }) => `${party.kind} ${party.name}: ${numbers(detail)}`), [
-      'net NOISY: # V on V · # %: # V in run bus, # V in loop out, # V in run alley',
-      'net SLOW: # V on V · # %: # V in link body, # V in run bus',
-      'ambient V: # V on V · # %: # V around in, # V around bus, # V around alley',
+      'net NOISY: # V (# %) on V: # V in run bus, # V in loop out, # V in run alley',
+      'net SLOW: # V (# %) on V: # V in link body, # V in run bus',
+      'ambient V: # V (# %) on V: # V around in, # V around bus, # V around alley',
     ]);
     assert.deepEqual(found[0]!.rows.map(({ whole, name }) => [whole.path, shown(root, whole.span), shown(root, name.span)]), [
       [root, 'trace NOISY 0.15 mm', 'NOISY'], [root, 'NOISY', 'NOISY'], [root, 'trace NOISY 0.15 mm', 'NOISY'],
@@ -53,11 +53,11 @@ describe('who disturbs a net', () => {
 
   it('is a source of a pair, and says that it is the pair', () => {
     const [found] = disturbedBy(session, { root, kind: 'pair', name: 'D' });
-    assert.equal(numbers(found!.detail), '# V on pair D in run end · # %');
+    assert.equal(numbers(found!.detail), '# V (# %) on pair D in run end');
     assert.deepEqual(found!.ownRows.map(({ span }) => shown(root, span)), ['trace P 0.15 mm', 'trace N 0.15 mm']);
   });
 
-  it('is said in rms where that is what is tolerated', () => assert.equal(numbers(disturbedBy(session, { root, kind: 'net', name: 'W' })[0]!.detail), '# V rms on W in run end · # %'));
+  it('is said in rms where that is what is tolerated', () => assert.equal(numbers(disturbedBy(session, { root, kind: 'net', name: 'W' })[0]!.detail), '# V rms (# %) on W in run end'));
 });
 
 describe('whom a net disturbs', () => {
@@ -65,7 +65,7 @@ describe('whom a net disturbs', () => {
     const found = disturbs(session, { root, kind: 'net', name: 'NOISY' });
     assert.deepEqual(found.map(({ party: { kind, name } }) => `${kind} ${name}`).sort(), ['net V', 'net W', 'pair D']);
     const v = found.find(({ party }) => party.name === 'V')!;
-    assert.match(v.detail, /^[\d.]+ mV from NOISY · \d+ %: /);
+    assert.match(v.detail, /^[\d.]+ mV \(\d+ %\) from NOISY: /);
     assert.deepEqual(v.rows.map(({ whole }) => shown(root, whole.span)), ['trace V 0.15 mm', 'V', 'trace V 0.15 mm']);
     assert.deepEqual(v.ownRows.map(({ span }) => shown(root, span)), ['trace NOISY 0.15 mm', 'NOISY', 'trace NOISY 0.15 mm']);
     for (const [at, { share }] of found.entries()) assert.ok(at === 0 || share <= found[at - 1]!.share);

@@ -21,7 +21,7 @@ export interface Disturbance {
   readonly party: Party;
   /** Of what is tolerated. */
   readonly share: number;
-  /** `0.92 mV on RX_IN in run BUS · 46 %` of what that tolerates. */
+  /** `0.92 mV (46 %) on RX_IN in run BUS`: the share is that of what is tolerated. */
   readonly detail: string;
   /** Of the one that is asked for, the first of them where it does most. */
   readonly rows: readonly Row[];
@@ -98,12 +98,12 @@ const waysShown = 3;
 
 function inOneLine({ budget, of, total }: Omit<Share, 'share'>, whom: string): string {
   const ways = waysOf(of).map((way) => ({ way: way[0]!, value: totalOf(way, budget.combine).total })).sort((a, b) => b.value - a.value);
-  const share = percent(total / budget.tolerates);
+  const amount = `${voltageInText(total, budget)} (${percent(total / budget.tolerates)}) ${whom}`;
   const [only] = ways;
-  if (ways.length === 1) return `${voltageInText(total, budget)} ${whom}${whereInText(only!.way)} · ${share}`;
+  if (ways.length === 1) return `${amount}${whereInText(only!.way)}`;
   const shown = ways.slice(0, waysShown).map(({ way, value }) => `${voltageInText(value, budget)}${whereInText(way)}`);
   const rest = ways.length - shown.length;
-  return `${voltageInText(total, budget)} ${whom} · ${share}: ${shown.join(', ')}${rest === 0 ? '' : `, less by ${rest} more ways`}`;
+  return `${amount}: ${shown.join(', ')}${rest === 0 ? '' : `, less by ${rest} more ways`}`;
 }
 
 /** Edges and sines by one run, link, loop or return. */
