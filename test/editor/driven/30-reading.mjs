@@ -85,7 +85,7 @@ export const scenes = [
       await shot('hover-keyword');
       assert.match(word, /tolerates \(VOLTAGE peak\|rms \| none\)/);
       await ui.caret(...at(valve, '8 pF', 3));
-      assert.match(await ui.hover(/measures/), /pF measures a capacitance: 1 pF is 1e-12 F\./);
+      assert.match(await ui.hover(/measures/), /pF measures a capacitance: 1 pF is 10⁻¹² F\./);
       await shot('hover-unit');
     },
   },
