@@ -30,7 +30,7 @@ function placesOf(project: Project, { channel, where }: { readonly channel: Cont
   const nets = signal.kind === 'net' ? [signal] : [signal.plus, signal.minus];
   const isIts = (other: Net | Pair) => other === signal || nets.some((net) => net === other);
   switch (channel) {
-    case 'coupled': return project.runs.filter(({ name }) => name === where).flatMap((run) => tracesOf(run, isIts));
+    case 'coupled': return tracesOf(runsOf(project).get(where), isIts);
     case 'loop': {
       // Several loops that one current leads through are one way: their names stand in a row.
       const names = new Set([where, ...where.split(', ')]);
@@ -42,8 +42,19 @@ function placesOf(project: Project, { channel, where }: { readonly channel: Cont
   }
 }
 
-function tracesOf({ rows }: Run, isIts: (net: Net) => boolean): readonly Row[] {
-  return rows.flatMap(({ conductors }) => conductors.flatMap((conductor) => (conductor.kind === 'trace' && isIts(conductor.net) ? [{ whole: conductor.whole, name: conductor.place }] : [])));
+function tracesOf(run: Run | undefined, isIts: (net: Net) => boolean): readonly Row[] {
+  return (run?.rows ?? []).flatMap(({ conductors }) => conductors.flatMap((conductor) => (conductor.kind === 'trace' && isIts(conductor.net) ? [{ whole: conductor.whole, name: conductor.place }] : [])));
+}
+
+/** A board has thousands of runs, and is asked for each contribution. */
+const runs = new WeakMap<Project, ReadonlyMap<string, Run>>();
+
+function runsOf(project: Project): ReadonlyMap<string, Run> {
+  const known = runs.get(project);
+  if (known !== undefined) return known;
+  const byName = new Map(project.runs.map((run) => [run.name, run]));
+  runs.set(project, byName);
+  return byName;
 }
 
 const row = (place: Place): Row => ({ whole: place, name: place });
