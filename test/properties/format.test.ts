@@ -10,6 +10,7 @@ import { Session } from '../../server/src/service/session';
 import { isNewline, isSpace } from '../../server/src/syntax/characters';
 import { formatted } from '../../server/src/syntax/format/formatEdits';
 import { parse } from '../../server/src/syntax/parse';
+import type { QuantityValue, Statement } from '../../server/src/syntax/tree';
 import { everyKindOfBoard } from '../support/everyKindOfBoard';
 import { generatedBoard, seeded, type Random } from '../support/generatedBoard';
 import { treeText } from '../syntax/treeText';
@@ -96,9 +97,36 @@ function linesWithErrors(of: string): readonly number[] {
   return parse(of).errors.map(({ span }) => lineOf(span.start));
 }
 
-/** The same tokens, with other white space between them where there may be any. */
+/** The same tokens, with other white space between them where there may be any, between number and unit too. */
 function respaced(of: string, random: Random): string {
-  const spaces = () => random.pick([' ', '  ', '\t', '     ', '\u00a0', ' \u2009 ']);
+  return betweenTokens(withinQuantities(of, random), random);
+}
+
+const spacesOf = (random: Random) => () => random.pick([' ', '  ', '\t', '     ', '\u00a0', ' \u2009 ']);
+
+function withinQuantities(of: string, random: Random): string {
+  const spaces = spacesOf(random);
+  const tree = parse(of);
+  let from = 0;
+  const parts = quantitiesIn(tree.statements).map(({ numberSpan, unitSpan, span }) => {
+    const units = unitSpan.start < unitSpan.end ? random.pick(['', spaces()]) : '';
+    const tolerance = of.slice(Math.max(numberSpan.end, unitSpan.end), span.end).replace(/^\s*(±|\+\/?-)\s*([\d.eE]+(?:(?<=[eE])[+-]\d+)?)\s*(.*)$/u, (_, mark: string, number: string, unit: string) => `${random.pick(['', spaces()])}${mark}${random.pick(['', spaces()])}${number}${unit === '' ? '' : random.pick(['', spaces()])}${unit}`);
+    const part = `${of.slice(from, numberSpan.end)}${units}${of.slice(unitSpan.start, unitSpan.end)}${tolerance}`;
+    from = span.end;
+    return part;
+  });
+  return parts.join('') + of.slice(from);
+}
+
+function quantitiesIn(statements: readonly Statement[]): readonly QuantityValue[] {
+  return statements.flatMap(({ values, block }) => [
+    ...values.flatMap((value) => (value.kind === 'quantity' ? [value] : value.kind === 'point' ? [value.x, value.y, ...(value.z === null ? [] : [value.z])] : [])),
+    ...(block === null ? [] : quantitiesIn(block.statements)),
+  ]);
+}
+
+function betweenTokens(of: string, random: Random): string {
+  const spaces = spacesOf(random);
   const { tokens } = parse(of);
   let from = 0;
   const parts = tokens.map(({ kind, start, end }, index) => {

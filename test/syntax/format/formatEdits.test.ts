@@ -304,13 +304,28 @@ describe('a line with an error', () => {
     |run r on TOP for 5 mm {
     |trace A 0.2 mm
     |      gap  0.3   furlong   # half done··
-    |trace SENSE_LINE 0.2 mm
+    |trace SENSE_LINE 0.2 mm # so
+    |  gapp   0.3 mm    # half done··
+    |trace B 0.2 mm # too
     |}
   `, `
     |run r on TOP for 5 mm {
     |  trace A          0.2 mm
     |      gap  0.3   furlong   # half done··
-    |  trace SENSE_LINE 0.2 mm
+    |  trace SENSE_LINE 0.2 mm  # so
+    |  gapp   0.3 mm    # half done··
+    |  trace B          0.2 mm  # too
+    |}
+  `);
+  becomes('is the line only, not the statement that goes on', `
+    |net A {
+    |load  5 ohm,
+    |  5   oops
+    |}
+  `, `
+    |net A {
+    |  load 5 ohm,
+    |  5   oops
     |}
   `);
   becomes('and stray text stay, up to the next declaration', `
@@ -348,6 +363,10 @@ describe('the text as a whole', () => {
 
   it('keeps its byte-order mark, its carriage returns and its tabs in strings', () => {
     assert.equal(formatted('\ufeff  net A\tis F\r\r\n\n waive syntax on A because "a\tb"'), '\ufeffnet A is F\r\r\nwaive syntax on A because "a\tb"\r'.replace('\r\r\n', '\r\r\n\n'));
+  });
+
+  it('keeps what parts a carriage return from a line feed', () => {
+    assert.equal(formatted('net A is F\r  \nnet B is F\r\n  \n  \r'), 'net A is F\r  \nnet B is F\r\n\n\r');
   });
 
   it('is edited only where it differs', () => {

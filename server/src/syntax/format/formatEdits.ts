@@ -22,7 +22,7 @@ export function formatEdits(tree: SourceTree): readonly SpaceEdit[] {
 /** `of`: the lines of the tree, or some of them: what is left out stays and parts nothing. */
 export function editsOf(tree: SourceTree, of: readonly Line[]): readonly SpaceEdit[] {
   const { text } = tree;
-  const edits = setLines(text, of).flatMap((each) => (each.line.kept ? [] : wantedSpaces(each, each.line.end === text.length ? missingNewline(tree) : '')));
+  const edits = setLines(text, of).flatMap((each) => (each.line.kept || partsNewline(text, each.line) ? [] : wantedSpaces(each, each.line.end === text.length ? missingNewline(tree) : '')));
   return edits.filter(({ span, newText }) => text.slice(span.start, span.end) !== newText);
 }
 
@@ -54,4 +54,9 @@ function missingNewline({ text, tokens }: SourceTree): string {
   if (last === undefined || last.kind === 'newline') return '';
   const first = tokens.find(({ kind }) => kind === 'newline');
   return first === undefined ? '\n' : text.slice(first.start, first.end);
+}
+
+/** Without the white space on it, the carriage return before and the line feed behind would become one line end. */
+function partsNewline(text: string, { start, end, pieces, comment }: Line): boolean {
+  return pieces.length === 0 && comment === null && text[start - 1] === '\r' && text[end] === '\n';
 }

@@ -3,7 +3,6 @@ import type { BlockKind } from '../grammar';
 import type { SourceTree, Span, Statement } from '../tree';
 import { depthAlong } from './depth';
 import { piecesOf, type Piece } from './pieces';
-import { unreadable } from './unreadable';
 
 export interface Line extends Span {
   /** Without the comment. */
@@ -82,6 +81,11 @@ function rowsByStart(statements: readonly Statement[], within: BlockKind = 'file
     if (statement.block !== null) rowsByStart(statement.block.statements, statement.block.kind, found);
   }
   return found;
+}
+
+/** What is meant by them is not known for certain. Sorted by where they begin; two of them may overlap. */
+function unreadable({ errors, unread }: SourceTree): readonly Span[] {
+  return [...errors.map(({ span }) => span), ...unread].sort((a, b) => a.start - b.start);
 }
 
 /** To be asked about lines in the order of the text. An empty span lies on the line that it touches. */
