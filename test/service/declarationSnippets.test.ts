@@ -5,6 +5,7 @@ import { completions } from '../../server/src/service/completions';
 import { declarationSnippets } from '../../server/src/service/declarationSnippets';
 import { Session } from '../../server/src/service/session';
 import { keywordsOf } from '../../server/src/syntax/fits';
+import { formatted } from '../../server/src/syntax/format/formatEdits';
 import { parse } from '../../server/src/syntax/parse';
 
 describe('snippets', () => {
@@ -13,10 +14,11 @@ describe('snippets', () => {
   });
 
   for (const { prefix, body } of declarationSnippets) {
-    it(`${prefix} is read without a mistake once its places are filled`, () => {
+    it(`${prefix} is read without a mistake, and is formatted, once its places are filled`, () => {
       const { errors, statements } = parse(filled(body));
       assert.deepEqual(errors, []);
       assert.equal(statements.length, 1);
+      assert.equal(filled(body), formatted(filled(body)));
     });
   }
 

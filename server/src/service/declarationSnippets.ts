@@ -27,7 +27,7 @@ export const declarationSnippets: readonly DeclarationSnippet[] = [
   {
     prefix: 'stackup-two',
     about: 'A board of two layers, one of them a plane',
-    body: lines('stackup {', '  mask   25 um er 3.4', '  copper TOP   35 um', '  core   ${1:1.5 mm} er ${2:4.4}', '  plane  ${3:GND}   35 um', '}', '$0'),
+    body: lines('stackup {', '  mask   25 um er 3.4', '  copper TOP    35 um', '  core   ${1:1.5 mm} er ${2:4.4}', '  plane  ${3:GND}    35 um', '}', '$0'),
   },
   {
     prefix: 'use',
@@ -62,7 +62,7 @@ export const declarationSnippets: readonly DeclarationSnippet[] = [
   {
     prefix: 'run-guard',
     about: 'Two conductors with a stitched guard between them',
-    body: lines('run ${1:name} on ${2:TOP} for ${3:20 mm} {', '  trace ${4:A} ${5:0.15 mm}', '  gap   ${6:0.20 mm}', '  guard ${7:GND} ${8:0.25 mm} stitched ${9:4 mm}', '  gap   ${6:0.20 mm}', '  trace ${10:B} ${11:0.15 mm}', '}', '$0'),
+    body: lines('run ${1:name} on ${2:TOP} for ${3:20 mm} {', '  trace ${4:A}   ${5:0.15 mm}', '  gap   ${6:0.20 mm}', '  guard ${7:GND} ${8:0.25 mm} stitched ${9:4 mm}', '  gap   ${6:0.20 mm}', '  trace ${10:B}   ${11:0.15 mm}', '}', '$0'),
   },
   {
     prefix: 'run-layers',
