@@ -30,6 +30,7 @@ void run(process.argv.slice(2), {
   coloured: process.stdout.isTTY === true && (process.env['NO_COLOR'] ?? '') === '',
   write: (text) => process.stdout.write(text),
   complain: (text) => process.stderr.write(text),
+  ...(process.stderr.isTTY === true ? { progress: (words: string | null) => process.stderr.write(`\r\u001b[K${words ?? ''}`) } : {}),
   readStandardInput,
   serve: async () => {
     startServer(createConnection(new StreamMessageReader(process.stdin), new StreamMessageWriter(process.stdout)), diskReader);

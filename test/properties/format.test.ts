@@ -146,6 +146,6 @@ function betweenTokens(of: string, random: Random): string {
 function report(board: string): string {
   const session = new Session();
   session.setText('board.quiet', board);
-  const { files, summary } = checkReport([{ path: 'board.quiet', analysis: session.analyseFully('board.quiet'), text: () => board, known: new Set(), fixes: () => [] }], '0');
+  const { files, summary } = checkReport([{ path: 'board.quiet', analysis: session.analyseFully('board.quiet'), text: () => board, known: new Set() }], '0');
   return JSON.stringify({ files, summary }, (key, value: unknown) => (key === 'range' ? null : value));
 }

@@ -1,7 +1,12 @@
 /** The words of the command line, read into a command; what does not fit is one sentence. */
+import { metres, type Length } from '../units/quantity';
+import { unitSpelt } from '../units/spelling';
+import { readOptions, type Options } from './options';
+
 export type Command =
   | CheckCommand
   | FormatCommand
+  | SpacingCommand
   | { readonly command: 'explain'; readonly rule: string | null }
   | { readonly command: 'serve' }
   | { readonly command: 'help' }
@@ -26,11 +31,25 @@ export interface FormatCommand {
   readonly check: boolean;
 }
 
+export interface SpacingCommand {
+  readonly command: 'spacing';
+  readonly file: string;
+  readonly format: 'text' | 'csv' | 'markdown';
+  /** Null takes what suits the board. */
+  readonly gaps: readonly Length[] | null;
+  readonly lengths: readonly Length[] | null;
+  readonly width: Length | null;
+  readonly only: { readonly layer: string | null; readonly from: string | null; readonly to: string | null };
+  readonly placed: boolean;
+}
+
 export type ReadArguments = { readonly read: Command } | { readonly refused: string };
 
 export const usage = `quietrun check FILE... [--format text|json|sarif|junit] [--fail-on error|warning] [--max-warnings N]
                        [--baseline FILE] [--update-baseline FILE] [--stdin-filename NAME]
 quietrun format FILE... [--check]
+quietrun spacing FILE [--format text|csv|markdown] [--gaps LENGTH,...] [--lengths LENGTH,...]
+                      [--width LENGTH] [--layer NAME] [--from NET] [--to NET] [--placed]
 quietrun explain [RULE]
 quietrun serve --stdio
 quietrun --version | --help
@@ -44,6 +63,7 @@ export function readArguments(words: readonly string[]): ReadArguments {
   switch (command) {
     case 'check': return readCheck(rest);
     case 'format': return readFormat(rest);
+    case 'spacing': return readSpacing(rest);
     case 'explain': return rest.length <= 1 ? { read: { command, rule: rest[0] ?? null } } : { refused: 'explain takes one rule' };
     case 'serve': return rest.length === 1 && rest[0] === '--stdio' ? { read: { command } } : { refused: 'serve takes --stdio' };
     case '--help': case '-h': case 'help': return { read: { command: 'help' } };
@@ -54,50 +74,28 @@ export function readArguments(words: readonly string[]): ReadArguments {
 }
 
 function readFormat(words: readonly string[]): ReadArguments {
-  const end = words.indexOf('--');
-  const [before, names] = end < 0 ? [words, []] : [words.slice(0, end), words.slice(end + 1)];
-  const options = before.filter((word) => word.startsWith('-') && word !== '-');
-  const files = [...before.filter((word) => !options.includes(word)), ...names];
-  const wrong = options.find((option) => option !== '--check');
-  if (wrong !== undefined) return { refused: `format has no ${wrong}` };
-  if (1 < options.length) return { refused: '--check stands twice' };
+  const answer = readOptions('format', words, new Map([['--check', 'flag']]));
+  if ('refused' in answer) return answer;
+  const { files, given } = answer;
   if (files.length === 0) return { refused: 'format which file?' };
   if (1 < files.filter((file) => file === '-').length) return { refused: '- stands twice' };
-  return { read: { command: 'format', files, check: options.length === 1 } };
+  return { read: { command: 'format', files, check: given.has('--check') } };
 }
 
-/** Option to the words that it takes; null where any will do. */
-const options: ReadonlyMap<string, readonly string[] | null> = new Map([
+/** What each option takes. */
+const checkOptions: Options = new Map<string, string | readonly string[]>([
   ['--format', ['text', 'json', 'sarif', 'junit']],
   ['--fail-on', ['error', 'warning']],
-  ['--max-warnings', null],
-  ['--baseline', null],
-  ['--update-baseline', null],
-  ['--stdin-filename', null],
+  ['--max-warnings', 'a count'],
+  ['--baseline', 'a file'],
+  ['--update-baseline', 'a file'],
+  ['--stdin-filename', 'a name'],
 ]);
 
 function readCheck(words: readonly string[]): ReadArguments {
-  const files: string[] = [];
-  const given = new Map<string, string>();
-  for (let at = 0; at < words.length; at += 1) {
-    // As with every command line, what follows is a name, whatever it looks like.
-    if (words[at] === '--') {
-      files.push(...words.slice(at + 1));
-      break;
-    }
-    const [name, attached] = splitOption(words[at]);
-    if (!name.startsWith('-') || name === '-') {
-      files.push(words[at]);
-      continue;
-    }
-    const choices = options.get(name);
-    if (choices === undefined) return { refused: `check has no ${name}` };
-    if (given.has(name)) return { refused: `${name} stands twice` };
-    const value = attached ?? words[(at += 1)];
-    if (value === undefined || value === '') return { refused: `${name} takes ${choices?.join(' or ') ?? wantedBy(name)}` };
-    if (choices !== null && !choices.includes(value)) return { refused: `${name} takes ${choices.join(' or ')}, not ${value}` };
-    given.set(name, value);
-  }
+  const answer = readOptions('check', words, checkOptions);
+  if ('refused' in answer) return answer;
+  const { files, given } = answer;
   const maxWarnings = given.get('--max-warnings') ?? null;
   if (maxWarnings !== null && !/^\d{1,9}$/.test(maxWarnings)) return { refused: `--max-warnings takes a count, not ${maxWarnings}` };
   if (files.length === 0) return { refused: 'check which file?' };
@@ -116,9 +114,49 @@ function readCheck(words: readonly string[]): ReadArguments {
   };
 }
 
-const wantedBy = (option: string) => (option === '--max-warnings' ? 'a count' : option === '--stdin-filename' ? 'a name' : 'a file');
+const spacingOptions: Options = new Map<string, string | readonly string[]>([
+  ['--format', ['text', 'csv', 'markdown']],
+  ['--gaps', 'lengths'],
+  ['--lengths', 'lengths'],
+  ['--width', 'a length'],
+  ['--layer', 'a name'],
+  ['--from', 'a name'],
+  ['--to', 'a name'],
+  ['--placed', 'flag'],
+]);
 
-function splitOption(word: string): readonly [string, string | undefined] {
-  const equals = word.startsWith('--') ? word.indexOf('=') : -1;
-  return equals < 0 ? [word, undefined] : [word.slice(0, equals), word.slice(equals + 1)];
+function readSpacing(words: readonly string[]): ReadArguments {
+  const answer = readOptions('spacing', words, spacingOptions);
+  if ('refused' in answer) return answer;
+  const { files, given } = answer;
+  if (files.length !== 1) return { refused: files.length === 0 ? 'spacing of which file?' : 'spacing takes one file' };
+  const read = new Map<string, readonly Length[]>();
+  for (const option of ['--gaps', '--lengths', '--width']) {
+    const written = given.get(option);
+    if (written === undefined) continue;
+    const values = written.split(',').map(lengthIn);
+    if (values.some((value) => value === null) || (option === '--width' && values.length !== 1)) return { refused: `${option} takes ${spacingOptions.get(option)} such as ${option === '--width' ? '0.15mm' : '0.15mm,0.3mm'}, not ${written}` };
+    read.set(option, values as Length[]);
+  }
+  return {
+    read: {
+      command: 'spacing',
+      file: files[0],
+      format: (given.get('--format') ?? 'text') as SpacingCommand['format'],
+      gaps: read.get('--gaps') ?? null,
+      lengths: read.get('--lengths') ?? null,
+      width: read.get('--width')?.[0] ?? null,
+      only: { layer: given.get('--layer') ?? null, from: given.get('--from') ?? null, to: given.get('--to') ?? null },
+      placed: given.has('--placed'),
+    },
+  };
+}
+
+/** `0.15mm`, `6 mil`; between a micrometre and ten metres, as the language has it. */
+function lengthIn(word: string): Length | null {
+  const [, digits, spelling] = /^\s*(\d+\.?\d*|\.\d+)\s*(\S+)\s*$/.exec(word) ?? [];
+  const unit = spelling === undefined ? undefined : unitSpelt(spelling);
+  if (digits === undefined || unit?.dimension !== 'length') return null;
+  const value = unit.inSi({ digits, exponent: 0 });
+  return 1e-6 <= value && value <= 10 ? metres(value) : null;
 }

@@ -7,7 +7,10 @@ import type { CheckedFile } from './checkedFiles';
 import type { CheckReport, FileReport, Summary } from './checkSchema';
 import { linesOf, type Lines } from './positions';
 
-export function checkReport(checked: readonly CheckedFile[], tool: string): CheckReport {
+/** What of a checked file goes into its report. */
+type Reported = Pick<CheckedFile, 'path' | 'analysis' | 'text' | 'known'>;
+
+export function checkReport(checked: readonly Reported[], tool: string): CheckReport {
   const files = checked.map(fileReport);
   return { version: 1, tool, units: 'SI', summary: summaryOf(files), files };
 }
@@ -26,7 +29,7 @@ function summaryOf(files: readonly FileReport[]): Summary {
 
 type Placed = (place: Place) => { readonly path: string; readonly range: ReturnType<Lines['range']> };
 
-function fileReport({ path, analysis, text, known: inBaseline }: CheckedFile): FileReport {
+function fileReport({ path, analysis, text, known: inBaseline }: Reported): FileReport {
   const { project, evaluation, findings } = analysis;
   const lines = new Map<string, Lines>();
   const placed: Placed = (place) => {

@@ -5,6 +5,7 @@ import { isBelow, largestFile, usedFile } from '../disk/usedFile';
 import type { Fix } from '../fixes/fix';
 import { mendingFixes } from '../fixes/index';
 import type { Finding } from '../rules/rule';
+import type { SpacingOptions } from '../spacing/spacing';
 import { Session, type Analysis } from '../service/session';
 
 export interface CheckedFile {
@@ -16,6 +17,7 @@ export interface CheckedFile {
   readonly known: ReadonlySet<Finding>;
   /** Solved for when they are asked for. */
   readonly fixes: (finding: Finding) => readonly Fix[];
+  readonly spacing: (options: SpacingOptions) => ReturnType<Session['spacing']>;
 }
 
 export interface CheckOptions {
@@ -39,7 +41,7 @@ export async function checkedFiles(options: CheckOptions): Promise<CheckedFiles>
     session.setText(key, text);
   }
   await readUsed(session, roots, options);
-  return { checked: roots.map((root) => ({ path: root, analysis: session.analyseFully(root), text: (other) => session.text(other) ?? '', known: new Set(), fixes: (finding) => mendingFixes(finding, session.fixContext(root)) })) };
+  return { checked: roots.map((root) => ({ path: root, analysis: session.analyseFully(root), text: (other) => session.text(other) ?? '', known: new Set(), fixes: (finding) => mendingFixes(finding, session.fixContext(root)), spacing: (wanted) => session.spacing(root, wanted) })) };
 }
 
 function keyOf(file: string, { workingDirectory }: CheckOptions): string {

@@ -11,6 +11,7 @@ import { format } from './format';
 import { junitOutput } from './junitOutput';
 import { paintFor } from './paint';
 import { printableWord } from './printable';
+import { spacing } from './spacing';
 import { sarifOutput } from './sarifOutput';
 import { textOutput } from './textOutput';
 
@@ -20,6 +21,8 @@ export interface Surroundings {
   readonly coloured: boolean;
   readonly write: (text: string) => void;
   readonly complain: (text: string) => void;
+  /** What is being worked on, on one line that the next takes the place of; null clears it. Absent where nobody watches. */
+  readonly progress?: (words: string | null) => void;
   readonly readStandardInput: () => Promise<Uint8Array>;
   /** Serves until the client ends it. */
   readonly serve: () => Promise<void>;
@@ -37,6 +40,7 @@ export async function run(words: readonly string[], around: Surroundings): Promi
   switch (command.command) {
     case 'check': return check(command, around);
     case 'format': return status[await format(command, around)];
+    case 'spacing': return spacing(command, around);
     case 'explain': return explain(command.rule, around);
     case 'help': around.write(`${usage}\n`); return status.clean;
     case 'version': around.write(`${around.version}\n`); return status.clean;

@@ -78,10 +78,11 @@ run relay on TOP for 15 mm {
   },
 
   message: ({ conductor, run, voltage, neighbours }) =>
-    `${hazardInText(voltage)} on ${conductor} in run ${run}, ${neighbours.map(neighbourInText).join(', ')}: over ${voltage.limit} V ${voltage.measure}. ${caution}`,
+    `${hazardInText(voltage)} on ${conductor} in run ${run}, ${neighbours.map(neighbourInText).join(', ')}: over ${voltage.limit} V ${voltage.measure}. ${insulationWords}`,
 });
 
-const caution = 'Quietrun does not judge insulation. Clearance, creepage, distance through insulation and coating are for the applicable standard and a qualified person; that there is no finding does not mean that insulation is adequate.';
+/** As the language words it, wherever distances are spoken of. */
+export const insulationWords = 'Quietrun does not judge insulation. Clearance, creepage, distance through insulation and coating are for the applicable standard and a qualified person; that there is no finding does not mean that insulation is adequate.';
 
 function besideIt(run: Run, row: number, index: number): Neighbour[] {
   const { conductors, gaps } = run.rows[row]!;

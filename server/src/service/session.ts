@@ -18,6 +18,7 @@ import { tolerancedQuantities } from '../budget/tolerances/tolerances';
 import type { FixContext } from '../fixes/fix';
 import { findingsOf } from '../rules/index';
 import type { Finding } from '../rules/rule';
+import { spacingOf, type SpacingOptions } from '../spacing/spacing';
 import { parse } from '../syntax/parse';
 import type { SourceTree } from '../syntax/tree';
 import type { Edit } from './answers';
@@ -152,6 +153,11 @@ export class Session {
     const steps = this.carryTolerances(root);
     while (steps.next().done !== true);
     return this.analyse(root);
+  }
+
+  /** What layout needs of a root's board; see `spacing/`. */
+  spacing(root: string, options: SpacingOptions): ReturnType<typeof spacingOf> {
+    return spacingOf(this.analyse(root).evaluation, this.cache, options);
   }
 
   /** Of every project that the file belongs to; what two projects say alike is said once. */
