@@ -14,20 +14,17 @@
  *             fluxes are our own
  *   Accuracy  filmedSection.ts
  */
-import { polynomialLimit, writePolynomials } from '../basis/orthonormalJacobi';
 import type { Side } from '../basis/side';
 import type { ChargedConductor } from '../basis/chargedConductor';
 import { leftOut, type ChargeSolution } from '../galerkin/chargeSolution';
 import { ownBlock } from '../galerkin/ownBlock';
-import { segmentDistance } from '../galerkin/segmentDistance';
-import { writeSideBlock } from '../galerkin/sideBlock';
 import type { Kernel } from '../kernel/layeredKernel';
-import { acrossGap, addFluxBlock } from './fluxBlock';
-import { plainBasis } from './fluxProduct';
+import { block, writeBlock, writePolarisation } from './filmBlocks';
+import { filmGroups } from './filmGroups';
+import { groupedCharge } from './groupedCharge';
 import { FoldedSystem } from './foldedSystem';
-import { keptBlock, shapeOf, type Shape } from './keptBlocks';
+import { shapeOf, type Shape } from './keptBlocks';
 import { mirrorImages } from '../basis/mirrorImages';
-import { writePotentialBlock } from './potentialBlock';
 
 export interface FilmProblem {
   readonly conductors: readonly ChargedConductor[];
@@ -45,6 +42,14 @@ export interface FilmProblem {
 
 /** Null where a pivot vanishes: the system means nothing then. */
 export function filmCharge(problem: FilmProblem): ChargeSolution | null {
+  const { constant } = problem;
+  const groups = constant === null ? filmGroups(problem) : null;
+  const grouped = groups === null ? null : groupedCharge(problem, groups);
+  return grouped ?? ungroupedCharge(problem);
+}
+
+/** All sides and panels at once. */
+export function ungroupedCharge(problem: FilmProblem): ChargeSolution | null {
   const { conductors, panels, signals, constant } = problem;
   const sides = conductors.flatMap((conductor) => conductor.sides);
   const all = [...sides, ...panels];
@@ -106,34 +111,6 @@ interface Assembly {
 /** Whether rows of side or panel `s` are asked for: those of its image say the same. */
 const leads = ({ images }: Assembly, s: number) => images === null || s <= images[s];
 
-const block = new Float64Array(polynomialLimit * polynomialLimit);
-
-/** Into `block`: of the first side's potentials, or of the flux through it, from the second's charge. */
-function writeBlock(kind: 'potential' | 'flux', kernel: Kernel, { all, shapes }: Assembly, first: number, second: number): void {
-  const reach = nearRatio * Math.max(all[first].length, all[second].length);
-  const near = acrossGap(all[first], all[second]) < reach && segmentDistance(all[first], all[second]) < reach;
-  if (near) block.set(keptBlock({ kind, kernel, first: shapes[first], second: shapes[second], apart: all[second].x0 - all[first].x0 }, (a, b) => computed(kind, kernel, a, b)));
-  else compute(kind, kernel, all[first], all[second]);
-}
-
-/** Pairs nearer than this part of the longer one cost enough to be worth keeping. */
-const nearRatio = 1.5;
-
-function compute(kind: 'potential' | 'flux', kernel: Kernel, first: Side, second: Side): void {
-  // Two conductors may be as near as they like, and are no more than a few pairs.
-  if (kind === 'potential' && 0 <= first.conductor && 0 <= second.conductor) writeSideBlock(first, second, kernel, block);
-  else if (kind === 'potential') writePotentialBlock(first, second, kernel, block);
-  else {
-    block.fill(0, 0, first.order * second.order);
-    addFluxBlock(kernel, first, second, 1, block);
-  }
-}
-
-function computed(kind: 'potential' | 'flux', kernel: Kernel, first: Side, second: Side): Float64Array {
-  compute(kind, kernel, first, second);
-  return block.slice(0, first.order * second.order);
-}
-
 /** Adds entries to every system's matrix, `values` as FoldedSystem.add takes them. */
 function place({ systems }: Assembly, row: number, column: number, values: Float64Array, from: number, down: number, along: number): void {
   for (let i = 0; i < systems.length; i += 1) systems[i].add(row, column, values, from, down, along);
@@ -189,23 +166,8 @@ function placePanels(assembly: Assembly): void {
     const panel = all[p];
     for (let t = 0; t < all.length; t += 1) {
       const source = all[t];
-      writeBlock('flux', kernel(source.layer, panel.layer), assembly, p, t);
-      for (let at = 0; at < panel.order * source.order; at += 1) block[at] *= -contrast * permittivity;
-      if (p === t) addOwnCharge(panel);
+      writePolarisation(kernel(source.layer, panel.layer), assembly, p, t, contrast * permittivity);
       place(assembly, p, t, block, 0, source.order, 1);
-    }
-  }
-}
-
-/** pi s, tested with the Legendre polynomials. */
-function addOwnCharge({ basis, order }: Side): void {
-  const rule = basis.whole(order);
-  const legendre = plainBasis();
-  const values = new Float64Array(order);
-  for (let g = 0; g < rule.count; g += 1) {
-    writePolynomials(legendre.recurrence, 2 * rule.t[g] - 1, Math.PI, values, 0, order);
-    for (let n = 0; n < order; n += 1) {
-      for (let m = 0; m < order; m += 1) block[n * order + m] += values[n] * rule.weighted[g * polynomialLimit + m];
     }
   }
 }

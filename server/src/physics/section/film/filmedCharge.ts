@@ -12,7 +12,7 @@ import type { ChargeSolution } from '../galerkin/chargeSolution';
 import { kernelsOf } from '../kernel/kernelCache';
 import { placementOf } from '../placement';
 import type { Section } from '../section';
-import { filmCharge } from './filmCharge';
+import { filmCharge, type FilmProblem } from './filmCharge';
 import { filmEdgeExponent } from './filmEdgeExponent';
 import { filmOutline } from './outline';
 import { outlinePanels } from './outlinePanels';
@@ -24,6 +24,18 @@ export interface FilmedSolution extends ChargeSolution {
 
 /** In units of 2 pi eps0; null where the system has no answer. `section` has its film above; `signals` are its conductors asked for. */
 export function filmedCharge(section: Section, signals: readonly number[], effort: number): FilmedSolution | null {
+  const posed = filmProblem(section, signals, effort);
+  const solution = posed === null ? null : filmCharge(posed.problem);
+  return posed === null || solution === null ? null : { ...solution, unseen: posed.unseen };
+}
+
+export interface PosedFilm {
+  readonly problem: FilmProblem;
+  readonly unseen: number;
+}
+
+/** Null where the section has no place for it. */
+export function filmProblem(section: Section, signals: readonly number[], effort: number): PosedFilm | null {
   const { film, layers } = section;
   if (film === null) throw new Error('a section without a film');
   const outside = layers[layers.length - 1].permittivity;
@@ -52,12 +64,12 @@ export function filmedCharge(section: Section, signals: readonly number[], effor
     edge: filmEdgeExponent(film.permittivity / outside) - 1,
     layer: stack.layers.length - 1,
   });
-  const solution = filmCharge({
+  const problem: FilmProblem = {
     // The copper's own setting is a step ahead: close conductors need it whatever covers them.
     conductors: chargedConductors(conductors, stack, effort + 1), signals, panels, kernel: kernelsOf(stack),
     permittivity: film.permittivity, outside, constant: openConstant(conductors, stack),
-  });
-  return solution === null ? null : { ...solution, unseen: (slotted ? 6e-4 : 1.5e-4) / 3.5 ** effort };
+  };
+  return { problem, unseen: (slotted ? 6e-4 : 1.5e-4) / 3.5 ** effort };
 }
 
 /** Of the film's thickness. */

@@ -1,6 +1,6 @@
 /**
  * Nodes on the sides of a conductor, with what a potential there is worth to each polynomial, close enough for potentials whose
- * sources are `distance` or more away to the left and to the right.
+ * sources are away to the left and to the right.
  */
 import { polynomialLimit } from '../basis/orthonormalJacobi';
 import type { PartRule } from '../basis/partRule';
@@ -21,19 +21,27 @@ export interface Moments {
   readonly right: number;
   readonly bottom: number;
   readonly top: number;
-  /** The nodes of one half, and their images about the middle: their own where they lie there. */
-  readonly pairs: { readonly own: Int32Array; readonly mirrored: Int32Array };
 }
 
-export function nodesWithin(sides: readonly Side[], distance: number): Moments {
-  const extent = extentOf(sides);
-  const reach = { left: extent.left - distance, right: extent.right + distance };
+/** Where sources may begin: x below `left`, and above `right`. */
+export interface Clear {
+  readonly left: number;
+  readonly right: number;
+}
+
+/** Nodes of one half, and their images about the middle: their own where they lie there. */
+export interface MirrorPairs {
+  readonly own: Int32Array;
+  readonly mirrored: Int32Array;
+}
+
+export function nodesWithin(sides: readonly Side[], clear: Clear): Moments {
   const found: { side: Side; rule: PartRule; row: number }[] = [];
   let row = 0;
   let count = 0;
   for (const side of sides) {
     const start = row;
-    visit(side, 0, 0, reach, (rule) => {
+    visit(side, 0, 0, clear, (rule) => {
       found.push({ side, rule, row: start });
       count += rule.count;
     });
@@ -51,10 +59,11 @@ export function nodesWithin(sides: readonly Side[], distance: number): Moments {
       order[at] = own;
     }
   }
-  return { count, x, y, weighted, start, order, ...extent, pairs: pairsOf(x, y, extent) };
+  return { count, x, y, weighted, start, order, ...extentOf(sides) };
 }
 
-function pairsOf(x: Float64Array, y: Float64Array, { left, right }: { readonly left: number; readonly right: number }) {
+/** Of a conductor, which is its own mirror image. */
+export function mirrorPairs({ x, y, left, right }: Moments): MirrorPairs {
   const tolerance = 1e-9 * (right - left);
   const own: number[] = [];
   const mirrored: number[] = [];
@@ -84,16 +93,16 @@ export function extentOf(sides: readonly Side[]) {
 /** Sides longer than this over the distance are cut. */
 const wholeRatio = 0.3;
 
-function visit(side: Side, level: number, index: number, reach: { readonly left: number; readonly right: number }, take: (rule: PartRule) => void): void {
+function visit(side: Side, level: number, index: number, clear: Clear, take: (rule: PartRule) => void): void {
   const size = 2 ** -level;
   const from = side.x0 + (side.x1 - side.x0) * index * size;
   const to = from + (side.x1 - side.x0) * size;
-  const near = Math.min(Math.min(from, to) - reach.left, reach.right - Math.max(from, to));
+  const near = Math.min(Math.min(from, to) - clear.left, clear.right - Math.max(from, to));
   const length = side.length * size;
   if (level === 0 && wholeRatio * length <= near) take(side.basis.whole(Math.max(farPoints(near / length), side.order)));
   else if (0 < level && farRatio * length <= near) take(side.basis.part(level, index));
   else {
-    visit(side, level + 1, 2 * index, reach, take);
-    visit(side, level + 1, 2 * index + 1, reach, take);
+    visit(side, level + 1, 2 * index, clear, take);
+    visit(side, level + 1, 2 * index + 1, clear, take);
   }
 }

@@ -17,7 +17,7 @@ import { cholesky, forwardSubstitute } from '../../../numeric/cholesky';
 import type { ChargedConductor } from '../basis/chargedConductor';
 import type { Kernel } from '../kernel/layeredKernel';
 import { layOut } from './layout';
-import { nodesWithin } from './momentNodes';
+import { extentOf, mirrorPairs, nodesWithin } from './momentNodes';
 import { ownBlock } from './ownBlock';
 import { pivotedBasis } from './pivotedBasis';
 import { skeletonOf, type Skeleton } from './skeleton';
@@ -66,10 +66,12 @@ export function outsideView(conductor: ChargedConductor, { kernel, distance, far
   for (const row of netRows) net[row] = 1;
   forwardSubstitute(lower, unknowns, net);
   const sides = conductor.atOrigin();
+  const { left, right } = extentOf(sides);
   const seenFrom = (least: number) => {
-    const nodes = nodesWithin(sides, least);
-    const fields = trainingFields(nodes, least, conductor.effort);
-    const skeleton = skeletonOf(nodes, fields, rows, conductor.effort);
+    const nodes = nodesWithin(sides, { left: left - least, right: right + least });
+    const pairs = mirrorPairs(nodes);
+    const fields = trainingFields(nodes, pairs, least, conductor.effort);
+    const skeleton = skeletonOf(nodes, pairs, fields, rows, conductor.effort);
     forwardSubstitute(lower, unknowns, skeleton.moments, skeleton.points);
     return { fields, skeleton };
   };

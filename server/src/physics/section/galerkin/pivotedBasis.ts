@@ -9,6 +9,8 @@ export interface VectorSet {
   readonly vectors: Float64Array;
   readonly count: number;
   readonly length: number;
+  /** Only so many of the first may be taken; all where it is not said. */
+  readonly eligible?: number;
 }
 
 export interface PivotedBasis {
@@ -29,10 +31,14 @@ export function pivotedBasis(sets: readonly VectorSet[], tolerance: number, most
   const parts = sets.map(() => new Float64Array(pivots.length * count));
   const squares = sets.map(({ vectors, length }) => Float64Array.from({ length: count }, (_, v) => product(vectors, v, v, length)));
   const taken = new Uint8Array(count);
+  const eligible = sets[0].eligible ?? count;
   let found = 0;
   while (found < pivots.length) {
-    const best = largest(squares, taken);
-    if (best < 0 || !(tolerance * tolerance < Math.max(...squares.map((own) => own[best])))) break;
+    const best = largest(squares, taken, eligible);
+    if (best < 0 || !isLonger(squares, best, tolerance)) break;
+    // Subtraction may have left more than is there.
+    for (let s = 0; s < sets.length; s += 1) squares[s][best] = product(sets[s].vectors, best, best, sets[s].length);
+    if (!isLonger(squares, best, tolerance)) continue;
     taken[best] = 1;
     for (let s = 0; s < sets.length; s += 1) take(sets[s], squares[s], parts[s], { best, found, taken, pivots, tolerance });
     pivots[found] = best;
@@ -41,10 +47,15 @@ export function pivotedBasis(sets: readonly VectorSet[], tolerance: number, most
   return { count: found, pivots: pivots.subarray(0, found), parts };
 }
 
-function largest(squares: readonly Float64Array[], taken: Uint8Array): number {
+function isLonger(squares: readonly Float64Array[], v: number, tolerance: number): boolean {
+  for (let s = 0; s < squares.length; s += 1) if (tolerance * tolerance < squares[s][v]) return true;
+  return false;
+}
+
+function largest(squares: readonly Float64Array[], taken: Uint8Array, eligible: number): number {
   let best = -1;
   let size = 0;
-  for (let v = 0; v < taken.length; v += 1) {
+  for (let v = 0; v < eligible; v += 1) {
     if (taken[v] === 1) continue;
     let sum = 0;
     for (let s = 0; s < squares.length; s += 1) sum += squares[s][v];
@@ -73,10 +84,17 @@ function take({ vectors, count, length }: VectorSet, squares: Float64Array, part
   parts[found * count + best] = scale === 0 ? 0 : size;
   for (let v = 0; v < count; v += 1) {
     if (taken[v] === 1) continue;
-    parts[found * count + v] = scale === 0 ? 0 : clear(vectors, v, best, length);
-    squares[v] = product(vectors, v, v, length);
+    if (scale === 0) continue;
+    const part = clear(vectors, v, best, length);
+    parts[found * count + v] = part;
+    // Shorter by what was taken out; afresh where little is left, for rounding's sake.
+    const left = squares[v] - part * part;
+    squares[v] = left < lost * squares[v] ? product(vectors, v, v, length) : left;
   }
 }
+
+/** Of a square: less is not left by subtraction with enough digits. */
+const lost = 1e-3;
 
 function product(vectors: Float64Array, a: number, b: number, length: number): number {
   let sum = 0;

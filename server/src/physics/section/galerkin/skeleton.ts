@@ -7,7 +7,7 @@
  * Source    Cheng, Gimbutas, Martinsson & Rokhlin 2005, from memory
  */
 import { polynomialLimit } from '../basis/orthonormalJacobi';
-import type { Moments } from './momentNodes';
+import type { MirrorPairs, Moments } from './momentNodes';
 import { pivotedBasis, type PivotedBasis } from './pivotedBasis';
 import type { TrainingFields } from './trainingFields';
 
@@ -26,8 +26,8 @@ export interface Skeleton {
 const tolerance = 5e-7;
 
 /** `rows`: of every polynomial, side after side, the unknown. */
-export function skeletonOf(nodes: Moments, { even, odd }: TrainingFields, rows: Int32Array, effort: number): Skeleton {
-  const { x, y, left, right, pairs: { own, mirrored } } = nodes;
+export function skeletonOf(nodes: Moments, { own, mirrored }: MirrorPairs, { even, odd }: TrainingFields, rows: Int32Array, effort: number): Skeleton {
+  const { x, y, left, right } = nodes;
   const unknowns = rows.length;
   const count = own.length;
   const sets = [even, odd].map(({ values, count: length }) => ({ vectors: Float64Array.from(values), count, length }));
@@ -62,7 +62,7 @@ export function skeletonOf(nodes: Moments, { even, odd }: TrainingFields, rows: 
 }
 
 /** Adds `share` of a node's moments to those of point `p`. */
-function gather({ weighted, start, order }: Moments, node: number, share: number, gathered: Float64Array, rows: Int32Array, p: number): void {
+export function gather({ weighted, start, order }: Moments, node: number, share: number, gathered: Float64Array, rows: Int32Array, p: number): void {
   const to = p * rows.length;
   const from = node * polynomialLimit;
   for (let m = 0; m < order[node]; m += 1) gathered[to + rows[start[node] + m]] += share * weighted[from + m];

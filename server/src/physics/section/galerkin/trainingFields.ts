@@ -5,7 +5,7 @@
  * Any field from beyond the lines is one of charges on them. Sums and differences of left and right, at the nodes of one half:
  * the other's follow.
  */
-import type { Moments } from './momentNodes';
+import type { MirrorPairs, Moments } from './momentNodes';
 
 export interface TrainingFields {
   readonly even: FieldValues;
@@ -18,7 +18,7 @@ export interface FieldValues {
   readonly values: Float64Array;
 }
 
-export function trainingFields({ x, y, left, right, bottom, top, pairs: { own } }: Moments, distance: number, effort: number): TrainingFields {
+export function trainingFields({ x, y, left, right, bottom, top }: Moments, { own }: MirrorPairs, distance: number, effort: number): TrainingFields {
   const heights = heightsBeside({ bottom, top, distance, reach: 4 * (right - left + top - bottom), density: 2 + 0.4 * effort });
   const nodes = own.length;
   const count = heights.length;
@@ -42,7 +42,7 @@ export function trainingFields({ x, y, left, right, bottom, top, pairs: { own } 
 
 const constantWeight = 30;
 
-interface Beside {
+export interface Beside {
   readonly bottom: number;
   readonly top: number;
   readonly distance: number;
@@ -52,7 +52,7 @@ interface Beside {
   readonly density: number;
 }
 
-function heightsBeside({ bottom, top, distance, reach, density }: Beside): number[] {
+export function heightsBeside({ bottom, top, distance, reach, density }: Beside): number[] {
   // As good as a line of charge to e^(-2 pi density).
   const steps = Math.min(8 * density, Math.ceil((density * (top - bottom)) / distance));
   const heights = Array.from({ length: steps + 1 }, (_, i) => bottom + (0 < steps ? ((top - bottom) * i) / steps : 0));
