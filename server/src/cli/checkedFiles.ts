@@ -7,6 +7,7 @@ import { mendingFixes } from '../fixes/index';
 import type { Finding } from '../rules/rule';
 import type { SpacingOptions } from '../spacing/spacing';
 import { Session, type Analysis } from '../service/session';
+import { tidyFix } from '../service/tidyEdits';
 
 export interface CheckedFile {
   /** Relative to the working directory, with `/`. */
@@ -41,7 +42,7 @@ export async function checkedFiles(options: CheckOptions): Promise<CheckedFiles>
     session.setText(key, text);
   }
   await readUsed(session, roots, options);
-  return { checked: roots.map((root) => ({ path: root, analysis: session.analyseFully(root), text: (other) => session.text(other) ?? '', known: new Set(), fixes: (finding) => mendingFixes(finding, session.fixContext(root)), spacing: (wanted) => session.spacing(root, wanted) })) };
+  return { checked: roots.map((root) => ({ path: root, analysis: session.analyseFully(root), text: (other) => session.text(other) ?? '', known: new Set(), fixes: (finding) => mendingFixes(finding, session.fixContext(root)).map((fix) => tidyFix(fix, session)), spacing: (wanted) => session.spacing(root, wanted) })) };
 }
 
 function keyOf(file: string, { workingDirectory }: CheckOptions): string {

@@ -3,7 +3,7 @@ import type { Fix } from '../fixes/fix';
 import { fixesFor } from '../fixes/index';
 import type { Span } from '../syntax/tree';
 import type { Session } from './session';
-import { tidyEdits } from './tidyEdits';
+import { tidyFix } from './tidyEdits';
 
 export function fixesAt(session: Session, path: string, span: Span): readonly Fix[] {
   const found = new Map<string, Fix>();
@@ -12,7 +12,7 @@ export function fixesAt(session: Session, path: string, span: Span): readonly Fi
     const context = touched.length === 0 ? null : session.fixContext(root);
     for (const finding of touched) {
       for (const proposed of fixesFor(finding, context!)) {
-        const fix = { ...proposed, edits: tidyEdits(proposed.edits, (of) => session.tree(of)) };
+        const fix = tidyFix(proposed, session);
         // A receiver and the gap that disturbs it are two findings with one cure, and two projects may share it.
         const identity = JSON.stringify([fix.title, fix.edits]);
         const known = found.get(identity);

@@ -6,8 +6,13 @@ import { formatEdits, type SpaceEdit } from '../syntax/format/formatEdits';
 import { groupsTouching } from '../syntax/format/groups';
 import { parse } from '../syntax/parse';
 import type { SourceTree, Span } from '../syntax/tree';
-import type { Edit } from './answers';
+import type { Edit, Fix } from './answers';
 import { editedText } from './editedText';
+import type { Session } from './session';
+
+export function tidyFix(fix: Fix, session: Session): Fix {
+  return { ...fix, edits: tidyEdits(fix.edits, (path) => session.tree(path)) };
+}
 
 export function tidyEdits(edits: readonly Edit[], treeOf: (path: string) => SourceTree | undefined): readonly Edit[] {
   const byPath = new Map<string, Edit[]>();
