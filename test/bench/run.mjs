@@ -4,8 +4,8 @@
  * the time where the machine collects garbage beside it, less where others use the machine) and, where a case
  * names another, the ratio to it.
  *
- * A bench exports `cases`: a list of { name, run, prepare?, against? }. `run` does the work once, with what
- * `prepare` made for it off the clock; inputs are seeded.
+ * A bench exports `cases`: a list of { name, run, prepare?, against?, goal? }. `run` does the work once, with what
+ * `prepare` made for it off the clock; inputs are seeded. `goal` is in milliseconds, and the ratio to it is printed.
  */
 import { spawnSync } from 'node:child_process';
 import { mkdirSync, readdirSync, writeFileSync } from 'node:fs';
@@ -42,7 +42,7 @@ import { pathToFileURL } from 'node:url';
 const { cases } = await import(pathToFileURL(process.argv[2]).href);
 const milliseconds = () => Number(process.hrtime.bigint()) / 1e6;
 const medians = new Map();
-for (const { name, run, against, prepare } of cases) {
+for (const { name, run, against, prepare, goal } of cases) {
   const samples = [];
   const processor = [];
   let spent = 0;
@@ -65,7 +65,7 @@ for (const { name, run, against, prepare } of cases) {
   const warm = samples.slice(Math.floor(samples.length / 10)).sort((a, b) => a - b);
   const median = warm[Math.floor(warm.length / 2)];
   medians.set(name, median);
-  const ratio = against === undefined ? '' : (median / medians.get(against)).toFixed(2) + ' of ' + against;
+  const ratio = (against === undefined ? '' : (median / medians.get(against)).toFixed(2) + ' of ' + against) + (goal === undefined ? '' : (median / goal).toFixed(1) + ' of the goal');
   console.log('  ' + name.padEnd(44) + inText(median).padStart(10) + '  p95 ' + inText(warm[Math.floor(warm.length * 0.95)]).padStart(9) + '  cpu ' + inText(processor.sort((a, b) => a - b)[Math.floor(processor.length / 2)]).padStart(9) + '  first ' + inText(cold).padStart(9) + '  ' + ratio);
 }
 function inText(value) {
