@@ -1,6 +1,6 @@
 /**
- * Edits of a fix, extended so that what was formatted stays formatted: a row that is put into a run stands in its columns. Lines that
- * were not, and lines far from the edits, stay as they are.
+ * Edits of a fix, extended so that what was formatted stays formatted: a row that is put into a run stands in its columns. Among lines
+ * that were not, only what is put there is set; they, and lines far from the edits, stay as they are.
  */
 import { formatEdits, type SpaceEdit } from '../syntax/format/formatEdits';
 import { groupsTouching } from '../syntax/format/groups';
@@ -32,7 +32,8 @@ function tidyFile(before: SourceTree, path: string, edits: readonly Edit[]): rea
   const after = parse(editedText(before.text, edits));
   const untidy = unformattedIn(before, edits.map(({ span }) => span));
   const spaces = unformattedIn(after, made.map(({ after: span }) => span));
-  return 0 < untidy.length || spaces.length === 0 ? edits : joined(after.text, { path, made, spaces });
+  const wanted = untidy.length === 0 ? spaces : spaces.filter(({ span }) => made.some(({ after: own }) => own.start <= span.start && span.end <= own.end));
+  return wanted.length === 0 ? edits : joined(after.text, { path, made, spaces: wanted });
 }
 
 function unformattedIn(tree: SourceTree, spans: readonly Span[]): readonly SpaceEdit[] {
