@@ -5,7 +5,7 @@ import { describe, it } from 'node:test';
 import { sourceFiles } from './sourceFiles';
 
 /** From the top; what stands on one line may not import each other. */
-const order = [['entry'], ['lsp', 'cli'], ['service', 'disk'], ['spacing'], ['rules', 'fixes'], ['budget'], ['board', 'physics'], ['syntax', 'numeric'], ['units']] as const;
+const order = [['entry'], ['lsp', 'cli'], ['service', 'disk'], ['spacing', 'compare'], ['rules', 'fixes'], ['budget'], ['board', 'physics'], ['syntax', 'numeric'], ['units']] as const;
 
 /** A fix mends what a rule found, so it may read the rule; never the other way round. */
 const sideways: ReadonlySet<string> = new Set(['fixes > rules']);

@@ -7,6 +7,7 @@ export type Command =
   | CheckCommand
   | FormatCommand
   | SpacingCommand
+  | CompareCommand
   | { readonly command: 'explain'; readonly rule: string | null }
   | { readonly command: 'serve' }
   | { readonly command: 'help' }
@@ -43,6 +44,13 @@ export interface SpacingCommand {
   readonly placed: boolean;
 }
 
+export interface CompareCommand {
+  readonly command: 'compare';
+  readonly before: string;
+  readonly after: string;
+  readonly format: 'text' | 'markdown';
+}
+
 export type ReadArguments = { readonly read: Command } | { readonly refused: string };
 
 export const usage = `quietrun check FILE... [--format text|json|sarif|junit] [--fail-on error|warning] [--max-warnings N]
@@ -50,6 +58,7 @@ export const usage = `quietrun check FILE... [--format text|json|sarif|junit] [-
 quietrun format FILE... [--check]
 quietrun spacing FILE [--format text|csv|markdown] [--gaps LENGTH,...] [--lengths LENGTH,...]
                       [--width LENGTH] [--layer NAME] [--from NET] [--to NET] [--placed]
+quietrun compare OLD NEW [--format text|markdown]
 quietrun explain [RULE]
 quietrun serve --stdio
 quietrun --version | --help
@@ -64,6 +73,7 @@ export function readArguments(words: readonly string[]): ReadArguments {
     case 'check': return readCheck(rest);
     case 'format': return readFormat(rest);
     case 'spacing': return readSpacing(rest);
+    case 'compare': return readCompare(rest);
     case 'explain': return rest.length <= 1 ? { read: { command, rule: rest[0] ?? null } } : { refused: 'explain takes one rule' };
     case 'serve': return rest.length === 1 && rest[0] === '--stdio' ? { read: { command } } : { refused: 'serve takes --stdio' };
     case '--help': case '-h': case 'help': return { read: { command: 'help' } };
@@ -150,6 +160,14 @@ function readSpacing(words: readonly string[]): ReadArguments {
       placed: given.has('--placed'),
     },
   };
+}
+
+function readCompare(words: readonly string[]): ReadArguments {
+  const answer = readOptions('compare', words, new Map([['--format', ['text', 'markdown']]]));
+  if ('refused' in answer) return answer;
+  const { files, given } = answer;
+  if (files.length !== 2) return { refused: 'compare takes two files, the old one first' };
+  return { read: { command: 'compare', before: files[0], after: files[1], format: given.get('--format') === 'markdown' ? 'markdown' : 'text' } };
 }
 
 /** `0.15mm`, `6 mil`; between a micrometre and ten metres, as the language has it. */

@@ -6,6 +6,7 @@ import { baselineOf, comparedWith } from './baseline';
 import { loadBaseline, saveBaseline } from './baselineFile';
 import { checkedFiles, type CheckedFile } from './checkedFiles';
 import { checkReport } from './checkReport';
+import { compare } from './compare';
 import type { CheckReport, Summary } from './checkSchema';
 import { format } from './format';
 import { junitOutput } from './junitOutput';
@@ -41,6 +42,7 @@ export async function run(words: readonly string[], around: Surroundings): Promi
     case 'check': return check(command, around);
     case 'format': return status[await format(command, around)];
     case 'spacing': return spacing(command, around);
+    case 'compare': return compare(command, around);
     case 'explain': return explain(command.rule, around);
     case 'help': around.write(`${usage}\n`); return status.clean;
     case 'version': around.write(`${around.version}\n`); return status.clean;

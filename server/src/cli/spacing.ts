@@ -30,7 +30,7 @@ export async function spacing(command: SpacingCommand, around: Surroundings): Pr
   const options = optionsFor(command, file);
   const table = tableOf(await made(file, options, around), options, file);
   around.write({ text: spacingText, csv: spacingCsv, markdown: spacingMarkdown }[command.format](table));
-  if (file.analysis.findings.some(({ rule }) => rule === 'syntax' || rule === 'include')) around.complain(`quietrun: ${printableWord(command.file)} could not be read whole; quietrun check says where\n`);
+  if (!file.analysis.project.complete) around.complain(`quietrun: ${printableWord(command.file)} could not be read whole; quietrun check says where\n`);
   return 0 < table.rows.length ? status.clean : status.findings;
 }
 
