@@ -1,15 +1,18 @@
 /**
  * Everything that the editor says about a board, on one page beside this file, to be read in one sitting: findings with their
- * fixes, hints with what they say in full, and the hover of each thing that has one. `UPDATE=1` writes the page anew.
+ * fixes, hints with what they say in full, code lenses, who disturbs whom, and the hover of each thing that has one. `UPDATE=1` writes the page anew.
  */
 import assert from 'node:assert/strict';
 import { existsSync, readFileSync, writeFileSync } from 'node:fs';
 import path from 'node:path';
 import { describe, it } from 'node:test';
 import { starterBoard } from '../../client/src/starterBoard';
+import { disturbedBy, disturbs } from '../../server/src/service/disturbances';
+import { partiesAt } from '../../server/src/service/disturbances/partiesAt';
 import { fixesAt } from '../../server/src/service/fixesAt';
 import { hintsOf } from '../../server/src/service/hints';
 import { hover } from '../../server/src/service/hover';
+import { lenses } from '../../server/src/service/lenses';
 import { Session } from '../../server/src/service/session';
 
 const boards: Record<string, { readonly root: string; readonly texts: Record<string, string> }> = {
@@ -50,6 +53,8 @@ function pageOf(session: Session, root: string): string {
   for (const hint of [...hintsOf(session, root, { start: 0, end: text.length }, () => true)].filter((each) => each !== null).sort((a, b) => a.offset - b.offset)) {
     sections.push(`\`${lineAt(text, hint.offset)}\` shows \`${hint.parts.map((part) => part.text).join('')}\`\n\n${withoutPictures(hint.tooltip)}`);
   }
+  sections.push('## Code lenses', lenses(session, root, () => true).map(({ place, title }) => `- over \`${lineAt(text, place.span.start)}\`: ${title}`).join('\n'));
+  sections.push('## Who disturbs whom', disturbancesOf(session, root));
   sections.push('## Hovers');
   const said = new Set<string>();
   for (let offset = 0; offset < text.length; ) {
@@ -62,6 +67,16 @@ function pageOf(session: Session, root: string): string {
     offset = answer === null ? offset + 1 : Math.max(offset + 1, answer.span.end + 1);
   }
   return `${sections.join('\n\n')}\n`;
+}
+
+/** The call hierarchy, one level deep, of every net and pair of the file. */
+function disturbancesOf(session: Session, root: string): string {
+  const { nets, pairs } = session.project(root);
+  return [...nets.values(), ...pairs.values()].filter(({ place }) => place.path === root).flatMap(({ place }) => partiesAt(session, root, place.span.start)).map((party) => [
+    `- ${party.kind} ${party.name}: ${party.detail}`,
+    ...disturbedBy(session, party).map(({ party: { name }, detail }) => `  - disturbed by ${name}: ${detail}`),
+    ...disturbs(session, party).map(({ party: { name }, detail }) => `  - disturbs ${name}: ${detail}`),
+  ].join('\n')).filter((words, at, all) => all.indexOf(words) === at).join('\n');
 }
 
 const quoted = (text: string, { start, end }: { start: number; end: number }) => text.slice(start, end).replace(/\s+/g, ' ').slice(0, 60);
