@@ -20,7 +20,7 @@ export interface Host {
 }
 
 export async function startClient(context: vscode.ExtensionContext, host: Host): Promise<RunningClient> {
-  const clientOptions: ClientOptions = { readsFiles: true, rulePages: rulePagesScheme, showsStatus: true, showPlaces: showPlacesCommand };
+  const clientOptions: ClientOptions = { readsFiles: true, rulePages: rulePagesScheme, showsStatus: true, showsPictures: true, showPlaces: showPlacesCommand };
   const output = vscode.window.createOutputChannel('Quietrun', { log: true });
   const client = host.createClient({
     documentSelector: [{ language: 'quietrun' }],

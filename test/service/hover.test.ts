@@ -39,8 +39,8 @@ function check(title: string, [from, to]: readonly [string, string], named: stri
 
 describe('hover', () => {
   check('on a receiver: the number, its causes, the way out', ['net RX', 'net R<|>X'], 'RX',
-    '**RX**: a receiver, source 200 Ω, load 1.00 MΩ ‖ 8.00 pF', /\*\*\d+(\.\d+)? mV\*\*/, 'of 2.00 mV tolerated: over by', '| channel | from | where | value | share |',
-    '| VALVE | run past, switches with GATES |', '█', 'thermal', 'All peaks add.', /headroom\. Widen the gap/);
+    /\*\*RX\*\*: \*\*\d+(\.\d+)? mV\*\*/, 'of 2.00 mV tolerated: over by', /headroom\. Widen the gap/, '| channel | from | where | value | share |',
+    '| VALVE | run past, switches with GATES |', '█', 'thermal', 'All peaks add.', '**RX**: a receiver, source 200 Ω, load 1.00 MΩ ‖ 8.00 pF');
   check('on a source: what it does to others, its documentation first and as plain text', ['net VALVE', 'net VA<|>LVE'], 'VALVE',
     'Gate of the valve \\<b\\>bold\\</b\\>', '**VALVE**: a source, 24.0 V in 40.0 ns', /It puts \d+(\.\d+)? mV on RX \(\d+ % of what it tolerates\)/);
   check('on a trace: near, far, receiver and shares', ['trace RX    0.15', 'trace R<|>X    0.15'], 'RX',
@@ -125,9 +125,9 @@ link body { between A and V; capacitance 0.2 pF }
   checkWay('a shared return', ['return ground', 'return gro<|>und'], '**return ground**: 10.', 'mΩ at dc, ', 'nH', 'It carries A, and is what V measures against.', 'upper bound', 'A → V');
   checkWay('a link', ['link body', 'link bo<|>dy'], '**link body**: 200 fF between the load ends of A and V', 'A → V');
   checkWay('a name that a loop carries', ['carries A; rectangle', 'carries A<|>; rectangle'], '**A**: a source, 24.0 V in 40.0 ns', 'It puts ', ' V on V (');
-  checkWay('a name that a loop senses', ['senses V', 'senses V<|>'], '**V**: a receiver', '| loop | A | loop out |');
-  checkWay('a name that refers to a return', ['refers V', 'refers V<|>'], '**V**: a receiver', '| shared return | A | return ground |');
-  checkWay('a net: all of it, and where', ['net V', 'net V<|>'], '**V**: a receiver', '| loop | A | loop out |');
+  checkWay('a name that a loop senses', ['senses V', 'senses V<|>'], '| loop | A | loop out |', '**V**: a receiver');
+  checkWay('a name that refers to a return', ['refers V', 'refers V<|>'], '| shared return | A | return ground |', '**V**: a receiver');
+  checkWay('a net: all of it, and where', ['net V', 'net V<|>'], '| loop | A | loop out |', '**V**: a receiver');
 });
 
 describe('hover on pairs, sines and repeated edges', () => {
@@ -143,7 +143,7 @@ return ground { strip 30 mm by 1.5 mm on TOP; carries HEATER; refers P }
 link body { between MAINS and M; capacitance 20 pF }
 `;
   const checkSignal = inOrder(signals);
-  checkSignal('a pair: its difference by peak and rms, its mean, every way', ['pair AIN', 'pair AI<|>N'], '**AIN**: a receiver, plus P, minus M, 100 Ω ‖ 2.00 pF across', 'of 5.00 mV tolerated of the difference', '| shared return | HEATER | return ground |', '| loop | HEATER | loop out |', '| link | MAINS, sine | link body |', 'of 2.00 mV rms tolerated of the difference', '| shared return | HEATER, repeated edges |', 'of 500 mV tolerated of the mean');
+  checkSignal('a pair: its difference by peak and rms, its mean, every way', ['pair AIN', 'pair AI<|>N'], 'of 5.00 mV tolerated of the difference', '| shared return | HEATER | return ground |', '| loop | HEATER | loop out |', '| link | MAINS, sine | link body |', 'of 2.00 mV rms tolerated of the difference', '| shared return | HEATER, repeated edges |', 'of 500 mV tolerated of the mean', '**AIN**: a receiver, plus P, minus M, 100 Ω ‖ 2.00 pF across');
   checkSignal('a net of a pair', ['net P', 'net P<|>'], '**P**: a net of a pair, the plus of AIN, source 50.0 Ω');
   checkSignal('a sine', ['net MAINS', 'net MA<|>INS'], 'a source, a sine of 230 V rms at 50.0 Hz');
   checkSignal('an edge that repeats', ['net HEATER', 'net HEA<|>TER'], '24.0 V in 40.0 ns, falling in 60.0 ns, repeated at 20.0 kHz');

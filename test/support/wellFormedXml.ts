@@ -1,5 +1,5 @@
 /**
- * Reads XML strictly, as far as a report of tests uses it: one root, elements that close, attributes once each, only characters and
+ * Reads XML strictly, as far as a report of tests and a picture use it: one root, elements that close, attributes once each, only characters and
  * entities that XML 1.0 allows. Throws where a consumer's parser would.
  */
 export interface XmlElement {
@@ -22,7 +22,7 @@ export function readXml(xml: string): XmlElement {
       at = end;
       continue;
     }
-    const tag = /^<(?:\/([A-Za-z-]+)|([A-Za-z-]+)((?:\s+[A-Za-z-]+="[^"<]*")*)\s*(\/?))>/.exec(body.slice(at));
+    const tag = /^<(?:\/([A-Za-z][A-Za-z0-9-]*)|([A-Za-z][A-Za-z0-9-]*)((?:\s+[A-Za-z][A-Za-z0-9-]*="[^"<]*")*)\s*(\/?))>/.exec(body.slice(at));
     if (tag === null) throw new Error(`no tag at ${body.slice(at, at + 40)}`);
     const [whole, closed, opened, attributes, empty] = tag;
     at += whole.length;
@@ -33,7 +33,7 @@ export function readXml(xml: string): XmlElement {
       continue;
     }
     const given = new Map<string, string>();
-    for (const [, key, value] of attributes.matchAll(/([A-Za-z-]+)="([^"<]*)"/g)) {
+    for (const [, key, value] of attributes.matchAll(/([A-Za-z][A-Za-z0-9-]*)="([^"<]*)"/g)) {
       if (given.has(key)) throw new Error(`${key} stands twice`);
       given.set(key, unescaped(value));
     }

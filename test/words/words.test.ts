@@ -11,7 +11,7 @@ import { disturbedBy, disturbs } from '../../server/src/service/disturbances';
 import { partiesAt } from '../../server/src/service/disturbances/partiesAt';
 import { fixesAt } from '../../server/src/service/fixesAt';
 import { hintsOf } from '../../server/src/service/hints';
-import { hover } from '../../server/src/service/hover';
+import { hoverWithPictures } from '../../server/src/service/hover';
 import { lenses } from '../../server/src/service/lenses';
 import { Session } from '../../server/src/service/session';
 
@@ -58,7 +58,7 @@ function pageOf(session: Session, root: string): string {
   sections.push('## Hovers');
   const said = new Set<string>();
   for (let offset = 0; offset < text.length; ) {
-    const answer = hover(session, root, offset);
+    const answer = hoverWithPictures(session, root, { offset, pictures: { patience: Infinity } });
     const isNew = answer !== null && !said.has(answer.markdown);
     if (isNew) {
       said.add(answer.markdown);

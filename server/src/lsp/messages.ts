@@ -11,6 +11,8 @@ export interface ClientOptions {
   readonly rulePages?: string;
   /** It shows `status` notifications. */
   readonly showsStatus?: boolean;
+  /** It shows SVG images in the Markdown of a hover, from `data:` addresses. */
+  readonly showsPictures?: boolean;
   /** Its command that shows several places at once, called with `ShowPlacesArguments`: for code lenses. */
   readonly showPlaces?: string;
 }

@@ -86,7 +86,7 @@ export function startServer(connection: Connection, ownReader: FileReader): void
   });
 
   documents.listen(connection);
-  answerHover(server);
+  answerHover(server, () => clientOptions.showsPictures === true);
   answerInlayHints(server);
   answerCodeActions(server);
   answerCompletions(server);

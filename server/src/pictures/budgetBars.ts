@@ -25,8 +25,8 @@ export interface BudgetBars {
 }
 
 const rowHeight = 19;
-const left = 148;
-const right = 118;
+const left = 130;
+const right = 150;
 const barsShown = 8;
 
 export function budgetBars(budget: BudgetBars): Picture {
@@ -41,14 +41,14 @@ export function budgetBars(budget: BudgetBars): Picture {
   const axis = linearAxis({ from: 0, to: 1.02 * largest, pixels: [left, pictureWidth - right], dimension: 'voltage' }, 52);
   const marks = [
     ...limitMark(axis.at(tolerates), { top, foot }, `tolerated ${voltage(tolerates, budget)}`, '6 3'),
-    ...(wanted === null ? [] : [line([axis.at(wanted), top], [axis.at(wanted), foot], { stroke: ink.limit, 'stroke-dasharray': '1.5 3' })]),
+    ...(wanted === null ? [] : headroomMark(axis.at(wanted), { top, foot }, voltage(wanted, budget))),
   ];
   const ticks = axis.ticks.flatMap(({ value, label }) => [line([axis.at(value), foot], [axis.at(value), foot + 4]), words(label, { x: axis.at(value), y: foot + 15 }, { 'text-anchor': 'middle' })]);
   const parted = [
     ...bars.flatMap(({ name, value, note, bold }, row) => {
       // The sum stands under what it is the sum of, the rest that is not drawn included.
       const y = top + rowHeight * (bold && 0 < rest ? row + 1 : row);
-      return [...bar(axis, { value, tolerates, y, bold }), words(shortened(name, 22), { x: left - 7, y: y + 13 }, { 'text-anchor': 'end', ...(bold ? { 'font-weight': 'bold' } : {}) }), words(`${voltage(value, budget)} · ${note}`, { x: pictureWidth - right + 8, y: y + 13 }, bold ? { 'font-weight': 'bold' } : {})];
+      return [...bar(axis, { value, tolerates, y, bold }), words(shortened(name, 18), { x: left - 7, y: y + 13 }, { 'text-anchor': 'end', ...(bold ? { 'font-weight': 'bold' } : {}) }), words(`${voltage(value, budget)} · ${note}`, { x: pictureWidth - right + 8, y: y + 13 }, bold ? { 'font-weight': 'bold' } : {})];
     }),
     ...(rest === 0 ? [] : [words(`and ${rest} more`, { x: left - 7, y: top + rowHeight * shown.length + 13 }, { 'text-anchor': 'end', 'font-style': 'italic' })]),
     line([left, foot], [pictureWidth - right, foot]),
@@ -71,6 +71,13 @@ function limitMark(x: number, { top, foot }: { readonly top: number; readonly fo
   return [line([x, top - 4], [x, foot], { stroke: ink.limit, 'stroke-width': 1.75, 'stroke-dasharray': dashes }), words(label, { x: Math.max(90, Math.min(pictureWidth - 90, x)), y: top - 9 }, { 'text-anchor': 'middle', fill: ink.limit, 'font-weight': 'bold' })];
 }
 
+/** Told beside the axis: over the bars there is room for one word only. */
+function headroomMark(x: number, { top, foot }: { readonly top: number; readonly foot: number }, label: string): readonly string[] {
+  const stroke = { stroke: ink.limit, 'stroke-width': 1.5, 'stroke-dasharray': '1.5 3' };
+  const from = pictureWidth - right + 8;
+  return [line([x, top], [x, foot], stroke), line([from, foot + 11], [from + 16, foot + 11], stroke), words(`headroom: ${label}`, { x: from + 20, y: foot + 15 }, { fill: ink.limit })];
+}
+
 function budgetInWords(budget: BudgetBars, rest: number): string {
   const { receiver, total, tolerates, wanted, parts, sum } = budget;
   const whole = total === null ? `Noise on ${receiver}: no total` : `Noise on ${receiver}: ${voltage(total, budget)}, ${excess(total / tolerates)}`;
@@ -91,5 +98,5 @@ function percent(share: number): string {
 /** Of what is tolerated. */
 function excess(ratio: number): string {
   if (!(0 < ratio)) return 'none';
-  return `${ratio <= 1 ? '' : 'over by '}${inText(Math.abs(20 * Math.log10(ratio)), 'level')}${ratio <= 1 ? ' to spare' : ''}`;
+  return `${inText(Math.abs(20 * Math.log10(ratio)), 'level')} ${ratio <= 1 ? 'to spare' : 'over'}`;
 }

@@ -158,7 +158,8 @@ function filmShape({ film, conductors, layers }: CrossSection, { x, y, perMetre 
   const style = { fill: ink.second, 'fill-opacity': 0.3 };
   const flat = element('rect', { x: 0, width: pictureWidth, y: up ? y(surface) - thick : y(surface), height: thick, ...style });
   const over = conductors.filter((part) => Math.abs((up ? part.y : part.y + part.height) - surface) < 1e-9).map((part) => element('rect', { x: x(part.x) - thick, width: part.width * perMetre + 2 * thick, y: y(part.y + part.height) - (up ? thick : 0), height: part.height * perMetre + thick, ...style }));
-  return [flat, ...over];
+  const label = words(`mask ${inText(film.thickness, 'length')}`, { x: 5, y: up ? y(surface) - thick - 4 : y(surface) + thick + 12 });
+  return [flat, ...over, label];
 }
 
 /** Widths under the conductors, gaps between them; of rows above each other, each in turn. */
@@ -190,6 +191,6 @@ function sectionInWords({ name, conductors, layers, planeAbove, planeBelow, film
   const stack = [...layers].reverse().map(({ permittivity, thickness }) => (thickness === Infinity ? (permittivity === 1 ? 'air' : `εr ${inText(permittivity, 'number')} without end`) : `${inText(thickness, 'length')} of εr ${inText(permittivity, 'number')}`));
   const copper = [...new Set(conductors.map(({ height }) => inText(height, 'length')))].join(' and ');
   const all = [...(planeAbove === null ? [] : [`plane ${planeAbove}`]), ...stack, ...(planeBelow === null ? [] : [`plane ${planeBelow}`])];
-  const mask = film === null ? '' : ` A mask of ${inText(film.thickness, 'length')}, εr ${inText(film.permittivity, 'number')}, follows the copper.`;
+  const mask = film === null ? '' : ` A mask of ${inText(film.thickness, 'length')}, εr ${inText(film.permittivity, 'number')} follows the copper.`;
   return `Cross-section of run ${name}, left to right: ${told.join('; ')}${rest === 0 ? '' : `; and ${rest} more`}. Copper ${copper} high. From top to bottom: ${all.join(', ')}.${mask}`;
 }

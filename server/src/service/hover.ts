@@ -9,6 +9,8 @@ import type { Span, Statement } from '../syntax/tree';
 import type { HoverAnswer } from './answers';
 import { declarationHover } from './hover/declarationHover';
 import { escaped, escapedLines, paragraphs } from './hover/markdown';
+import { withinSize } from './hover/pictureInMarkdown';
+import { noPictures, type Pictures } from './hover/pictures';
 import { signalHover } from './hover/netHover';
 import { runHover, runPointHover } from './hover/runHover';
 import { runPointAt } from './hover/runPoint';
@@ -17,14 +19,31 @@ import { keywordDocumentation } from './keywordDocumentation';
 import { namesAt } from './namesAt';
 import type { Analysis, Session } from './session';
 
+/** In words alone. */
 export function hover(session: Session, path: string, offset: number): HoverAnswer | null {
+  return hoverAt(session, path, { offset, pictures: noPictures });
+}
+
+/** For those who show SVG images in Markdown. */
+export function hoverWithPictures(session: Session, path: string, at: PicturedPoint): HoverAnswer | null {
+  const answer = hoverAt(session, path, at);
+  return answer === null ? null : { ...answer, markdown: withinSize(answer.markdown) };
+}
+
+export interface PicturedPoint {
+  readonly offset: number;
+  readonly pictures: Pictures;
+}
+
+function hoverAt(session: Session, path: string, point: PicturedPoint): HoverAnswer | null {
+  const { offset } = point;
   const tree = session.tree(path);
   if (tree === undefined) return null;
   const word = keywordDocumentation(tree, offset);
   const rule = ruleAt(tree.statements, offset);
   if (rule !== null) return rule;
   const found = session.projectsOf(path).flatMap((root) => {
-    const answer = inProject(session, root, { path, offset });
+    const answer = inProject(session, root, { path, ...point });
     return answer === null ? [] : [{ root, ...answer }];
   });
   if (found.length === 0) return word === null ? null : { ...word, markdown: paragraphs(documentationAt(tree.statements, offset), word.markdown) };
@@ -48,28 +67,28 @@ function documentationAt(statements: readonly Statement[], offset: number): stri
 const projectsShown = 3;
 
 /** Null where no name, number of a run or length stands at the point. */
-function inProject(session: Session, root: string, { path, offset }: { path: string; offset: number }): { readonly span: Span; readonly markdown: string } | null {
+function inProject(session: Session, root: string, { path, offset, pictures }: PicturedPoint & { readonly path: string }): { readonly span: Span; readonly markdown: string } | null {
   const project = session.project(root);
   const named = namesAt(session, path, offset).find((names) => names.project === project);
   const point = runPointAt(project, path, offset);
   if (named === undefined && point === null) return null;
   const analysis = session.analyse(root);
   const result = point === null ? undefined : analysis.evaluation.runs.find(({ run }) => run === point.run);
-  const run = point === null || result === undefined ? null : { span: point.place.span, markdown: runPointHover(result, point, () => session.fixContext(root)) };
+  const run = point === null || result === undefined ? null : { span: point.place.span, markdown: runPointHover(result, point, { context: () => session.fixContext(root), pictures }) };
   if (named === undefined) return run;
-  const markdown = paragraphs(run?.markdown ?? null, ...named.records.slice(0, namesShown).map((record) => nameHover(analysis, record)), namesShown < named.records.length && `and ${named.records.length - namesShown} more`);
+  const markdown = paragraphs(run?.markdown ?? null, ...named.records.slice(0, namesShown).map((record) => nameHover(analysis, record, pictures)), namesShown < named.records.length && `and ${named.records.length - namesShown} more`);
   return markdown === '' ? null : { span: named.place.span, markdown };
 }
 
 /** `D[0..31]` is many names. */
 const namesShown = 4;
 
-function nameHover(analysis: Analysis, record: NameRecord): string | null {
+function nameHover(analysis: Analysis, record: NameRecord, pictures: Pictures): string | null {
   const signal = signalOf(analysis.project, record);
-  if (signal !== null) return signalHover(analysis, signal);
+  if (signal !== null) return signalHover(analysis, signal, pictures);
   if (record.kind !== 'run') return wayHover(analysis.evaluation, record) ?? declarationHover(analysis.project, record);
   const result = analysis.evaluation.runs.find(({ run }) => run.name === record.name);
-  return result === undefined ? null : runHover(result);
+  return result === undefined ? null : runHover(result, pictures);
 }
 
 function signalOf({ nets, pairs }: Project, { kind, name }: NameRecord): Net | Pair | null {

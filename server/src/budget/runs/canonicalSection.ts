@@ -8,10 +8,11 @@ import type { Section, SectionConductor } from '../../physics/section/section';
 import { metres } from '../../units/quantity';
 
 export function canonicalSection(section: Section): Section {
-  return onGrid(hangs(section) ? upsideDown(section) : section);
+  return onGrid(isTurnedOver(section) ? upsideDown(section) : section);
 }
 
-function hangs(section: Section): boolean {
+/** Whether its canonical form is upside down. */
+export function isTurnedOver(section: Section): boolean {
   if (section.planeAbove !== section.planeBelow) return section.planeAbove;
   if (section.planeAbove) return false;
   if (section.film !== null) return section.film.side === 'below';
@@ -20,7 +21,8 @@ function hangs(section: Section): boolean {
   return middle < (section.conductors.length * finiteHeight(section)) / 2;
 }
 
-function upsideDown(section: Section): Section {
+/** Twice is the section itself. */
+export function upsideDown(section: Section): Section {
   const height = finiteHeight(section);
   return {
     layers: [...section.layers].reverse(),

@@ -16,7 +16,7 @@
 import type { CopperRow, Run, RunConductor, RunRow, StackupRow } from '../../board/model';
 import type { Section, SectionConductor, SectionFilm, SectionLayer } from '../../physics/section/section';
 import { metres } from '../../units/quantity';
-import { canonicalSection } from './canonicalSection';
+import { canonicalSection, isTurnedOver } from './canonicalSection';
 
 /** A part of a run that no plane separates, as the solver sees it. */
 export interface RunSection {
@@ -25,6 +25,8 @@ export interface RunSection {
   readonly conductors: readonly RunConductor[];
   /** Mask follows the copper on both faces: that on the underside counts as planar, since a section has one film. */
   readonly undersidePlanar: boolean;
+  /** The section is upside down against the board. */
+  readonly turnedOver: boolean;
 }
 
 /** The sections of a run, uppermost first: one, unless a plane lies between its rows. */
@@ -91,7 +93,7 @@ function sectionOf(run: Run, board: Laminate, rows: readonly RunRow[]): RunSecti
   const surroundings = layersBetween(board, used, { ...between, ...faces });
   const conductors = rows.flatMap((row) => conductorsOf(row, rows[0], board, surroundings.zero));
   const section: Section = { layers: surroundings.layers, ...faces, conductors, film: surroundings.film };
-  return { section: canonicalSection(section), conductors: rows.flatMap((row) => row.conductors), undersidePlanar: surroundings.undersidePlanar };
+  return { section: canonicalSection(section), conductors: rows.flatMap((row) => row.conductors), undersidePlanar: surroundings.undersidePlanar, turnedOver: isTurnedOver(section) };
 }
 
 interface Surroundings {

@@ -4,15 +4,17 @@ import type { Budget, Contribution } from '../../budget/results';
 import { causeInText, budgetFault, excessInText, placeWords, receiverInText, remedyInText, shareOf, voltageInText } from '../../rules/budgetFault';
 import { errorInText, inText } from '../../units/inText';
 import type { Analysis } from '../session';
+import { budgetPicture } from '../pictures/budgetPicture';
+import { drawn, type Pictures } from './pictures';
 import { tolerancesInWords } from './tolerancesInWords';
 import { bar, escaped, escapedLines, paragraphs, percent, table } from './markdown';
 
-export function signalHover({ project, evaluation }: Analysis, signal: Net | Pair): string {
+export function signalHover({ project, evaluation }: Analysis, signal: Net | Pair, pictures: Pictures): string {
   const budgets = evaluation.budgets.filter(({ subject }) => subject === signal);
   return paragraphs(
     signal.documentation === null ? null : escapedLines(signal.documentation),
+    ...budgets.map((budget) => budgetInWords(project, budget, pictures)),
     `**${escaped(signal.name)}**: ${roleInWords(signal, project)}`,
-    ...budgets.map((budget) => budgetInWords(project, budget)),
     signal.kind === 'net' ? disturbedBy(evaluation.budgets, signal) : null,
   );
 }
@@ -65,21 +67,23 @@ export function endInText({ resistance, capacitance }: End): string {
   return [resistance === null ? null : inText(resistance.value, 'resistance'), capacitance === null ? null : inText(capacitance.value, 'capacitance')].filter((part) => part !== null).join(' ‖ ');
 }
 
-/** The number first, then what causes it, then the way out. */
-function budgetInWords(project: Project, budget: Budget): string {
+/** The number first, then what causes it and the way out; what can be read at leisure below. */
+function budgetInWords(project: Project, budget: Budget, pictures: Pictures): string {
   return paragraphs(
     totalInWords(project, budget),
-    tolerancesInWords(budget),
-    budget.contributions.length === 0 ? null : contributionsTable(budget),
-    budget.unaccounted.length === 0 ? null : `Not in it: ${budget.unaccounted.map(({ what }) => escaped(what)).join('; ')}`,
     wayOut(project, budget),
+    drawn(pictures, () => budgetPicture(project, budget)),
+    tolerancesInWords(budget),
+    budget.unaccounted.length === 0 ? null : `Not in it: ${budget.unaccounted.map(({ what }) => escaped(what)).join('; ')}`,
+    budget.contributions.length === 0 ? null : contributionsTable(budget),
   );
 }
 
 function totalInWords(project: Project, budget: Budget): string {
   const tolerated = `${voltageInText(budget.tolerates, budget)} tolerated${ofWhat[budget.kind]}`;
-  if (budget.total === null) return `No total of ${tolerated}`;
-  const amount = `**${voltageInText(budget.total, budget)}**${barInText(budget)} of ${tolerated}`;
+  const name = `**${escaped(budget.subject.name)}**`;
+  if (budget.total === null) return `${name}: no total of ${tolerated}`;
+  const amount = `${name}: **${voltageInText(budget.total, budget)}**${barInText(budget)} of ${tolerated}`;
   return `${amount}: ${verdictInWords(project, budget)}`;
 }
 

@@ -8,35 +8,50 @@ import { gapsBetween } from '../../rules/gapsBetween';
 import { errorInText, inText } from '../../units/inText';
 import { assumptionsOf, couplingTable } from './couplingTable';
 import { escaped, escapedLines, paragraphs, table } from './markdown';
+import { sectionPictures } from '../pictures/sectionPictures';
+import { drawn, type Pictures } from './pictures';
 import { sufficientInWords } from './sufficientInWords';
 import type { RunPoint } from './runPoint';
 
-/** `context` is asked for only where a search answers. */
-export function runHover(result: RunResult): string {
+export function runHover(result: RunResult, pictures: Pictures): string {
   const { run, couplings } = result;
   return paragraphs(
     run.documentation === null ? null : escapedLines(run.documentation),
     `**run ${escaped(run.name)}**: ${inText(run.length.value, 'length')}${delayInWords(result)}`,
+    ...sectionsOf(result, pictures, null),
     couplings.length === 0 ? nothingCouples(result) : couplingTable(couplings),
     result.matrices === null ? null : linesTable(result),
     assumptionsOf(couplings),
   );
 }
 
-export function runPointHover(result: RunResult, point: RunPoint, context: () => FixContext): string {
+export function runPointHover(result: RunResult, point: RunPoint, { context, pictures }: PointContext): string {
   switch (point.on) {
-    case 'length': return lengthHover(result, sufficientLength(context(), result.run));
+    case 'length': return lengthHover(result, sufficientLength(context(), result.run), pictures);
     case 'gap': return gapHover(result, point, context());
-    case 'conductor': return point.conductor.kind === 'trace' ? traceHover(result, point.conductor) : guardHover(result, point.conductor);
+    case 'conductor': return point.conductor.kind === 'trace' ? traceHover(result, point.conductor, pictures) : guardHover(result, point.conductor, pictures);
   }
 }
 
-function lengthHover(result: RunResult, sufficient: Sufficient | null): string {
-  return paragraphs(sufficient === null ? null : sufficientInWords('length', sufficient), runHover(result));
+export interface PointContext {
+  /** Asked for only where a search answers. */
+  readonly context: () => FixContext;
+  readonly pictures: Pictures;
+}
+
+function lengthHover(result: RunResult, sufficient: Sufficient | null, pictures: Pictures): string {
+  return paragraphs(sufficient === null ? null : sufficientInWords('length', sufficient), runHover(result, pictures));
+}
+
+/** A run between several planes has more; its first two say how it is meant. */
+const sectionsShown = 2;
+
+function sectionsOf({ run }: RunResult, pictures: Pictures, conductors: readonly RunConductor[] | null): readonly (string | null)[] {
+  return pictures.patience === null ? [] : sectionPictures(run, conductors).slice(0, sectionsShown).map((picture) => drawn(pictures, () => picture));
 }
 
 /** All traces of one row where it names a range. */
-function traceHover(result: RunResult, { place }: RunConductor & { readonly kind: 'trace' }): string {
+function traceHover(result: RunResult, { place }: RunConductor & { readonly kind: 'trace' }, pictures: Pictures): string {
   const traces = result.traces.filter((trace) => trace.place === place || (trace.place.path === place.path && trace.place.span.start === place.span.start));
   const nets = new Set(traces.map(({ net }) => net));
   const concerns = (signal: Net | Pair) => (signal.kind === 'net' ? nets.has(signal) : [signal.plus, signal.minus].some((net) => net !== null && nets.has(net)));
@@ -52,16 +67,18 @@ function traceHover(result: RunResult, { place }: RunConductor & { readonly kind
     onto.length === 0 ? null : `Put on it here:\n\n${couplingTable(onto)}`,
     from.length === 0 ? null : `Put by it here:\n\n${couplingTable(from)}`,
     onto.length + from.length === 0 ? nothingCouples(result) : null,
+    ...sectionsOf(result, pictures, traces),
     assumptionsOf([...onto, ...from]),
   );
 }
 
-function guardHover({ run, looseGuards }: RunResult, conductor: Exclude<RunConductor, { kind: 'trace' }>): string {
+function guardHover(result: RunResult, conductor: Exclude<RunConductor, { kind: 'trace' }>, pictures: Pictures): string {
+  const { run, looseGuards } = result;
   const head = `**${conductor.kind} ${escaped(conductor.name)}** in run ${escaped(run.name)}: ${inText(conductor.width.value, 'length')} wide`;
-  if (conductor.kind === 'return') return paragraphs(head, 'It carries the current back; several are joined at both ends of the run.');
+  if (conductor.kind === 'return') return paragraphs(head, 'It carries the current back; several are joined at both ends of the run.', ...sectionsOf(result, pictures, [conductor]));
   const loose = looseGuards.find(({ guard }) => guard === conductor);
   const tied = conductor.stitched === null ? `tied at its two ends, ${inText(run.length.value, 'length')} apart` : `tied every ${inText(conductor.stitched.value, 'length')}`;
-  return paragraphs(head, loose === undefined ? `It is ${tied}, and counts as tied everywhere.` : `It is ${tied}; at most ${inText(loose.largest, 'length')} hold at the fastest edge here. ${loose.past === null ? 'Its noise is computed as if they held, and is not to be trusted until they do.' : `It is computed as one more line, shorted through its vias at each tie: ${inText(loose.past.asTied, 'voltage')} on ${escaped(loose.past.receiver)}, and ${inText(loose.past.stitched, 'voltage')} with ties that hold.`}`);
+  return paragraphs(head, loose === undefined ? `It is ${tied}, and counts as tied everywhere.` : `It is ${tied}; at most ${inText(loose.largest, 'length')} hold at the fastest edge here. ${loose.past === null ? 'Its noise is computed as if they held, and is not to be trusted until they do.' : `It is computed as one more line, shorted through its vias at each tie: ${inText(loose.past.asTied, 'voltage')} on ${escaped(loose.past.receiver)}, and ${inText(loose.past.stitched, 'voltage')} with ties that hold.`}`, ...sectionsOf(result, pictures, [conductor]));
 }
 
 function gapHover(result: RunResult, { gap, index }: RunPoint & { readonly on: 'gap' }, context: FixContext): string {
