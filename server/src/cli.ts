@@ -24,6 +24,10 @@ async function readStandardInput(): Promise<Uint8Array> {
   return Buffer.concat(chunks);
 }
 
+const interrupted = new AbortController();
+// Only what goes on until it is told to stop is told; anything else ends at once, as it does without us.
+if (process.argv.includes('--watch')) process.once('SIGINT', () => interrupted.abort());
+
 void run(process.argv.slice(2), {
   workingDirectory: process.cwd(),
   version,
@@ -32,6 +36,7 @@ void run(process.argv.slice(2), {
   complain: (text) => process.stderr.write(text),
   ...(process.stderr.isTTY === true ? { progress: (words: string | null) => process.stderr.write(`\r\u001b[K${words ?? ''}`) } : {}),
   readStandardInput,
+  stop: interrupted.signal,
   serve: async () => {
     startServer(createConnection(new StreamMessageReader(process.stdin), new StreamMessageWriter(process.stdout)), diskReader);
     await new Promise((resolve) => process.stdin.once('close', resolve));

@@ -11,6 +11,12 @@ export interface Ran {
   readonly complaints: string;
 }
 
+/** For what goes on until it is told to stop. */
+export interface Watching {
+  readonly stop?: AbortSignal;
+  readonly heard?: (complaint: string) => void;
+}
+
 export function commandLine() {
   const folder = mkdtempSync(path.join(tmpdir(), 'quietrun-cli-'));
   after(() => rmSync(folder, { recursive: true, force: true }));
@@ -21,15 +27,19 @@ export function commandLine() {
       writeFileSync(path.join(folder, name), text);
     },
     textOf: (name: string): string => readFileSync(path.join(folder, name), 'utf8'),
-    async quietrun(words: readonly string[], input: string | Uint8Array = ''): Promise<Ran> {
+    async quietrun(words: readonly string[], input: string | Uint8Array = '', { stop, heard }: Watching = {}): Promise<Ran> {
       let out = '';
       let complaints = '';
       const code = await run(words, {
         workingDirectory: folder,
         version: '0.0.0',
         coloured: false,
+        ...(stop === undefined ? {} : { stop }),
         write: (text) => { out += text; },
-        complain: (text) => { complaints += text; },
+        complain: (text) => {
+          complaints += text;
+          heard?.(text);
+        },
         readStandardInput: async () => (typeof input === 'string' ? new TextEncoder().encode(input) : input),
         serve: async () => { out += 'served'; },
       });

@@ -23,6 +23,7 @@ export interface CheckCommand {
   readonly baseline: string | null;
   readonly updateBaseline: string | null;
   readonly stdinFilename: string | null;
+  readonly watch: boolean;
 }
 
 export interface FormatCommand {
@@ -54,7 +55,7 @@ export interface CompareCommand {
 export type ReadArguments = { readonly read: Command } | { readonly refused: string };
 
 export const usage = `quietrun check FILE... [--format text|json|sarif|junit] [--fail-on error|warning] [--max-warnings N]
-                       [--baseline FILE] [--update-baseline FILE] [--stdin-filename NAME]
+                       [--baseline FILE] [--update-baseline FILE] [--stdin-filename NAME] [--watch]
 quietrun format FILE... [--check]
 quietrun spacing FILE [--format text|csv|markdown] [--gaps LENGTH,...] [--lengths LENGTH,...]
                       [--width LENGTH] [--layer NAME] [--from NET] [--to NET] [--placed]
@@ -100,6 +101,7 @@ const checkOptions: Options = new Map<string, string | readonly string[]>([
   ['--baseline', 'a file'],
   ['--update-baseline', 'a file'],
   ['--stdin-filename', 'a name'],
+  ['--watch', 'flag'],
 ]);
 
 function readCheck(words: readonly string[]): ReadArguments {
@@ -110,6 +112,8 @@ function readCheck(words: readonly string[]): ReadArguments {
   if (maxWarnings !== null && !/^\d{1,9}$/.test(maxWarnings)) return { refused: `--max-warnings takes a count, not ${maxWarnings}` };
   if (files.length === 0) return { refused: 'check which file?' };
   if (1 < files.filter((file) => file === '-').length) return { refused: '- stands twice' };
+  const unwatchable = given.has('--watch') ? (files.includes('-') ? 'standard input' : given.has('--update-baseline') ? 'a baseline that is being written' : null) : null;
+  if (unwatchable !== null) return { refused: `--watch cannot watch ${unwatchable}` };
   return {
     read: {
       command: 'check',
@@ -120,6 +124,7 @@ function readCheck(words: readonly string[]): ReadArguments {
       baseline: given.get('--baseline') ?? null,
       updateBaseline: given.get('--update-baseline') ?? null,
       stdinFilename: given.get('--stdin-filename') ?? null,
+      watch: given.has('--watch'),
     },
   };
 }

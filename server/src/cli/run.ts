@@ -15,6 +15,7 @@ import { printableWord } from './printable';
 import { spacing } from './spacing';
 import { sarifOutput } from './sarifOutput';
 import { textOutput } from './textOutput';
+import { watch, type Watched } from './watch';
 
 export interface Surroundings {
   readonly workingDirectory: string;
@@ -25,6 +26,8 @@ export interface Surroundings {
   /** What is being worked on, on one line that the next takes the place of; null clears it. Absent where nobody watches. */
   readonly progress?: (words: string | null) => void;
   readonly readStandardInput: () => Promise<Uint8Array>;
+  /** Ends what would go on: a person has had enough. */
+  readonly stop?: AbortSignal;
   /** Serves until the client ends it. */
   readonly serve: () => Promise<void>;
 }
@@ -39,7 +42,7 @@ export async function run(words: readonly string[], around: Surroundings): Promi
   }
   const command = answer.read;
   switch (command.command) {
-    case 'check': return check(command, around);
+    case 'check': return command.watch ? watched(command, around) : (await check(command, around)).status;
     case 'format': return status[await format(command, around)];
     case 'spacing': return spacing(command, around);
     case 'compare': return compare(command, around);
@@ -50,20 +53,23 @@ export async function run(words: readonly string[], around: Surroundings): Promi
   }
 }
 
-async function check(command: CheckCommand, around: Surroundings): Promise<number> {
+function watched(command: CheckCommand, around: Surroundings): Promise<number> {
+  const tell = (words: string) => around.complain(`quietrun: ${words}\n`);
+  return watch({ workingDirectory: around.workingDirectory, check: () => check(command, around), stop: around.stop ?? new AbortController().signal, tell });
+}
+
+async function check(command: CheckCommand, around: Surroundings): Promise<Watched> {
   const answer = await checkedFiles({ ...command, ...around, log: (rule, error) => around.complain(`quietrun: ${rule} failed: ${error instanceof Error ? (error.stack ?? error.message) : String(error)}\n`) });
-  if ('refused' in answer) {
-    around.complain(`quietrun: ${printableWord(answer.refused)}\n`);
-    return status.notRun;
-  }
-  const compared = await withBaseline(answer.checked, command, around);
+  const named = [...command.files, ...(command.baseline === null ? [] : [command.baseline])];
+  const compared = 'refused' in answer ? answer : await withBaseline(answer.checked, command, around);
   if ('refused' in compared) {
     around.complain(`quietrun: ${printableWord(compared.refused)}\n`);
-    return status.notRun;
+    return { status: status.notRun, files: named };
   }
   const report = checkReport(compared.checked, around.version);
   around.write(outputOf(compared.checked, report, { format: command.format, failOn: command.failOn, around }));
-  return fails(report.summary, command) ? status.findings : status.clean;
+  const used = compared.checked.flatMap(({ analysis: { project } }) => [...project.files, ...project.includes.flatMap((include) => include.path ?? [])]);
+  return { status: fails(report.summary, command) ? status.findings : status.clean, files: [...new Set([...named, ...used])] };
 }
 
 function outputOf(checked: readonly CheckedFile[], report: CheckReport, { format, failOn, around }: Pick<CheckCommand, 'format' | 'failOn'> & { readonly around: Surroundings }): string {
