@@ -1,9 +1,9 @@
 #!/usr/bin/env node
 /** The command `quietrun`. */
-import { fstatSync } from 'node:fs';
 import { createConnection, StreamMessageReader, StreamMessageWriter } from 'vscode-languageserver/node';
 import { version } from '../../package.json';
 import { run, status } from './cli/run';
+import { readStandardInput } from './cli/standardInput';
 import { diskReader } from './lsp/diskReader';
 import { startServer } from './lsp/startServer';
 
@@ -14,14 +14,6 @@ for (const stream of [process.stdout, process.stderr]) {
     if (stream === process.stdout) process.stderr.write(`quietrun: the output cannot be written (${error.code ?? error.message})\n`);
     process.exit(status.notRun);
   });
-}
-
-async function readStandardInput(): Promise<Uint8Array> {
-  // Node takes a folder there for nothing at all, and nothing has no findings.
-  if (process.platform !== 'win32' && fstatSync(0).isDirectory()) throw new Error('it is a folder');
-  const chunks: Buffer[] = [];
-  for await (const chunk of process.stdin) chunks.push(chunk as Buffer);
-  return Buffer.concat(chunks);
 }
 
 const interrupted = new AbortController();
