@@ -20,6 +20,8 @@ export interface ChargedConductor {
   readonly foot: number;
   /** How far off another's field still looks like a free line charge's: from there on the planes shape it. */
   readonly reach: number;
+  /** -1 where the nearest plane is below it, 1 where above, 0 where neither is nearer: what is down in one board is up in its mirror. */
+  readonly lean: -1 | 0 | 1;
   /** The same sides with the left end of its foot at 0. */
   readonly atOrigin: () => readonly Side[];
 }
@@ -50,6 +52,7 @@ function charged({ conductor, index, stack, effort, orders }: Charging): Charged
     right: x + width - Math.min(0, undercut),
     foot: x,
     reach: reachOf(conductor, stack),
+    lean: leanOf(conductor, stack),
     atOrigin: () => conductorSides({ ...conductor, x: 0 }, index, stack, orders),
   };
 }
@@ -74,6 +77,14 @@ function surroundingsOf(own: Trapezoid, all: readonly Trapezoid[], { layers, pla
   const above = planeAbove ? layers[layers.length - 1].top - own.top : Infinity;
   const depth = Math.min(below, above, facing);
   return { width: own.width, height: own.top - own.bottom, gap, depth, facesConductor: facing < Infinity };
+}
+
+function leanOf({ bottom, top }: Trapezoid, { layers, planeBelow, planeAbove }: Stack): -1 | 0 | 1 {
+  const below = planeBelow ? bottom - layers[0].bottom : Infinity;
+  const above = planeAbove ? layers[layers.length - 1].top - top : Infinity;
+  // Sums of thicknesses round.
+  if (Math.abs(below - above) < 1e-9 * (below + above)) return 0;
+  return below < above ? -1 : above < below ? 1 : 0;
 }
 
 function reachOf({ width, bottom, top }: Trapezoid, { layers, planeBelow, planeAbove }: Stack): number {

@@ -20,7 +20,7 @@ import { layOut } from './layout';
 import { extentOf, mirrorPairs, nodesWithin } from './momentNodes';
 import { ownBlock } from './ownBlock';
 import { pivotedBasis } from './pivotedBasis';
-import { skeletonOf, type Skeleton } from './skeleton';
+import { preferenceOf, skeletonOf, type Skeleton } from './skeleton';
 import { trainingFields, type TrainingFields } from './trainingFields';
 
 export interface OutsideView {
@@ -71,15 +71,17 @@ export function outsideView(conductor: ChargedConductor, { kernel, distance, far
     const nodes = nodesWithin(sides, { left: left - least, right: right + least });
     const pairs = mirrorPairs(nodes);
     const fields = trainingFields(nodes, pairs, least, conductor.effort);
-    const skeleton = skeletonOf(nodes, pairs, fields, rows, conductor.effort);
+    const skeleton = skeletonOf(nodes, pairs, fields, { rows, effort: conductor.effort, lean: conductor.lean });
     forwardSubstitute(lower, unknowns, skeleton.moments, skeleton.points);
     return { fields, skeleton };
   };
   const near = seenFrom(distance);
   const answers = answersOf(near.skeleton, near.fields, unknowns);
   const least = leastAnswer / 3 ** conductor.effort;
-  const fine = chargesOf({ answers, net, least }, unknowns, null);
-  const coarseCharges = chargesOf({ answers, net, least }, coarse, fine.count);
+  const { heights } = near.fields;
+  const preference = preferenceOf(2 * heights.length, (f) => heights[f % heights.length], conductor.lean);
+  const fine = chargesOf({ answers, net, least, preference }, unknowns, null);
+  const coarseCharges = chargesOf({ answers, net, least, preference }, coarse, fine.count);
   const sight = ({ points, x, y, moments }: Skeleton): Sight => ({ points, x, y, worth: worthOf(fine, coarseCharges, moments, points, unknowns) });
   const nearSight = sight(near.skeleton);
   let farSight = distance < farDistance ? null : nearSight;
@@ -129,6 +131,7 @@ interface Answers {
   readonly net: Float64Array;
   /** Smaller ones are left out. */
   readonly least: number;
+  readonly preference: Float64Array;
 }
 
 interface Charges {
@@ -140,7 +143,7 @@ interface Charges {
 }
 
 /** With the first `length` unknowns only; as many charges as are wanted, or as are needed. */
-function chargesOf({ answers, net, least }: Answers, length: number, wanted: number | null): Charges {
+function chargesOf({ answers, net, least, preference }: Answers, length: number, wanted: number | null): Charges {
   const unknowns = net.length;
   const count = answers.length / unknowns;
   const square = product(net, 0, net, 0, length);
@@ -150,7 +153,7 @@ function chargesOf({ answers, net, least }: Answers, length: number, wanted: num
     const part = product(answers, f * unknowns, net, 0, length) / square;
     for (let m = 0; m < length; m += 1) vectors[f * length + m] = answers[f * unknowns + m] - part * net[m];
   }
-  const { pivots } = pivotedBasis([{ vectors, count, length }], least, (wanted ?? length) - 1);
+  const { pivots } = pivotedBasis([{ vectors, count, length, preference }], least, (wanted ?? length) - 1);
   // Where the shorter series has fewer that are independent, the others are nothing.
   const taken = new Float64Array((wanted ?? pivots.length + 1) * length);
   for (let m = 0; m < length; m += 1) taken[m] = net[m] / own;

@@ -11,6 +11,8 @@ export interface VectorSet {
   readonly length: number;
   /** Only so many of the first may be taken; all where it is not said. */
   readonly eligible?: number;
+  /** Times the square of each, where it is compared with the others: who is to be taken of two that are equal but for rounding. */
+  readonly preference?: Float64Array;
 }
 
 export interface PivotedBasis {
@@ -31,10 +33,10 @@ export function pivotedBasis(sets: readonly VectorSet[], tolerance: number, most
   const parts = sets.map(() => new Float64Array(pivots.length * count));
   const squares = sets.map(({ vectors, length }) => Float64Array.from({ length: count }, (_, v) => product(vectors, v, v, length)));
   const taken = new Uint8Array(count);
-  const eligible = sets[0].eligible ?? count;
+  const { eligible = count, preference = null } = sets[0];
   let found = 0;
   while (found < pivots.length) {
-    const best = largest(squares, taken, eligible);
+    const best = largest(squares, taken, eligible, preference);
     if (best < 0 || !isLonger(squares, best, tolerance)) break;
     // Subtraction may have left more than is there.
     for (let s = 0; s < sets.length; s += 1) squares[s][best] = product(sets[s].vectors, best, best, sets[s].length);
@@ -52,13 +54,14 @@ function isLonger(squares: readonly Float64Array[], v: number, tolerance: number
   return false;
 }
 
-function largest(squares: readonly Float64Array[], taken: Uint8Array, eligible: number): number {
+function largest(squares: readonly Float64Array[], taken: Uint8Array, eligible: number, preference: Float64Array | null): number {
   let best = -1;
   let size = 0;
   for (let v = 0; v < eligible; v += 1) {
     if (taken[v] === 1) continue;
     let sum = 0;
     for (let s = 0; s < squares.length; s += 1) sum += squares[s][v];
+    if (preference !== null) sum *= preference[v];
     if (size < sum) {
       best = v;
       size = sum;

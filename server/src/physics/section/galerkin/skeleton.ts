@@ -22,15 +22,27 @@ export interface Skeleton {
   readonly moments: Float64Array;
 }
 
+export interface SkeletonSetting {
+  /** Of every polynomial, side after side, the unknown. */
+  readonly rows: Int32Array;
+  readonly effort: number;
+  readonly lean: -1 | 0 | 1;
+}
+
+/** For what is higher, or lower: a board and its mirror that lies flat are to choose alike. */
+export function preferenceOf(count: number, height: (v: number) => number, lean: -1 | 0 | 1): Float64Array {
+  return Float64Array.from({ length: count }, (_, v) => 1 + 1e-3 * lean * Math.max(-100, Math.min(100, height(v))));
+}
+
 /** Of a field that changes by 1. */
 const tolerance = 5e-7;
 
-/** `rows`: of every polynomial, side after side, the unknown. */
-export function skeletonOf(nodes: Moments, { own, mirrored }: MirrorPairs, { even, odd }: TrainingFields, rows: Int32Array, effort: number): Skeleton {
-  const { x, y, left, right } = nodes;
+export function skeletonOf(nodes: Moments, { own, mirrored }: MirrorPairs, { even, odd }: TrainingFields, { rows, effort, lean }: SkeletonSetting): Skeleton {
+  const { x, y, left, right, bottom, top } = nodes;
   const unknowns = rows.length;
   const count = own.length;
-  const sets = [even, odd].map(({ values, count: length }) => ({ vectors: Float64Array.from(values), count, length }));
+  const preference = preferenceOf(count, (v) => (y[own[v]] - (bottom + top) / 2) / (top - bottom + right - left), lean);
+  const sets = [even, odd].map(({ values, count: length }) => ({ vectors: Float64Array.from(values), count, length, preference }));
   const basis = pivotedBasis(sets, tolerance / 6 ** effort, count);
   const half = basis.count;
   const gathered = new Float64Array(2 * half * unknowns);

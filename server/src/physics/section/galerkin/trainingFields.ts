@@ -8,6 +8,8 @@
 import type { MirrorPairs, Moments } from './momentNodes';
 
 export interface TrainingFields {
+  /** Of the charges, above the conductor's middle and over its size. */
+  readonly heights: Float64Array;
   readonly even: FieldValues;
   readonly odd: FieldValues;
 }
@@ -37,7 +39,7 @@ export function trainingFields({ x, y, left, right, bottom, top }: Moments, { ow
   }
   // Whatever else is there, a constant has to be exact.
   for (let v = 0; v < nodes; v += 1) even[v * (count + 1) + count] = constantWeight;
-  return { even: { count: count + 1, values: even }, odd: { count, values: odd } };
+  return { heights: Float64Array.from(heights, (height) => (height - centre) / (top - bottom + right - left)), even: { count: count + 1, values: even }, odd: { count, values: odd } };
 }
 
 const constantWeight = 30;
