@@ -22,7 +22,7 @@ describe('cross-section', () => {
 
   it('names and measures each part in the drawing', () => {
     const texts = textsOf(crossSection(section));
-    for (const text of ['VALVE', 'AGND (guard)', 'RX', 'plane GND', 'εr 4.2 · 0.2 mm', 'mask 20 µm', 'air', '0.15 mm', '↔ 0.3 mm']) assert.ok(texts.includes(text), `${text} is not among ${texts.join(', ')}`);
+    for (const text of ['VALVE', 'AGND (guard)', 'RX', 'plane GND', 'εr 4.2 · 0.2 mm', 'mask 20 µm · ↔ gaps · to scale', 'air', '0.15 mm', '↔ 0.3 mm']) assert.ok(texts.includes(text), `${text} is not among ${texts.join(', ')}`);
   });
 
   it('has one scale across and up', () => {

@@ -61,6 +61,53 @@ describe('pictures in hovers', () => {
     }
   });
 
+  it('draw of a trace the noise over time, with the peaks of the evaluation', () => {
+    const session = sessionOf(board);
+    const coupling = session.analyse('b.quiet').evaluation.runs[0]!.couplings[0]!;
+    const drawing = picturesIn(pictured(session, 'trace RX')).find(({ words }) => words.startsWith('What CLK puts on RX over time'));
+    assert.ok(drawing);
+    for (const [where, value] of [['receiver', coupling.atReceiver], ['near end', coupling.nearEnd], ['far end', coupling.farEnd]] as const) {
+      assert.ok(drawing.words.includes(`peak of ${inText(value, 'voltage')} at the ${where}`), `${where} ${value}: ${drawing.words}`);
+      assert.ok(drawing.texts.includes(`${where} ${inText(value, 'voltage')}`), drawing.texts.join(', '));
+    }
+  });
+
+  it('draw of a gap the noise at others as the board with those has it', () => {
+    const session = sessionOf(board);
+    const drawing = picturesIn(pictured(session, 'gap 0.3'))[0];
+    assert.ok(drawing?.words.startsWith('Noise on RX against this gap'), drawing?.words);
+    const said = [...drawing.words.matchAll(/([\d.]+ [mµ]?V) at ([\d.]+) (µm|mm)(?! now)/g)].map(([, noise, gap, unit]) => ({ noise, gap: unit === 'mm' ? Number(gap) : Number(gap) / 1000 }));
+    assert.ok(4 < said.length, drawing.words);
+    for (const { noise, gap } of said.slice(-2)) {
+      const total = sessionOf(board.replace('gap 0.3 mm', `gap ${gap} mm`)).analyse('b.quiet').evaluation.budgets[0]!.total!;
+      const [number, prefix] = noise!.split(' ');
+      // The gap is read from three figures.
+      assert.ok(Math.abs(Number(number) * (prefix === 'mV' ? 1e-3 : prefix === 'µV' ? 1e-6 : 1) / total - 1) < 0.01, `${noise} at ${gap} mm, ${total}`);
+    }
+  });
+
+  it('leave the noise against the gap for later where it takes too long, and have it then', () => {
+    const session = sessionOf(board);
+    session.analyse('b.quiet');
+    const steps: (() => boolean)[] = [];
+    const offset = board.indexOf('gap 0.3') + 6;
+    const pictures = { patience: 0, later: (step: () => boolean) => steps.push(step) };
+    assert.ok(!hoverWithPictures(session, 'b.quiet', { offset, pictures })!.markdown.includes('data:'));
+    assert.equal(steps.length, 1);
+    let count = 1;
+    while (steps[0]!()) count += 1;
+    assert.ok(8 < count && count < 20, String(count));
+    assert.ok(hoverWithPictures(session, 'b.quiet', { offset, pictures })!.markdown.includes('data:'));
+  });
+
+  it('draw of a loop its outline', () => {
+    const session = sessionOf(`${stack}loop out on TOP { rectangle 22 mm by 9 mm; strip 1 mm; area at most 120 mm2; over GND }\nloop ring on TOP { circle 10 mm; wire 0.3 mm }\n`);
+    const [drawing] = picturesIn(pictured(session, 'loop out'));
+    const result = session.analyse('b.quiet').evaluation.loops[0]!;
+    for (const said of ['22 mm by 9 mm', `${inText(result.area!, 'area')} of 120 mm² at most`, inText(result.inductance!, 'inductance'), 'over plane GND']) assert.ok(drawing!.words.includes(said), `${said}: ${drawing!.words}`);
+    assert.match(picturesIn(pictured(session, 'loop ring'))[0]!.words, /10 mm by 10 mm; 78\.5 mm²/);
+  });
+
   it('draw what lies on the underside of a board the right way up', () => {
     const below = 'stackup two { plane GND 18 um; core 0.4 mm er 4.2; copper BOTTOM 35 um }\n';
     const session = sessionOf(`${below}net A { ${ends} }\nrun r on BOTTOM for 9 mm { trace A 0.2 mm }\n`);

@@ -141,6 +141,8 @@ export interface Coupling {
   readonly bounds: readonly [Voltage, Voltage] | null;
   /** At the victim's receiver, for pictures; null of a sine. */
   readonly waveform: Waveform | null;
+  /** At the victim's ends of the run, and up to when they and that at the receiver were computed. */
+  readonly endWaveforms: { readonly near: Waveform; readonly far: Waveform; readonly until: Time } | null;
   readonly assumptions: readonly string[];
 }
 

@@ -82,7 +82,7 @@ function solved(context: FixContext, adjustable: Adjustable, budgets: readonly B
 }
 
 /** Complete budgets to which something couples across this gap, or anywhere in the run. */
-function receiversAcross({ budgets }: Evaluation, run: Run, place: GapPlace | null): readonly Budget[] {
+export function receiversAcross({ budgets }: Evaluation, run: Run, place: GapPlace | null): readonly Budget[] {
   return budgets.filter(({ complete, contributions }) => complete && contributions.some(({ coupling }) => {
     if (coupling === null || coupling.run !== run) return false;
     const between = place === null ? null : gapsBetween(run, coupling.aggressor, coupling.victim);
@@ -90,7 +90,8 @@ function receiversAcross({ budgets }: Evaluation, run: Run, place: GapPlace | nu
   }));
 }
 
-function placeOf({ rows }: Run, gapIndex: number): GapPlace | null {
+/** Null where the run has no such gap. */
+export function placeOf({ rows }: Run, gapIndex: number): GapPlace | null {
   let first = 0;
   for (const [row, { gaps }] of rows.entries()) {
     if (gapIndex < first + gaps.length) return { row, gap: gapIndex - first };

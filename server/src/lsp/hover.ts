@@ -4,11 +4,14 @@ import { rangeOf } from './positions';
 import type { Server } from './server';
 
 export function answerHover({ connection, guard, documents }: Server, showsPictures: () => boolean): void {
+  const rest = inTheBackground((error) => connection.console.error(`a picture for a hover: ${String(error)}`));
+  documents.onEdit(() => rest.drop());
   connection.onHover(guard('hover', null, async ({ textDocument, position }): Promise<Hover | null> => {
     const file = await documents.at(textDocument.uri);
     if (file === null) return null;
     const offset = file.document.offsetAt(position);
-    const answer = showsPictures() ? hoverWithPictures(documents.session, file.path, { offset, pictures: { patience } }) : hover(documents.session, file.path, offset);
+    rest.drop();
+    const answer = showsPictures() ? hoverWithPictures(documents.session, file.path, { offset, pictures: { patience, later: rest.add } }) : hover(documents.session, file.path, offset);
     if (answer === null) return null;
     return { contents: { kind: MarkupKind.Markdown, value: answer.markdown }, range: rangeOf(file.document, answer.span) };
   }));
@@ -16,3 +19,39 @@ export function answerHover({ connection, guard, documents }: Server, showsPictu
 
 /** Milliseconds that a hover may work for a picture: with the rest of it, less than anybody waits for. */
 const patience = 40;
+
+interface Background {
+  readonly add: (step: () => boolean) => void;
+  /** For a text that has changed, or a hover that nobody looks at any more. */
+  readonly drop: () => void;
+}
+
+/** A picture that a hover did not wait for is finished after it, for the next one, between the requests that come meanwhile. */
+function inTheBackground(log: (error: unknown) => void): Background {
+  let steps: (() => boolean)[] = [];
+  let due: ReturnType<typeof setTimeout> | null = null;
+  const next = () => {
+    due = null;
+    try {
+      while (0 < steps.length && !steps[0]()) steps.shift();
+    } catch (error) {
+      steps = [];
+      log(error);
+    }
+    if (0 < steps.length) due ??= setTimeout(next, pause);
+  };
+  return {
+    add: (step) => {
+      steps.push(step);
+      due ??= setTimeout(next, pause);
+    },
+    drop: () => {
+      steps = [];
+      if (due !== null) clearTimeout(due);
+      due = null;
+    },
+  };
+}
+
+/** Milliseconds, in which requests are answered. */
+const pause = 5;

@@ -25,8 +25,8 @@ export interface BudgetBars {
 }
 
 const rowHeight = 19;
-const left = 130;
-const right = 150;
+const left = 124;
+const right = 170;
 const barsShown = 8;
 
 export function budgetBars(budget: BudgetBars): Picture {
@@ -48,7 +48,7 @@ export function budgetBars(budget: BudgetBars): Picture {
     ...bars.flatMap(({ name, value, note, bold }, row) => {
       // The sum stands under what it is the sum of, the rest that is not drawn included.
       const y = top + rowHeight * (bold && 0 < rest ? row + 1 : row);
-      return [...bar(axis, { value, tolerates, y, bold }), words(shortened(name, 18), { x: left - 7, y: y + 13 }, { 'text-anchor': 'end', ...(bold ? { 'font-weight': 'bold' } : {}) }), words(`${voltage(value, budget)} · ${note}`, { x: pictureWidth - right + 8, y: y + 13 }, bold ? { 'font-weight': 'bold' } : {})];
+      return [...bar(axis, { value, tolerates, y, bold }), words(shortened(name, 18), { x: left - 7, y: y + 13 }, { 'text-anchor': 'end', ...(bold ? { 'font-weight': 'bold' } : {}) }), words(`${voltage(value, budget)} · ${note}`, { x: pictureWidth - right + 8, y: y + 13 })];
     }),
     ...(rest === 0 ? [] : [words(`and ${rest} more`, { x: left - 7, y: top + rowHeight * shown.length + 13 }, { 'text-anchor': 'end', 'font-style': 'italic' })]),
     line([left, foot], [pictureWidth - right, foot]),
@@ -74,7 +74,7 @@ function limitMark(x: number, { top, foot }: { readonly top: number; readonly fo
 /** Told beside the axis: over the bars there is room for one word only. */
 function headroomMark(x: number, { top, foot }: { readonly top: number; readonly foot: number }, label: string): readonly string[] {
   const stroke = { stroke: ink.limit, 'stroke-width': 1.5, 'stroke-dasharray': '1.5 3' };
-  const from = pictureWidth - right + 8;
+  const from = pictureWidth - right + 22;
   return [line([x, top], [x, foot], stroke), line([from, foot + 11], [from + 16, foot + 11], stroke), words(`headroom: ${label}`, { x: from + 20, y: foot + 15 }, { fill: ink.limit })];
 }
 

@@ -58,7 +58,7 @@ export function crossSection(section: CrossSection): Picture {
   const foot = y(bottom) + (section.planeBelow === null ? 4 : 12);
   const measures = measuresOf(section, scale.x);
   const measureLevels = measures.reduce((most, { level }) => Math.max(most, level + 1), 0);
-  const bar = scaleBar(scale.perMetre, foot + 16 + 14 * measureLevels);
+  const bar = scaleBar(section, scale.perMetre, foot + 16 + 14 * measureLevels);
   const parts = [
     ...heights.map((layer, index) => layerShape(layer, y, index)),
     ...filmShape(section, { x: scale.x, y, perMetre: scale.perMetre }),
@@ -158,8 +158,7 @@ function filmShape({ film, conductors, layers }: CrossSection, { x, y, perMetre 
   const style = { fill: ink.second, 'fill-opacity': 0.3 };
   const flat = element('rect', { x: 0, width: pictureWidth, y: up ? y(surface) - thick : y(surface), height: thick, ...style });
   const over = conductors.filter((part) => Math.abs((up ? part.y : part.y + part.height) - surface) < 1e-9).map((part) => element('rect', { x: x(part.x) - thick, width: part.width * perMetre + 2 * thick, y: y(part.y + part.height) - (up ? thick : 0), height: part.height * perMetre + thick, ...style }));
-  const label = words(`mask ${inText(film.thickness, 'length')}`, { x: 5, y: up ? y(surface) - thick - 4 : y(surface) + thick + 12 });
-  return [flat, ...over, label];
+  return [flat, ...over];
 }
 
 /** Widths under the conductors, gaps between them; of rows above each other, each in turn. */
@@ -171,11 +170,12 @@ function measuresOf({ conductors }: CrossSection, x: (value: number) => number) 
   return placedLabels(labels, { levels: 3, from: 0, to: pictureWidth });
 }
 
-function scaleBar(perMetre: number, y: number): readonly string[] {
+function scaleBar({ film }: CrossSection, perMetre: number, y: number): readonly string[] {
   const length = niceStep(40 / perMetre);
   const [from, to] = [5, 5 + length * perMetre];
   const text = inText(length, 'length');
-  return to + widthOf(text) + 12 < pictureWidth ? [line([from, y], [to, y], { 'stroke-width': 1.5 }), line([from, y - 3], [from, y + 3]), line([to, y - 3], [to, y + 3]), words(text, { x: to + 6, y: y + 4 }), words('to scale; ↔ gaps', { x: pictureWidth - 5, y: y + 4 }, { 'text-anchor': 'end' })] : [];
+  const notes = [...(film === null ? [] : [`mask ${inText(film.thickness, 'length')}`]), '↔ gaps', 'to scale'].join(' · ');
+  return to + widthOf(text) + 12 < pictureWidth ? [line([from, y], [to, y], { 'stroke-width': 1.5 }), line([from, y - 3], [from, y + 3]), line([to, y - 3], [to, y + 3]), words(text, { x: to + 6, y: y + 4 }), words(notes, { x: pictureWidth - 5, y: y + 4 }, { 'text-anchor': 'end' })] : [];
 }
 
 const partsTold = 12;

@@ -14,4 +14,4 @@ export interface Picture {
 }
 
 /** Wide enough for axes and names, narrower than a hover. */
-export const pictureWidth = 430;
+export const pictureWidth = 456;

@@ -74,7 +74,7 @@ function inProject(session: Session, root: string, { path, offset, pictures }: P
   if (named === undefined && point === null) return null;
   const analysis = session.analyse(root);
   const result = point === null ? undefined : analysis.evaluation.runs.find(({ run }) => run === point.run);
-  const run = point === null || result === undefined ? null : { span: point.place.span, markdown: runPointHover(result, point, { context: () => session.fixContext(root), pictures }) };
+  const run = point === null || result === undefined ? null : { span: point.place.span, markdown: runPointHover(result, point, { evaluation: analysis.evaluation, context: () => session.fixContext(root), pictures }) };
   if (named === undefined) return run;
   const markdown = paragraphs(run?.markdown ?? null, ...named.records.slice(0, namesShown).map((record) => nameHover(analysis, record, pictures)), namesShown < named.records.length && `and ${named.records.length - namesShown} more`);
   return markdown === '' ? null : { span: named.place.span, markdown };
@@ -86,7 +86,7 @@ const namesShown = 4;
 function nameHover(analysis: Analysis, record: NameRecord, pictures: Pictures): string | null {
   const signal = signalOf(analysis.project, record);
   if (signal !== null) return signalHover(analysis, signal, pictures);
-  if (record.kind !== 'run') return wayHover(analysis.evaluation, record) ?? declarationHover(analysis.project, record);
+  if (record.kind !== 'run') return wayHover(analysis.evaluation, record, pictures) ?? declarationHover(analysis.project, record);
   const result = analysis.evaluation.runs.find(({ run }) => run.name === record.name);
   return result === undefined ? null : runHover(result, pictures);
 }

@@ -1,5 +1,6 @@
 /** The couplings of a part of a run as the text now names and places them, and what its receivers lack. */
 import type { Place, Run } from '../../board/model';
+import type { Waveform } from '../../physics/lines/lines';
 import { seconds, volts } from '../../units/quantity';
 import type { Heard } from '../heard';
 import type { Receiver } from '../receivers';
@@ -135,7 +136,11 @@ class Meeting {
       errorBar: volts(Math.abs(scale) * passed * (noise.errorBar + carried)),
       bounds: null,
       // Pictures and words are made when they are asked for: a board has hundreds of couplings, and shows one.
-      get waveform() { return { times: noise.waveform.times, values: noise.waveform.values.map((value) => scale * value) }; },
+      get waveform() { return scaled(noise.waveform, scale); },
+      get endWaveforms() {
+        const { near, far } = noise.ends();
+        return { near: scaled(near, scale), far: scaled(far, scale), until: noise.until };
+      },
       get assumptions() { return couplingAssumptions(context, { source, receiver }, { ...guardsInWords(found.guards, edge.rise), tied: found.tied, followed: noise.followed }); },
     };
   }
@@ -163,7 +168,12 @@ class Meeting {
       errorBar: volts(amplitude * found.errorBar * (found.counted ?? found.atReceiver)),
       bounds: null,
       waveform: null,
+      endWaveforms: null,
       get assumptions() { return couplingAssumptions(context, { source, receiver }, { ...guardsInWords(found.guards, seconds(0.35 / found.frequency)), tied: null, followed: false }); },
     };
   }
+}
+
+function scaled({ times, values }: Waveform, scale: number): Waveform {
+  return { times, values: values.map((value) => scale * value) };
 }

@@ -82,6 +82,10 @@ export interface ReceivedNoise {
   /** Followed by the lumped circuit, whose peak was larger. */
   readonly followed: boolean;
   readonly waveform: Waveform;
+  /** At the victim's ends of the run; made when they are asked for. */
+  readonly ends: () => { readonly near: Waveform; readonly far: Waveform };
+  /** Up to when all of these were computed. */
+  readonly until: Time;
 }
 
 export function solvedLine(request: LineRequest, cache: SolveCache): SolvedLine {
@@ -184,6 +188,7 @@ function receivedWith({ arrangement, moving }: LineRequest, { terms, band, after
   const mean = signs.leak / terms.length;
   const weighted = terms.map(({ index, weight }) => ({ index, weight: weight + mean }));
   const nearSide = sideOf(arrangement, moving[0]!.index, 'source');
+  const farSide = nearSide === 'left' ? 'right' : 'left';
   const all = [...answers.byVoltage.map((answer) => ({ answer, sign: answer.sign })), ...answers.byCurrent.map((answer) => ({ answer, sign: signs.current * answer.sign }))];
   const sumAt = (placeOf: (index: number) => LinePlace, part: 'whole' | 'response') => summed(weighted.flatMap(({ index, weight }) => all.map(({ answer: { response, later }, sign }) => {
     const place = placeOf(index);
@@ -203,7 +208,7 @@ function receivedWith({ arrangement, moving }: LineRequest, { terms, band, after
   const errorBar = weighted.reduce((sum, { index, weight }) => sum + all.reduce((inner, { answer: { response, later } }) => inner + Math.abs(weight) * Math.max(response.errorBar[index], followed ? later.errorBar[index] : 0), 0), 0);
   return {
     nearEnd: peakOf(sumAt(() => nearSide, 'whole')).value,
-    farEnd: peakOf(sumAt(() => (nearSide === 'left' ? 'right' : 'left'), 'whole')).value,
+    farEnd: peakOf(sumAt(() => farSide, 'whole')).value,
     atReceiver: peak.value,
     counted: countedPeak(waveform, { band, after }),
     peakTime: peak.time,
@@ -213,7 +218,9 @@ function receivedWith({ arrangement, moving }: LineRequest, { terms, band, after
     errorBar: volts(errorBar),
     growing: !followed && stillGrowing(sumAt(loadOf, 'response'), seconds(window), answers.duration),
     followed,
-    waveform: thinnedWaveform(waveform, volts(Math.abs(peak.value) * drawnWithin)),
+    waveform: forPicture(waveform),
+    ends: () => ({ near: forPicture(sumAt(() => nearSide, 'whole')), far: forPicture(sumAt(() => farSide, 'whole')) }),
+    until: seconds(waveform.times[waveform.times.length - 1]),
   };
 }
 
@@ -259,6 +266,10 @@ function concatenated(first: Float64Array, second: Float64Array): Float64Array {
   both.set(first);
   both.set(second, first.length);
   return both;
+}
+
+function forPicture(waveform: Waveform): Waveform {
+  return thinnedWaveform(waveform, volts(Math.abs(peakOf(waveform).value) * drawnWithin));
 }
 
 /** Of the peak: a thirtieth of a line's width in a picture. */

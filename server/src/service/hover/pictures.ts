@@ -5,6 +5,8 @@ import { pictureInMarkdown } from './pictureInMarkdown';
 export interface Pictures {
   /** Milliseconds; null where none are shown. What is not done by then is for the next hover. */
   readonly patience: number | null;
+  /** Takes what was not done; each call does a piece of it, and answers whether anything is left. */
+  readonly later?: (step: () => boolean) => void;
 }
 
 export const noPictures: Pictures = { patience: null };

@@ -1,6 +1,6 @@
 /** A run, and what of it stands at a point: a trace, a guard or return, a gap, its length. */
 import type { Net, Pair, RunConductor } from '../../board/model';
-import type { RunResult } from '../../budget/results';
+import type { Coupling, Evaluation, RunResult } from '../../budget/results';
 import { refusalInText } from '../../budget/runs/refusalInText';
 import type { FixContext } from '../../fixes/fix';
 import { sufficientGap, sufficientLength, type Sufficient } from '../../fixes/sufficient';
@@ -8,6 +8,8 @@ import { gapsBetween } from '../../rules/gapsBetween';
 import { errorInText, inText } from '../../units/inText';
 import { assumptionsOf, couplingTable } from './couplingTable';
 import { escaped, escapedLines, paragraphs, table } from './markdown';
+import { couplingPicture } from '../pictures/couplingPicture';
+import { gapPicture } from '../pictures/gapPicture';
 import { sectionPictures } from '../pictures/sectionPictures';
 import { drawn, type Pictures } from './pictures';
 import { sufficientInWords } from './sufficientInWords';
@@ -25,15 +27,16 @@ export function runHover(result: RunResult, pictures: Pictures): string {
   );
 }
 
-export function runPointHover(result: RunResult, point: RunPoint, { context, pictures }: PointContext): string {
+export function runPointHover(result: RunResult, point: RunPoint, { evaluation, context, pictures }: PointContext): string {
   switch (point.on) {
     case 'length': return lengthHover(result, sufficientLength(context(), result.run), pictures);
-    case 'gap': return gapHover(result, point, context());
-    case 'conductor': return point.conductor.kind === 'trace' ? traceHover(result, point.conductor, pictures) : guardHover(result, point.conductor, pictures);
+    case 'gap': return gapHover(result, point, { context: context(), pictures });
+    case 'conductor': return point.conductor.kind === 'trace' ? traceHover(result, point.conductor, { evaluation, pictures }) : guardHover(result, point.conductor, pictures);
   }
 }
 
 export interface PointContext {
+  readonly evaluation: Evaluation;
   /** Asked for only where a search answers. */
   readonly context: () => FixContext;
   readonly pictures: Pictures;
@@ -51,7 +54,7 @@ function sectionsOf({ run }: RunResult, pictures: Pictures, conductors: readonly
 }
 
 /** All traces of one row where it names a range. */
-function traceHover(result: RunResult, { place }: RunConductor & { readonly kind: 'trace' }, pictures: Pictures): string {
+function traceHover(result: RunResult, { place }: RunConductor & { readonly kind: 'trace' }, { evaluation, pictures }: Pick<PointContext, 'evaluation' | 'pictures'>): string {
   const traces = result.traces.filter((trace) => trace.place === place || (trace.place.path === place.path && trace.place.span.start === place.span.start));
   const nets = new Set(traces.map(({ net }) => net));
   const concerns = (signal: Net | Pair) => (signal.kind === 'net' ? nets.has(signal) : [signal.plus, signal.minus].some((net) => net !== null && nets.has(net)));
@@ -64,12 +67,26 @@ function traceHover(result: RunResult, { place }: RunConductor & { readonly kind
   });
   return paragraphs(
     [...lines, ...(lines.length < traces.length ? [`and ${traces.length - lines.length} more`] : [])].join('  \n'),
+    largestInWords(onto),
+    largestOf([...onto, ...from]).map((coupling) => drawn(pictures, () => couplingPicture(evaluation, coupling))).join(''),
     onto.length === 0 ? null : `Put on it here:\n\n${couplingTable(onto)}`,
     from.length === 0 ? null : `Put by it here:\n\n${couplingTable(from)}`,
     onto.length + from.length === 0 ? nothingCouples(result) : null,
     ...sectionsOf(result, pictures, traces),
     assumptionsOf([...onto, ...from]),
   );
+}
+
+/** The number first, ahead of the table that it stands in. */
+function largestInWords(onto: readonly Coupling[]): string | null {
+  const [largest] = largestOf(onto);
+  if (largest === undefined) return null;
+  return `**${inText(Math.abs(largest.counted ?? largest.atReceiver), 'voltage')}** of ${escaped(largest.aggressor.name)} at the receiver of ${escaped(largest.victim.name)}${onto.length === 1 ? '' : `, the most that ${onto.length} couplings put on it here`}.`;
+}
+
+function largestOf(couplings: readonly Coupling[]): readonly Coupling[] {
+  const size = ({ counted, atReceiver }: Coupling) => Math.abs(counted ?? atReceiver);
+  return couplings.length === 0 ? [] : [couplings.reduce((most, each) => (size(most) < size(each) ? each : most))];
 }
 
 function guardHover(result: RunResult, conductor: Exclude<RunConductor, { kind: 'trace' }>, pictures: Pictures): string {
@@ -81,7 +98,7 @@ function guardHover(result: RunResult, conductor: Exclude<RunConductor, { kind: 
   return paragraphs(head, loose === undefined ? `It is ${tied}, and counts as tied everywhere.` : `It is ${tied}; at most ${inText(loose.largest, 'length')} hold at the fastest edge here. ${loose.past === null ? 'Its noise is computed as if they held, and is not to be trusted until they do.' : `It is computed as one more line, shorted through its vias at each tie: ${inText(loose.past.asTied, 'voltage')} on ${escaped(loose.past.receiver)}, and ${inText(loose.past.stitched, 'voltage')} with ties that hold.`}`, ...sectionsOf(result, pictures, [conductor]));
 }
 
-function gapHover(result: RunResult, { gap, index }: RunPoint & { readonly on: 'gap' }, context: FixContext): string {
+function gapHover(result: RunResult, { gap, index }: RunPoint & { readonly on: 'gap' }, { context, pictures }: { readonly context: FixContext; readonly pictures: Pictures }): string {
   const { run, couplings } = result;
   const across = couplings.filter(({ aggressor, victim }) => {
     const between = gapsBetween(run, aggressor, victim);
@@ -91,6 +108,7 @@ function gapHover(result: RunResult, { gap, index }: RunPoint & { readonly on: '
   return paragraphs(
     `**${inText(gap.value, 'length')}**${neighboursOf(result, index)}`,
     sufficient === null ? null : sufficientInWords('gap', sufficient),
+    drawn(pictures, () => gapPicture(context, { run, index, sufficient }, pictures)),
     across.length === 0 ? 'Nothing that is computed couples across it.' : couplingTable(across),
   );
 }

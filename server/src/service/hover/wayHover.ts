@@ -7,13 +7,15 @@ import { receiverInText, voltageInText } from '../../rules/budgetFault';
 import { levelInText } from '../../rules/emissionOverLimit';
 import { errorInText, inText } from '../../units/inText';
 import { currentInWords } from './netHover';
+import { loopPicture } from '../pictures/loopPicture';
 import { escaped, escapedLines, paragraphs, percent, table } from './markdown';
+import { drawn, type Pictures } from './pictures';
 
-export function wayHover(evaluation: Evaluation, { kind, name }: NameRecord): string | null {
+export function wayHover(evaluation: Evaluation, { kind, name }: NameRecord, pictures: Pictures): string | null {
   switch (kind) {
     case 'loop': {
       const found = evaluation.loops.find(({ loop }) => loop.name === name);
-      return found === undefined ? null : wayInWords(evaluation, found.loop, 'loop', loopInWords(found));
+      return found === undefined ? null : wayInWords(evaluation, found.loop, 'loop', loopInWords(evaluation, found, pictures));
     }
     case 'return': {
       const found = evaluation.returns.find(({ shared }) => shared.name === name);
@@ -64,12 +66,13 @@ function assumptionsInWords(heard: readonly Heard[]): string | null {
   return said.length === 0 ? null : `It rests on:\n\n${said.slice(0, 6).map((words) => `- ${escaped(words)}`).join('\n')}`;
 }
 
-function loopInWords({ loop, area, perimeter, inductance, inductanceError, emission, mutual }: LoopResult): readonly (string | null)[] {
+function loopInWords(evaluation: Evaluation, result: LoopResult, pictures: Pictures): readonly (string | null)[] {
+  const { loop, area, perimeter, inductance, inductanceError, emission, mutual } = result;
   const size = area === null || perimeter === null ? 'its path is none that a current can take' : `${inText(area, 'area')}, ${inText(perimeter, 'length')} around`;
   const own = inductance === null ? 'no inductance without `strip` or `wire`' : `${inText(inductance, 'inductance')}${inductanceError === null || inductanceError < 5e-4 * inductance ? '' : ` ${errorInText(inductanceError, inductance, 'inductance')}`}`;
   const limits = [...(loop.areaLimit === null ? [] : [`${inText(loop.areaLimit.value, 'area')} at most`]), ...(loop.inductanceLimit === null ? [] : [`${inText(loop.inductanceLimit.value, 'inductance')} at most`])];
   const near = [...mutual].sort((a, b) => Math.abs(b.inductance) - Math.abs(a.inductance)).slice(0, 3).map(({ other, inductance: with_ }) => `${inText(with_, 'inductance')} with ${escaped(other.name)}`);
-  return [`${size}, ${own}`, loopUseInWords(loop), limits.length === 0 ? null : `Its limits: ${limits.join(', ')}.`, near.length === 0 ? null : `Mutual inductance: ${near.join(', ')}.`, emission.length === 0 ? null : emissionInWords(emission)];
+  return [`${size}, ${own}`, drawn(pictures, () => loopPicture(evaluation, result)), loopUseInWords(loop), limits.length === 0 ? null : `Its limits: ${limits.join(', ')}.`, near.length === 0 ? null : `Mutual inductance: ${near.join(', ')}.`, emission.length === 0 ? null : emissionInWords(emission)];
 }
 
 /** Whose current it is, and how large where somebody states it. */
