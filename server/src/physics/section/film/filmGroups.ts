@@ -43,7 +43,7 @@ export function filmGroups({ conductors, panels }: FilmedRow): FilmGroup[] | nul
     if (!(before.right < after.left)) return null;
     bounds.push((before.right + after.left) / 2);
   }
-  if (order.length < fewest || conductors.some(({ layer }) => layer !== panels[0].layer)) return null;
+  if (order.length < fewestGrouped || conductors.some(({ layer }) => layer !== panels[0].layer)) return null;
   const before = conductors.map(() => 0);
   let sides = 0;
   conductors.forEach((conductor, c) => {
@@ -60,7 +60,7 @@ export function filmGroups({ conductors, panels }: FilmedRow): FilmGroup[] | nul
 }
 
 /** Below, the two ways cost about the same. */
-const fewest = 8;
+export const fewestGrouped = 8;
 
 interface Gathering {
   readonly conductor: number;

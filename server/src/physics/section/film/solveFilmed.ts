@@ -4,7 +4,7 @@
  * The film changes no inductance: L and C in air are those of the bare section. C with the film is refined until its bars
  * are below what a film's own tolerance makes of them.
  *
- * Formula   bar = |fine - coarse| + unseen |fine| + half the asymmetry + 1e-8 sqrt(fine_ii fine_jj)
+ * Formula   bar = |fine - coarse| + unseen |fine| + half the asymmetry + 1e-8, of groups 5e-8, sqrt(fine_ii fine_jj)
  * Model     the coarser system lacks the highest polynomials and the outermost panels of the film's face; what the
  *           difference does not show is the `unseen` of filmedCharge.ts, from measurement
  * Accuracy  holds in all seeded random sections of the test
@@ -12,6 +12,7 @@
 import { epsilon0 } from '../../../units/constants';
 import type { Section, SectionMatrices, SectionSolution } from '../section';
 import { asLayers } from './asLayers';
+import { fewestGrouped } from './filmGroups';
 import { filmRefusal } from './filmRefusal';
 import { filmedCharge, type FilmedSolution } from './filmedCharge';
 import { upsideDown } from './upsideDown';
@@ -37,11 +38,12 @@ export function solveFilmed(section: Section, { bare, effort, mostEffort }: Film
   const inAir = bare({ ...section, film: null, layers: section.layers.map((layer) => ({ ...layer, permittivity: 1 })) });
   if ('refused' in inAir) return inAir;
   const signals = section.conductors.flatMap(({ role }, index) => (role === 'signal' ? [index] : []));
+  const floor = section.conductors.length < fewestGrouped ? absoluteFloor : groupedFloor;
   let best: SectionMatrices | null = null;
   for (let level = effort; level <= Math.max(effort, mostEffort); level += 1) {
     const solution = filmedCharge(upright, signals, level);
     if (solution === null) continue;
-    const attempt = { ...inAir.solved, ...withBars(solution, (i, j) => screened(section, signals[i], signals[j])), unknowns: Math.max(inAir.solved.unknowns, solution.unknowns) };
+    const attempt = { ...inAir.solved, ...withBars(solution, floor, (i, j) => screened(section, signals[i], signals[j])), unknowns: Math.max(inAir.solved.unknowns, solution.unknowns) };
     // A number that is none would pass for the best, and every other be measured against it.
     if (!Number.isFinite(excess(attempt))) continue;
     if (best === null || excess(attempt) < excess(best)) best = attempt;
@@ -66,7 +68,7 @@ function screened({ conductors }: Section, first: number, second: number): boole
   return conductors.some((_, index) => low < centre(index) && centre(index) < high);
 }
 
-function withBars({ fine, coarse, order, unseen }: FilmedSolution, isScreened: (i: number, j: number) => boolean): { capacitance: Float64Array; capacitanceError: Float64Array } {
+function withBars({ fine, coarse, order, unseen }: FilmedSolution, floor: number, isScreened: (i: number, j: number) => boolean): { capacitance: Float64Array; capacitanceError: Float64Array } {
   const capacitance = new Float64Array(order * order);
   const capacitanceError = new Float64Array(order * order);
   for (let i = 0; i < order; i += 1) {
@@ -75,7 +77,7 @@ function withBars({ fine, coarse, order, unseen }: FilmedSolution, isScreened: (
       const value = (fine[at] + fine[mirrored]) / 2;
       const scale = Math.sqrt(Math.abs(fine[i * order + i] * fine[j * order + j]));
       const missed = isScreened(i, j) ? screenedFactor * unseen : unseen;
-      const bar = Math.abs(value - (coarse[at] + coarse[mirrored]) / 2) + Math.abs(fine[at] - fine[mirrored]) / 2 + Math.max(missed, leastFloor) * Math.abs(value) + absoluteFloor * scale;
+      const bar = Math.abs(value - (coarse[at] + coarse[mirrored]) / 2) + Math.abs(fine[at] - fine[mirrored]) / 2 + Math.max(missed, leastFloor) * Math.abs(value) + floor * scale;
       capacitance[at] = value * 2 * Math.PI * epsilon0;
       capacitanceError[at] = value === 0 ? 1 : bar / Math.abs(value);
     }
@@ -88,3 +90,5 @@ const leastFloor = 1e-5;
 const screenedFactor = 8;
 /** Of the self entries: what the kernel's own error may do to a vanishing mutual. */
 const absoluteFloor = 1e-8;
+/** What groups leave out of each other's charges (groupedCharge.ts), which no degree shows. */
+const groupedFloor = 5e-8;
