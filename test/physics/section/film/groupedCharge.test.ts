@@ -6,6 +6,8 @@ import { filmGroups } from '../../../../server/src/physics/section/film/filmGrou
 import { filmProblem } from '../../../../server/src/physics/section/film/filmedCharge';
 import { groupedCharge } from '../../../../server/src/physics/section/film/groupedCharge';
 import type { Section } from '../../../../server/src/physics/section/section';
+import { solveSection } from '../../../../server/src/physics/section/solveSection';
+import { epsilon0 } from '../../../../server/src/units/constants';
 import { metres } from '../../../../server/src/units/quantity';
 import { seeded } from '../../../support/seeded';
 
@@ -51,6 +53,24 @@ describe('a row under a mask by groups', () => {
           const difference = Math.abs(grouped[which][at] / all[which][at] - 1);
           assert.ok(difference < (i === j ? 5e-6 : 5e-4), `${which} ${i} ${j} off by ${difference.toExponential(1)}: ${JSON.stringify(section)}`);
         }
+      }
+    }
+  });
+
+  it('has bars that hold the finest setting of all at once, self within 5e-4 and mutuals within 5e-3', () => {
+    const next = seeded(91);
+    for (let k = 0; k < 4; k += 1) {
+      const section = rowOf(next, 8, k === 1);
+      const solution = solveSection(section);
+      assert.ok('solved' in solution);
+      const { capacitance, capacitanceError } = solution.solved;
+      const { fine, order } = ungroupedCharge(problemOf(section, 3))!;
+      for (let at = 0; at < order * order; at += 1) {
+        const [i, j] = [Math.floor(at / order), at % order];
+        const truth = Math.PI * epsilon0 * (fine[at] + fine[j * order + i]);
+        const error = Math.abs(capacitance[at] / truth - 1);
+        assert.ok(error <= capacitanceError[at], `${i} ${j} off by ${error.toExponential(1)}, bar ${capacitanceError[at].toExponential(1)}: ${JSON.stringify(section)}`);
+        if (1e-4 * Math.sqrt(fine[i * order + i] * fine[j * order + j]) < Math.abs(fine[at])) assert.ok(error < (i === j ? 5e-4 : 5e-3), `${i} ${j} off by ${error.toExponential(1)}`);
       }
     }
   });
