@@ -86,10 +86,12 @@ function casesOf({ name, count, section, goals: [goal, goalOfWidths], uneven = f
   const repeated = (value: number) => each(() => value);
   const gaps = () => (uneven ? each(() => between(100, 1000)) : repeated(between(100, 2 < count ? 1000 : 3000)));
   const usual = { widths: repeated(200), gaps: repeated(400), copper: 35, height: 200 };
+  const fixed = gaps();
   const pairs = uneven ? () => each(() => between(90, 1000)) : () => repeated(between(90, 1000));
   return [
     { name: `${name}: again`, prepare: () => section(usual), run: solve },
     { name: `${name}: another gap`, prepare: () => section({ ...usual, gaps: gaps() }), run: solve, goal },
+    ...(uneven ? [{ name: `${name}: one of its gaps`, prepare: () => section({ ...usual, gaps: fixed.map((gap, i) => (i === 3 ? between(100, 1000) : gap)) }), run: solve, goal }] : []),
     { name: `${name}: other widths`, prepare: () => section({ ...usual, gaps: gaps(), widths: pairs() }), run: solve, goal: goalOfWidths },
     { name: `${name}: another stack`, prepare: () => section({ widths: pairs(), gaps: gaps(), copper: between(12, 70), height: between(80, 1600) }), run: solve },
   ];

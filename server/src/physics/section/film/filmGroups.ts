@@ -7,6 +7,7 @@
  */
 import type { Side } from '../basis/side';
 import { leftOut } from '../galerkin/layout';
+import { shapeOf, type Shape } from './keptBlocks';
 import type { ChargedConductor } from '../basis/chargedConductor';
 
 export interface FilmGroup {
@@ -14,9 +15,9 @@ export interface FilmGroup {
   readonly conductor: number;
   /** Left end of its foot. */
   readonly foot: number;
-  /** Indices of its sides and panels among all. */
-  readonly items: readonly number[];
+  /** The conductor's sides and its panels, with that foot at 0 and places rounded: equal groups are equal to the last digit. */
   readonly sides: readonly Side[];
+  readonly shapes: readonly Shape[];
   /** How many of them are the conductor's. */
   readonly own: number;
   /** Of every polynomial, item after item: its unknown, those of the shorter series first. */
@@ -44,19 +45,13 @@ export function filmGroups({ conductors, panels }: FilmedRow): FilmGroup[] | nul
     bounds.push((before.right + after.left) / 2);
   }
   if (order.length < fewestGrouped || conductors.some(({ layer }) => layer !== panels[0].layer)) return null;
-  const before = conductors.map(() => 0);
-  let sides = 0;
-  conductors.forEach((conductor, c) => {
-    before[c] = sides;
-    sides += conductor.sides.length;
-  });
   const nearest: number[][] = order.map(() => []);
   panels.forEach(({ x0, x1 }, p) => {
     let g = 0;
     while (g < bounds.length && bounds[g] < (x0 + x1) / 2) g += 1;
     nearest[g].push(p);
   });
-  return order.map((c, g) => groupOf(conductors[c], { conductor: c, firstSide: before[c], sides, panels, nearest: nearest[g] }));
+  return order.map((c, g) => groupOf(conductors[c], { conductor: c, panels, nearest: nearest[g] }));
 }
 
 /** Below, the two ways cost about the same. */
@@ -64,20 +59,16 @@ export const fewestGrouped = 8;
 
 interface Gathering {
   readonly conductor: number;
-  readonly firstSide: number;
-  /** Of all conductors. */
-  readonly sides: number;
   readonly panels: readonly Side[];
   readonly nearest: readonly number[];
 }
 
-function groupOf(own: ChargedConductor, { conductor, firstSide, sides, panels, nearest }: Gathering): FilmGroup {
+function groupOf(own: ChargedConductor, { conductor, panels, nearest }: Gathering): FilmGroup {
   const faces = [...own.sides, ...nearest.map((p) => panels[p])];
-  const items = [...own.sides.map((_, s) => firstSide + s), ...nearest.map((p) => sides + p)];
   // The shorter series lacks the highest polynomials, and the outermost panels.
   const kept = faces.map(({ order }, i) => {
     if (i < own.sides.length) return order - leftOut(order);
-    const p = items[i] - sides;
+    const p = nearest[i - own.sides.length];
     return p === 0 || p === panels.length - 1 ? 0 : order - 1;
   });
   const starts = new Int32Array(faces.length);
@@ -98,5 +89,15 @@ function groupOf(own: ChargedConductor, { conductor, firstSide, sides, panels, n
   });
   const left = faces.reduce((least, { x0, x1 }) => Math.min(least, x0, x1), Infinity);
   const right = faces.reduce((most, { x0, x1 }) => Math.max(most, x0, x1), -Infinity);
-  return { conductor, foot: own.foot, items, sides: faces, own: own.sides.length, rows, starts, unknowns, coarse, left, right };
+  const sides = faces.map((face) => movedSide(face, -own.foot));
+  return { conductor, foot: own.foot, sides, shapes: sides.map(shapeOf), own: own.sides.length, rows, starts, unknowns, coarse, left, right };
 }
+
+/** Along the section, to a whole number of grains. */
+export function movedSide(side: Side, by: number): Side {
+  return { ...side, x0: grains(side.x0 + by) * grain, x1: grains(side.x1 + by) * grain };
+}
+
+/** Of the unit of the solve: far below what any charge depends on, far above the rounding of places. */
+export const grain = 1e-10;
+export const grains = (length: number) => Math.round(length / grain);

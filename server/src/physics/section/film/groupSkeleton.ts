@@ -55,7 +55,7 @@ export function groupSkeleton(group: FilmGroup, { clear, distance, strength, eff
   const { count: points, pivots, parts: [parts] } = pivotedBasis([{ vectors, count, length, eligible }], tolerance / 3 ** (effort - 1), eligible);
   const skeleton = { points, x: new Float64Array(points), y: new Float64Array(points), charges: new Float64Array(points * unknowns), rows: new Float64Array(points * unknowns), fields: new Float64Array((length - 1) * points) };
   pivots.forEach((node, p) => {
-    skeleton.x[p] = places.x[node] - group.foot;
+    skeleton.x[p] = places.x[node];
     skeleton.y[p] = places.y[node];
     for (let f = 0; f < length - 1; f += 1) skeleton.fields[f * points + p] = given[node * length + f];
   });

@@ -19,9 +19,8 @@ import { writeKernelValues } from '../galerkin/kernelValues';
 import { NodeSet } from '../galerkin/nodeSet';
 import type { ChargeSolution } from '../galerkin/chargeSolution';
 import type { FilmProblem } from './filmCharge';
-import type { Faces } from './filmBlocks';
-import type { FilmGroup } from './filmGroups';
-import { shapeOf } from './keptBlocks';
+import { grain, grains, type FilmGroup } from './filmGroups';
+import type { Kernel } from '../kernel/layeredKernel';
 import { groupSkeleton, type GroupSkeleton } from './groupSkeleton';
 import { groupBlock, groupFactors, type GroupContext } from './groupSystem';
 import { reducedGroup, type ReducedGroup } from './reducedGroup';
@@ -29,10 +28,8 @@ import { reducedGroup, type ReducedGroup } from './reducedGroup';
 /** Null where a pivot vanishes. */
 export function groupedCharge(problem: FilmProblem, groups: readonly FilmGroup[]): ChargeSolution | null {
   const { conductors, panels, permittivity, outside, signals } = problem;
-  const all = [...conductors.flatMap(({ sides }) => sides), ...panels];
-  const faces = { all, shapes: all.map(shapeOf) };
   const strength = (permittivity * (permittivity - outside)) / (permittivity + outside);
-  const context: GroupContext = { faces, kernel: problem.kernel(panels[0].layer, panels[0].layer), conductors, strength };
+  const context: GroupContext = { kernel: problem.kernel(panels[0].layer, panels[0].layer), conductors, strength };
   const row = rowOf(groups, context);
   if (row === null) return null;
   const reduced = groups.map((_, g) => row.known(`reduced ${row.key(g)}`, () => reducedGroup(row, g)));
@@ -46,7 +43,7 @@ export interface GroupRow {
   readonly groups: readonly FilmGroup[];
   readonly context: GroupContext;
   readonly skeletons: readonly GroupSkeleton[];
-  readonly known: ReturnType<typeof memory>;
+  readonly known: Memory;
   /** Equal for groups that are alike and stand alike. */
   readonly key: (g: number) => string;
   /** L^-1 of the potentials 1 on the conductor, and U^-T of its net charge. */
@@ -58,8 +55,8 @@ export interface GroupRow {
 }
 
 function rowOf(groups: readonly FilmGroup[], context: GroupContext): GroupRow | null {
-  const keys = groups.map((group) => keyOf(group, context.faces));
-  const known = memory();
+  const keys = groups.map((group) => keyOf(group, context));
+  const known = memoryOf(context.kernel);
   const factors: Float64Array[] = [];
   for (let g = 0; g < groups.length; g += 1) {
     const own = known(`own ${keys[g]}`, () => groupFactors(groups[g], context));
@@ -81,7 +78,7 @@ function rowOf(groups: readonly FilmGroup[], context: GroupContext): GroupRow | 
   const apart = (first: number, second: number) => grains(groups[second].foot - groups[first].foot);
   const between = (first: number, second: number) => known(`between ${keys[first]} ${keys[second]} ${apart(first, second)}`, () => {
     const [rows, columns] = [groups[first].unknowns, groups[second].unknowns];
-    const values = groupBlock(groups[first], groups[second], context);
+    const values = groupBlock(groups[first], groups[second], apart(first, second), context);
     upperSolved(factors[second], columns, values, rows);
     const across = transposed(values, rows, columns);
     lowerSolved(factors[first], rows, across, columns);
@@ -89,7 +86,8 @@ function rowOf(groups: readonly FilmGroup[], context: GroupContext): GroupRow | 
   });
   return {
     groups, context, skeletons, known,
-    key: (g) => [g - 1, g, g + 1].map((near) => (near in groups ? `${keys[near]} ${apart(g, near)}` : '')).join() + reaches[g].key,
+    // How large the neighbours' charges are likely to be is their neighbours' matter too.
+    key: (g) => [g - 2, g - 1, g, g + 1, g + 2].map((near) => (near in groups ? `${keys[near]} ${apart(g, near)}` : '')).join() + reaches[g].key,
     driven: net.map((one, g) => solvedBy(lowerSolved, factors[g], one)),
     collected: net.map((one, g) => solvedBy(upperSolved, factors[g], one)),
     fromRight: groups.slice(1).map((_, g) => between(g, g + 1)),
@@ -97,20 +95,31 @@ function rowOf(groups: readonly FilmGroup[], context: GroupContext): GroupRow | 
   };
 }
 
-/** What was made for one group of the row serves those that are alike. */
-function memory() {
+type Memory = <T>(key: string, make: () => T) => T;
+
+const memories = new WeakMap<Kernel, Memory>();
+/** Things kept for one kernel: 10 kB each. */
+const keptLimit = 4000;
+
+/** What was made for one group serves those that are alike, in this row and after an edit of another gap. */
+function memoryOf(kernel: Kernel): Memory {
+  const found = memories.get(kernel);
+  if (found !== undefined) return found;
   const made = new Map<string, unknown>();
-  return <T>(key: string, make: () => T): T => {
-    if (!made.has(key)) made.set(key, make());
-    return made.get(key) as T;
+  const memory = <T>(key: string, make: () => T): T => {
+    if (made.has(key)) return made.get(key) as T;
+    const value = make();
+    if (keptLimit <= made.size) made.clear();
+    made.set(key, value);
+    return value;
   };
+  memories.set(kernel, memory);
+  return memory;
 }
 
-/** Places within this, of the unit of the solve, are one. */
-const grains = (length: number) => Math.round(length / 1e-10);
-
 /** All that the group is by itself. */
-const keyOf = ({ items, foot }: FilmGroup, { all, shapes }: Faces) => items.map((i) => `${shapes[i].id} ${grains(all[i].x0 - foot)}`).join();
+const keyOf = ({ sides, shapes, conductor }: FilmGroup, { strength, conductors }: GroupContext) =>
+  `${strength} ${conductors[conductor].effort} ${sides.map(({ x0 }, i) => `${shapes[i].id} ${grains(x0)}`).join()}`;
 
 /** L^-1 and U^-T with the roots of the pivots on either: as far as the matrix is symmetric, so is what comes of it. */
 function lowerSolved(factors: Float64Array, order: number, rightSides: Float64Array, count: number): void {
@@ -137,11 +146,13 @@ export function transposed(values: Float64Array, rows: number, columns: number):
 
 /** The groups that a group does not touch lie beyond these lines. */
 function reachOf(groups: readonly FilmGroup[], g: number, { conductors, strength }: GroupContext) {
-  const { left, right, conductor } = groups[g];
+  const { left, right, conductor, foot } = groups[g];
   const most = conductors[conductor].reach;
-  const toLeft = 1 < g ? stepsOfRootTwo(Math.min(left - groups[g - 2].right, most)) : Infinity;
-  const toRight = g + 2 < groups.length ? stepsOfRootTwo(Math.min(groups[g + 2].left - right, most)) : Infinity;
-  return { clear: { left: left - toLeft, right: right + toRight }, distance: Math.min(toLeft, toRight), strength, effort: conductors[conductor].effort, key: `${toLeft} ${toRight}` };
+  const steps = (distance: number) => stepsOfRootTwo(Math.min(grains(distance) * grain, most));
+  const toLeft = 1 < g ? steps(left - groups[g - 2].right) : Infinity;
+  const toRight = g + 2 < groups.length ? steps(groups[g + 2].left - right) : Infinity;
+  const clear = { left: grains(left - foot) * grain - toLeft, right: grains(right - foot) * grain + toRight };
+  return { clear, distance: Math.min(toLeft, toRight), strength, effort: conductors[conductor].effort, key: `${toLeft} ${toRight}` };
 }
 
 const firstNodes = new NodeSet();
@@ -168,9 +179,9 @@ function capacitance(row: GroupRow, reduced: readonly ReducedGroup[], which: 'fi
       place(reduced[g + 1].between(which, row.fromLeft[g], reduced[g]), g + 1, g);
     }
     for (let h = g + 2; h < groups.length; h += 1) {
-      const apart = groups[g].foot - groups[h].foot;
-      const blocks = row.known(`far ${which} ${alike[g]} ${alike[h]} ${grains(apart)}`, () => {
-        const values = row.known(`kernel ${alike[g]} ${alike[h]} ${grains(apart)}`, () => kernelBetween(row.skeletons[g], row.skeletons[h], apart, context));
+      const apart = grains(groups[g].foot - groups[h].foot);
+      const blocks = row.known(`far ${which} ${alike[g]} ${alike[h]} ${apart}`, () => {
+        const values = row.known(`kernel ${alike[g]} ${alike[h]} ${apart}`, () => kernelBetween(row.skeletons[g], row.skeletons[h], apart * grain, context));
         const [p, q] = [row.skeletons[g].points, row.skeletons[h].points];
         return [farBlock(reduced[g][which], reduced[h][which], values, p, q), farBlock(reduced[h][which], reduced[g][which], transposed(values, p, q), q, p)];
       });
