@@ -17,10 +17,10 @@ function sessionOf(text: string): Session {
   return session;
 }
 
-function pictured(session: Session, at: string, patience = Infinity): string {
+function pictured(session: Session, at: string, until = Infinity): string {
   const text = session.text('b.quiet')!;
   assert.ok(text.includes(at), at);
-  return hoverWithPictures(session, 'b.quiet', { offset: text.indexOf(at) + at.length - 1, pictures: { patience } })!.markdown;
+  return hoverWithPictures(session, 'b.quiet', { offset: text.indexOf(at) + at.length - 1, pictures: { until } })!.markdown;
 }
 
 const image = /!\[((?:\\.|[^\]\\])*)\]\(data:image\/svg\+xml;base64,([A-Za-z0-9+/=]*)\)/g;
@@ -91,7 +91,7 @@ describe('pictures in hovers', () => {
     session.analyse('b.quiet');
     const steps: (() => boolean)[] = [];
     const offset = board.indexOf('gap 0.3') + 6;
-    const pictures = { patience: 0, later: (step: () => boolean) => steps.push(step) };
+    const pictures = { until: 0, later: (step: () => boolean) => steps.push(step) };
     assert.ok(!hoverWithPictures(session, 'b.quiet', { offset, pictures })!.markdown.includes('data:'));
     assert.equal(steps.length, 1);
     let count = 1;

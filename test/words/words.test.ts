@@ -58,7 +58,7 @@ function pageOf(session: Session, root: string): string {
   sections.push('## Hovers');
   const said = new Set<string>();
   for (let offset = 0; offset < text.length; ) {
-    const answer = hoverWithPictures(session, root, { offset, pictures: { patience: Infinity } });
+    const answer = hoverWithPictures(session, root, { offset, pictures: { until: Infinity } });
     const isNew = answer !== null && !said.has(answer.markdown);
     if (isNew) {
       said.add(answer.markdown);

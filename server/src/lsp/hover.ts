@@ -11,13 +11,14 @@ export function answerHover({ connection, guard, documents }: Server, showsPictu
     if (file === null) return null;
     const offset = file.document.offsetAt(position);
     rest.drop();
-    const answer = showsPictures() ? hoverWithPictures(documents.session, file.path, { offset, pictures: { patience, later: rest.add } }) : hover(documents.session, file.path, offset);
+    const until = Date.now() + patience;
+    const answer = showsPictures() ? hoverWithPictures(documents.session, file.path, { offset, pictures: { until, later: rest.add } }) : hover(documents.session, file.path, offset);
     if (answer === null) return null;
     return { contents: { kind: MarkupKind.Markdown, value: answer.markdown }, range: rangeOf(file.document, answer.span) };
   }));
 }
 
-/** Milliseconds that a hover may work for a picture: with the rest of it, less than anybody waits for. */
+/** Milliseconds, from its beginning, after which a hover begins no more work for a picture. */
 const patience = 40;
 
 interface Background {

@@ -29,7 +29,7 @@ export interface NoiseAgainstGap {
   readonly enough: number | null;
 }
 
-const box = { left: 62, right: pictureWidth - 16, top: 22, bottom: 172 };
+const box = { left: 62, right: pictureWidth - 16, top: 16, bottom: 160 };
 
 /** Null where there are too few numbers for a curve. */
 export function noiseAgainstGap(given: NoiseAgainstGap): Picture | null {

@@ -67,12 +67,12 @@ export function endInText({ resistance, capacitance }: End): string {
   return [resistance === null ? null : inText(resistance.value, 'resistance'), capacitance === null ? null : inText(capacitance.value, 'capacitance')].filter((part) => part !== null).join(' ‖ ');
 }
 
-/** The number first, then what causes it and the way out; what can be read at leisure below. */
+/** The number first, then what it looks like, the cause and the way out; what can be read at leisure below. */
 function budgetInWords(project: Project, budget: Budget, pictures: Pictures): string {
   return paragraphs(
     totalInWords(project, budget),
-    wayOut(project, budget),
     drawn(pictures, () => budgetPicture(project, budget)),
+    wayOut(project, budget),
     tolerancesInWords(budget),
     budget.unaccounted.length === 0 ? null : `Not in it: ${budget.unaccounted.map(({ what }) => escaped(what)).join('; ')}`,
     budget.contributions.length === 0 ? null : contributionsTable(budget),

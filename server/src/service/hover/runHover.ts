@@ -50,7 +50,7 @@ function lengthHover(result: RunResult, sufficient: Sufficient | null, pictures:
 const sectionsShown = 2;
 
 function sectionsOf({ run }: RunResult, pictures: Pictures, conductors: readonly RunConductor[] | null): readonly (string | null)[] {
-  return pictures.patience === null ? [] : sectionPictures(run, conductors).slice(0, sectionsShown).map((picture) => drawn(pictures, () => picture));
+  return pictures.until === null ? [] : sectionPictures(run, conductors).slice(0, sectionsShown).map((picture) => drawn(pictures, () => picture));
 }
 
 /** All traces of one row where it names a range. */
@@ -106,8 +106,7 @@ function gapHover(result: RunResult, { gap, index }: RunPoint & { readonly on: '
   });
   const sufficient = sufficientGap(context, run, index);
   return paragraphs(
-    `**${inText(gap.value, 'length')}**${neighboursOf(result, index)}`,
-    sufficient === null ? null : sufficientInWords('gap', sufficient),
+    `**${inText(gap.value, 'length')}**${neighboursOf(result, index)}${sufficient === null ? '' : `. ${sufficientInWords('gap', sufficient)}`}`,
     drawn(pictures, () => gapPicture(context, { run, index, sufficient }, pictures)),
     across.length === 0 ? 'Nothing that is computed couples across it.' : couplingTable(across),
   );

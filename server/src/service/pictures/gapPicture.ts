@@ -23,11 +23,14 @@ export interface GapOfRun {
 }
 
 /** Null where nothing crosses the gap, or not all is computed yet: the rest is then left with `pictures.later`. */
-export function gapPicture(context: FixContext, gap: GapOfRun, { patience, later }: Pictures): Picture | null {
+export function gapPicture(context: FixContext, gap: GapOfRun, { until, later }: Pictures): Picture | null {
   const curve = curveOf(context, gap);
   if (curve === null) return null;
-  const end = Date.now() + (patience ?? 0);
-  while (Date.now() < end && step(context, curve));
+  for (let [now, longest] = [Date.now(), 0]; !isDone(curve) && now + longest < (until ?? 0); ) {
+    step(context, curve);
+    const after = Date.now();
+    [now, longest] = [after, Math.max(longest, after - now)];
+  }
   if (!isDone(curve)) {
     later?.(() => step(context, curve));
     return null;
