@@ -33,7 +33,7 @@ export interface Curve {
 }
 
 const box = { left: 62, right: pictureWidth - 14, top: 36, bottom: 174 };
-const styles = { receiver: { stroke: ink.good, 'stroke-width': 2.5 }, 'near end': { stroke: ink.second, 'stroke-width': 1.75, 'stroke-dasharray': '7 3' }, 'far end': { stroke: ink.third, 'stroke-width': 1.75, 'stroke-dasharray': '2 3' } } as const;
+const styles = { receiver: { stroke: ink.good, 'stroke-width': 2.5 }, 'near end': { stroke: ink.second, 'stroke-width': 1.75, 'stroke-dasharray': '7 3' }, 'far end': { stroke: ink.third, 'stroke-width': 2.5, 'stroke-dasharray': '2 6' } } as const;
 
 export function waveforms(given: Waveforms): Picture {
   const { curves, tolerates, countedFrom } = given;
