@@ -20,6 +20,8 @@ export interface Sufficient {
   readonly written: string;
   /** False where no value in reach does: `value` is then the best in reach. */
   readonly enough: boolean;
+  /** True where what comes from elsewhere is too much already, whatever is done here. */
+  readonly missedElsewhere: boolean;
   /** True where even the largest length or the smallest gap in reach is enough: how much further it could go was not asked. */
   readonly atReach: boolean;
   readonly receivers: readonly string[];
@@ -78,7 +80,7 @@ function solved(context: FixContext, adjustable: Adjustable, budgets: readonly B
   const [value] = result.values;
   const { written, outward, smallest, largest } = adjustable;
   const atReach = result.enough && (outward === 'up' ? value! - smallest : largest - value!) < 1.5 * written.grid;
-  return { value: value!, written: written.inUnit(value!), enough: result.enough, atReach, receivers: budgets.map(({ subject }) => subject.name), evaluations: result.evaluations };
+  return { value: value!, written: written.inUnit(value!), enough: result.enough, missedElsewhere: !result.enough && result.evaluations === 0, atReach, receivers: budgets.map(({ subject }) => subject.name), evaluations: result.evaluations };
 }
 
 /** Complete budgets to which something couples across this gap, or anywhere in the run. */

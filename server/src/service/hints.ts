@@ -123,14 +123,14 @@ function* gapHints(context: FixContext, run: Run, wants: WantedAt): Generator<Pl
     if (seen.has(place.span.start) || !wants('gap', place)) continue;
     seen.add(place.span.start);
     const sufficient = sufficientGap(context, run, index);
-    yield sufficient === null ? null : { place, hint: sufficientHint('gap', place, sufficient) };
+    yield sufficient === null || sufficient.missedElsewhere ? null : { place, hint: sufficientHint('gap', place, sufficient) };
   }
 }
 
-/** None where the length does not matter: the end of the search is no limit of the board. */
+/** None where the length does not matter: the end of the search is no limit of the board, and what comes from elsewhere is mended there. */
 function lengthHint(context: FixContext, run: Run): Placed | null {
   const sufficient = sufficientLength(context, run);
-  return sufficient === null || sufficient.atReach ? null : { place: run.length.place, hint: sufficientHint('length', run.length.place, sufficient) };
+  return sufficient === null || sufficient.atReach || sufficient.missedElsewhere ? null : { place: run.length.place, hint: sufficientHint('length', run.length.place, sufficient) };
 }
 
 function sufficientHint(kind: 'gap' | 'length', place: Place, sufficient: Sufficient): Hint {
