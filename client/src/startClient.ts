@@ -3,6 +3,7 @@ import * as vscode from 'vscode';
 import type { BaseLanguageClient, LanguageClientOptions } from 'vscode-languageclient';
 import { listFilesMethod, readFileMethod, statusMethod, type ClientOptions, type ReadFileAnswer, type ReadFileParams, type StatusParams } from '../../server/src/lsp/messages';
 import { registerCommands } from './commands';
+import { registerCompareRevisions } from './compareRevisions';
 import { registerFirstSteps } from './firstSteps';
 import { listFiles } from './listFiles';
 import { readFile, type RealPath } from './readFile';
@@ -34,7 +35,7 @@ export async function startClient(context: vscode.ExtensionContext, host: Host):
   client.onRequest<ReadFileAnswer, void>(readFileMethod, (params: ReadFileParams) => readFile(params, host.realPath));
   client.onRequest(listFilesMethod, () => listFiles());
   client.onNotification(statusMethod, (params: StatusParams) => status.show(params));
-  context.subscriptions.push(output, status, registerRulePages(client), registerCommands(client, output), registerShowPlaces(), registerFirstSteps(context));
+  context.subscriptions.push(output, status, registerRulePages(client), registerCommands(client, output), registerShowPlaces(), registerCompareRevisions(client, host.realPath), registerFirstSteps(context));
   try {
     await client.start();
   } catch (error) {

@@ -4,7 +4,7 @@ import { comparisonOf, type Comparison } from '../compare/compare';
 import { parse } from '../syntax/parse';
 import type { CompareCommand } from './arguments';
 import { checkedFiles, type CheckedFile } from './checkedFiles';
-import { comparisonMarkdown } from './comparisonMarkdown';
+import { comparisonMarkdown } from '../service/comparison/comparisonMarkdown';
 import { comparisonText } from './comparisonText';
 import { paintFor } from './paint';
 import { printableWord } from './printable';

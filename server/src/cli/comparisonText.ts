@@ -1,12 +1,8 @@
 import type { Comparison } from '../compare/compare';
-import { addedInText, causesOf, marginsOf, nameOf, totalsOf, verdictOf } from './comparisonCells';
+import { addedInText, causesOf, marginsOf, nameOf, totalsOf, verdictOf } from '../service/comparison/comparisonCells';
+import type { Title } from '../service/comparison/comparisonMarkdown';
 import type { Paint } from './paint';
 import { printable, printableWord } from './printable';
-
-export interface Title {
-  readonly before: string;
-  readonly after: string;
-}
 
 /** For a terminal: what changed, then each budget that moved, with what moved it. */
 export function comparisonText({ changes, moved, unmoved }: Comparison, { before, after }: Title, paint: Paint): string {

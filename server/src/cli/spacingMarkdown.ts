@@ -1,4 +1,4 @@
-import { markdownWord } from './markdownWord';
+import { markdownWord } from '../service/markdownWord';
 import type { SpacingTable } from './spacing';
 import { byLayer, spacingCells, spacingHead } from './spacingCells';
 

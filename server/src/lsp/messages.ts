@@ -52,6 +52,33 @@ export interface ExplainParams {
   readonly rule: string;
 }
 
+/**
+ * Client to server: what the margins of a file's boards have become since another revision, which only the client can reach. It hands
+ * over the files of that revision that it has so far, and is told which are lacking, until there is an answer.
+ */
+export const compareMethod = 'quietrun/compare';
+
+export interface CompareParams {
+  /** A file of the new revision, as it stands in the editor. */
+  readonly uri: string;
+  /** What people call it. */
+  readonly name: string;
+  readonly before: {
+    /** The file that it is compared with; null for the same files as they were, for each board that uses this one. */
+    readonly root: string | null;
+    /** What people call that file; without one, that revision. */
+    readonly name: string;
+    readonly files: readonly { readonly uri: string; readonly answer: ReadFileAnswer }[];
+  };
+}
+
+export type CompareAnswer =
+  | { readonly missing: readonly ReadFileParams[] }
+  /** A whole document. */
+  | { readonly markdown: string }
+  /** Why there is nothing to compare: one sentence. */
+  | { readonly refused: string };
+
 /** Server to client, after the findings of a file changed. */
 export const statusMethod = 'quietrun/status';
 

@@ -10,6 +10,7 @@ import { Session } from '../service/session';
 import { answerCallHierarchy } from './callHierarchy';
 import { answerCodeActions } from './codeAction';
 import { answerCodeLenses } from './codeLens';
+import { answerCompare } from './compare';
 import { answerCompletions } from './completion';
 import { answerDefinition } from './definition';
 import { answerPulls, pushFindings } from './diagnostics';
@@ -104,6 +105,7 @@ export function startServer(connection: Connection, ownReader: FileReader): void
   answerFormatting(server);
   answerSelectionRanges(server);
   answerSemanticTokens(server);
+  answerCompare(server);
   connection.listen();
 }
 

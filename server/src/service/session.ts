@@ -15,6 +15,7 @@ import type { Evaluation } from '../budget/results';
 import { createSolveCache } from '../budget/solveCache';
 import { boundedAtOnce, overTolerances } from '../budget/tolerances/overTolerances';
 import { tolerancedQuantities } from '../budget/tolerances/tolerances';
+import { comparisonOf } from '../compare/compare';
 import type { FixContext } from '../fixes/fix';
 import { findingsOf } from '../rules/index';
 import type { Finding } from '../rules/rule';
@@ -158,6 +159,16 @@ export class Session {
   /** What layout needs of a root's board; see `spacing/`. */
   spacing(root: string, options: SpacingOptions): ReturnType<typeof spacingOf> {
     return spacingOf(this.analyse(root).evaluation, this.cache, options);
+  }
+
+  /** What a root's board has become since its files were these; see `compare/`. */
+  comparison(root: string, before: readonly SourceTree[]): ReturnType<typeof comparisonOf> {
+    return comparisonOf(before, this.trees(root), this.cache);
+  }
+
+  /** Of every file of a root's project that has a text. */
+  trees(root: string): readonly SourceTree[] {
+    return this.project(root).files.flatMap((path) => this.tree(path) ?? []);
   }
 
   /** Of every project that the file belongs to; what two projects say alike is said once. */

@@ -1,7 +1,7 @@
 /** The words of a comparison, alike in every format. */
-import type { Budget } from '../budget/results';
-import type { BudgetMove } from '../compare/compare';
-import { inText } from '../units/inText';
+import type { Budget } from '../../budget/results';
+import type { BudgetMove } from '../../compare/compare';
+import { inText } from '../../units/inText';
 
 export function nameOf({ before, after }: BudgetMove): string {
   const budget = (after ?? before)!;

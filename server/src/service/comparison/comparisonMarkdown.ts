@@ -1,7 +1,11 @@
-import type { Comparison } from '../compare/compare';
+import type { Comparison } from '../../compare/compare';
+import { markdownWord } from '../markdownWord';
 import { addedInText, causesOf, marginsOf, nameOf, totalsOf, verdictOf } from './comparisonCells';
-import type { Title } from './comparisonText';
-import { markdownWord } from './markdownWord';
+
+export interface Title {
+  readonly before: string;
+  readonly after: string;
+}
 
 /** For the comment on a merge request. */
 export function comparisonMarkdown({ changes, moved, unmoved }: Comparison, { before, after }: Title): string {
