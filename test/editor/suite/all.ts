@@ -9,5 +9,6 @@ export async function loadAll(): Promise<void> {
   await import('./navigation.suite');
   await import('./names.suite');
   await import('./structure.suite');
+  await import('./compare.suite');
   await import('./files.suite');
 }
