@@ -66,9 +66,9 @@ function traceHover(result: RunResult, { place }: RunConductor & { readonly kind
     return `**${escaped(trace.net.name)}** in run ${escaped(result.run.name)}: ${inText(trace.width.value, 'length')} wide${line}${trace.reversed ? ', laid against the others' : ''}`;
   });
   return paragraphs(
-    [...lines, ...(lines.length < traces.length ? [`and ${traces.length - lines.length} more`] : [])].join('  \n'),
     largestInWords(onto),
     largestOf([...onto, ...from]).map((coupling) => drawn(pictures, () => couplingPicture(evaluation, coupling))).join(''),
+    [...lines, ...(lines.length < traces.length ? [`and ${traces.length - lines.length} more`] : [])].join('  \n'),
     onto.length === 0 ? null : `Put on it here:\n\n${couplingTable(onto)}`,
     from.length === 0 ? null : `Put by it here:\n\n${couplingTable(from)}`,
     onto.length + from.length === 0 ? nothingCouples(result) : null,
