@@ -27,7 +27,7 @@ async function hovers(options: ClientOptions, points: readonly { readonly line: 
 
 const [net, gap] = [{ line: 3, character: 5 }, { line: 6, character: 7 }];
 
-/** Milliseconds; another look begins the waiting work anew, so that it must not come at once. */
+/** Milliseconds in which a point of the curve is computed: a look puts off what waits, and what it has computed stays. */
 const betweenLooks = 250;
 
 describe('hover over the wire', () => {
