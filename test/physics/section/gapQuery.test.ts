@@ -56,6 +56,19 @@ describe('a section as a function of one gap', () => {
     assert.ok(counted.outside <= 1e-3 * counted.entries, JSON.stringify(counted));
   });
 
+  it('holds them under a mask that follows the traces', () => {
+    const section: Section = { ...randomSections('bare', 5, 3)[2], film: { permittivity: 3.4, thickness: metres(25e-6), side: 'above' } };
+    const range = rangeOf(section);
+    const query = gapQuery(range)!;
+    for (const factor of [0.55, 0.8, 1.3, 3.1]) {
+      const [near, fresh] = [query.at(metres(range.gap * factor))!, solved(sectionWithGap(range, range.gap * factor))!];
+      fresh.capacitance.forEach((value, entry) => {
+        const miss = Math.abs(near.capacitance[entry] / value - 1);
+        assert.ok(miss < 1e-4 && miss <= near.capacitanceError[entry] && near.capacitanceError[entry] < 2e-3, `${factor}: ${miss} of ${near.capacitanceError[entry]}`);
+      });
+    }
+  });
+
   it('is the solution itself at the ends of its range, and nothing beyond', () => {
     const range = rangeOf(randomSections('bare', 3, 1)[0]);
     const query = gapQuery(range)!;
