@@ -5,7 +5,7 @@
  *    |____|<-- g -->|____| ->     Method    interpolation of ln|entry| in ln g at the Chebyshev points with both ends, which nest:
  *                                           5, 9, 17, … until two points that are none of them agree, and the tail has died
  *   Symbols   g gap (m), between `smallest` and `largest`; C in F/m, L in H/m
- *   Source    Trefethen, Approximation Theory and Approximation Practice (2013), ch. 4 and 5 (barycentric form of Salzer 1972)
+ *   Source    Trefethen, Approximation Theory and Approximation Practice, for the points and the barycentric form; from memory
  *   Range     entries that keep their sign, as those of Maxwell's form do; null where one does not, where a gap in reach is
  *             refused, or where the finest grid does not agree: so between two planes, where a mutual dies below the solver's
  *             own error within reach
