@@ -3,7 +3,7 @@
  *
  *     ____            ____        Model     all stays as it is but the conductors in `moved`, which go sideways together
  *    |____|<-- g -->|____| ->     Method    interpolation of ln|entry| in ln g at the Chebyshev points with both ends, which nest:
- *                                           5, 9, 17, … until two points that are none of them agree, and the tail has died
+ *                                           5, 9, 17, … until three points that are none of them agree, and the tail has died
  *   Symbols   g gap (m), between `smallest` and `largest`; C in F/m, L in H/m
  *   Source    Trefethen, Approximation Theory and Approximation Practice, for the points and the barycentric form; from memory
  *   Range     entries that keep their sign, as those of Maxwell's form do; null where one does not, where a gap in reach is
