@@ -5,7 +5,7 @@
  * Compared are distances across the run, from edge to edge: between layers the height stays as it is.
  */
 import type { Project, Run } from '../board/model';
-import { hazardousVoltage, signalsOf } from '../rules/touchLimits';
+import { insulationMatters } from '../rules/touchLimits';
 
 export function bringsNearer(project: Project, before: Run, after: Run): boolean {
   const dangerous = conductorsOf(before).filter(({ name }) => isDangerous(name, project));
@@ -15,10 +15,9 @@ export function bringsNearer(project: Project, before: Run, after: Run): boolean
   });
 }
 
-/** A working voltage says that insulation matters, whatever its size. */
 function isDangerous(name: string, project: Project): boolean {
   const net = project.nets.get(name);
-  return net !== undefined && (hazardousVoltage(net, project) !== null || signalsOf(net, project).some(({ working }) => working !== null));
+  return net !== undefined && insulationMatters(net, project);
 }
 
 interface Strip {

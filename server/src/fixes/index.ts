@@ -11,6 +11,7 @@ import { groundedShield, shieldGrounded } from './groundShield';
 import { judgedByBudget } from './judged';
 import { laidOverPlane, laidOverPlaneForLimit } from './loopOverPlane';
 import { unusedRemoved } from './removeUnused';
+import { movedToLayer } from './moveToLayer';
 import { narrowedBand } from './narrowBand';
 import { separatedReturns } from './separateReturn';
 import { shortenedRun } from './shortenRun';
@@ -21,7 +22,7 @@ import { waived } from './waive';
 import { widenedGaps, widenedToClearance } from './widenGap';
 
 /** For a receiver that has too much; each solves for its number. */
-const proposers: readonly ((finding: Finding, context: FixContext) => readonly Proposal[])[] = [widenedGaps, shortenedRun, stitchedGuard, shrunkLoops, laidOverPlane, separatedReturns, shieldGrounded, slowedEdges, narrowedBand];
+const proposers: readonly ((finding: Finding, context: FixContext) => readonly Proposal[])[] = [widenedGaps, shortenedRun, stitchedGuard, movedToLayer, shrunkLoops, laidOverPlane, separatedReturns, shieldGrounded, slowedEdges, narrowedBand];
 
 /** For everything else. */
 const makers: readonly ((finding: Finding, context: FixContext) => readonly Fix[])[] = [widenedToClearance, stitchedMoreOften, groundedShield, shrunkToLimit, laidOverPlaneForLimit, corrections, declaredNet, unusedRemoved];

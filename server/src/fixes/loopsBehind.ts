@@ -1,7 +1,7 @@
 /** The loops behind what a receiver hears by loops: those that carry the current, then those in which it induces; or the one around which a field does. */
 import type { Loop } from '../board/model';
 import type { Budget, Contribution } from '../budget/results';
-import { hazardousVoltage, signalsOf } from '../rules/touchLimits';
+import { insulationMatters } from '../rules/touchLimits';
 import type { FixContext } from './fix';
 
 export function loopsBehind({ project, evaluation }: FixContext, { subject, kind }: Budget, { channel, from, place }: Contribution): readonly Loop[] {
@@ -17,5 +17,5 @@ export function loopsBehind({ project, evaluation }: FixContext, { subject, kind
 /** Insulation depends on it: no fix brings its own conductors, or copper, nearer to it. */
 export function isUnderVoltage({ project }: Pick<FixContext, 'project'>, { carries, senses }: Loop): boolean {
   const nets = [...carries.map(({ net }) => net), ...senses.flatMap(({ signal }) => (signal.kind === 'net' ? [signal] : [signal.plus, signal.minus].filter((net) => net !== null)))];
-  return nets.some((net) => hazardousVoltage(net, project) !== null || signalsOf(net, project).some(({ working }) => working !== null));
+  return nets.some((net) => insulationMatters(net, project));
 }

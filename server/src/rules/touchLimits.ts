@@ -28,6 +28,11 @@ export function hazardousVoltage(net: Net, project: Project): HazardousVoltage |
   return null;
 }
 
+/** Whatever its size, a working voltage says that distances to this net are not for noise to decide. */
+export function insulationMatters(net: Net, project: Project): boolean {
+  return hazardousVoltage(net, project) !== null || signalsOf(net, project).some(({ working }) => working !== null);
+}
+
 /** `230 V rms`, as stated. */
 export function hazardInText({ value, measure }: HazardousVoltage): string {
   return `${inText(value, 'voltage')} ${measure}`;

@@ -8,7 +8,7 @@ import type { Budget, Contribution, Evaluation } from '../budget/results';
 import { isSource } from '../budget/sources';
 import type { SolveCache } from '../budget/solveCache';
 import { totalOf } from '../budget/totals';
-import { hazardousVoltage, signalsOf } from '../rules/touchLimits';
+import { insulationMatters } from '../rules/touchLimits';
 import { metres, volts, type Length, type Voltage } from '../units/quantity';
 import { putBeside, type SideBySide } from './candidate';
 import { longestRun, smallestGap, type Found } from './solveDistance';
@@ -52,7 +52,7 @@ export interface Spacing {
 /** Yields before each row, so that whoever waits can be told how far it is. */
 export function* spacingOf({ project, budgets, runs }: Evaluation, cache: SolveCache, options: SpacingOptions): Generator<{ readonly done: number; readonly of: number }, Spacing> {
   const listening = budgets.filter((budget): budget is Budget & { subject: Net } => budget.kind === 'net' && fits(options.only.to, budget.subject.name));
-  const insulated = new Set([...project.nets.values()].filter((net) => hasInsulation(net, project)));
+  const insulated = new Set([...project.nets.values()].filter((net) => insulationMatters(net, project)));
   const sources = [...project.nets.values()].filter((net) => isSource(net) && !insulated.has(net) && fits(options.only.from, net.name));
   const incomplete = listening.filter(({ complete, subject }) => !complete && !insulated.has(subject));
   const usable = listening.filter(({ complete, subject }) => complete && !insulated.has(subject));
@@ -90,9 +90,6 @@ function elsewhereOf({ contributions }: Budget, { placed }: SpacingOptions, from
 }
 
 const fits = (wanted: string | null, name: string) => wanted === null || wanted === name;
-
-/** Whatever its size, a working voltage says that distances to this net are not for noise to decide. */
-const hasInsulation = (net: Net, project: Project) => hazardousVoltage(net, project) !== null || signalsOf(net, project).some(({ working }) => working !== null);
 
 function layersOf({ stackups }: Project, only: string | null): readonly { readonly stackup: Stackup; readonly layer: CopperRow }[] {
   return stackups.flatMap((stackup) => stackup.rows.filter((row): row is CopperRow => row.kind === 'copper' && fits(only, row.name)).map((layer) => ({ stackup, layer })));
