@@ -16,23 +16,29 @@ describe('quietrun serve --stdio', () => {
     const published = new Promise<PublishDiagnosticsParams>((resolve) => connection.onNotification('textDocument/publishDiagnostics', (params: PublishDiagnosticsParams) => { if (0 < params.diagnostics.length) resolve(params); }));
     connection.listen();
 
+    const stage = (words: string) => console.error(words);
     const uri = 'file:///boards/first.quiet';
     const { capabilities } = await connection.sendRequest<InitializeResult>('initialize', { processId: process.pid, rootUri: null, capabilities: {} });
     assert.equal(capabilities.hoverProvider, true);
     await connection.sendNotification('initialized', {});
     await connection.sendNotification('textDocument/didOpen', { textDocument: { uri, languageId: 'quietrun', version: 1, text: starterBoard } });
 
+    stage("opened");
     const { diagnostics, version } = await published;
+    stage("published");
     assert.equal(version, 1);
     const over = diagnostics.find(({ code }: Diagnostic) => code === 'over-budget');
     assert.ok(over, JSON.stringify(diagnostics));
     const hover = await connection.sendRequest<{ contents: { value: string } }>('textDocument/hover', { textDocument: { uri }, position: over.range.start });
     assert.match(hover.contents.value, /SENSE/);
     assert.doesNotMatch(hover.contents.value, /<\w/, 'no markup that a plain client would show as it is');
+    stage("hovered");
     const fixes = await connection.sendRequest<{ title: string; edit: { documentChanges: unknown[] } }[]>('textDocument/codeAction', { textDocument: { uri }, range: over.range, context: { diagnostics: [over] } });
     assert.ok(fixes.some(({ title, edit }) => /gap/.test(title) && edit.documentChanges.length === 1), fixes.map(({ title }) => title).join(' | '));
 
-    await connection.sendRequest('shutdown');
+    stage("fixes");
+    await connection.sendRequest("shutdown");
+    stage("shut");
     await connection.sendNotification('exit');
     const [status] = await ended;
     connection.dispose();
