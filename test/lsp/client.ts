@@ -73,3 +73,17 @@ export async function eventually<T>(ask: () => T | undefined, what: string): Pro
   }
   throw new Error(`waited 5 s for ${what}`);
 }
+
+/**
+ * What a request is refused with when an edit comes before its answer. A server that is quick may answer first, which is as good: it is
+ * asked again, with another edit, until one comes in between.
+ */
+export async function refusedFor(ask: () => Promise<unknown>, edit: (time: number) => Promise<void>): Promise<{ readonly code: number; readonly data?: unknown }> {
+  for (let time = 1; time <= 50; time += 1) {
+    const answer = ask().then(() => null, (error: { code: number; data?: unknown }) => error);
+    await edit(time);
+    const refused = await answer;
+    if (refused !== null) return refused;
+  }
+  throw new Error('no edit came before an answer');
+}

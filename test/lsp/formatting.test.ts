@@ -2,7 +2,7 @@
 import assert from 'node:assert/strict';
 import { describe, it } from 'node:test';
 import { LSPErrorCodes, type TextEdit } from 'vscode-languageserver-protocol/node';
-import { startClient, type TestClient } from './client';
+import { refusedFor, startClient, type TestClient } from './client';
 
 const uri = 'untitled:board';
 const options = { tabSize: 8, insertSpaces: false, trimTrailingWhitespace: true };
@@ -42,10 +42,8 @@ describe('formatting over the protocol', () => {
 
   it('is overtaken by an edit, and answers nothing for a file that is not open', async () => {
     const client = await opened();
-    const asked = client.connection.sendRequest('textDocument/formatting', { textDocument: { uri }, options });
-    const refused = assert.rejects(asked, { code: LSPErrorCodes.ContentModified });
-    await client.change(uri, 2, `\r\n${text}`);
-    await refused;
+    const refused = await refusedFor(() => client.connection.sendRequest('textDocument/formatting', { textDocument: { uri }, options }), (time) => client.change(uri, 1 + time, `${'\r\n'.repeat(time)}${text}`));
+    assert.equal(refused.code, LSPErrorCodes.ContentModified);
     assert.deepEqual(await client.connection.sendRequest('textDocument/formatting', { textDocument: { uri: 'untitled:other' }, options }), []);
     assert.deepEqual(client.log, []);
     await client.stop();
